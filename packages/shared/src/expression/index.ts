@@ -1,0 +1,2 @@
+export { functionNames } from './expression.ts';
+export type { BinaryOperator, Comparison, Expression, FunctionName } from './expression.ts';

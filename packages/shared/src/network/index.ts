@@ -1,0 +1,13 @@
+export type {
+  ComplexTable,
+  Compartment,
+  Constant,
+  Network,
+  NetworkEvent,
+  NetworkRow,
+  NetworkUnits,
+  Quantity,
+  RateLaw,
+  Rational,
+  ReactionTable,
+} from './network.ts';

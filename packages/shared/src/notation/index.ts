@@ -1,0 +1,1 @@
+export type { Complaint, NotationReading } from './complaint.ts';
