@@ -1,0 +1,13 @@
+export { closeCodes } from './close-codes.ts';
+export type { CloseCode } from './close-codes.ts';
+export { limits } from './limits.ts';
+export { messageTypes } from './messages.ts';
+export type {
+  CellError,
+  CellNotice,
+  CellState,
+  Notice,
+  NoticeTopic,
+  PlanNotice,
+  Presence,
+} from './messages.ts';
