@@ -46,3 +46,5 @@ export type { Echelon } from './echelon.ts';
 export { leftNullspace, rightNullspace, solve } from './nullspace.ts';
 export { hermiteForm, integerKernel } from './hermite.ts';
 export type { HermiteForm } from './hermite.ts';
+export { solveLinear } from './linear-programme.ts';
+export type { LinearCondition, LinearOutcome, LinearProgramme } from './linear-programme.ts';

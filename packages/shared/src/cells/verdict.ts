@@ -1,0 +1,114 @@
+/** Whether the hypotheses of a theorem hold. "no" never states the opposite of the conclusion. */
+export type Applies = 'yes' | 'no' | 'undecided';
+
+/** What a verdict speaks about: every choice of positive constants, the constants of the text, or those and the start. */
+export type VerdictScope = 'all constants' | 'these constants' | 'these constants and start';
+
+export type VerdictKinetics = 'mass action' | 'general';
+
+/** The names of all verdicts; they are part of the format and never change their meaning. */
+export const verdictIds = [
+  'deficiency-zero',
+  'deficiency-one',
+  'complex-balance',
+  'detailed-balance',
+  'global-stability',
+  'existence',
+  'no-positive-steady-state',
+  'product-form',
+  'product-form-all-times',
+  'monomolecular',
+  'robust-species',
+  'robust-extinction',
+  'persistence',
+  'no-boundary-steady-state',
+  'injective',
+  'several-steady-states',
+  'at-most-one',
+  'mass-transport',
+  'one-dimensional',
+  'non-explosive',
+  'positive-recurrent',
+  'concordant',
+] as const;
+export type VerdictId = (typeof verdictIds)[number];
+
+/** An exact integer or rational as text ("3/2"), or a JSON number where it is a safe integer or a measured value. */
+export type WitnessNumber = number | string;
+
+/** A box of numbers proven to hold exactly one positive steady state: [lower, upper] by species name. */
+export type WitnessBox = Readonly<Record<string, readonly [number, number]>>;
+
+/** One product det N[I,J] · det B[J,I] of the determinant criterion, with its two factors. */
+export interface MinorPair {
+  /** Names of the s species I. */
+  readonly species: readonly string[];
+  /** Indices of the s reactions J in the structure result. */
+  readonly reactions: readonly number[];
+  readonly stoichiometric: WitnessNumber;
+  readonly reactant: WitnessNumber;
+}
+
+/**
+ * The evidence behind a hypothesis, complete enough for a checker that shares no code with the prover.
+ *
+ * - `arrow`: a reaction that breaks or proves the hypothesis (index in the structure result).
+ * - `vector`: exact entries, zero where absent. `of: "laws"` has species names as keys (a linear function of the
+ *   species), `of: "fluxes"` reaction indices, `of: "complexes"` complex indices, all of the structure result.
+ * - `set`: species names, or complex indices.
+ * - `minors`: products of the determinant criterion.
+ * - `states`: exact constants (by constant name), exact totals, and boxes with one positive steady state each.
+ * - `number`: two numbers whose comparison is the hypothesis.
+ */
+export type Witness =
+  | { readonly kind: 'arrow'; readonly reaction: number }
+  | {
+      readonly kind: 'vector';
+      readonly of: 'laws' | 'fluxes' | 'complexes';
+      readonly entries: Readonly<Record<string, WitnessNumber>>;
+    }
+  | { readonly kind: 'set'; readonly species: readonly string[] }
+  | { readonly kind: 'set'; readonly complexes: readonly number[] }
+  | { readonly kind: 'minors'; readonly pairs: readonly MinorPair[] }
+  | {
+      readonly kind: 'states';
+      /** Exact rational by reaction index: the constant of that arrow (of its equal rows together). */
+      readonly constants: Readonly<Record<string, WitnessNumber>>;
+      readonly totals: readonly {
+        readonly law: Readonly<Record<string, WitnessNumber>>;
+        readonly value: WitnessNumber;
+      }[];
+      readonly boxes: readonly WitnessBox[];
+    }
+  | { readonly kind: 'number'; readonly left: WitnessNumber; readonly right: WitnessNumber };
+
+/** One hypothesis of a theorem; `holds` is null where it could not be decided. */
+export interface Hypothesis {
+  readonly text: string;
+  readonly holds: boolean | null;
+  readonly witness?: Witness;
+}
+
+export interface Citation {
+  readonly authors: string;
+  readonly year: number;
+  readonly title: string;
+  readonly doi?: string;
+}
+
+/**
+ * What a published theorem says about a network: the hypotheses one by one with their evidence, and a conclusion
+ * that states exactly what is proven. `case` names the part of a theorem that applies.
+ */
+export interface Verdict {
+  readonly id: VerdictId;
+  readonly title: string;
+  readonly applies: Applies;
+  readonly case?: string;
+  readonly scope: VerdictScope;
+  readonly kinetics: VerdictKinetics;
+  readonly hypotheses: readonly Hypothesis[];
+  readonly conclusion: string;
+  readonly silentOn?: string;
+  readonly citation: readonly Citation[];
+}
