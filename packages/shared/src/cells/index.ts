@@ -1,0 +1,33 @@
+export type { CellInput, CellJob, CellOutcome, CellSettings, EndedBy } from './cell.ts';
+export { claimSettings, claimVerdicts } from './claim.ts';
+export type { ClaimResult, ClaimSide, ClaimVerdict } from './claim.ts';
+export { complaintInWords, settingsComplaint } from './complaint.ts';
+export { freshName } from './fresh-name.ts';
+export { cellKinds, isCellKind } from './kind.ts';
+export type { CellKind } from './kind.ts';
+export { cellNamePattern, isCellName } from './name.ts';
+export { plotMarks, plotSettings } from './plot.ts';
+export type { PlotMark, PlotResult } from './plot.ts';
+export { proseSettings } from './prose.ts';
+export type { ProseResult, WovenValue } from './prose.ts';
+export { findReferences, mapReferences } from './references.ts';
+export type { FoundReference } from './references.ts';
+export { cellRegistry } from './registry.ts';
+export type { CellKindEntry, SettingReference } from './registry.ts';
+export { scriptSettings } from './script.ts';
+export type { ScriptResult } from './script.ts';
+export { balanceSettings, networkSettings, structureSettings, trajectorySettings } from './settings.ts';
+export { verdictIds } from './verdict.ts';
+export type {
+  Applies,
+  Citation,
+  Hypothesis,
+  MinorPair,
+  Verdict,
+  VerdictId,
+  VerdictKinetics,
+  VerdictScope,
+  Witness,
+  WitnessBox,
+  WitnessNumber,
+} from './verdict.ts';
