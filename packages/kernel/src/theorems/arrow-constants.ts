@@ -1,0 +1,86 @@
+import type { Quantity, Rational } from '@stillroom/shared/network';
+import { add, equals, isZero, multiply, ONE, power, sign, ZERO } from '../exact/index.ts';
+import type { StructuralNetwork } from '../network/index.ts';
+
+/** The mass-action constant of every arrow: equal rows added, the powers of fixed species multiplied in. */
+export interface ArrowConstants {
+  /** Positive exact values by arrow; null unless every arrow has one. */
+  readonly exact: readonly Rational[] | null;
+  /** Readable, by arrow: "k1", "(k1 + k3)", "k1*A^2" with A fixed. */
+  readonly names: readonly string[];
+  /** Why `exact` is null, as the end of a sentence ("k3 has no value"); null where it is not. */
+  readonly why: string | null;
+}
+
+/** Reads the constants of a structural network. Laws that are mass action in disguise count as mass action. */
+export function arrowConstants(structure: StructuralNetwork): ArrowConstants {
+  const values: (Rational | null)[] = Array.from({ length: structure.arrows.count }, () => ZERO);
+  const parts: string[][] = values.map(() => []);
+  let why: string | null = null;
+  for (let reaction = 0; reaction < structure.reactions.count; reaction++) {
+    const arrow = structure.reactions.arrow[reaction]!;
+    const { name, value, problem } = constantOf(structure, structure.reactions.source[reaction]!);
+    parts[arrow]!.push(name);
+    why ??= problem;
+    const sum = values[arrow]!;
+    values[arrow] = sum === null || value === null ? null : add(sum, value);
+  }
+  const names = parts.map((list) => (list.length === 1 ? list[0]! : `(${list.join(' + ')})`));
+  const zero = values.findIndex((value) => value !== null && isZero(value));
+  if (why === null && zero >= 0) why = `${names[zero]} is 0`;
+  const exact: Rational[] = [];
+  for (const value of values) if (value !== null && sign(value) > 0) exact.push(value);
+  return { exact: exact.length === values.length ? exact : null, names, why };
+}
+
+interface NamedConstant {
+  readonly name: string;
+  readonly value: Rational | null;
+  readonly problem: string | null;
+}
+
+function constantOf({ source }: StructuralNetwork, reaction: number): NamedConstant {
+  const law = source.reactions.law[reaction]!;
+  const index = law < 0 ? source.reactions.constant[reaction]! : (source.laws[law]?.massAction ?? -1);
+  const constant = source.constants[index];
+  if (constant === undefined) {
+    const line = source.rows[source.reactions.row[reaction]!]?.line;
+    return {
+      name: `law of line ${line}`,
+      value: null,
+      problem: `line ${line} has a law that is not mass action`,
+    };
+  }
+  let { name } = constant;
+  let { value, problem } = valueOf(constant.quantity, name);
+  const { complexes } = source;
+  const complex = source.reactions.from[reaction]!;
+  for (let k = complexes.offsets[complex]!; k < complexes.offsets[complex + 1]!; k++) {
+    const species = complexes.species[k]!;
+    const held = source.fixed.get(species);
+    if (held === undefined) continue;
+    const exponent = complexes.numerators[k]! / (complexes.denominators?.[k] ?? 1);
+    const label = source.species[species]!;
+    name += exponent === 1 ? `*${label}` : `*${label}^${exponent}`;
+    const factor = valueOf(held, label);
+    problem ??= factor.problem;
+    value = value === null || factor.value === null ? null : raise(value, factor.value, exponent);
+    if (value === null) problem ??= `${label} enters with a power that is not a whole number`;
+  }
+  return { name, value, problem };
+}
+
+function raise(value: Rational, base: Rational, exponent: number): Rational | null {
+  if (Number.isInteger(exponent)) return multiply(value, power(base, exponent));
+  return equals(base, ONE) ? value : null;
+}
+
+function valueOf(
+  quantity: Quantity | null,
+  name: string,
+): { value: Rational | null; problem: string | null } {
+  if (quantity === null) return { value: null, problem: `${name} has no value` };
+  return quantity.exact === null
+    ? { value: null, problem: `${name} is not a rational number` }
+    : { value: quantity.exact, problem: null };
+}

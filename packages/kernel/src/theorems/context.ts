@@ -1,0 +1,229 @@
+import type { Verdict, VerdictId, WitnessNumber } from '@stillroom/shared/cells';
+import type { Network } from '@stillroom/shared/network';
+import type { IntegerMatrix, Rational } from '../exact/index.ts';
+import { integerForResult, integerKernel, matrixFrom, matrixOfRows } from '../exact/index.ts';
+import type { StructuralNetwork } from '../network/index.ts';
+import { complexLabel, structuralNetwork } from '../network/index.ts';
+import type { ArrowConstants } from './arrow-constants.ts';
+import { arrowConstants } from './arrow-constants.ts';
+import { positiveCirculation } from './circulation.ts';
+import type { Term } from './coefficients.ts';
+import { Coefficients } from './coefficients.ts';
+import type { KineticsReport } from './kinetics.ts';
+import { reportKinetics } from './kinetics.ts';
+import type { Conservation, Consistency } from './positive-vectors.ts';
+import { decideConservation, decideConsistency } from './positive-vectors.ts';
+import type { StructuralFacts } from './structural-facts.ts';
+import { structuralFacts } from './structural-facts.ts';
+
+/** One distinct directed arrow between complexes. */
+export interface Arrow {
+  readonly from: number;
+  readonly to: number;
+}
+
+/** Entries (species × arrows) above which dense exact matrices are not formed; theorems that need them stay undecided. */
+export const DENSE_LIMIT = 250_000;
+
+/** Judges a theorem by its name on a context, so that verdicts can build on each other. */
+export type JudgeById = (id: VerdictId, context: TheoremContext) => Verdict;
+
+/**
+ * What theorems look at: one network with its structural quantities, each computed when first asked for and once.
+ * Complexes, arrows and species are those of the structural network (`fix` applied, equal arrows merged).
+ */
+export class TheoremContext {
+  readonly network: Network;
+  readonly structure: StructuralNetwork;
+  readonly species: readonly string[];
+  readonly arrows: readonly Arrow[];
+  readonly #judge: JudgeById;
+  readonly #kept = new Map<string, unknown>();
+
+  constructor(network: Network, judge: JudgeById, structure = structuralNetwork(network)) {
+    this.network = network;
+    this.structure = structure;
+    this.#judge = judge;
+    this.species = structure.species;
+    const { count, from, to } = structure.arrows;
+    this.arrows = Array.from({ length: count }, (_, arrow) => ({ from: from[arrow]!, to: to[arrow]! }));
+  }
+
+  /** The value of `compute`, kept under a name for the life of the context. */
+  memo<T>(name: string, compute: () => T): T {
+    if (!this.#kept.has(name)) this.#kept.set(name, compute());
+    return this.#kept.get(name) as T;
+  }
+
+  /** The verdict of another theorem. */
+  verdict(id: VerdictId): Verdict {
+    return this.memo(`verdict ${id}`, () => this.#judge(id, this));
+  }
+
+  get complexCount(): number {
+    return this.structure.complexes.count;
+  }
+
+  complexLabel(complex: number): string {
+    return complexLabel(this.species, this.structure.complexes, complex);
+  }
+
+  /** "A + B -> 2 B". */
+  arrowLabel(arrow: number): string {
+    const { from, to } = this.arrows[arrow]!;
+    return `${this.complexLabel(from)} -> ${this.complexLabel(to)}`;
+  }
+
+  /** The first written reaction (index of the structure result) that states an arrow. */
+  reactionOf(arrow: number): number {
+    return this.structure.arrows.reaction[arrow]!;
+  }
+
+  speciesNames(species: readonly number[]): string[] {
+    return species.map((i) => this.species[i]!);
+  }
+
+  get coefficients(): Coefficients {
+    return this.memo('coefficients', () => new Coefficients(this.structure));
+  }
+
+  /** The species of a complex with their coefficients, ascending by species. */
+  terms(complex: number): readonly Term[] {
+    return this.coefficients.terms(complex);
+  }
+
+  coefficient(complex: number, species: number): number {
+    return this.terms(complex).find((term) => term.species === species)?.coefficient ?? 0;
+  }
+
+  /** Classes, rank, deficiency, siphons: what the structure room computes. */
+  get facts(): StructuralFacts {
+    return this.memo('facts', () => structuralFacts(this.structure));
+  }
+
+  get deficiency(): number {
+    return this.facts.deficiency;
+  }
+
+  get rank(): number {
+    return this.facts.rank;
+  }
+
+  get linkageClasses(): StructuralFacts['linkageClasses'] {
+    return this.facts.linkageClasses;
+  }
+
+  get nonterminalComplexes(): readonly number[] {
+    return this.facts.nonterminalComplexes;
+  }
+
+  get siphons(): StructuralFacts['siphons'] {
+    return this.facts.siphons;
+  }
+
+  /** An arrow that lies on no directed cycle, or null in a weakly reversible network. */
+  get oneWayArrow(): number | null {
+    return this.memo('one-way arrow', () => {
+      const strong = this.facts.strongClassOf;
+      const arrow = this.arrows.findIndex(({ from, to }) => strong[from] !== strong[to]);
+      return arrow < 0 ? null : arrow;
+    });
+  }
+
+  get weaklyReversible(): boolean {
+    return this.oneWayArrow === null;
+  }
+
+  get arrowWithoutReverse(): number | null {
+    const arrow = this.structure.arrows.reverse.indexOf(-1);
+    return arrow < 0 ? null : arrow;
+  }
+
+  /** A positive flux on all arrows that leaves every complex balanced, for a weakly reversible network. */
+  get circulation(): readonly bigint[] | null {
+    return this.memo('circulation', () =>
+      this.weaklyReversible ? positiveCirculation(this.complexCount, this.arrows) : null,
+    );
+  }
+
+  /** Whether dense exact matrices of this network are affordable. */
+  get dense(): boolean {
+    return this.species.length * Math.max(1, this.arrows.length) <= DENSE_LIMIT;
+  }
+
+  /** Null where the network is too large for the exact test. */
+  get consistency(): Consistency | null {
+    return this.memo('consistency', () => decideConsistency(this));
+  }
+
+  /** Null where the network is too large for the exact test. */
+  get conservation(): Conservation | null {
+    return this.memo('conservation', () => decideConservation(this));
+  }
+
+  /** N with each species in the unit that makes its coefficients integers; species × arrows. Only where `dense`. */
+  get stoichiometricMatrix(): IntegerMatrix {
+    return this.memo('N', () =>
+      matrixFrom(this.species.length, this.arrows.length, (i, arrow) => {
+        const { from, to } = this.arrows[arrow]!;
+        return this.coefficients.scaled(to, i) - this.coefficients.scaled(from, i);
+      }),
+    );
+  }
+
+  /**
+   * A lattice basis of ker Y ∩ im I_a ∩ Z^n, one vector by complex for each unit of deficiency; null where too large.
+   */
+  get deficiencyVectors(): bigint[][] | null {
+    return this.memo('deficiency vectors', () => {
+      if (this.deficiency === 0) return [];
+      const classes = this.linkageClasses;
+      if ((this.species.length + classes.length) * this.complexCount > DENSE_LIMIT / 5) return null;
+      const rows = this.species.map((_, i) =>
+        Array.from({ length: this.complexCount }, (_unused, y) => this.coefficients.scaled(y, i)),
+      );
+      for (const { complexes } of classes) {
+        const members = new Set(complexes);
+        rows.push(Array.from({ length: this.complexCount }, (_unused, y) => (members.has(y) ? 1n : 0n)));
+      }
+      return integerKernel(matrixOfRows(rows, this.complexCount));
+    });
+  }
+
+  get kinetics(): KineticsReport {
+    return this.memo('kinetics', () => reportKinetics(this.structure));
+  }
+
+  /** The constant of every arrow, its equal rows and fixed species included. */
+  get constants(): ArrowConstants {
+    return this.memo('constants', () => arrowConstants(this.structure));
+  }
+
+  /** Positive exact constants by arrow, or null where one is missing, zero or not rational. */
+  get exactConstants(): readonly Rational[] | null {
+    return this.constants.exact;
+  }
+
+  /** A flux by arrow as witness entries, keyed by reaction index. */
+  fluxEntries(flux: readonly bigint[]): Record<string, WitnessNumber> {
+    return entriesOf(flux, (arrow) => String(this.reactionOf(arrow)));
+  }
+
+  /** A linear function of the species, given by the true coefficients, keyed by species name. */
+  lawEntries(law: readonly bigint[]): Record<string, WitnessNumber> {
+    return entriesOf(law, (i) => this.species[i]!);
+  }
+
+  /** A vector by complex, keyed by complex index. */
+  complexEntries(vector: readonly bigint[]): Record<string, WitnessNumber> {
+    return entriesOf(vector, String);
+  }
+}
+
+function entriesOf(vector: readonly bigint[], key: (index: number) => string): Record<string, WitnessNumber> {
+  const entries: Record<string, WitnessNumber> = {};
+  vector.forEach((value, index) => {
+    if (value !== 0n) entries[key(index)] = integerForResult(value);
+  });
+  return entries;
+}

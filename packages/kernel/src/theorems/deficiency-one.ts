@@ -1,0 +1,73 @@
+import type { Hypothesis } from '@stillroom/shared/cells';
+import type { TheoremContext } from './context.ts';
+import { massAction } from './hypotheses.ts';
+import { sources } from './sources.ts';
+import type { Theorem } from './theorem.ts';
+import { appliesWhenAllHold } from './theorem.ts';
+
+/** Feinberg 1987, 1995; Boros 2012, 2013 on existence without weak reversibility. */
+export const deficiencyOne: Theorem = {
+  id: 'deficiency-one',
+  title: 'Deficiency one theorem',
+  statement:
+    'With mass action, if no linkage class has a deficiency above 1, the deficiencies of the linkage classes add up to that of the network, and each has one terminal strong class, then for each choice of constants either no positive class has a positive steady state or each has exactly one.',
+  citation: [sources.feinberg1987, sources.feinberg1995existence, sources.boros2012, sources.boros2013],
+  kinetics: 'mass action',
+  judge(context) {
+    const hypotheses = [
+      massAction(context),
+      eachClassAtMostOne(context),
+      deficienciesAddUp(context),
+      oneTerminalClassEach(context),
+    ];
+    const applies = appliesWhenAllHold(hypotheses);
+    const weakly = context.oneWayArrow === null;
+    return {
+      applies,
+      ...(applies === 'yes' ? { case: weakly ? 'weakly reversible' : 'not weakly reversible' } : {}),
+      scope: 'all constants',
+      hypotheses,
+      conclusion: conclusion(applies === 'yes', weakly),
+      silentOn: 'The stability of a steady state and the existence of periodic solutions.',
+    };
+  },
+};
+
+function conclusion(holds: boolean, weaklyReversible: boolean): string {
+  if (!holds) {
+    return 'The theorem does not apply: nothing follows from it about the existence or the number of positive steady states.';
+  }
+  return weaklyReversible
+    ? 'For all constants every positive class has exactly one positive steady state, and it is non-degenerate.'
+    : 'For each choice of constants either no positive class has a positive steady state, or every positive class has exactly one, and it is non-degenerate. Which of the two holds may depend on the constants.';
+}
+
+function eachClassAtMostOne(context: TheoremContext): Hypothesis {
+  const largest = context.linkageClasses.reduce((most, part) => Math.max(most, part.deficiency), 0);
+  return {
+    text: `No linkage class has a deficiency above 1 (the largest is ${largest}).`,
+    holds: largest <= 1,
+    witness: { kind: 'number', left: largest, right: 1 },
+  };
+}
+
+function deficienciesAddUp(context: TheoremContext): Hypothesis {
+  const sum = context.linkageClasses.reduce((total, part) => total + part.deficiency, 0);
+  return {
+    text: `The deficiencies of the linkage classes add up to the deficiency of the network (${sum} and ${context.deficiency}).`,
+    holds: sum === context.deficiency,
+    witness: { kind: 'number', left: sum, right: context.deficiency },
+  };
+}
+
+function oneTerminalClassEach(context: TheoremContext): Hypothesis {
+  const crowded = context.linkageClasses.find((part) => part.terminalStrongClasses.length > 1);
+  const text = 'Every linkage class has exactly one terminal strong class.';
+  return crowded === undefined
+    ? { text, holds: true }
+    : {
+        text,
+        holds: false,
+        witness: { kind: 'set', complexes: crowded.terminalStrongClasses.map((members) => members[0]!) },
+      };
+}

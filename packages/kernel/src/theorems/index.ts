@@ -1,0 +1,3 @@
+export { contextOf, judgeAll } from './judge.ts';
+export { theorems } from './registry.ts';
+export type { Judgement, Theorem } from './theorem.ts';

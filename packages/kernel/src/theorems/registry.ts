@@ -1,0 +1,31 @@
+import type { VerdictId } from '@stillroom/shared/cells';
+import { deficiencyOne } from './deficiency-one.ts';
+import { deficiencyZero } from './deficiency-zero.ts';
+import { existence } from './existence.ts';
+import { noBoundarySteadyState } from './no-boundary-steady-state.ts';
+import { noPositiveSteadyState } from './no-positive-steady-state.ts';
+import { persistence } from './persistence.ts';
+import { robustExtinction } from './robust-extinction.ts';
+import { robustSpecies } from './robust-species.ts';
+import type { Theorem } from './theorem.ts';
+
+/** Every theorem, in the order in which verdicts are listed. To add one, write its file and name it here. */
+export const theorems: readonly Theorem[] = [
+  deficiencyZero,
+  deficiencyOne,
+  existence,
+  noPositiveSteadyState,
+  persistence,
+  noBoundarySteadyState,
+  robustSpecies,
+  robustExtinction,
+];
+
+const byId: ReadonlyMap<VerdictId, Theorem> = new Map(theorems.map((theorem) => [theorem.id, theorem]));
+
+/** The theorem of a name; asking for one that is not listed is a caller's mistake. */
+export function theoremOf(id: VerdictId): Theorem {
+  const theorem = byId.get(id);
+  if (theorem === undefined) throw new RangeError(`There is no theorem "${id}".`);
+  return theorem;
+}
