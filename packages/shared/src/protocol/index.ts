@@ -11,3 +11,5 @@ export type {
   PlanNotice,
   Presence,
 } from './messages.ts';
+export { stopPipe, stopReasons } from './engine-messages.ts';
+export type { EngineReport, EngineRequest, StopReason } from './engine-messages.ts';

@@ -1,0 +1,1 @@
+export type { Pool, PoolOptions, RunOptions, WorkerView } from './types.ts';

@@ -1,0 +1,10 @@
+export { digestOf } from './digest.ts';
+export { findDraws } from './draws.ts';
+export type { Draw } from './draws.ts';
+export { engineVersion } from './engine-version.ts';
+export { prepareJob } from './job.ts';
+export type { KnownOutcome, Preparation } from './job.ts';
+export type { NamedDraw, Plan, PlannableCell, PlannedCell } from './plan.ts';
+export { newPlanMemory, planNotebook } from './planner.ts';
+export type { PlanMemory } from './planner.ts';
+export { plainText, sourceText } from './source-text.ts';

