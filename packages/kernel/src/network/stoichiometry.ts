@@ -1,16 +1,5 @@
+import type { SparseColumns } from '../exact/index.ts';
 import type { StructuralNetwork } from './structural-network.ts';
-
-/**
- * A sparse integer matrix by columns: column j holds `values[k]` in row `rows[k]` for k in offsets[j] .. offsets[j+1]-1,
- * rows ascending, values integers below 2^53 in absolute value and not 0.
- */
-export interface SparseColumns {
-  readonly rowCount: number;
-  readonly columnCount: number;
-  readonly offsets: Int32Array;
-  readonly rows: Int32Array;
-  readonly values: Float64Array;
-}
 
 /** The stoichiometric matrix N, one column per arrow: column j of N is column j of `matrix` divided by `scale[j]`. */
 export interface Stoichiometry {
