@@ -1,0 +1,103 @@
+import type { Person } from '@stillroom/shared/contracts';
+import * as decoding from 'lib0/decoding';
+import {
+  Awareness,
+  applyAwarenessUpdate,
+  encodeAwarenessUpdate,
+  removeAwarenessStates,
+} from 'y-protocols/awareness';
+import type * as Y from 'yjs';
+import { awarenessFrame } from './frames.ts';
+
+/** A cursor and a name need far less. */
+const stateLength = 8192;
+
+interface Change {
+  readonly added: readonly number[];
+  readonly updated: readonly number[];
+  readonly removed: readonly number[];
+}
+
+/**
+ * Who is here and where they are. A connection speaks only for itself: a state names the person who is signed in or nobody,
+ * and a client number belongs to the person who used it first.
+ */
+export class Presences<Owner extends { readonly person: Person }> {
+  readonly #awareness: Awareness;
+  readonly #owners = new Map<number, Owner>();
+
+  /** `tell` gets each change as a frame for everybody (clients skip what they know), with whom it came from. */
+  constructor(doc: Y.Doc, tell: (frame: Uint8Array, from: Owner | null) => void) {
+    this.#awareness = new Awareness(doc);
+    this.#awareness.setLocalState(null);
+    this.#awareness.on('update', ({ added, updated, removed }: Change, origin: unknown) => {
+      const changed = [...added, ...updated, ...removed];
+      tell(awarenessFrame(encodeAwarenessUpdate(this.#awareness, changed)), this.#ownerOf(origin));
+    });
+  }
+
+  /** Everybody's state as a frame for somebody who joins; null where nobody is here. */
+  whole(): Uint8Array | null {
+    const clients = [...this.#awareness.getStates().keys()];
+    return clients.length === 0 ? null : awarenessFrame(encodeAwarenessUpdate(this.#awareness, clients));
+  }
+
+  /** Takes a connection's own states; false where it speaks for someone else or is not awareness at all. */
+  take(update: Uint8Array, from: Owner): boolean {
+    const entries = readEntries(update);
+    if (entries === null || !entries.every((entry) => this.#isOwn(entry, from))) return false;
+    for (const { client } of entries) this.#owners.set(client, from);
+    applyAwarenessUpdate(this.#awareness, update, from);
+    return true;
+  }
+
+  /** Takes away what a connection showed. */
+  leave(owner: Owner): void {
+    const clients = [...this.#owners].filter(([, other]) => other === owner).map(([client]) => client);
+    for (const client of clients) this.#owners.delete(client);
+    removeAwarenessStates(this.#awareness, clients, owner);
+  }
+
+  destroy(): void {
+    this.#awareness.destroy();
+  }
+
+  #ownerOf(origin: unknown): Owner | null {
+    for (const owner of this.#owners.values()) if (owner === origin) return owner;
+    return null;
+  }
+
+  #isOwn({ client, state }: Entry, from: Owner): boolean {
+    const owner = this.#owners.get(client);
+    // After a lost line the same client comes back while its old connection still stands: same person, so it may.
+    if (owner !== undefined && owner.person.id !== from.person.id) return false;
+    // A state without a person is what a client shows before it has said who it is.
+    return state?.user === undefined || state.user.id === from.person.id;
+  }
+}
+
+interface Entry {
+  readonly client: number;
+  readonly state: { readonly user?: { readonly id?: unknown } } | null;
+}
+
+/** The entries of an awareness update (y-protocols' layout); null where it is none. */
+function readEntries(update: Uint8Array): Entry[] | null {
+  try {
+    const decoder = decoding.createDecoder(update);
+    const count = decoding.readVarUint(decoder);
+    const entries: Entry[] = [];
+    for (let index = 0; index < count; index += 1) {
+      const client = decoding.readVarUint(decoder);
+      decoding.readVarUint(decoder);
+      const text = decoding.readVarString(decoder);
+      if (text.length > stateLength) return null;
+      const state: unknown = JSON.parse(text);
+      if (state !== null && typeof state !== 'object') return null;
+      entries.push({ client, state: state as Entry['state'] });
+    }
+    return decoding.hasContent(decoder) ? null : entries;
+  } catch {
+    return null;
+  }
+}

@@ -1,0 +1,175 @@
+import type { IncomingMessage } from 'node:http';
+import type { Duplex } from 'node:stream';
+import type { Person } from '@stillroom/shared/contracts';
+import { type CloseCode, closeCodes, limits } from '@stillroom/shared/protocol';
+import { may } from '@stillroom/shared/roles';
+import { type WebSocket, WebSocketServer } from 'ws';
+import type { Access } from './access.ts';
+import { Connection } from './connection.ts';
+import type { RoomStore } from './room-store.ts';
+
+/** Who stands before the door, and with which session. */
+export interface Visitor {
+  readonly person: Person;
+  readonly session: string;
+}
+
+export interface GatewayOptions {
+  readonly rooms: RoomStore;
+  readonly access: Access;
+  /** The person signed in by the session of this request; null where nobody is. */
+  readonly identify: (request: IncomingMessage) => Promise<Visitor | null>;
+  readonly isSameOrigin: (request: IncomingMessage) => boolean;
+  readonly failed: (words: string, error: unknown) => void;
+}
+
+const address = /^\/live\/([0-9a-f]{8}(?:-[0-9a-f]{4}){3}-[0-9a-f]{12})$/u;
+
+/** How often a line is asked whether it is still there, in milliseconds; no answer until the next time ends it. */
+const heartbeat = 30_000;
+/** A line that has this much unsent, in bytes, is too slow to follow and comes back for the whole. */
+const backlog = 16 * 1024 * 1024;
+
+/**
+ * The door of live editing. Every upgrade is accepted and only then judged: a browser learns the reason from a close
+ * code, but nothing from a refused upgrade.
+ */
+export class Gateway {
+  readonly #options: GatewayOptions;
+  readonly #server = new WebSocketServer({
+    noServer: true,
+    perMessageDeflate: false,
+    maxPayload: limits.frame,
+  });
+  readonly #sessions = new Map<Connection, string>();
+  readonly #alive = new WeakSet<WebSocket>();
+  readonly #heart: NodeJS.Timeout;
+
+  constructor(options: GatewayOptions) {
+    this.#options = options;
+    this.#heart = setInterval(() => this.#beat(), heartbeat);
+    this.#heart.unref();
+  }
+
+  /** Takes an upgrade to /live/…; false leaves any other to somebody else. */
+  upgrade(request: IncomingMessage, socket: Duplex, head: Buffer): boolean {
+    const { pathname } = new URL(request.url ?? '/', 'http://localhost');
+    if (!pathname.startsWith('/live/')) return false;
+    this.#server.handleUpgrade(request, socket, head, (line) => {
+      if ('setNoDelay' in socket && typeof socket.setNoDelay === 'function') socket.setNoDelay(true);
+      this.#welcome(line, request, address.exec(pathname)?.[1] ?? null);
+    });
+    return true;
+  }
+
+  /** Ends the lines of a session, or all of a person but those of one session. */
+  endSessions(person: string, session: string | null, except: string | null): void {
+    for (const [connection, own] of this.#sessions) {
+      if (connection.person.id !== person || own === except) continue;
+      if (session === null || session === own)
+        connection.end(closeCodes.signedOut, 'Your session has ended; sign in again.');
+    }
+  }
+
+  /** The lines of a person, or of everybody. */
+  connections(person?: string): Connection[] {
+    const all = [...this.#sessions.keys()];
+    return person === undefined ? all : all.filter((connection) => connection.person.id === person);
+  }
+
+  stop(): void {
+    clearInterval(this.#heart);
+    for (const line of this.#server.clients)
+      line.close(closeCodes.later, 'The server is stopping; come back.');
+    this.#server.close();
+  }
+
+  /** Listens at once, so that nothing sent while the visitor is being judged is lost. */
+  #welcome(line: WebSocket, request: IncomingMessage, notebook: string | null): void {
+    const early: Uint8Array[] = [];
+    let connection: Connection | null = null;
+    this.#alive.add(line);
+    line.on('pong', () => this.#alive.add(line));
+    line.on('error', () => line.terminate());
+    line.on('message', (data: Buffer) => {
+      if (connection !== null) connection.receive(data);
+      else if (early.push(data) > 100) line.close(closeCodes.tooMuch, 'Too much was sent before the answer.');
+    });
+    const refuse = (code: CloseCode, why: string) => line.close(code, why);
+    this.#judge(request, notebook, refuse)
+      .then(async (admitted) => {
+        if (admitted === null || line.readyState !== line.OPEN) return;
+        connection = await this.#let(line, admitted);
+        for (const frame of early.splice(0)) connection.receive(frame);
+      })
+      .catch((error: unknown) => {
+        this.#options.failed('A live line could not be opened.', error);
+        refuse(closeCodes.later, 'The notebook cannot be opened just now; come back.');
+      });
+  }
+
+  /** Decides who may come in; null where the line was refused with its reason. */
+  async #judge(
+    request: IncomingMessage,
+    notebook: string | null,
+    refuse: (code: CloseCode, why: string) => void,
+  ): Promise<{ visitor: Visitor; notebook: string; edits: boolean } | null> {
+    const { access, identify, isSameOrigin } = this.#options;
+    const refused = (code: CloseCode, why: string) => {
+      refuse(code, why);
+      return null;
+    };
+    if (notebook === null) return refused(closeCodes.gone, 'There is no such notebook.');
+    if (!isSameOrigin(request))
+      return refused(closeCodes.refused, 'This line was not opened by a page of this installation.');
+    const visitor = await identify(request);
+    if (visitor === null) return refused(closeCodes.signedOut, 'You are not signed in.');
+    const role = await access.roleAt(visitor.person.id, notebook);
+    if (role === 'gone') return refused(closeCodes.gone, 'There is no such notebook (any more).');
+    if (!may(role, 'notebook.read')) return refused(closeCodes.refused, 'You may not read this notebook.');
+    return { visitor, notebook, edits: may(role, 'notebook.edit') };
+  }
+
+  /** Opens the room and lets the connection in. */
+  #let(
+    line: WebSocket,
+    { visitor, notebook, edits }: { visitor: Visitor; notebook: string; edits: boolean },
+  ): Promise<Connection> {
+    const { rooms, access } = this.#options;
+    return rooms.use(notebook, (room) => {
+      const connection = new Connection(visitor.person, room, outlet(line), access);
+      this.#sessions.set(connection, visitor.session);
+      const left = () => {
+        connection.left();
+        this.#sessions.delete(connection);
+        rooms.left(room);
+      };
+      line.on('close', left);
+      connection.join(edits);
+      if (line.readyState !== line.OPEN) left();
+      return connection;
+    });
+  }
+
+  #beat(): void {
+    for (const line of this.#server.clients) {
+      if (!this.#alive.has(line)) {
+        line.terminate();
+        continue;
+      }
+      this.#alive.delete(line);
+      line.ping();
+    }
+  }
+}
+
+/** A socket as a connection uses it: one that cannot keep up is ended rather than filling the memory. */
+function outlet(line: WebSocket): { send(bytes: Uint8Array): void; close(code: number, why: string): void } {
+  return {
+    send(bytes) {
+      if (line.bufferedAmount > backlog) line.close(closeCodes.later, 'The line is too slow; come back.');
+      else line.send(bytes);
+    },
+    close: (code, why) => line.close(code, why),
+  };
+}
