@@ -1,7 +1,15 @@
 import type { Verdict, VerdictId, WitnessNumber } from '@stillroom/shared/cells';
 import type { Network } from '@stillroom/shared/network';
 import type { IntegerMatrix, Rational } from '../exact/index.ts';
-import { integerForResult, integerKernel, matrixFrom, matrixOfRows } from '../exact/index.ts';
+import {
+  integerForResult,
+  integerKernel,
+  lcm,
+  matrixFrom,
+  matrixOfRows,
+  primitive,
+  transpose,
+} from '../exact/index.ts';
 import type { StructuralNetwork } from '../network/index.ts';
 import { complexLabel, structuralNetwork } from '../network/index.ts';
 import type { ArrowConstants } from './arrow-constants.ts';
@@ -171,6 +179,11 @@ export class TheoremContext {
     );
   }
 
+  /** A lattice basis of the conservation laws on scaled amounts, by species. Only where `dense`. */
+  get lawBasis(): bigint[][] {
+    return this.memo('law basis', () => integerKernel(transpose(this.stoichiometricMatrix)));
+  }
+
   /**
    * A lattice basis of ker Y ∩ im I_a ∩ Z^n, one vector by complex for each unit of deficiency; null where too large.
    */
@@ -212,6 +225,13 @@ export class TheoremContext {
   /** A linear function of the species, given by the true coefficients, keyed by species name. */
   lawEntries(law: readonly bigint[]): Record<string, WitnessNumber> {
     return entriesOf(law, (i) => this.species[i]!);
+  }
+
+  /** A change of the species given on scaled amounts, up to a positive factor, keyed by species name. */
+  changeEntries(change: readonly bigint[]): Record<string, WitnessNumber> {
+    const common = this.coefficients.scale.reduce(lcm, 1n);
+    const whole = primitive(change.map((value, i) => (value * common) / this.coefficients.scale[i]!));
+    return entriesOf(whole, (i) => this.species[i]!);
   }
 
   /** A vector by complex, keyed by complex index. */

@@ -41,6 +41,21 @@ export function ratesAreMonotone(context: TheoremContext): Hypothesis {
   };
 }
 
+/** Weakly monotonic: a rate rises strictly with each of its reactants and depends on nothing else. */
+export function ratesAreWeaklyMonotonic(context: TheoremContext): Hypothesis {
+  const { interventions, unclearLaw, unclearGrowth, unclearRise } = context.kinetics;
+  const text =
+    'Every rate is weakly monotonic: it is positive when all its reactants are present, rises when one of them is added to a positive state, and depends on its reactants only.';
+  if (interventions !== null) return { text: `${text} Here ${interventions}.`, holds: false };
+  const unclear = unclearLaw ?? unclearGrowth ?? unclearRise;
+  if (unclear === null) return { text, holds: true };
+  return {
+    text: `${text} The law of this reaction leaves it open.`,
+    holds: null,
+    witness: { kind: 'arrow', reaction: unclear },
+  };
+}
+
 /** δ equals the given number. */
 export function deficiencyIs(context: TheoremContext, value: number): Hypothesis {
   return {

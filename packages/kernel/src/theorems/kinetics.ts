@@ -1,5 +1,5 @@
 import type { StructuralNetwork } from '../network/index.ts';
-import { growsWithReactants, vanishesWithReactants } from './law-shape.ts';
+import { growsWithReactants, risesWithReactants, vanishesWithReactants } from './law-shape.ts';
 
 /** What can be read off the rate laws. Reactions are indices of the structure result. */
 export interface KineticsReport {
@@ -11,6 +11,8 @@ export interface KineticsReport {
   readonly unclearLaw: number | null;
   /** A reaction whose law does not visibly stay or grow when a reactant is added, or null. */
   readonly unclearGrowth: number | null;
+  /** A reaction whose law does not visibly rise strictly with each of its reactants, or null. */
+  readonly unclearRise: number | null;
 }
 
 /** Reads the laws of all reactions; stops at the first of each kind. */
@@ -19,17 +21,19 @@ export function reportKinetics(structure: StructuralNetwork): KineticsReport {
   let otherLaw: number | null = null;
   let unclearLaw: number | null = null;
   let unclearGrowth: number | null = null;
+  let unclearRise: number | null = null;
   for (let reaction = 0; reaction < reactions.count; reaction++) {
     const written = reactions.source[reaction]!;
     const law = source.laws[source.reactions.law[written]!];
     if (law === undefined || law.massAction !== null) continue;
     otherLaw ??= reaction;
-    if (unclearLaw !== null && unclearGrowth !== null) break;
+    if (unclearLaw !== null && unclearGrowth !== null && unclearRise !== null) break;
     const reactants = reactantNames(structure, written);
     if (law.net || !vanishesWithReactants(law.expression, reactants, source)) unclearLaw ??= reaction;
     if (law.net || !growsWithReactants(law.expression, reactants, source)) unclearGrowth ??= reaction;
+    if (law.net || !risesWithReactants(law.expression, reactants, source)) unclearRise ??= reaction;
   }
-  return { interventions: interventionsOf(structure), otherLaw, unclearLaw, unclearGrowth };
+  return { interventions: interventionsOf(structure), otherLaw, unclearLaw, unclearGrowth, unclearRise };
 }
 
 function interventionsOf({ source }: StructuralNetwork): string | null {

@@ -7,6 +7,8 @@ interface Shape {
   readonly positiveWith: ReadonlySet<string>;
   /** Never falls when a species is added. */
   readonly grows: boolean;
+  /** Species with which it rises strictly on positive states. */
+  readonly rises: ReadonlySet<string>;
   /** Free of species and time. */
   readonly constant: boolean;
 }
@@ -36,6 +38,17 @@ export function growsWithReactants(
   return namesIn(law).every((name) => reactants.has(name) || !movingNames(network).has(name));
 }
 
+/** Whether a law visibly rises strictly with each reactant on positive states and never falls. */
+export function risesWithReactants(
+  law: Expression,
+  reactants: ReadonlySet<string>,
+  network: Network,
+): boolean {
+  const shape = shapeOf(law, movingNames(network));
+  if (shape === null || !growsWithReactants(law, reactants, network)) return false;
+  return [...reactants].every((name) => shape.rises.has(name));
+}
+
 function movingNames(network: Network): ReadonlySet<string> {
   const names = new Set(network.species.filter((_, i) => !network.fixed.has(i)));
   for (const output of network.outputs) names.add(output.name);
@@ -50,7 +63,12 @@ function shapeOf(expression: Expression, moving: ReadonlySet<string>): Shape | n
       if (!moving.has(expression.name)) return positiveConstant;
       return expression.name === 't'
         ? null
-        : { positiveWith: new Set([expression.name]), grows: true, constant: false };
+        : {
+            positiveWith: new Set([expression.name]),
+            grows: true,
+            rises: new Set([expression.name]),
+            constant: false,
+          };
     case 'binary':
       return binaryShape(expression, moving);
     case 'call':
@@ -60,7 +78,7 @@ function shapeOf(expression: Expression, moving: ReadonlySet<string>): Shape | n
   }
 }
 
-const positiveConstant: Shape = { positiveWith: new Set(), grows: true, constant: true };
+const positiveConstant: Shape = { positiveWith: new Set(), grows: true, rises: new Set(), constant: true };
 
 function binaryShape(
   expression: Extract<Expression, { kind: 'binary' }>,
@@ -71,20 +89,22 @@ function binaryShape(
   if (left === null || right === null) return null;
   const constant = left.constant && right.constant;
   const grows = left.grows && right.grows;
+  const rises = new Set([...left.rises, ...right.rises]);
   switch (expression.operator) {
     case '*':
-      return { positiveWith: new Set([...left.positiveWith, ...right.positiveWith]), grows, constant };
+      return { positiveWith: new Set([...left.positiveWith, ...right.positiveWith]), grows, rises, constant };
     case '+':
       if (left.positiveWith.size === 0 || right.positiveWith.size === 0)
-        return { positiveWith: new Set(), grows, constant };
+        return { positiveWith: new Set(), grows, rises, constant };
       return sameSet(left.positiveWith, right.positiveWith)
-        ? { positiveWith: left.positiveWith, grows, constant }
+        ? { positiveWith: left.positiveWith, grows, rises, constant }
         : null;
     case '/':
       if (right.positiveWith.size > 0) return null;
       return {
         positiveWith: left.positiveWith,
         grows: left.grows && (right.constant || saturates(expression.left, expression.right, moving)),
+        rises: left.rises,
         constant,
       };
     case '^':
@@ -108,6 +128,7 @@ function callShape(
     return {
       positiveWith: new Set(all.flatMap((part) => [...part.positiveWith])),
       grows: all.every((part) => part.grows),
+      rises: new Set(),
       constant: all.every((part) => part.constant),
     };
   }

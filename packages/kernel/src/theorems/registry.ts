@@ -1,7 +1,9 @@
 import type { VerdictId } from '@stillroom/shared/cells';
+import { concordant } from './concordant.ts';
 import { deficiencyOne } from './deficiency-one.ts';
 import { deficiencyZero } from './deficiency-zero.ts';
 import { existence } from './existence.ts';
+import { injective } from './injective.ts';
 import { noBoundarySteadyState } from './no-boundary-steady-state.ts';
 import { noPositiveSteadyState } from './no-positive-steady-state.ts';
 import { persistence } from './persistence.ts';
@@ -19,6 +21,8 @@ export const theorems: readonly Theorem[] = [
   noBoundarySteadyState,
   robustSpecies,
   robustExtinction,
+  injective,
+  concordant,
 ];
 
 const byId: ReadonlyMap<VerdictId, Theorem> = new Map(theorems.map((theorem) => [theorem.id, theorem]));
