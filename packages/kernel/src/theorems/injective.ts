@@ -93,6 +93,8 @@ function fromPatterns(context: TheoremContext): Hypothesis[] {
     ];
   }
   if (search.kind === 'open') {
+    const listed = minorProducts(context, LONG_LIST);
+    if (listed !== null) return [fromList(listed)];
     return [
       {
         text: `${text} The list is too long, no two of opposite sign were met, and the search of sign patterns was given up after ${search.nodes}.`,
