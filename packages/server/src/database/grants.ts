@@ -6,7 +6,7 @@ const quoted = (name: string): string => `"${name.replaceAll('"', '""')}"`;
 
 /**
  * Gives the application role its rights, anew after every migration: all of ordinary tables, only SELECT and INSERT
- * on sealed ones, nothing on the list of migrations. The job queue has a schema of its own that the role owns.
+ * on sealed ones, nothing on the list of migrations.
  */
 export async function grantToApplication(runner: QueryRunner, role: string): Promise<void> {
   const name = quoted(role);
@@ -17,5 +17,24 @@ export async function grantToApplication(runner: QueryRunner, role: string): Pro
   for (const table of await sealedTables(runner)) {
     await runner.query(`revoke update, delete, truncate on ${quoted(table)} from ${name}`);
   }
-  await runner.query(`create schema if not exists graphile_worker authorization ${name}`);
+}
+
+/**
+ * Lets the application role make the schema of the job queue, which it then owns (its tables hide their rows from
+ * anybody else); the right to make schemas is taken away again.
+ */
+export async function whileMayCreateSchema(
+  runner: QueryRunner,
+  role: string,
+  work: () => Promise<void>,
+): Promise<void> {
+  const [{ database }] = (await runner.query('select current_database() as database')) as [
+    { database: string },
+  ];
+  await runner.query(`grant create on database ${quoted(database)} to ${quoted(role)}`);
+  try {
+    await work();
+  } finally {
+    await runner.query(`revoke create on database ${quoted(database)} from ${quoted(role)}`);
+  }
 }

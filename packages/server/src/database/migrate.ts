@@ -1,6 +1,6 @@
 import { runMigrations } from 'graphile-worker';
 import { createDataSource } from './data-source.ts';
-import { grantToApplication } from './grants.ts';
+import { grantToApplication, whileMayCreateSchema } from './grants.ts';
 
 /** Any number, but always the same: two processes that migrate at once would collide in the catalogue. */
 const lock = 7_070_001;
@@ -15,8 +15,11 @@ export async function migrate(ownerUrl: string, applicationUrl: string): Promise
   try {
     await runner.query('select pg_advisory_lock($1)', [lock]);
     const ran = await database.runMigrations({ transaction: 'all' });
-    await grantToApplication(runner, roleOf(applicationUrl));
-    await runMigrations({ connectionString: applicationUrl, maxPoolSize: 1 });
+    const role = roleOf(applicationUrl);
+    await grantToApplication(runner, role);
+    await whileMayCreateSchema(runner, role, () =>
+      runMigrations({ connectionString: applicationUrl, maxPoolSize: 1 }),
+    );
     return ran.map(({ name }) => name);
   } finally {
     await runner.query('select pg_advisory_unlock($1)', [lock]).catch(() => undefined);

@@ -5,7 +5,7 @@ export class Compute1796083203000 implements MigrationInterface {
   readonly name = 'Compute1796083203000';
 
   async up(runner: QueryRunner): Promise<void> {
-    // Results stay text, byte for byte as digested: jsonb would write numbers anew. Compressed by the server's toast.
+    // Results stay text: jsonb would write their numbers anew.
     await runner.query(`
       create table cell_result (
         digest text primary key,
@@ -20,6 +20,18 @@ export class Compute1796083203000 implements MigrationInterface {
         check ((result is null) = (result_digest is null)),
         check ((error is null) <> (result is null))
       )`);
+    // Outcomes that may not be kept: of runs ended from outside, and of cells that stand on such a run.
+    await runner.query(`
+      create table cell_attempt (
+        digest text primary key,
+        kind text not null,
+        result text,
+        result_digest text,
+        error jsonb,
+        warnings jsonb not null,
+        took real not null,
+        at timestamptz not null default now()
+      )`);
     await runner.query(`
       create table cell_run (
         digest text primary key,
@@ -27,7 +39,6 @@ export class Compute1796083203000 implements MigrationInterface {
         notebook uuid not null,
         kind text not null,
         name text not null,
-        job jsonb not null,
         turn integer not null,
         queued_at timestamptz not null default clock_timestamp(),
         started_at timestamptz,
@@ -45,6 +56,6 @@ export class Compute1796083203000 implements MigrationInterface {
   }
 
   async down(runner: QueryRunner): Promise<void> {
-    await runner.query('drop table compute_use, cell_run, cell_result');
+    await runner.query('drop table compute_use, cell_run, cell_attempt, cell_result');
   }
 }
