@@ -6,6 +6,8 @@ export { freshName } from './fresh-name.ts';
 export { cellKinds, isCellKind } from './kind.ts';
 export type { CellKind } from './kind.ts';
 export { cellNamePattern, isCellName } from './name.ts';
+export { networkSettings } from './network.ts';
+export type { ListedReaction, NetworkResult, ResultUnits } from './network.ts';
 export { plotMarks, plotSettings } from './plot.ts';
 export type { PlotMark, PlotResult } from './plot.ts';
 export { proseSettings } from './prose.ts';
@@ -16,12 +18,15 @@ export { cellRegistry } from './registry.ts';
 export type { CellKindEntry, SettingReference } from './registry.ts';
 export { scriptSettings } from './script.ts';
 export type { ScriptResult } from './script.ts';
-export { balanceSettings, networkSettings, structureSettings, trajectorySettings } from './settings.ts';
-export { verdictIds } from './verdict.ts';
+export { balanceSettings, structureSettings } from './settings.ts';
+export { trajectorySettings } from './trajectory.ts';
+export type { TrajectoryResult, TrajectorySettings, TrajectoryStatistics } from './trajectory.ts';
+export { hypothesisClaims, verdictIds } from './verdict.ts';
 export type {
   Applies,
   Citation,
   Hypothesis,
+  HypothesisClaim,
   MinorPair,
   Verdict,
   VerdictId,

@@ -5,7 +5,9 @@ import type { CellKind } from './kind.ts';
 import { plotSettings } from './plot.ts';
 import { proseSettings } from './prose.ts';
 import { scriptSettings } from './script.ts';
-import { balanceSettings, networkSettings, structureSettings, trajectorySettings } from './settings.ts';
+import { networkSettings } from './network.ts';
+import { balanceSettings, structureSettings } from './settings.ts';
+import { trajectorySettings } from './trajectory.ts';
 
 /** A place in settings that names another cell; `*` stands for every entry of a list. */
 export interface SettingReference {

@@ -1,0 +1,10 @@
+export type { OdeEvent } from './events.ts';
+export type { Method } from './methods/method.ts';
+export { methods } from './methods/registry.ts';
+export type { MethodKind } from './methods/registry.ts';
+export type { Outcome, Statistics, StopReason } from './outcome.ts';
+export type { OdeSystem, SparsePattern, SystemFunction } from './problem.ts';
+export { leavesFunction, solve } from './solve.ts';
+export type { InitialValueProblem } from './solve.ts';
+export { prepareSystem } from './solver.ts';
+export type { PreparedSystem } from './solver.ts';

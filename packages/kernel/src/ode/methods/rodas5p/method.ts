@@ -1,0 +1,106 @@
+import type { Assembly } from '../../../program/index.ts';
+import { predictive } from '../../controllers/predictive.ts';
+import { factorizeSymbolically } from '../../linear/symbolic.ts';
+import type { OdeSystem } from '../../problem.ts';
+import { type CommonWorkspace, slots } from '../../workspace.ts';
+import type { Counters, Method, Stepper } from '../method.ts';
+import { rosenbrockInterpolant } from './interpolant.ts';
+import { rosenbrockRoutines } from './step.ts';
+import { rodas5p } from './tableau.ts';
+import { type RosenbrockWorkspace, rosenbrockWorkspace } from './workspace.ts';
+
+/** Multipliers of the factorisation beyond this mean that the fixed order of pivots has lost too many digits. */
+const largestMultiplier = 1e6;
+/** For how many steps pivots are chosen by size after the fixed order has failed. */
+const pivotingSteps = 10;
+
+/** The method for stiff systems. */
+export const rodas5pMethod: Method = {
+  name: 'Rodas5P',
+  citation: 'Steinebach 2023, BIT Numerical Mathematics 63:27',
+  order: 5,
+  denseOrder: 4,
+  stiff: true,
+  errorPower: 5,
+  controller: () => predictive(5),
+  prepare(system, common, layout) {
+    const symbolic = factorizeSymbolically(system.pattern);
+    const own = rosenbrockWorkspace(system, symbolic, layout);
+    return {
+      routines: (memory) => rosenbrockRoutines(system, common, own, symbolic, memory),
+      stepper: (assembly, counters) => stepper(system, common, own, assembly, counters),
+    };
+  },
+};
+
+function stepper(
+  system: OdeSystem,
+  common: CommonWorkspace,
+  own: RosenbrockWorkspace,
+  assembly: Assembly,
+  counters: Counters,
+): Stepper {
+  const { memory } = assembly;
+  const n = common.dimension;
+  const linearise = assembly.routine('rodas5p.linearise');
+  const attempt = assembly.routine('rodas5p.attempt');
+  const attemptPivoting = assembly.routine('rodas5p.attemptPivoting');
+  const interpolant = rosenbrockInterpolant(memory, common, own);
+  let linear = false;
+  let pivoting = 0;
+  let lastStep = 0;
+
+  const run = (routine: () => void): void => {
+    memory[slots.error] = 0;
+    counters.factorizations++;
+    counters.rhs += rodas5p.stages;
+    routine();
+  };
+
+  return {
+    restart() {
+      linear = false;
+      pivoting = 0;
+    },
+    attempt(t, h) {
+      memory[slots.start] = t;
+      memory[slots.step] = h;
+      memory[slots.inverseStep] = 1 / h;
+      memory[slots.shift] = 1 / (h * rodas5p.gamma);
+      interpolant.invalidate();
+      if (!linear) {
+        linearise();
+        counters.jacobians++;
+        linear = true;
+      }
+      if (pivoting === 0) {
+        run(attempt);
+        if (!(memory[slots.growth]! <= largestMultiplier)) pivoting = pivotingSteps;
+      }
+      if (pivoting > 0) {
+        pivoting--;
+        run(attemptPivoting);
+      }
+      lastStep = h;
+      return n === 0 ? 0 : Math.sqrt(memory[slots.error]! / n);
+    },
+    interpolate: (theta, out) => interpolant.at(theta, out),
+    accept() {
+      memory.copyWithin(common.state, common.next, common.next + n);
+      linear = false;
+    },
+    stiffness: () => lastStep * largestRowSum(system, memory, own.jacobian),
+  };
+}
+
+/** The largest row sum of |J|: no eigenvalue of J is larger. */
+function largestRowSum({ pattern }: OdeSystem, memory: Float64Array, jacobian: number): number {
+  let largest = 0;
+  for (let i = 0; i < pattern.size; i++) {
+    let sum = 0;
+    for (let e = pattern.rowStart[i]!; e < pattern.rowStart[i + 1]!; e++)
+      sum += Math.abs(memory[jacobian + e]!);
+    largest = Math.max(largest, sum);
+  }
+  return largest;
+}

@@ -1,0 +1,34 @@
+import { factorLength } from '../../linear/unrolled.ts';
+import type { SymbolicFactorization } from '../../linear/symbolic.ts';
+import type { OdeSystem } from '../../problem.ts';
+import type { Layout } from '../../workspace.ts';
+import { rodas5p } from './tableau.ts';
+
+/** Regions of Rodas5P, by their first slot. */
+export interface RosenbrockWorkspace {
+  /** Entries of ∂f/∂y in the order of its pattern. */
+  readonly jacobian: number;
+  readonly timeDerivative: number;
+  readonly factors: number;
+  /** f of a stage. */
+  readonly slope: number;
+  /** The other half of a stage's right-hand side. */
+  readonly past: number;
+  /** K_1 to K_8. */
+  readonly stages: readonly number[];
+}
+
+export function rosenbrockWorkspace(
+  system: OdeSystem,
+  symbolic: SymbolicFactorization,
+  layout: Layout,
+): RosenbrockWorkspace {
+  return {
+    jacobian: layout.region(system.pattern.columns.length),
+    timeDerivative: layout.region(system.dimension),
+    factors: layout.region(factorLength(symbolic)),
+    slope: layout.region(system.dimension),
+    past: layout.region(system.dimension),
+    stages: Array.from({ length: rodas5p.stages }, () => layout.region(system.dimension)),
+  };
+}

@@ -1,0 +1,86 @@
+import { assemble, type Assembly, type Backend, type Routine } from '../program/index.ts';
+import { methods } from './methods/registry.ts';
+import type { Counters, Stepper } from './methods/method.ts';
+import type { MethodKind } from './methods/registry.ts';
+import { parameterSlot, timeSlot, type OdeSystem } from './problem.ts';
+import { type CommonWorkspace, commonWorkspace, Layout } from './workspace.ts';
+
+/** A system made ready: memory, routines and methods, to be run any number of times. */
+export interface PreparedSystem {
+  readonly system: OdeSystem;
+  readonly assembly: Assembly;
+  readonly common: CommonWorkspace;
+  stepper(kind: MethodKind, counters: Counters): Stepper;
+  /** A view of the vector that begins at `slot`. */
+  vector(slot: number): Float64Array;
+  /** The present values of the parameters. */
+  readonly parameters: Float64Array;
+  setParameters(values: Float64Array): void;
+  setParameter(index: number, value: number): void;
+  /** f(t, y) into `out`; both are slots of vectors in memory. */
+  rightHandSide(time: number, state: number, out: number): void;
+  /** The value of one of the system's functions at a time and a state (a slot); the array is reused by the next call. */
+  evaluate(name: string, time: number, state: number): Float64Array;
+}
+
+/** Assembles the routines of a system for the given methods. The same bits come from either backend. */
+export function prepareSystem(
+  system: OdeSystem,
+  kinds: readonly MethodKind[] = ['nonstiff', 'stiff'],
+  backend?: Backend,
+): PreparedSystem {
+  const layout = new Layout(system.parameters);
+  const common = commonWorkspace(system, layout);
+  const prepared = new Map(kinds.map((kind) => [kind, methods[kind].prepare(system, common, layout)]));
+  const assembly = assemble(
+    layout.slots,
+    (memory) => {
+      const routines = new Map<string, Routine>([
+        ['rightHandSide', { kind: 'straight', tapes: system.rightHandSide }],
+      ]);
+      for (const { name, tapes } of system.functions)
+        routines.set(`function.${name}`, { kind: 'straight', tapes });
+      for (const method of prepared.values()) {
+        for (const [name, routine] of method.routines(memory)) routines.set(name, routine);
+      }
+      return routines;
+    },
+    backend,
+  );
+  const { memory } = assembly;
+  const rightHandSide = assembly.routine('rightHandSide');
+  const functions = new Map(
+    system.functions.map(({ name, length }) => {
+      const place = common.functions.get(name)!;
+      const run = assembly.routine(`function.${name}`);
+      return [name, { run, place, values: memory.subarray(place, place + length) }];
+    }),
+  );
+  return {
+    system,
+    assembly,
+    common,
+    stepper(kind, counters) {
+      const method = prepared.get(kind);
+      if (method === undefined) throw new Error(`The system was not prepared for the method "${kind}".`);
+      return method.stepper(assembly, counters);
+    },
+    vector: (slot) => memory.subarray(slot, slot + system.dimension),
+    parameters: memory.subarray(parameterSlot(0), parameterSlot(system.parameters)),
+    setParameters: (values) => memory.set(values, parameterSlot(0)),
+    setParameter: (index, value) => {
+      memory[parameterSlot(index)] = value;
+    },
+    rightHandSide(time, state, out) {
+      memory[timeSlot] = time;
+      rightHandSide(state, out);
+    },
+    evaluate(name, time, state) {
+      const entry = functions.get(name);
+      if (entry === undefined) throw new Error(`The system has no function "${name}".`);
+      memory[timeSlot] = time;
+      entry.run(state, entry.place);
+      return entry.values;
+    },
+  };
+}

@@ -1,0 +1,150 @@
+import { ByteWriter, type FunctionIndex, instruction } from '../wasm/index.ts';
+import { operations, spaces } from './graph.ts';
+import { hostFunctions } from './host-functions.ts';
+import type { Tape } from './tape.ts';
+
+/** Local variables 0 and 1 of every routine are its two bases, in bytes; numbers come after them. */
+const firstNumberLocal = 2;
+const bytesPerSlot = 8;
+/** An expression nested deeper than this is cut by a local, so that neither we nor the compiler recurse too far. */
+const deepestExpression = 60;
+
+const unary: Readonly<Record<number, number>> = {
+  [operations.negate]: instruction.f64Negate,
+  [operations.abs]: instruction.f64Abs,
+  [operations.sqrt]: instruction.f64Sqrt,
+  [operations.floor]: instruction.f64Floor,
+  [operations.ceil]: instruction.f64Ceil,
+};
+
+const binary: Readonly<Record<number, number>> = {
+  [operations.add]: instruction.f64Add,
+  [operations.subtract]: instruction.f64Subtract,
+  [operations.multiply]: instruction.f64Multiply,
+  [operations.divide]: instruction.f64Divide,
+  [operations.min]: instruction.f64Min,
+  [operations.max]: instruction.f64Max,
+};
+
+const comparison: Readonly<Record<number, number>> = {
+  [operations.less]: instruction.f64Less,
+  [operations.lessEqual]: instruction.f64LessEqual,
+  [operations.equal]: instruction.f64Equal,
+};
+
+/**
+ * Writes the instructions of a tape: shared values and values that the outputs overwrite go to locals, the rest stays
+ * on the stack. Returns how many number locals it takes. `hosts` are the imported functions by host number.
+ */
+export function emitTape(tape: Tape, hosts: readonly FunctionIndex[], body: ByteWriter): number {
+  const { operation, left, right, third, constants } = tape;
+  const keep = chooseLocals(tape);
+  const local = new Int32Array(tape.size).fill(-1);
+  let locals = 0;
+
+  const address = (space: number): void => {
+    if (space === spaces.fixed) {
+      body.byte(instruction.i32Const);
+      body.signed(0);
+    } else {
+      body.byte(instruction.localGet);
+      body.unsigned(space - spaces.first);
+    }
+  };
+  const use = (node: number): void => {
+    if (local[node]! < 0) return write(node);
+    body.byte(instruction.localGet);
+    body.unsigned(firstNumberLocal + local[node]!);
+  };
+  const test = (node: number): void => {
+    const code = comparison[operation[node]!];
+    if (code !== undefined && local[node]! < 0) {
+      use(left[node]!);
+      use(right[node]!);
+      body.byte(code);
+    } else {
+      use(node);
+      body.byte(instruction.f64Const);
+      body.float64(0);
+      body.byte(instruction.f64NotEqual);
+    }
+  };
+  const write = (node: number): void => {
+    const kind = operation[node]!;
+    const [a, b, c] = [left[node]!, right[node]!, third[node]!];
+    if (kind === operations.constant) {
+      body.byte(instruction.f64Const);
+      body.float64(constants[node]!);
+    } else if (kind === operations.load) {
+      address(b);
+      body.byte(instruction.f64Load);
+      body.unsigned(3);
+      body.unsigned(a * bytesPerSlot);
+    } else if (kind === operations.select) {
+      use(b);
+      use(c);
+      test(a);
+      body.byte(instruction.select);
+    } else if (kind === operations.call) {
+      use(a);
+      if (hostFunctions[c]!.arity === 2) use(b);
+      body.byte(instruction.call);
+      body.unsigned(hosts[c]!);
+    } else if (comparison[kind] !== undefined) {
+      test(node);
+      body.byte(instruction.f64ConvertUnsigned);
+    } else {
+      use(a);
+      const two = binary[kind];
+      if (two !== undefined) use(b);
+      body.byte(two ?? unary[kind]!);
+    }
+  };
+
+  for (let node = 0; node < tape.size; node++) {
+    if (keep[node] === 0) continue;
+    write(node);
+    body.byte(instruction.localSet);
+    body.unsigned(firstNumberLocal + locals);
+    local[node] = locals++;
+  }
+  for (const { node, slot, space } of tape.outputs) {
+    address(space);
+    use(node);
+    body.byte(instruction.f64Store);
+    body.unsigned(3);
+    body.unsigned(slot * bytesPerSlot);
+  }
+  return locals;
+}
+
+function chooseLocals(tape: Tape): Uint8Array {
+  const { operation, left, right, third } = tape;
+  const uses = new Uint32Array(tape.size);
+  const depth = new Uint32Array(tape.size);
+  const keep = new Uint8Array(tape.size);
+  const overwritten = new Set(tape.outputs.map(({ slot, space }) => slot * 4 + space));
+  for (let node = 0; node < tape.size; node++) {
+    const kind = operation[node]!;
+    if (kind === operations.constant) continue;
+    if (kind === operations.load) {
+      if (overwritten.has(left[node]! * 4 + right[node]!)) keep[node] = 1;
+      continue;
+    }
+    const parts = [left[node]!];
+    if (unary[kind] === undefined) parts.push(right[node]!);
+    if (kind === operations.select) parts.push(third[node]!);
+    let deepest = 0;
+    for (const part of parts) {
+      uses[part]!++;
+      if (keep[part] === 0) deepest = Math.max(deepest, depth[part]!);
+    }
+    depth[node] = deepest + 1;
+    if (depth[node]! > deepestExpression) keep[node] = 1;
+  }
+  for (const { node } of tape.outputs) uses[node]!++;
+  for (let node = 0; node < tape.size; node++) {
+    if (uses[node]! > 1 && operation[node] !== operations.constant) keep[node] = 1;
+  }
+  return keep;
+}

@@ -1,0 +1,10 @@
+export { rateEquations } from './equations.ts';
+export type { RateEquations } from './equations.ts';
+export { RateError } from './error.ts';
+export { compileEvents } from './events.ts';
+export type { CompiledEvents } from './events.ts';
+export { expressionNode } from './expression.ts';
+export { odeSystem } from './system.ts';
+export type { NamedNodes } from './system.ts';
+export { list, resolveValues } from './values.ts';
+export type { Overrides, Values } from './values.ts';

@@ -1,0 +1,55 @@
+import type { ComplexTable } from '@stillroom/shared/network';
+import { type Graph, hostNumber, type Node } from '../program/index.ts';
+import { integerPower } from './expression.ts';
+
+/** A species of a complex and how many of it the complex has. */
+export interface Member {
+  readonly species: number;
+  readonly coefficient: number;
+}
+
+/** The members of complex number `complex`. */
+export function members(complexes: ComplexTable, complex: number): Member[] {
+  const list: Member[] = [];
+  for (let j = complexes.offsets[complex]!; j < complexes.offsets[complex + 1]!; j++) {
+    const coefficient = complexes.numerators[j]! / (complexes.denominators?.[j] ?? 1);
+    list.push({ species: complexes.species[j]!, coefficient });
+  }
+  return list;
+}
+
+/** constant · ∏ x^coefficient, where `at` gives the node of a species. */
+export function massActionRate(
+  graph: Graph,
+  constant: Node,
+  reactants: readonly Member[],
+  at: (species: number) => Node,
+): Node {
+  return reactants.reduce(
+    (product, { species, coefficient }) =>
+      graph.multiply(product, speciesPower(graph, at(species), coefficient)),
+    constant,
+  );
+}
+
+/** x^n; for n that is not whole a negative x (round-off around 0) counts as 0. */
+function speciesPower(graph: Graph, x: Node, n: number): Node {
+  if (Number.isInteger(n)) return integerPower(graph, x, n);
+  const zero = graph.constant(0);
+  return graph.select(graph.less(zero, x), graph.call(hostNumber('pow'), x, graph.constant(n)), zero);
+}
+
+/** The derivative of a mass-action rate by one of its reactants. */
+export function massActionSlope(
+  graph: Graph,
+  constant: Node,
+  reactants: readonly Member[],
+  by: number,
+  at: (species: number) => Node,
+): Node {
+  const lowered = reactants.map(({ species, coefficient }) =>
+    species === by ? { species, coefficient: coefficient - 1 } : { species, coefficient },
+  );
+  const order = reactants.find(({ species }) => species === by)?.coefficient ?? 0;
+  return massActionRate(graph, graph.multiply(graph.constant(order), constant), lowered, at);
+}

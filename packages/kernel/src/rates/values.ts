@@ -1,0 +1,63 @@
+import type { Network } from '@stillroom/shared/network';
+import { RateError } from './error.ts';
+
+/** Values that replace those of the text, by name. */
+export interface Overrides {
+  readonly constants?: Readonly<Record<string, number>> | undefined;
+  readonly start?: Readonly<Record<string, number>> | undefined;
+}
+
+/** The numbers with which a network is run: constants (null where there is none) and species at the start. */
+export interface Values {
+  readonly constants: readonly (number | null)[];
+  readonly start: Float64Array;
+}
+
+/**
+ * The network's own values with the overrides put in. A fixed species starts at, and stays at, its fixed value unless
+ * `start` names it. Throws RateError for a name that the network does not have or a value that cannot be used.
+ */
+export function resolveValues(network: Network, overrides: Overrides): Values {
+  const constants = network.constants.map(({ quantity }) => quantity?.value ?? null);
+  const start = new Float64Array(network.species.length);
+  for (const [species, { value }] of network.start) start[species] = value;
+  for (const [species, { value }] of network.fixed) start[species] = value;
+  const constantNames = network.constants.map(({ name }) => name);
+  put('constants', 'constant', overrides.constants ?? {}, constantNames, (index, value) => {
+    constants[index] = value;
+  });
+  put('start', 'species', overrides.start ?? {}, network.species, (index, value) => {
+    start[index] = value;
+  });
+  return { constants, start };
+}
+
+function put(
+  field: string,
+  kind: string,
+  given: Readonly<Record<string, number>>,
+  names: readonly string[],
+  set: (index: number, value: number) => void,
+): void {
+  const places = new Map(names.map((name, index) => [name, index]));
+  const unknown = Object.keys(given).filter((name) => !places.has(name));
+  if (unknown.length > 0) {
+    throw new RateError(
+      `"${field}" gives a value to ${list(unknown)}, but the network has no ${kind} of that name.`,
+      names.length === 0 ? `The network has no ${kind}.` : `It has ${list(names)}.`,
+    );
+  }
+  for (const [name, value] of Object.entries(given)) {
+    if (!Number.isFinite(value))
+      throw new RateError(`"${field}" gives ${name} a value that is not a finite number.`);
+    set(places.get(name)!, value);
+  }
+}
+
+/** "a, b and c", cut after twelve names. */
+export function list(names: readonly string[]): string {
+  const shown = names.slice(0, 12);
+  const more = names.length - shown.length;
+  if (more > 0) return `${shown.join(', ')} and ${more} more`;
+  return shown.length < 2 ? shown.join('') : `${shown.slice(0, -1).join(', ')} and ${shown.at(-1)}`;
+}
