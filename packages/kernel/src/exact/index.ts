@@ -53,3 +53,4 @@ export { certifiedRank, leftKernel } from './left-kernel.ts';
 export type { LeftKernel } from './left-kernel.ts';
 export { rowIndex } from './sparse.ts';
 export type { RowIndex, SparseColumns, SparseVector } from './sparse.ts';
+export { independentSelection } from './independent.ts';
