@@ -44,25 +44,35 @@ function conclusion(applies: Applies): string {
 }
 
 function noDiscordance(context: TheoremContext): Hypothesis[] {
+  const claim = 'concordant';
   const text =
     'The network is concordant: no change of the species within a class can leave every net rate unchanged by signs alone.';
   const search = discordanceOf(context);
-  if (search === null) return [{ text: `${text} The network is too large for the search.`, holds: null }];
+  if (search === null)
+    return [{ claim, text: `${text} The network is too large for the search.`, holds: null }];
   if (search.kind === 'none') {
     return [
-      { text: `${text} An exhaustive search of ${search.nodes} sign patterns found none.`, holds: true },
+      {
+        claim,
+        text: `${text} An exhaustive search of ${search.nodes} sign patterns found none.`,
+        holds: true,
+      },
     ];
   }
   if (search.kind === 'open') {
-    return [{ text: `${text} The search was given up after ${search.nodes} sign patterns.`, holds: null }];
+    return [
+      { claim, text: `${text} The search was given up after ${search.nodes} sign patterns.`, holds: null },
+    ];
   }
   return [
     {
+      claim,
       text: `${text} This change of the species lies in a class …`,
       holds: false,
       witness: { kind: 'vector', of: 'laws', entries: context.changeEntries(search.change) },
     },
     {
+      claim,
       text: '… and this change of the rates, which leaves every species unchanged, fits its signs.',
       holds: false,
       witness: { kind: 'vector', of: 'fluxes', entries: context.fluxEntries(search.flux) },

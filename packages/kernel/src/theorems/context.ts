@@ -1,6 +1,6 @@
 import type { Verdict, VerdictId, WitnessNumber } from '@stillroom/shared/cells';
 import type { Network } from '@stillroom/shared/network';
-import type { IntegerMatrix, Rational } from '../exact/index.ts';
+import type { IntegerMatrix, Rational, SparseVector } from '../exact/index.ts';
 import {
   integerForResult,
   integerKernel,
@@ -21,8 +21,7 @@ import type { KineticsReport } from './kinetics.ts';
 import { reportKinetics } from './kinetics.ts';
 import type { Conservation, Consistency } from './positive-vectors.ts';
 import { decideConservation, decideConsistency } from './positive-vectors.ts';
-import type { StructuralFacts } from './structural-facts.ts';
-import { structuralFacts } from './structural-facts.ts';
+import { StructuralFacts } from './structural-facts.ts';
 
 /** One distinct directed arrow between complexes. */
 export interface Arrow {
@@ -106,14 +105,15 @@ export class TheoremContext {
 
   /** Classes, rank, deficiency, siphons: what the structure room computes. */
   get facts(): StructuralFacts {
-    return this.memo('facts', () => structuralFacts(this.structure));
+    return this.memo('facts', () => new StructuralFacts(this.structure));
   }
 
-  get deficiency(): number {
+  /** Null where the rank could not be proven. */
+  get deficiency(): number | null {
     return this.facts.deficiency;
   }
 
-  get rank(): number {
+  get rank(): number | null {
     return this.facts.rank;
   }
 
@@ -122,7 +122,7 @@ export class TheoremContext {
   }
 
   get nonterminalComplexes(): readonly number[] {
-    return this.facts.nonterminalComplexes;
+    return this.memo('non-terminal complexes', () => this.facts.nonterminalComplexes);
   }
 
   get siphons(): StructuralFacts['siphons'] {
@@ -179,7 +179,7 @@ export class TheoremContext {
     );
   }
 
-  /** A lattice basis of the conservation laws on scaled amounts, by species. Only where `dense`. */
+  /** A basis of the conservation laws on scaled amounts, non-negative ones first, by species. Only where `dense`. */
   get lawBasis(): bigint[][] {
     return this.memo('law basis', () => integerKernel(transpose(this.stoichiometricMatrix)));
   }
@@ -225,6 +225,13 @@ export class TheoremContext {
   /** A linear function of the species, given by the true coefficients, keyed by species name. */
   lawEntries(law: readonly bigint[]): Record<string, WitnessNumber> {
     return entriesOf(law, (i) => this.species[i]!);
+  }
+
+  /** A sparse linear function of the species, keyed by species name. */
+  sparseLawEntries({ indices, values }: SparseVector): Record<string, WitnessNumber> {
+    const entries: Record<string, WitnessNumber> = {};
+    indices.forEach((i, k) => (entries[this.species[i]!] = integerForResult(values[k]!)));
+    return entries;
   }
 
   /** A change of the species given on scaled amounts, up to a positive factor, keyed by species name. */

@@ -43,29 +43,39 @@ function conclusion(holds: boolean, weaklyReversible: boolean): string {
 }
 
 function eachClassAtMostOne(context: TheoremContext): Hypothesis {
-  const largest = context.linkageClasses.reduce((most, part) => Math.max(most, part.deficiency), 0);
-  return {
-    text: `No linkage class has a deficiency above 1 (the largest is ${largest}).`,
-    holds: largest <= 1,
-    witness: { kind: 'number', left: largest, right: 1 },
-  };
+  const claim = 'class deficiency at most one';
+  const text = 'No linkage class has a deficiency above 1.';
+  const deficiencies = classDeficiencies(context);
+  if (deficiencies === null) return { claim, text: `${text} ${TOO_LARGE}`, holds: null };
+  const largest = deficiencies.reduce((most, deficiency) => Math.max(most, deficiency), 0);
+  return { claim, text, holds: largest <= 1, witness: { kind: 'number', left: largest, right: 1 } };
 }
 
 function deficienciesAddUp(context: TheoremContext): Hypothesis {
-  const sum = context.linkageClasses.reduce((total, part) => total + part.deficiency, 0);
-  return {
-    text: `The deficiencies of the linkage classes add up to the deficiency of the network (${sum} and ${context.deficiency}).`,
-    holds: sum === context.deficiency,
-    witness: { kind: 'number', left: sum, right: context.deficiency },
-  };
+  const claim = 'class deficiencies add up';
+  const text = 'The deficiencies of the linkage classes add up to the deficiency of the network.';
+  const deficiencies = classDeficiencies(context);
+  const whole = context.deficiency;
+  if (deficiencies === null || whole === null) return { claim, text: `${text} ${TOO_LARGE}`, holds: null };
+  const sum = deficiencies.reduce((total, deficiency) => total + deficiency, 0);
+  return { claim, text, holds: sum === whole, witness: { kind: 'number', left: sum, right: whole } };
+}
+
+const TOO_LARGE = 'The network is too large for proven ranks.';
+
+function classDeficiencies(context: TheoremContext): number[] | null {
+  const deficiencies = context.linkageClasses.flatMap(({ deficiency }) => deficiency ?? []);
+  return deficiencies.length === context.linkageClasses.length ? deficiencies : null;
 }
 
 function oneTerminalClassEach(context: TheoremContext): Hypothesis {
   const crowded = context.linkageClasses.find((part) => part.terminalStrongClasses.length > 1);
+  const claim = 'one terminal class each';
   const text = 'Every linkage class has exactly one terminal strong class.';
   return crowded === undefined
-    ? { text, holds: true }
+    ? { claim, text, holds: true }
     : {
+        claim,
         text,
         holds: false,
         witness: { kind: 'set', complexes: crowded.terminalStrongClasses.map((members) => members[0]!) },

@@ -6,20 +6,23 @@ import type { TheoremContext } from './context.ts';
 /** Every law is mass action and nothing but reactions changes a species. */
 export function massAction(context: TheoremContext): Hypothesis {
   const { otherLaw, interventions } = context.kinetics;
+  const claim = 'mass action';
   const text = 'All rates are mass action, and nothing but reactions changes a species.';
-  if (interventions !== null) return { text: `${text} Here ${interventions}.`, holds: false };
-  if (otherLaw === null) return { text, holds: true };
-  return { text, holds: false, witness: { kind: 'arrow', reaction: otherLaw } };
+  if (interventions !== null) return { claim, text: `${text} Here ${interventions}.`, holds: false };
+  if (otherLaw === null) return { claim, text, holds: true };
+  return { claim, text, holds: false, witness: { kind: 'arrow', reaction: otherLaw } };
 }
 
 /** Rates are continuous and positive exactly when all reactants are present; read off the laws where possible. */
 export function ratesFollowReactants(context: TheoremContext): Hypothesis {
   const { interventions, unclearLaw } = context.kinetics;
+  const claim = 'rates follow reactants';
   const text =
     'Every rate is continuous, and positive exactly when all reactants of its reaction are present.';
-  if (interventions !== null) return { text: `${text} Here ${interventions}.`, holds: false };
-  if (unclearLaw === null) return { text, holds: true };
+  if (interventions !== null) return { claim, text: `${text} Here ${interventions}.`, holds: false };
+  if (unclearLaw === null) return { claim, text, holds: true };
   return {
+    claim,
     text: `${text} The law of this reaction leaves it open.`,
     holds: null,
     witness: { kind: 'arrow', reaction: unclearLaw },
@@ -29,12 +32,14 @@ export function ratesFollowReactants(context: TheoremContext): Hypothesis {
 /** As `ratesFollowReactants`, and no rate falls when a reactant is added. */
 export function ratesAreMonotone(context: TheoremContext): Hypothesis {
   const { interventions, unclearLaw, unclearGrowth } = context.kinetics;
+  const claim = 'rates are monotone';
   const text =
     'Every rate is continuous, does not fall when a reactant is added, and is positive exactly when all reactants are present.';
-  if (interventions !== null) return { text: `${text} Here ${interventions}.`, holds: false };
+  if (interventions !== null) return { claim, text: `${text} Here ${interventions}.`, holds: false };
   const unclear = unclearLaw ?? unclearGrowth;
-  if (unclear === null) return { text, holds: true };
+  if (unclear === null) return { claim, text, holds: true };
   return {
+    claim,
     text: `${text} The law of this reaction leaves it open.`,
     holds: null,
     witness: { kind: 'arrow', reaction: unclear },
@@ -44,12 +49,14 @@ export function ratesAreMonotone(context: TheoremContext): Hypothesis {
 /** Weakly monotonic: a rate rises strictly with each of its reactants and depends on nothing else. */
 export function ratesAreWeaklyMonotonic(context: TheoremContext): Hypothesis {
   const { interventions, unclearLaw, unclearGrowth, unclearRise } = context.kinetics;
+  const claim = 'rates are weakly monotonic';
   const text =
     'Every rate is weakly monotonic: it is positive when all its reactants are present, rises when one of them is added to a positive state, and depends on its reactants only.';
-  if (interventions !== null) return { text: `${text} Here ${interventions}.`, holds: false };
+  if (interventions !== null) return { claim, text: `${text} Here ${interventions}.`, holds: false };
   const unclear = unclearLaw ?? unclearGrowth ?? unclearRise;
-  if (unclear === null) return { text, holds: true };
+  if (unclear === null) return { claim, text, holds: true };
   return {
+    claim,
     text: `${text} The law of this reaction leaves it open.`,
     holds: null,
     witness: { kind: 'arrow', reaction: unclear },
@@ -58,24 +65,32 @@ export function ratesAreWeaklyMonotonic(context: TheoremContext): Hypothesis {
 
 /** δ equals the given number. */
 export function deficiencyIs(context: TheoremContext, value: number): Hypothesis {
+  const claim = 'deficiency';
+  const text = `The deficiency is ${value}.`;
+  const { deficiency } = context;
+  if (deficiency === null)
+    return { claim, text: `${text} The network is too large for a proven rank.`, holds: null };
   return {
-    text: `The deficiency is ${value}.`,
-    holds: context.deficiency === value,
-    witness: { kind: 'number', left: context.deficiency, right: value },
+    claim,
+    text,
+    holds: deficiency === value,
+    witness: { kind: 'number', left: deficiency, right: value },
   };
 }
 
 /** Evidence: a positive circulation on the arrows, or an arrow from which no path leads back. */
 export function weaklyReversible(context: TheoremContext): Hypothesis {
+  const claim = 'weakly reversible';
   const text = 'The network is weakly reversible: every arrow lies on a directed cycle.';
   const oneWay = context.oneWayArrow;
   if (oneWay !== null) {
-    return { text, holds: false, witness: { kind: 'arrow', reaction: context.reactionOf(oneWay) } };
+    return { claim, text, holds: false, witness: { kind: 'arrow', reaction: context.reactionOf(oneWay) } };
   }
   const circulation = context.circulation;
   return circulation === null
-    ? { text, holds: true }
+    ? { claim, text, holds: true }
     : {
+        claim,
         text,
         holds: true,
         witness: { kind: 'vector', of: 'fluxes', entries: context.fluxEntries(circulation) },
@@ -87,6 +102,7 @@ export function notWeaklyReversible(context: TheoremContext): Hypothesis {
   const { holds, ...rest } = weaklyReversible(context);
   return {
     ...rest,
+    claim: 'not weakly reversible',
     text: 'The network is not weakly reversible: some arrow lies on no directed cycle.',
     holds: holds === null ? null : !holds,
   };
@@ -94,25 +110,30 @@ export function notWeaklyReversible(context: TheoremContext): Hypothesis {
 
 /** Every arrow has its reverse; evidence for the contrary is an arrow without one. */
 export function reversible(context: TheoremContext): Hypothesis {
+  const claim = 'reversible';
   const text = 'The network is reversible: every arrow has its reverse.';
   const lone = context.arrowWithoutReverse;
   return lone === null
-    ? { text, holds: true }
-    : { text, holds: false, witness: { kind: 'arrow', reaction: context.reactionOf(lone) } };
+    ? { claim, text, holds: true }
+    : { claim, text, holds: false, witness: { kind: 'arrow', reaction: context.reactionOf(lone) } };
 }
 
 /** Some strictly positive flux keeps all species constant; else a function of the species that only ever grows. */
 export function consistent(context: TheoremContext): Hypothesis {
+  const claim = 'consistent';
   const text = 'The network is consistent: some positive flux on all arrows leaves every species unchanged.';
   const answer = context.consistency;
-  if (answer === null) return { text: `${text} The network is too large for the exact test.`, holds: null };
+  if (answer === null)
+    return { claim, text: `${text} The network is too large for the exact test.`, holds: null };
   return answer.holds
     ? {
+        claim,
         text,
         holds: true,
         witness: { kind: 'vector', of: 'fluxes', entries: context.fluxEntries(answer.flux) },
       }
     : {
+        claim,
         text,
         holds: false,
         witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(answer.growing) },
@@ -124,6 +145,7 @@ export function notConsistent(context: TheoremContext): Hypothesis {
   const { holds, ...rest } = consistent(context);
   return {
     ...rest,
+    claim: 'not consistent',
     text: 'The network is not consistent: no positive flux on all arrows leaves every species unchanged.',
     holds: holds === null ? null : !holds,
   };
@@ -131,13 +153,21 @@ export function notConsistent(context: TheoremContext): Hypothesis {
 
 /** Some conservation law has only positive coefficients; else a flux whose net production is nowhere negative. */
 export function conservative(context: TheoremContext): Hypothesis {
+  const claim = 'conservative';
   const text =
     'The network is conservative: some conservation law has a positive coefficient for every species.';
   const answer = context.conservation;
-  if (answer === null) return { text: `${text} The network is too large for the exact test.`, holds: null };
+  if (answer === null)
+    return { claim, text: `${text} The network is too large for the exact test.`, holds: null };
   return answer.holds
-    ? { text, holds: true, witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(answer.law) } }
+    ? {
+        claim,
+        text,
+        holds: true,
+        witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(answer.law) },
+      }
     : {
+        claim,
         text,
         holds: false,
         witness: { kind: 'vector', of: 'fluxes', entries: context.fluxEntries(answer.flux) },
@@ -149,6 +179,7 @@ const LISTED_SIPHONS = 12;
 
 /** Every siphon contains the support of a non-negative law; one hypothesis per minimal siphon while they are few. */
 export function noCriticalSiphon(context: TheoremContext): Hypothesis[] {
+  const claim = 'no critical siphon';
   const { siphons, complete } = context.siphons;
   const summary = 'Every siphon contains all species of some conservation law that is not negative.';
   const critical = siphons.find((siphon) => siphon.critical);
@@ -156,6 +187,7 @@ export function noCriticalSiphon(context: TheoremContext): Hypothesis[] {
     const names = context.speciesNames(critical.species);
     return [
       {
+        claim,
         text: `${summary} The siphon {${names.join(', ')}} contains none.`,
         holds: false,
         witness: { kind: 'set', species: names },
@@ -163,33 +195,40 @@ export function noCriticalSiphon(context: TheoremContext): Hypothesis[] {
     ];
   }
   if (!complete)
-    return [{ text: `${summary} There are too many siphons to look at all of them.`, holds: null }];
-  if (siphons.length === 0) return [{ text: `${summary} There is no siphon.`, holds: true }];
+    return [{ claim, text: `${summary} There are too many siphons to look at all of them.`, holds: null }];
+  if (siphons.length === 0) return [{ claim, text: `${summary} There is no siphon.`, holds: true }];
   const listed = siphons.slice(0, LISTED_SIPHONS).map((siphon): Hypothesis => {
     const names = context.speciesNames(siphon.species);
+    const claim = 'siphon holds a law';
     const text = `The siphon {${names.join(', ')}} contains all species of a conservation law that is not negative.`;
     return siphon.law === null
-      ? { text, holds: true }
+      ? { claim, text, holds: true }
       : {
+          claim,
           text,
           holds: true,
-          witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(siphon.law) },
+          witness: { kind: 'vector', of: 'laws', entries: context.sparseLawEntries(siphon.law) },
         };
   });
-  const all = { text: `${summary} The minimal siphons are ${siphons.length} in number.`, holds: true };
+  const all: Hypothesis = {
+    claim,
+    text: `${summary} The minimal siphons are ${siphons.length} in number.`,
+    holds: true,
+  };
   return [all, ...listed];
 }
 
 /** Counts need whole numbers of molecules, and rates that are falling factorials. */
 export function massActionInCounts(context: TheoremContext): Hypothesis {
   const rates = massAction(context);
+  const claim = 'mass action in counts';
   const text =
     'All rates are mass action in counts, with whole numbers of molecules, and nothing but reactions changes a species.';
   if (!context.coefficients.whole)
-    return { text: `${text} A coefficient is not a whole number.`, holds: false };
+    return { claim, text: `${text} A coefficient is not a whole number.`, holds: false };
   const weighted = [...context.network.weights.keys()].map((species) => context.network.species[species]!);
   if (weighted.length > 0)
-    return { text: `${text} Here ${weighted.join(', ')} has a weight of its own.`, holds: false };
+    return { claim, text: `${text} Here ${weighted.join(', ')} has a weight of its own.`, holds: false };
   const { witness } = rates;
-  return { text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
+  return { claim, text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
 }

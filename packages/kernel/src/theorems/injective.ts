@@ -39,6 +39,7 @@ function conclusion(applies: Applies): string {
   }[applies];
 }
 
+const claim = 'determinants of one sign';
 const text =
   'The products det N[I,J]·det B[J,I] (N the stoichiometric matrix, B the reactant matrix, |I| = |J| = rank N) are not all zero, and all non-zero ones have one sign.';
 
@@ -49,13 +50,15 @@ const LONG_LIST = 20_000;
 /** Decides the sign condition: a full list where it is short, else two opposite products, else the equivalent sign patterns. */
 function oneSign(context: TheoremContext): Hypothesis[] {
   return context.memo('one sign', () => {
-    if (!context.dense) return [{ text: `${text} The network is too large for this test.`, holds: null }];
+    if (!context.dense)
+      return [{ claim, text: `${text} The network is too large for this test.`, holds: null }];
     const listed = minorProducts(context, SHORT_LIST);
     if (listed !== null) return [fromList(listed)];
     const opposite = oppositeMinors(context);
     if (opposite !== null) {
       return [
         {
+          claim,
           text: `${text} Here are two of opposite sign.`,
           holds: false,
           witness: { kind: 'minors', pairs: opposite },
@@ -69,15 +72,24 @@ function oneSign(context: TheoremContext): Hypothesis[] {
 function fromList({ positive, negative, examples }: MinorProducts): Hypothesis {
   const witness = { kind: 'minors', pairs: examples } as const;
   if (positive + negative === 0)
-    return { text: `${text} All are zero, so every positive steady state is degenerate.`, holds: false };
+    return {
+      claim,
+      text: `${text} All are zero, so every positive steady state is degenerate.`,
+      holds: false,
+    };
   if (positive > 0 && negative > 0) {
-    return { text: `${text} Here ${positive} are positive and ${negative} negative.`, holds: false, witness };
+    return {
+      claim,
+      text: `${text} Here ${positive} are positive and ${negative} negative.`,
+      holds: false,
+      witness,
+    };
   }
   const count = positive + negative;
   const sign = positive > 0 ? 'positive' : 'negative';
   const found =
     count === 1 ? `The only one that is not zero is ${sign}.` : `All ${count} that are not zero are ${sign}.`;
-  return { text: `${text} ${found}`, holds: true, witness };
+  return { claim, text: `${text} ${found}`, holds: true, witness };
 }
 
 /** Concordance is stronger and cheaper to see; else the patterns that mass action allows are searched. */
@@ -87,6 +99,7 @@ function fromPatterns(context: TheoremContext): Hypothesis[] {
   if (search.kind === 'none') {
     return [
       {
+        claim,
         text: `${text} This holds because no change of the species within a class leaves all net rates unchanged by signs alone: an exhaustive search of ${search.nodes} sign patterns found none.`,
         holds: true,
       },
@@ -97,6 +110,7 @@ function fromPatterns(context: TheoremContext): Hypothesis[] {
     if (listed !== null) return [fromList(listed)];
     return [
       {
+        claim,
         text: `${text} The list is too long, no two of opposite sign were met, and the search of sign patterns was given up after ${search.nodes}.`,
         holds: null,
       },
@@ -104,11 +118,13 @@ function fromPatterns(context: TheoremContext): Hypothesis[] {
   }
   return [
     {
+      claim,
       text: `${text} It fails, because this change of the species lies in a class …`,
       holds: false,
       witness: { kind: 'vector', of: 'laws', entries: context.changeEntries(search.change) },
     },
     {
+      claim,
       text: '… and this change of the rates, which leaves every species unchanged, is one that mass action can give it.',
       holds: false,
       witness: { kind: 'vector', of: 'fluxes', entries: context.fluxEntries(search.flux) },

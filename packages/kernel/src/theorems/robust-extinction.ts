@@ -39,11 +39,13 @@ export const robustExtinction: Theorem = {
 };
 
 function nestedPair(context: TheoremContext): Hypothesis {
+  const claim = 'complexes are nested';
   const text = 'Of two complexes outside the terminal strong classes, one contains the other.';
   const pair = comparablePairs(context)[0];
   return pair === undefined
-    ? { text, holds: false }
+    ? { claim, text, holds: false }
     : {
+        claim,
         text: `${context.complexLabel(pair.lower)} and ${context.complexLabel(pair.upper)} lie outside the terminal strong classes, and the second contains the first.`,
         holds: true,
         witness: { kind: 'set', complexes: [pair.lower, pair.upper] },

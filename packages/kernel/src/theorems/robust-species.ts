@@ -39,10 +39,12 @@ export const robustSpecies: Theorem = {
 };
 
 function differingPairs(context: TheoremContext): Hypothesis[] {
+  const claim = 'complexes differ in one species';
   const text = 'Two complexes outside the terminal strong classes differ in one species only.';
   const pairs = robustPairs(context);
-  if (pairs.length === 0) return [{ text, holds: false }];
+  if (pairs.length === 0) return [{ claim, text, holds: false }];
   return pairs.map(({ species, lower, upper }) => ({
+    claim,
     text: `${context.complexLabel(lower)} and ${context.complexLabel(upper)} lie outside the terminal strong classes and differ only in ${context.species[species]}.`,
     holds: true,
     witness: { kind: 'set', complexes: [lower, upper] },

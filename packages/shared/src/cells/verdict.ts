@@ -82,8 +82,35 @@ export type Witness =
     }
   | { readonly kind: 'number'; readonly left: WitnessNumber; readonly right: WitnessNumber };
 
+/** What a hypothesis claims, for a checker; the text says the same to people. */
+export const hypothesisClaims = [
+  'mass action',
+  'mass action in counts',
+  'rates follow reactants',
+  'rates are monotone',
+  'rates are weakly monotonic',
+  'deficiency',
+  'class deficiency at most one',
+  'class deficiencies add up',
+  'one terminal class each',
+  'weakly reversible',
+  'not weakly reversible',
+  'reversible',
+  'consistent',
+  'not consistent',
+  'conservative',
+  'no critical siphon',
+  'siphon holds a law',
+  'complexes differ in one species',
+  'complexes are nested',
+  'determinants of one sign',
+  'concordant',
+] as const;
+export type HypothesisClaim = (typeof hypothesisClaims)[number];
+
 /** One hypothesis of a theorem; `holds` is null where it could not be decided. */
 export interface Hypothesis {
+  readonly claim: HypothesisClaim;
   readonly text: string;
   readonly holds: boolean | null;
   readonly witness?: Witness;

@@ -26,7 +26,7 @@ const MOST_SPECIES = 30;
  */
 export function minorProducts(context: TheoremContext, steps: number): MinorProducts | null {
   const { rank } = context;
-  if (context.species.length > MOST_SPECIES || !context.dense) return null;
+  if (rank === null || context.species.length > MOST_SPECIES || !context.dense) return null;
   const arrows = independentArrows(context);
   const tally = { positive: 0, negative: 0, examples: new Map<number, MinorPair>() };
   const chosen: number[] = [];

@@ -44,12 +44,13 @@ interface SquareSystem {
 }
 
 function squareSystem(context: TheoremContext): SquareSystem | null {
-  if (!context.dense || context.species.length > 120) return null;
+  const { rank } = context;
+  if (rank === null || !context.dense || context.species.length > 120) return null;
   const reactions = context.arrows
     .map((_, arrow) => arrow)
     .filter((arrow) => context.terms(context.arrows[arrow]!.from).length > 0);
   return {
-    rank: context.rank,
+    rank,
     species: context.species.map((_, i) => i),
     reactions,
     laws: context.lawBasis.map((law) => law.map(Number)),

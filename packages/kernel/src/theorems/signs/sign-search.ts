@@ -31,6 +31,7 @@ export function searchPattern(context: TheoremContext, kind: PatternKind): Patte
   const system = signSystem(context);
   const state: SearchState = { context, system, kind, nodes: 0, most: affordableNodes(system), open: false };
   const domains = openDomains(system);
+  propagate(system, domains, [...domains.keys()]);
   for (let lead = 0; lead < system.species; lead++) {
     const start = domains.slice();
     start[lead] = POSITIVE;

@@ -1,0 +1,31 @@
+import type { Evidence } from './rules.ts';
+
+/** Mass action everywhere and nothing else that changes a species; or a reaction for which it is not so. */
+export function massAction({ network, plain, holds, witness }: Evidence): string | null {
+  const untouched = network.events.length === 0 && network.rateRules.size === 0;
+  const everywhere = plain.reactions.every((reaction) => reaction.massAction);
+  if (holds) return untouched && everywhere ? null : 'some rate is not mass action.';
+  if (!untouched) return null;
+  if (witness?.kind !== 'arrow') return 'no reaction is named.';
+  return plain.reactions[witness.reaction]?.massAction === false
+    ? null
+    : 'the reaction named has mass action.';
+}
+
+/** As `massAction`, with whole numbers of molecules and no weights. */
+export function massActionInCounts(evidence: Evidence): string | null {
+  const { network, plain, holds } = evidence;
+  const whole = plain.complexes.every((complex) =>
+    [...complex.values()].every(({ denominator }) => denominator === 1n),
+  );
+  const plainCounts = whole && network.weights.size === 0;
+  if (holds)
+    return plainCounts ? massAction(evidence) : 'coefficients are fractions, or a species has a weight.';
+  return plainCounts ? massAction(evidence) : null;
+}
+
+/** Mass action has all of these properties; for other laws only the prover's reading of the formula speaks. */
+export function otherLaws({ network, holds }: Evidence): string | null {
+  const untouched = network.events.length === 0 && network.rateRules.size === 0;
+  return holds === untouched ? null : 'an event or an equation of its own changes a species.';
+}
