@@ -1,8 +1,33 @@
 import type { Network } from '@stillroom/shared/network';
-import type { RateEquations } from '../rates/index.ts';
+import { leftKernel } from '../exact/index.ts';
+import { stoichiometry, structuralNetwork } from '../network/index.ts';
+import { compartmentOfSpecies, type RateEquations } from '../rates/index.ts';
 
-/** A conservation law: integer coefficients by name of species. */
+/** A conservation law: coefficients by name of species. */
 export type Law = Readonly<Record<string, number>>;
+
+/** Beyond so many species the laws are not sought for the sake of a course. */
+const mostSpecies = 2000;
+
+/**
+ * A basis of the conservation laws of the species that react; empty where there is none or the network is too large.
+ * Several compartments: the laws are of amounts, so coefficients are multiplied by volumes.
+ */
+export function conservationLawsOf(network: Network): Law[] {
+  if (network.species.length > mostSpecies) return [];
+  const structural = structuralNetwork(network);
+  const compartmentOf = compartmentOfSpecies(network);
+  const volume = (species: number): number =>
+    network.compartments.length > 1 ? network.compartments[compartmentOf[species]!]!.volume.value : 1;
+  const basis = leftKernel(stoichiometry(structural).matrix)?.basis ?? [];
+  return basis.map(({ indices, values }) => {
+    const entries = values.map((value, n) => {
+      const species = structural.sourceSpecies[indices[n]!]!;
+      return [network.species[species]!, Number(value) * volume(species)];
+    });
+    return Object.fromEntries(entries) as Law;
+  });
+}
 
 /** Measures how far conservation laws depart from their totals along a course. Fixed species do not count. */
 export class ConservationWatch {

@@ -11,7 +11,7 @@ import {
   RateError,
   resolveValues,
 } from '../rates/index.ts';
-import { ConservationWatch, type Law } from './conservation.ts';
+import { conservationLawsOf, ConservationWatch, type Law } from './conservation.ts';
 import { Course } from './course.ts';
 import { resultUnits } from './units.ts';
 import { stopInWords } from './stop-in-words.ts';
@@ -22,7 +22,7 @@ export interface TrajectoryOptions {
   readonly deadline?: () => boolean;
   /** Told every few steps which share of the time span is done, 0 to 1. */
   readonly progress?: (share: number) => void;
-  /** Conservation laws whose drift is reported, as coefficients by species. */
+  /** Conservation laws whose drift is reported, as coefficients by species; found here where they are not given. */
   readonly laws?: readonly Law[];
   /** The cell's own events, read from its settings. */
   readonly events?: readonly NetworkEvent[];
@@ -67,7 +67,7 @@ export function evaluateTrajectory(
   equations.variables.forEach((species, variable) => (start[variable] = values.start[species]!));
 
   const course = new Course(network, equations, prepared, sensitiveTo);
-  const laws = new ConservationWatch(options.laws ?? [], network, equations, start);
+  const laws = new ConservationWatch(options.laws ?? conservationLawsOf(network), network, equations, start);
   const fired: { time: number; event: number }[] = [];
   const outcome = solve(prepared, {
     start,

@@ -1,4 +1,5 @@
-import { ByteWriter, type FunctionIndex, instruction } from '../wasm/index.ts';
+import type { ByteWriter } from '../wasm/index.ts';
+import { type FunctionIndex, instruction } from '../wasm/index.ts';
 import { operations, spaces } from './graph.ts';
 import { hostFunctions } from './host-functions.ts';
 import type { Tape } from './tape.ts';

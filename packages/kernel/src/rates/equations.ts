@@ -1,9 +1,10 @@
 import type { Network } from '@stillroom/shared/network';
 import { parameterSlot, timeSlot } from '../ode/problem.ts';
 import { gradient, Graph, type Node, spaces } from '../program/index.ts';
+import { compartmentOfSpecies, crossesCompartments } from './compartments.ts';
 import { RateError } from './error.ts';
 import { expressionNode } from './expression.ts';
-import { massActionRate, massActionSlope, type Member, members } from './mass-action.ts';
+import { massActionRate, massActionSlope, type Member, members, netCoefficients } from './mass-action.ts';
 import { list, type Values } from './values.ts';
 
 /** How fast one term moves one variable: its rate times `factor`. */
@@ -73,7 +74,7 @@ export function rateEquations(network: Network, values: Values): RateEquations {
 function reactionTerms(network: Network, equations: RateEquations, names: NameTable): Term[] {
   const { graph } = equations;
   const { reactions, complexes, laws } = network;
-  const compartmentOf = compartments(network);
+  const compartmentOf = compartmentOfSpecies(network);
   const lawNodes = laws.map<Node | null>(() => null);
   const complexMembers = Array.from({ length: complexes.count }, (_, index) => members(complexes, index));
   const at = (species: number): Node => names.species(species);
@@ -137,22 +138,10 @@ function netChanges(
   variableOf: Int32Array,
   scale: (species: number) => number,
 ): Change[] {
-  const net = new Map<number, number>();
-  for (const { species, coefficient } of from) net.set(species, (net.get(species) ?? 0) - coefficient);
-  for (const { species, coefficient } of to) net.set(species, (net.get(species) ?? 0) + coefficient);
-  return [...net]
+  return [...netCoefficients(from, to)]
     .filter(([species, change]) => change !== 0 && variableOf[species]! >= 0)
     .map(([species, change]) => ({ variable: variableOf[species]!, factor: change / scale(species) }))
     .sort((a, b) => a.variable - b.variable);
-}
-
-/** Compartment of each species; 0 where the text has none. */
-function compartments(network: Network): Int32Array {
-  const of = new Int32Array(network.species.length);
-  network.compartments.forEach(({ species }, index) => {
-    for (const one of species) of[one] = index;
-  });
-  return of;
 }
 
 /**
@@ -167,8 +156,8 @@ function amountScale(
   law: number,
   reaction: number,
 ): (species: number) => number {
-  const touched = new Set([...from, ...to].map(({ species }) => compartmentOf[species]!));
-  if (touched.size < 2) return () => 1;
+  const touched = [...from, ...to].map(({ species }) => species);
+  if (!crossesCompartments(compartmentOf, touched)) return () => 1;
   if (law < 0) {
     const line = network.rows[network.reactions.row[reaction]!]?.line;
     throw new RateError(

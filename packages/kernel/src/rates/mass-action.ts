@@ -18,6 +18,14 @@ export function members(complexes: ComplexTable, complex: number): Member[] {
   return list;
 }
 
+/** How much of each species a reaction makes (negative: uses), by species; 0 where it only takes part. */
+export function netCoefficients(from: readonly Member[], to: readonly Member[]): Map<number, number> {
+  const net = new Map<number, number>();
+  for (const { species, coefficient } of from) net.set(species, (net.get(species) ?? 0) - coefficient);
+  for (const { species, coefficient } of to) net.set(species, (net.get(species) ?? 0) + coefficient);
+  return net;
+}
+
 /** constant · ∏ x^coefficient, where `at` gives the node of a species. */
 export function massActionRate(
   graph: Graph,

@@ -14,7 +14,7 @@ export interface ResultUnits {
 export interface ListedReaction {
   /** "E + S -> ES". */
   readonly label: string;
-  /** 1-based line of its row in the text. */
+  /** Index of its row among the rows of the text, from 0. */
   readonly row: number;
   readonly from: Readonly<Record<string, number>>;
   readonly to: Readonly<Record<string, number>>;

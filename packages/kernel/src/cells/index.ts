@@ -1,0 +1,3 @@
+export { describeNetwork } from './network.ts';
+export { evaluateTrajectory } from './trajectory.ts';
+export type { TrajectoryOptions } from './trajectory.ts';
