@@ -11,3 +11,4 @@ export type {
   Rational,
   ReactionTable,
 } from './network.ts';
+export * as rational from './rational.ts';

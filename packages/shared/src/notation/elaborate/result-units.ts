@@ -1,0 +1,138 @@
+import { rational } from '../../network/index.ts';
+import type { NetworkUnits, Rational } from '../../network/network.ts';
+import { walkSyntax } from '../../expression/names.ts';
+import type { ExpressionSyntax } from '../../expression/syntax.ts';
+import { dimensionNames } from '../../units/table.ts';
+import { dimensionOf, printUnit, scaleOf, unitOf, unitPower, unitProduct } from '../../units/unit.ts';
+import type { Dimension } from '../../units/table.ts';
+import type { Unit } from '../../units/unit.ts';
+import type { LineSyntax, NetworkTree } from '../ast.ts';
+
+const TIME = dimensionNames.indexOf('time');
+const LENGTH = dimensionNames.indexOf('length');
+const MASS = dimensionNames.indexOf('mass');
+const AMOUNTS = (['mol', 'individuals', 'molecules', 'cells'] as const).map((name) =>
+  dimensionNames.indexOf(name),
+);
+
+/** A unit in terms of the result units: multiply a value in it by `factor` to have it in `unit`. */
+export interface Conversion {
+  readonly factor: Rational;
+  readonly unit: Unit;
+}
+
+/** The units of all results of a text: the first time unit, the first amount unit and the first volume unit in it. */
+export class ResultUnits {
+  readonly time: Unit | null;
+  readonly amount: Unit | null;
+  readonly volume: Unit | null;
+  private readonly conversions = new Map<string, Conversion>();
+
+  constructor(tree: NetworkTree) {
+    let time: Unit | null = null;
+    let amount: Unit | null = null;
+    let volume: Unit | null = null;
+    for (const line of tree.lines) {
+      for (const value of valuesOf(line)) {
+        if (time && amount && volume) break;
+        walkSyntax(value, (part) => {
+          if (part.kind !== 'measured') return;
+          time ??= timeIn(part.unit);
+          if (line.kind === 'volume') volume ??= part.unit;
+          else amount ??= amountIn(part.unit, line.kind !== 'let');
+        });
+      }
+    }
+    this.time = time;
+    this.amount = amount;
+    this.volume = volume;
+  }
+
+  printed(): NetworkUnits {
+    const print = (unit: Unit | null) => unit && printUnit(unit);
+    return { time: print(this.time), amount: print(this.amount), volume: print(this.volume) };
+  }
+
+  /** The unit of the rate constant of a reaction of this order: amount^(1 - order) / time; null where it has none. */
+  rateUnit(order: Rational): Unit | null {
+    const time = unitPower(this.time ?? [{ symbol: 's', power: 1 }], -1);
+    const exponent = rational.subtract(rational.one, order);
+    if (exponent.numerator === 0n) return time;
+    if (!this.amount || !rational.isInteger(exponent)) return null;
+    return unitProduct(unitPower(this.amount, Number(exponent.numerator)), time);
+  }
+
+  /** How a value in a unit is turned into the units of the results. */
+  convert(unit: Unit): Conversion {
+    const key = printUnit(unit);
+    const known = this.conversions.get(key);
+    if (known) return known;
+    const target = this.unitFor(dimensionOf(unit));
+    const conversion = { factor: rational.divide(scaleOf(unit), scaleOf(target)), unit: target };
+    this.conversions.set(key, conversion);
+    return conversion;
+  }
+
+  /** The unit of a dimension made of the result units, and of L, m and the like for what they leave. */
+  unitFor(dimension: Dimension): Unit {
+    const left = [...dimension];
+    let target: Unit = [];
+    const divideBy = (part: Unit | null, dimension: number) => {
+      const powers = part ? dimensionOf(part) : [];
+      const power = (left[dimension] ?? 0) / (powers[dimension] ?? NaN);
+      if (!part || power === 0 || !Number.isInteger(power)) return;
+      target = unitProduct(target, unitPower(part, power));
+      powers.forEach((value, i) => (left[i] = (left[i] ?? 0) - value * power));
+    };
+    if (this.amount) divideBy(this.amount, keyDimension(this.amount));
+    divideBy(this.time, TIME);
+    if ((left[LENGTH] ?? 0) % 3 === 0) divideBy(this.volume ?? [{ symbol: 'L', power: 1 }], LENGTH);
+    const rest = ['s', 'm', 'g', 'mol', 'individuals', 'molecules', 'cells'];
+    rest.forEach((symbol, i) => divideBy([{ symbol, power: 1 }], i));
+    return target;
+  }
+}
+
+function valuesOf(line: LineSyntax): readonly ExpressionSyntax[] {
+  switch (line.kind) {
+    case 'row':
+      return line.items.flatMap((item) => (item.value ? [item.value] : []));
+    case 'start':
+    case 'let':
+    case 'fix':
+    case 'volume':
+    case 'weight':
+    case 'rate':
+      return line.items.map((item) => item.value);
+    case 'event':
+      return [line.when, ...line.set.map((item) => item.value)];
+    default:
+      return [];
+  }
+}
+
+function timeIn(unit: Unit): Unit | null {
+  const factor = unit.find(({ symbol }) => dimensionOf([{ symbol, power: 1 }])[TIME] === 1);
+  return factor ? [{ symbol: factor.symbol, power: 1 }] : null;
+}
+
+/** The dimension by whose power an amount unit is recognised: mol and counts before mass, mass before length. */
+function keyDimension(unit: Unit): number {
+  const powers = dimensionOf(unit);
+  return [...AMOUNTS, MASS, LENGTH].find((i) => powers[i] !== 0) ?? LENGTH;
+}
+
+/**
+ * The amount unit that a unit holds: what is left without time, to the power that makes it an amount. From "/uM/s" that is
+ * uM, from "mL/cells/d" cells/mL. Masses and bare volumes count only where an amount must stand (`strictly`).
+ */
+function amountIn(unit: Unit, strictly: boolean): Unit | null {
+  const rest = unit.filter(({ symbol }) => dimensionOf([{ symbol, power: 1 }])[TIME] === 0);
+  const powers = dimensionOf(rest);
+  const key = keyDimension(rest);
+  if (!strictly && !AMOUNTS.includes(key)) return null;
+  const power = key === LENGTH ? -(powers[key] ?? 0) / 3 : (powers[key] ?? 0);
+  const factors = rest.map((factor) => ({ symbol: factor.symbol, power: factor.power / power }));
+  const sound = rest.length > 0 && factors.every((factor) => Number.isInteger(factor.power));
+  return sound ? unitOf(factors) : null;
+}

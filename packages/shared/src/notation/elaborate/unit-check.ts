@@ -1,0 +1,135 @@
+import { rational } from '../../network/index.ts';
+import type { ExpressionSyntax } from '../../expression/syntax.ts';
+import { dimensionOf, printUnit, sameDimension } from '../../units/unit.ts';
+import type { Unit } from '../../units/unit.ts';
+import type { Rational } from '../../network/network.ts';
+import type { SideSyntax } from '../ast.ts';
+import type { Repair } from '../complaint.ts';
+import { printReaction } from '../print.ts';
+import type { ConstantUse } from './rows.ts';
+import { printExpression } from '../../expression/print.ts';
+import type { Dimensions, ValueDimension } from './dimensions.ts';
+import type { Elaboration } from './elaborate.ts';
+import type { Scope } from './scope.ts';
+
+/** A value that must be an amount: a start or a fixed value. */
+export interface AmountUse {
+  readonly species: string;
+  readonly value: ExpressionSyntax;
+  readonly scope: Scope;
+}
+
+/** A value with the unit that its place asks for. */
+interface Demand {
+  readonly value: ExpressionSyntax;
+  readonly dimension: ValueDimension;
+  /** Null where no unit of the text would do. */
+  readonly wanted: Unit | null;
+  /** "k", "the start of A". */
+  readonly subject: () => string;
+  /** "A + B -> C is of order 2". */
+  readonly reason: () => string;
+}
+
+/** Whether the text is in units: any rate constant, start or fixed value has one. */
+export function checkUnits(stage: Elaboration, dimensions: Dimensions, amounts: readonly AmountUse[]): void {
+  const demands = [...rateDemands(stage, dimensions), ...amountDemands(stage, dimensions, amounts)];
+  const inUnits = demands.some(({ dimension }) => dimension !== 'pure' && dimension !== null);
+  if (!inUnits) return;
+  for (const demand of demands) checkDemand(stage, demand);
+}
+
+/** The printed unit of each rate constant of a text in units, by constant. */
+export function unitsOfRates(stage: Elaboration): Map<number, string> {
+  const units = new Map<number, string>();
+  if (!stage.units.time && !stage.units.amount) return units;
+  for (const { constant, reactant } of stage.rows.uses) {
+    const unit = units.has(constant) ? null : stage.units.rateUnit(orderOf(reactant));
+    if (unit) units.set(constant, printUnit(unit));
+  }
+  return units;
+}
+
+function rateDemands(stage: Elaboration, dimensions: Dimensions): Demand[] {
+  const demands: Demand[] = [];
+  for (const use of stage.rows.uses) {
+    const { constant } = use;
+    const name = stage.constants.nameOf(constant);
+    const definition = stage.values.definition(name);
+    if (!definition) continue;
+    demands.push({
+      value: definition.value,
+      dimension: dimensions.ofConstant(name),
+      wanted: stage.units.rateUnit(orderOf(use.reactant)),
+      subject: () => name,
+      reason: () => `${printUse(use)} is of order ${rational.print(orderOf(use.reactant))}`,
+    });
+  }
+  return demands;
+}
+
+function amountDemands(stage: Elaboration, dimensions: Dimensions, amounts: readonly AmountUse[]): Demand[] {
+  return amounts.map(({ species, value, scope }) => ({
+    value,
+    dimension: dimensions.of(value, scope),
+    wanted: stage.units.amount,
+    subject: () => `The value of ${species}`,
+    reason: () =>
+      `amounts of this text are in ${stage.units.amount ? printUnit(stage.units.amount) : 'no unit'}`,
+  }));
+}
+
+/** The order of a reaction: the sum of the coefficients of its reactants. */
+function orderOf(reactant: SideSyntax): Rational {
+  let sum = rational.zero;
+  for (const { numerator, denominator } of reactant.terms) {
+    sum = rational.add(sum, rational.quotient(BigInt(numerator), BigInt(denominator)));
+  }
+  return sum;
+}
+
+function printUse({ reactant, product }: ConstantUse): string {
+  return printReaction({
+    family: null,
+    sides: [reactant, product],
+    arrows: [{ sign: '->', from: 0, to: 0 }],
+  });
+}
+
+function checkDemand(stage: Elaboration, demand: Demand): void {
+  const { value, dimension, wanted, subject, reason } = demand;
+  if (dimension === null) return;
+  const wantedText = wanted ? printUnit(wanted) : null;
+  if (dimension === 'pure') {
+    const example = wantedText ? `, such as ${wantedText}` : '';
+    stage.complaints.error(
+      value,
+      `${subject()} has no unit, but other values of this text have.`,
+      `Give it one${example}.`,
+      repairOf(value, wantedText),
+    );
+    return;
+  }
+  if (wanted && sameDimension(dimension, dimensionOf(wanted))) return;
+  const given = printUnit(unitOfValue(value) ?? stage.units.unitFor(dimension)) || 'no unit';
+  const need = wantedText ? `needs ${wantedText}` : 'needs a unit that this text has no amount for';
+  stage.complaints.error(
+    value,
+    `${subject()} is in ${given}, but ${reason()} and ${need}.`,
+    null,
+    repairOf(value, wantedText),
+  );
+}
+
+function unitOfValue(value: ExpressionSyntax): Unit | null {
+  return value.kind === 'measured' ? value.unit : null;
+}
+
+/** "Make it 2 /s": the number as it is with the unit that is asked for. */
+function repairOf(value: ExpressionSyntax, wanted: string | null): Repair[] {
+  if (wanted === null) return [];
+  const number = value.kind === 'measured' ? value.of : value;
+  const shown = number.kind === 'number' ? number.text : `(${printExpression(number)})`;
+  const insert = `${shown} ${wanted}`;
+  return [{ label: `Make it ${insert}`, from: value.from, to: value.to, insert }];
+}

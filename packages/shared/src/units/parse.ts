@@ -1,0 +1,60 @@
+import { Scanner } from '../notation/tokens.ts';
+import { findSymbol } from './table.ts';
+import { unitOf } from './unit.ts';
+import type { Unit, UnitFactor } from './unit.ts';
+
+/** Beyond this a power is a slip of the key, and its scale would be a monster. */
+const POWER_LIMIT = 20;
+
+/**
+ * Reads as much of a unit as stands at the scanner: factors side by side or after `/`, each with an optional integer
+ * power; a leading `1` before `/` is passed over. Leaves the scanner where the unit ends; an empty unit where none begins.
+ */
+export function readUnit(scanner: Scanner): Unit {
+  const factors: UnitFactor[] = [];
+  const start = scanner.mark();
+  const before = scanner.previousEnd;
+  if (scanner.kind === 'number' && scanner.word === '1') {
+    scanner.advance();
+    if (!scanner.is('/')) {
+      scanner.reset(start, before);
+      return [];
+    }
+  }
+  for (let factor = readFactor(scanner); factor; factor = readFactor(scanner)) factors.push(factor);
+  if (factors.length === 0) scanner.reset(start, before);
+  return unitOf(factors);
+}
+
+function readFactor(scanner: Scanner): UnitFactor | null {
+  const start = scanner.mark();
+  const before = scanner.previousEnd;
+  const below = scanner.take('/');
+  const symbol = scanner.kind === 'name' ? findSymbol(scanner.word) : null;
+  if (symbol) {
+    scanner.advance();
+    // `min(` is the function, `m[` an indexed name.
+    const power = scanner.is('(') || scanner.is('[') ? null : readPower(scanner);
+    if (power !== null) return { symbol: symbol.symbol, power: below ? -power : power };
+  }
+  scanner.reset(start, before);
+  return null;
+}
+
+/** The power after `^`, 1 where there is none, null where what follows `^` is no integer that a unit may have. */
+function readPower(scanner: Scanner): number | null {
+  if (!scanner.take('^')) return 1;
+  const negative = scanner.take('-');
+  if (scanner.kind !== 'number' || !/^\d+$/.test(scanner.word)) return null;
+  const power = Number(scanner.word);
+  if (power === 0 || power > POWER_LIMIT) return null;
+  scanner.advance();
+  return negative ? -power : power;
+}
+
+/** The unit that a whole text states, such as "/uM/s" or "uM^-1 s^-1"; null where it states none. */
+export function parseUnit(text: string): Unit | null {
+  const scanner = new Scanner(text, 0, text.length, 'expression');
+  const unit = readUnit(scanner);
+  return unit.length > 0 && scanner.kind === 'end' ? unit : null;
+}
