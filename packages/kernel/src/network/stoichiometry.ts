@@ -1,4 +1,5 @@
 import type { SparseColumns } from '../exact/index.ts';
+import { CellFailure } from '../engine/failure.ts';
 import type { StructuralNetwork } from './structural-network.ts';
 
 /** The stoichiometric matrix N, one column per arrow: column j of N is column j of `matrix` divided by `scale[j]`. */
@@ -77,9 +78,9 @@ function scaled(network: StructuralNetwork, term: number, factor: number): numbe
   const { numerators, denominators } = network.complexes;
   const value = denominators ? numerators[term]! * (factor / denominators[term]!) : numerators[term]!;
   if (!Number.isSafeInteger(value)) {
-    throw new RangeError(
-      'The coefficients of a reaction have a common denominator too large for exact structure (beyond 2^53). ' +
-        'Write the reaction with smaller whole numbers.',
+    throw new CellFailure(
+      'The fractions of a reaction have a common denominator too large for exact structure (beyond 2^53).',
+      { hint: 'Write the reaction with smaller whole numbers.' },
     );
   }
   return value;

@@ -32,18 +32,22 @@ export interface ConservationLaws {
  * Rank and conservation laws of a network, exactly. The columns of N along a spanning forest of the complexes span im N,
  * so only n − ℓ of them are needed. Null where the network is too large to be decided.
  */
-export function conservationLaws(network: StructuralNetwork): ConservationLaws | null {
+export function conservationLaws(
+  network: StructuralNetwork,
+  checkpoint: () => void = () => undefined,
+): ConservationLaws | null {
   const kernel = leftKernel(stoichiometry(network, spanningForest(network)).matrix);
-  return kernel === null ? null : lawsOfKernel(kernel);
+  return kernel === null ? null : lawsOfKernel(kernel, checkpoint);
 }
 
-function lawsOfKernel(kernel: LeftKernel): ConservationLaws {
+function lawsOfKernel(kernel: LeftKernel, checkpoint: () => void): ConservationLaws {
   const basis: SparseVector[] = [];
   const nonnegative: SparseVector[] = [];
   let nonnegativeComplete = kernel.complete;
   let steps: number = LAW_LIMITS.steps;
   const blocks = lawBlocks(kernel.basis);
   for (const block of blocks) {
+    checkpoint();
     const limits = { rays: LAW_LIMITS.rays - nonnegative.length, steps };
     const found = nonnegativeLawsOf(block, limits);
     steps -= found.steps;

@@ -22,10 +22,10 @@ export interface Siphon {
 export function judgeSiphons(
   network: StructuralNetwork,
   siphons: readonly Int32Array[],
-  laws: ConservationLaws,
+  laws: ConservationLaws | null,
 ): Siphon[] {
   const byFirst = new Map<number, SparseVector[]>();
-  for (const law of laws.nonnegative) {
+  for (const law of laws?.nonnegative ?? []) {
     const known = byFirst.get(law.indices[0]!);
     if (known) known.push(law);
     else byFirst.set(law.indices[0]!, [law]);
@@ -38,7 +38,7 @@ export function judgeSiphons(
         if (law.indices.every((other) => mark[other] === index)) return { species, critical: false, law };
       }
     }
-    return laws.nonnegativeComplete ? { species, critical: true, law: null } : byProgramme(network, species);
+    return laws?.nonnegativeComplete ? { species, critical: true, law: null } : byProgramme(network, species);
   });
 }
 

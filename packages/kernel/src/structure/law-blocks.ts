@@ -39,7 +39,10 @@ export function lawBlocks(basis: readonly SparseVector[]): LawBlock[] {
 }
 
 /** A basis of the block: as many of the given laws as are independent, in order, then laws of the block. */
-export function independentFirst(block: LawBlock, preferred: readonly SparseVector[]): readonly SparseVector[] {
+export function independentFirst(
+  block: LawBlock,
+  preferred: readonly SparseVector[],
+): readonly SparseVector[] {
   const size = block.laws.length;
   if (size === 1) return preferred.length === 1 ? preferred : block.laws;
   if (size > SELECTION_LIMIT) return block.laws;

@@ -3,7 +3,12 @@ import { siphonClauses } from './siphon-clauses.ts';
 import { SiphonState } from './siphon-search.ts';
 
 /** Limits of the search, in siphons and in elementary steps: counts, so that results repeat. */
-export const SIPHON_LIMITS = { siphons: 10_000, steps: 40_000_000 } as const;
+export interface SiphonLimits {
+  readonly siphons: number;
+  readonly steps: number;
+}
+
+export const SIPHON_LIMITS: SiphonLimits = { siphons: 10_000, steps: 40_000_000 };
 
 /** Minimal siphons, species ascending, ordered by their species; all of them where `complete`. */
 export interface MinimalSiphons {
@@ -19,7 +24,8 @@ export interface MinimalSiphons {
  */
 export function minimalSiphons(
   network: StructuralNetwork,
-  limits: { readonly siphons: number; readonly steps: number } = SIPHON_LIMITS,
+  checkpoint: () => void = () => undefined,
+  limits: SiphonLimits = SIPHON_LIMITS,
 ): MinimalSiphons {
   const clauses = siphonClauses(network);
   const state = new SiphonState(clauses);
@@ -27,7 +33,7 @@ export function minimalSiphons(
   let complete = true;
   for (let first = 0; first < clauses.speciesCount && complete; first++) {
     if (!state.isOpen(first)) continue;
-    complete = searchFrom(first, state, found, limits);
+    complete = searchFrom(first, state, found, limits, checkpoint);
     state.exclude(first);
   }
   return { siphons: found.minimal(), complete };
@@ -44,7 +50,8 @@ function searchFrom(
   first: number,
   state: SiphonState,
   found: FoundSiphons,
-  limits: { readonly siphons: number; readonly steps: number },
+  limits: SiphonLimits,
+  checkpoint: () => void,
 ): boolean {
   const base = state.depth;
   const choices: Choice[] = [{ depth: base, candidates: [first], next: 0 }];
@@ -53,6 +60,7 @@ function searchFrom(
       state.undo(base);
       return false;
     }
+    checkpoint();
     const choice = choices.at(-1)!;
     state.undo(choice.depth);
     if (choice.next === choice.candidates.length) {

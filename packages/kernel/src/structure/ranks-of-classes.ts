@@ -13,6 +13,7 @@ export function ranksOfClasses(
   linkage: Partition,
   forest: Int32Array,
   whole: number,
+  checkpoint: () => void = () => undefined,
 ): (number | null)[] {
   if (linkage.count === 1) return [whole];
   const { matrix } = stoichiometry(network, forest);
@@ -21,7 +22,9 @@ export function ranksOfClasses(
   return Array.from({ length: linkage.count }, (_, group) => {
     const own = columns.arrows.subarray(columns.offsets[group]!, columns.offsets[group + 1]!);
     // Two different complexes have a reaction vector that is not 0.
-    return own.length < 2 ? own.length : certifiedRank(submatrix(matrix, own, local));
+    if (own.length < 2) return own.length;
+    checkpoint();
+    return certifiedRank(submatrix(matrix, own, local));
   });
 }
 
