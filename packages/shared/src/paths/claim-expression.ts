@@ -34,7 +34,9 @@ export type ClaimTerm =
       readonly kind: 'call';
       readonly name: ClaimFunction;
       readonly arguments: readonly ClaimTerm[];
-      readonly at: number;
+      /** Offsets in the text. */
+      readonly from: number;
+      readonly to: number;
     };
 
 /** A claim: one comparison. */
@@ -204,7 +206,7 @@ class ClaimReader {
         known === 'at' ? 'Write at(run1.species.P, 5).' : null,
       );
     }
-    return { kind: 'call', name: known, arguments: given, at: begin };
+    return { kind: 'call', name: known, arguments: given, from: begin, to: this.at };
   }
 
   private close(): void {

@@ -16,22 +16,23 @@ export interface WovenSpan {
   readonly to: number;
 }
 
+/** How far a piece may reach, in UTF-16 units: without bounds, unclosed signs would cost the square of the text. */
+const longest = { math: 10_000, woven: 1000, code: 10_000 } as const;
+
 /**
  * The mathematics that begins at `at`, or null. `$` opens where no blank follows and closes where no blank precedes and
  * no digit follows, so that "$5 and $6" stays text; a paragraph's end ends the search.
  */
 export function mathAt(text: string, at: number): MathSpan | null {
   if (text[at] !== '$') return null;
-  const paragraph = /\n[ \t]*\n/gu;
-  paragraph.lastIndex = at;
-  const limit = paragraph.exec(text)?.index ?? text.length;
+  const limit = at + (/\n[ \t]*\n/u.exec(text.slice(at, at + longest.math))?.index ?? longest.math);
   if (text[at + 1] === '$') {
     const close = text.indexOf('$$', at + 2);
     const tex = close === -1 || close >= limit ? '' : text.slice(at + 2, close).trim();
     return tex === '' ? null : { tex, display: true, to: close + 2 };
   }
   if (/\s/u.test(text[at + 1] ?? ' ')) return null;
-  for (let close = at + 1; close < limit; close++) {
+  for (let close = at + 1; close < Math.min(limit, text.length); close++) {
     if (text[close] === '\\') close++;
     else if (text[close] === '$') {
       if (/\s/u.test(text[close - 1] ?? ' ') || /\d/u.test(text[close + 1] ?? '')) continue;
@@ -45,7 +46,8 @@ export function mathAt(text: string, at: number): MathSpan | null {
 export function wovenAt(text: string, at: number): WovenSpan | null {
   if (text[at] !== '=' || text[at + 1] !== '[' || !/[\p{L}_ ]/u.test(text[at + 2] ?? '')) return null;
   let depth = 0;
-  for (let i = at + 1; i < text.length && text[i] !== '\n'; i++) {
+  const limit = Math.min(text.length, at + longest.woven);
+  for (let i = at + 1; i < limit && text[i] !== '\n'; i++) {
     if (text[i] === '"') {
       const close = /"(?:[^"\\\n]|\\.)*"/uy;
       close.lastIndex = i;
@@ -96,10 +98,9 @@ function inlineStep(text: string, at: number, found: WovenSpan[]): number {
       const ticks = /`+/uy;
       ticks.lastIndex = at;
       const run = ticks.exec(text)?.[0] ?? '`';
-      const close = new RegExp(`(?<!\`)${run}(?!\`)`, 'gu');
-      close.lastIndex = at + run.length;
-      const end = close.exec(text);
-      return end === null ? at + run.length : end.index + run.length;
+      const begin = at + run.length;
+      const close = new RegExp(`(?<!\`)${run}(?!\`)`, 'u').exec(text.slice(begin, begin + longest.code));
+      return close === null ? begin : begin + close.index + run.length;
     }
     case '$':
       return mathAt(text, at)?.to ?? at + 1;
