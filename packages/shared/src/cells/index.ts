@@ -18,7 +18,22 @@ export { cellRegistry } from './registry.ts';
 export type { CellKindEntry, SettingReference } from './registry.ts';
 export { scriptSettings } from './script.ts';
 export type { ScriptResult } from './script.ts';
-export { balanceSettings, structureSettings } from './settings.ts';
+export { balanceSettings } from './settings.ts';
+export { structureSettings } from './structure.ts';
+export type {
+  BySpecies,
+  ConservationLaw,
+  ExactNumber,
+  LinkageClass,
+  MatrixTable,
+  MinimalSiphon,
+  StructureComparison,
+  StructureCounts,
+  StructureMatrices,
+  StructureReaction,
+  StructureResult,
+  StructureSettings,
+} from './structure.ts';
 export { trajectorySettings } from './trajectory.ts';
 export type { TrajectoryResult, TrajectorySettings, TrajectoryStatistics } from './trajectory.ts';
 export { hypothesisClaims, verdictIds } from './verdict.ts';

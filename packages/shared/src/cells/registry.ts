@@ -6,7 +6,8 @@ import { plotSettings } from './plot.ts';
 import { proseSettings } from './prose.ts';
 import { scriptSettings } from './script.ts';
 import { networkSettings } from './network.ts';
-import { balanceSettings, structureSettings } from './settings.ts';
+import { balanceSettings } from './settings.ts';
+import { structureSettings } from './structure.ts';
 import { trajectorySettings } from './trajectory.ts';
 
 /** A place in settings that names another cell; `*` stands for every entry of a list. */
@@ -52,7 +53,7 @@ export const cellRegistry: Readonly<Record<CellKind, CellKindEntry>> = {
     stem: 'structure',
     settings: structureSettings,
     empty: { text: '', settings: { network: '' } },
-    references: onNetwork,
+    references: [...onNetwork, { at: ['compare', '*'], kind: 'network', reads: 'source' }],
   },
   balance: {
     kind: 'balance',

@@ -7,9 +7,6 @@ export const cellReference = z.string().check(z.maxLength(200));
 export const finite = z.number().check(z.refine(Number.isFinite, 'needs a finite number'));
 const values = z.record(z.string(), finite);
 
-/** Settings of a structure cell. */
-export const structureSettings = z.strictObject({ network: cellReference });
-
 /** Settings of a balance cell: constants given here take the place of the text's. */
 export const balanceSettings = z.strictObject({
   network: cellReference,
