@@ -7,6 +7,7 @@ import type { Logger } from './logger.ts';
 import { createAuth } from './modules/auth/index.ts';
 import { createGroups, type GroupContents, invitedAddress } from './modules/groups/index.ts';
 import { createPostman } from './modules/mail/index.ts';
+import { createOperator, type QueueSource } from './modules/operator/index.ts';
 import type { ServerModule, Services } from './services.ts';
 
 /** Opens the database and makes what every module is given. */
@@ -33,5 +34,7 @@ export function createModules(services: Services): ServerModule[] {
   const postman = createPostman(services);
   const auth = createAuth(services, invitedAddress);
   const groups = createGroups(services, contents);
-  return [postman, auth, groups];
+  const queue: QueueSource = async () => ({ workers: [], waiting: 0, running: 0, groups: [] });
+  const operator = createOperator(services, queue);
+  return [postman, auth, groups, operator];
 }

@@ -1,0 +1,79 @@
+import { installationPatch } from '@stillroom/shared/contracts';
+import { Router } from 'express';
+import { route } from '../../http/route.ts';
+import type { Services } from '../../services.ts';
+import { writeSetting } from '../auth/index.ts';
+import { readOutbox } from '../mail/index.ts';
+import { readHealth } from './health.ts';
+import type { QueueSource } from './module.ts';
+import { authorizeOperator } from './operator.policy.ts';
+import { listPeople } from './people.ts';
+
+/** The operator's room: a standing on the installation, not in a group. */
+export function operatorRoutes(services: Services, readQueue: QueueSource): Router {
+  const router = Router();
+
+  router.get(
+    '/api/operator/health',
+    route(services, {
+      limit: 'reading',
+      who: 'person',
+      async handle({ person, manager }) {
+        authorizeOperator(person, 'operator.health');
+        return readHealth(manager, services.config, await readQueue(manager));
+      },
+    }),
+  );
+
+  router.get(
+    '/api/operator/people',
+    route(services, {
+      limit: 'reading',
+      who: 'person',
+      async handle({ person, manager }) {
+        authorizeOperator(person, 'operator.people');
+        return listPeople(manager);
+      },
+    }),
+  );
+
+  router.get(
+    '/api/operator/queue',
+    route(services, {
+      limit: 'reading',
+      who: 'person',
+      async handle({ person, manager }) {
+        authorizeOperator(person, 'operator.queue');
+        return readQueue(manager);
+      },
+    }),
+  );
+
+  router.get(
+    '/api/operator/outbox',
+    route(services, {
+      limit: 'reading',
+      who: 'person',
+      async handle({ person, manager }) {
+        authorizeOperator(person, 'operator.outbox');
+        return readOutbox(manager);
+      },
+    }),
+  );
+
+  router.patch(
+    '/api/operator/settings',
+    route(services, {
+      limit: 'writing',
+      who: 'person',
+      body: installationPatch,
+      async handle({ person, body, manager }) {
+        authorizeOperator(person, 'operator.settings');
+        if (body.signUp !== undefined) await writeSetting(manager, 'signUp', body.signUp);
+        return readHealth(manager, services.config, await readQueue(manager));
+      },
+    }),
+  );
+
+  return router;
+}
