@@ -15,6 +15,8 @@ export type Unit = readonly UnitFactor[];
 
 /** A unit in the order in which units are kept and printed: positive powers first, else as given. */
 export function unitOf(factors: readonly UnitFactor[]): Unit {
+  const ordered = factors.every((f, i) => i === 0 || f.power < 0 || (factors[i - 1]?.power ?? 0) > 0);
+  if (ordered) return factors;
   return [...factors.filter((f) => f.power > 0), ...factors.filter((f) => f.power < 0)];
 }
 

@@ -53,7 +53,7 @@ function readVolume(
   }
   if (volume && volume.value <= 0) complaints.error(value, 'A volume must be positive.');
   if (!volume) return null;
-  const unit = isMeasured ? printUnit(stage.units.convert(value.unit).unit) : null;
+  const unit = isMeasured ? stage.units.convert(value.unit).to.printed : null;
   return { name: target.name, volume, unit };
 }
 

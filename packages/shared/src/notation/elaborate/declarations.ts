@@ -105,7 +105,6 @@ export class Declarations {
   /** A let that uses a species, `t` or an output is an output itself: followed from its causes to all it reaches. */
   private findOutputs(tree: NetworkTree): void {
     const users = new Map<string, string[]>();
-    const reached: string[] = ['t', ...this.all('species')];
     for (const line of tree.lines) {
       if (line.kind !== 'let') continue;
       for (const { target, value, family } of line.items) {
@@ -119,6 +118,8 @@ export class Declarations {
         });
       }
     }
+    if (users.size === 0) return;
+    const reached: string[] = ['t', ...this.all('species')];
     const seen = new Set(reached);
     for (let cause = reached.pop(); cause !== undefined; cause = reached.pop()) {
       for (const user of users.get(cause) ?? []) {

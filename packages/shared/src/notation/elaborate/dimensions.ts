@@ -1,7 +1,7 @@
 import type { ExpressionSyntax } from '../../expression/syntax.ts';
 import { dimensionNames } from '../../units/table.ts';
 import type { Dimension } from '../../units/table.ts';
-import { dimensionOf, printUnit, sameDimension } from '../../units/unit.ts';
+import { printUnit, sameDimension } from '../../units/unit.ts';
 import type { Elaboration } from './elaborate.ts';
 import type { Scope } from './scope.ts';
 
@@ -46,7 +46,7 @@ export class Dimensions {
     switch (syntax.kind) {
       case 'measured': {
         const { unit, divisors } = this.stage.resolver.namesInUnit(syntax, scope);
-        const own = unit.length > 0 ? dimensionOf(unit) : 'pure';
+        const own = unit.length > 0 ? this.stage.units.convert(unit).to.dimension : 'pure';
         return divisors.length > 0 ? null : product(this.of(syntax.of, scope), own, 1);
       }
       case 'name':

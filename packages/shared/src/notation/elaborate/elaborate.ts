@@ -75,7 +75,7 @@ function prepare(tree: NetworkTree, complaints: Complaints): Elaboration {
     integers,
   );
   const values = new Values(resolver, complaints);
-  const rows = new RowWriter({ species, constants, declarations, values, integers, complaints });
+  const rows = new RowWriter(species, { constants, declarations, values, integers }, complaints);
   return {
     ...{
       tree,

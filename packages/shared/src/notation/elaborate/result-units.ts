@@ -15,10 +15,17 @@ const AMOUNTS = (['mol', 'individuals', 'molecules', 'cells'] as const).map((nam
   dimensionNames.indexOf(name),
 );
 
-/** A unit in terms of the result units: multiply a value in it by `factor` to have it in `unit`. */
+/** A unit with what is asked of it again and again. */
+export interface ReadyUnit {
+  readonly unit: Unit;
+  readonly dimension: Dimension;
+  readonly printed: string;
+}
+
+/** A unit in terms of the result units: multiply a value in it by `factor` to have it in `to`. */
 export interface Conversion {
   readonly factor: Rational;
-  readonly unit: Unit;
+  readonly to: ReadyUnit;
 }
 
 /** The units of all results of a text: the first time unit, the first amount unit and the first volume unit in it. */
@@ -27,14 +34,15 @@ export class ResultUnits {
   readonly amount: Unit | null;
   readonly volume: Unit | null;
   private readonly conversions = new Map<string, Conversion>();
+  private readonly rateUnits = new Map<string, ReadyUnit | null>();
 
   constructor(tree: NetworkTree) {
     let time: Unit | null = null;
     let amount: Unit | null = null;
     let volume: Unit | null = null;
     for (const line of tree.lines) {
+      if (time && amount && line.kind !== 'volume') continue;
       for (const value of valuesOf(line)) {
-        if (time && amount && volume) break;
         walkSyntax(value, (part) => {
           if (part.kind !== 'measured') return;
           time ??= timeIn(part.unit);
@@ -54,12 +62,14 @@ export class ResultUnits {
   }
 
   /** The unit of the rate constant of a reaction of this order: amount^(1 - order) / time; null where it has none. */
-  rateUnit(order: Rational): Unit | null {
-    const time = unitPower(this.time ?? [{ symbol: 's', power: 1 }], -1);
-    const exponent = rational.subtract(rational.one, order);
-    if (exponent.numerator === 0n) return time;
-    if (!this.amount || !rational.isInteger(exponent)) return null;
-    return unitProduct(unitPower(this.amount, Number(exponent.numerator)), time);
+  rateUnit(order: Rational): ReadyUnit | null {
+    const key = rational.print(order);
+    const known = this.rateUnits.get(key);
+    if (known !== undefined) return known;
+    const unit = this.makeRateUnit(rational.subtract(rational.one, order));
+    const ready = unit && readyUnit(unit);
+    this.rateUnits.set(key, ready);
+    return ready;
   }
 
   /** How a value in a unit is turned into the units of the results. */
@@ -67,10 +77,17 @@ export class ResultUnits {
     const key = printUnit(unit);
     const known = this.conversions.get(key);
     if (known) return known;
-    const target = this.unitFor(dimensionOf(unit));
-    const conversion = { factor: rational.divide(scaleOf(unit), scaleOf(target)), unit: target };
+    const to = readyUnit(this.unitFor(dimensionOf(unit)));
+    const conversion = { factor: rational.divide(scaleOf(unit), scaleOf(to.unit)), to };
     this.conversions.set(key, conversion);
     return conversion;
+  }
+
+  private makeRateUnit(exponent: Rational): Unit | null {
+    const time = unitPower(this.time ?? [{ symbol: 's', power: 1 }], -1);
+    if (exponent.numerator === 0n) return time;
+    if (!this.amount || !rational.isInteger(exponent)) return null;
+    return unitProduct(unitPower(this.amount, Number(exponent.numerator)), time);
   }
 
   /** The unit of a dimension made of the result units, and of L, m and the like for what they leave. */
@@ -91,6 +108,10 @@ export class ResultUnits {
     rest.forEach((symbol, i) => divideBy([{ symbol, power: 1 }], i));
     return target;
   }
+}
+
+function readyUnit(unit: Unit): ReadyUnit {
+  return { unit, dimension: dimensionOf(unit), printed: printUnit(unit) };
 }
 
 function valuesOf(line: LineSyntax): readonly ExpressionSyntax[] {

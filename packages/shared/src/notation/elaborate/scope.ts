@@ -13,6 +13,9 @@ export interface Scope {
 /** The scope of what is in no family. */
 export const outermost: Scope = { slots: new Map(), values: [], count: false, unitsFirst: false };
 
+/** The scope of a value that must be a number: a rate constant, a start. */
+export const valueScope: Scope = { ...outermost, unitsFirst: true };
+
 /** The scope of a member of a family; keeps a copy of the indices. */
 export function memberScope(slots: Slots, values: IndexValues, scope: Scope = outermost): Scope {
   return slots.size === 0 ? scope : { ...scope, slots, values: [...values] };

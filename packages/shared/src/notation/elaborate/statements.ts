@@ -7,6 +7,7 @@ import { nearest } from '../nearest.ts';
 import { readCompartments } from './compartments.ts';
 import { forEachTarget } from './elaborate.ts';
 import type { Elaboration, OutputJob } from './elaborate.ts';
+import { outermost } from './scope.ts';
 import type { Scope } from './scope.ts';
 import type { AmountUse } from './unit-check.ts';
 import { checkWeight } from './weights.ts';
@@ -129,8 +130,7 @@ class StatementReader {
   private readEvent(line: EventSyntax): void {
     const { resolver, complaints } = this.stage;
     try {
-      const scope = { slots: new Map<string, number>(), values: [], count: false, unitsFirst: false };
-      const when = resolver.resolve(line.when, scope);
+      const when = resolver.resolve(line.when, outermost);
       const set: { name: string; value: Expression }[] = [];
       forEachTarget(this.stage, { items: line.set }, (_base, _indices, item, member) => {
         const target = resolver.resolve(nameOfTarget(item.target), member);

@@ -1,12 +1,13 @@
 import { rational } from '../../network/index.ts';
 import type { ExpressionSyntax } from '../../expression/syntax.ts';
-import { dimensionOf, printUnit, sameDimension } from '../../units/unit.ts';
+import { printUnit, sameDimension } from '../../units/unit.ts';
 import type { Unit } from '../../units/unit.ts';
 import type { Rational } from '../../network/network.ts';
 import type { SideSyntax } from '../ast.ts';
 import type { Repair } from '../complaint.ts';
 import { printReaction } from '../print.ts';
-import type { ConstantUse } from './rows.ts';
+import type { ReadyUnit } from './result-units.ts';
+import type { ConstantUse } from './rates.ts';
 import { printExpression } from '../../expression/print.ts';
 import type { Dimensions, ValueDimension } from './dimensions.ts';
 import type { Elaboration } from './elaborate.ts';
@@ -24,7 +25,7 @@ interface Demand {
   readonly value: ExpressionSyntax;
   readonly dimension: ValueDimension;
   /** Null where no unit of the text would do. */
-  readonly wanted: Unit | null;
+  readonly wanted: ReadyUnit | null;
   /** "k", "the start of A". */
   readonly subject: () => string;
   /** "A + B -> C is of order 2". */
@@ -45,7 +46,7 @@ export function unitsOfRates(stage: Elaboration): Map<number, string> {
   if (!stage.units.time && !stage.units.amount) return units;
   for (const { constant, reactant } of stage.rows.uses) {
     const unit = units.has(constant) ? null : stage.units.rateUnit(orderOf(reactant));
-    if (unit) units.set(constant, printUnit(unit));
+    if (unit) units.set(constant, unit.printed);
   }
   return units;
 }
@@ -69,23 +70,26 @@ function rateDemands(stage: Elaboration, dimensions: Dimensions): Demand[] {
 }
 
 function amountDemands(stage: Elaboration, dimensions: Dimensions, amounts: readonly AmountUse[]): Demand[] {
+  const wanted = stage.units.amount && stage.units.convert(stage.units.amount).to;
   return amounts.map(({ species, value, scope }) => ({
     value,
     dimension: dimensions.of(value, scope),
-    wanted: stage.units.amount,
+    wanted,
     subject: () => `The value of ${species}`,
-    reason: () =>
-      `amounts of this text are in ${stage.units.amount ? printUnit(stage.units.amount) : 'no unit'}`,
+    reason: () => `amounts of this text are in ${wanted?.printed ?? 'no unit'}`,
   }));
 }
 
 /** The order of a reaction: the sum of the coefficients of its reactants. */
 function orderOf(reactant: SideSyntax): Rational {
+  let whole = 0;
   let sum = rational.zero;
   for (const { numerator, denominator } of reactant.terms) {
-    sum = rational.add(sum, rational.quotient(BigInt(numerator), BigInt(denominator)));
+    if (denominator === 1) whole += numerator;
+    else sum = rational.add(sum, rational.quotient(BigInt(numerator), BigInt(denominator)));
   }
-  return sum;
+  const order = rational.ofInteger(whole);
+  return sum.numerator === 0n ? order : rational.add(sum, order);
 }
 
 function printUse({ reactant, product }: ConstantUse): string {
@@ -99,7 +103,7 @@ function printUse({ reactant, product }: ConstantUse): string {
 function checkDemand(stage: Elaboration, demand: Demand): void {
   const { value, dimension, wanted, subject, reason } = demand;
   if (dimension === null) return;
-  const wantedText = wanted ? printUnit(wanted) : null;
+  const wantedText = wanted?.printed ?? null;
   if (dimension === 'pure') {
     const example = wantedText ? `, such as ${wantedText}` : '';
     stage.complaints.error(
@@ -110,7 +114,7 @@ function checkDemand(stage: Elaboration, demand: Demand): void {
     );
     return;
   }
-  if (wanted && sameDimension(dimension, dimensionOf(wanted))) return;
+  if (wanted && sameDimension(dimension, wanted.dimension)) return;
   const given = printUnit(unitOfValue(value) ?? stage.units.unitFor(dimension)) || 'no unit';
   const need = wantedText ? `needs ${wantedText}` : 'needs a unit that this text has no amount for';
   stage.complaints.error(
