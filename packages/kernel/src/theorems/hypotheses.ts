@@ -232,3 +232,11 @@ export function massActionInCounts(context: TheoremContext): Hypothesis {
   const { witness } = rates;
   return { claim, text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
 }
+
+/** Every arrow has a positive exact constant; nothing to say where it has. */
+export function valuesGiven(context: TheoremContext): Hypothesis[] {
+  const { why } = context.constants;
+  return why === null
+    ? []
+    : [{ claim: 'values given', text: `Every constant has a positive exact value: ${why}.`, holds: null }];
+}

@@ -1,8 +1,11 @@
 import type { VerdictId } from '@stillroom/shared/cells';
+import { complexBalance } from './complex-balance.ts';
 import { concordant } from './concordant.ts';
 import { deficiencyOne } from './deficiency-one.ts';
 import { deficiencyZero } from './deficiency-zero.ts';
+import { detailedBalance } from './detailed-balance.ts';
 import { existence } from './existence.ts';
+import { globalStability } from './global-stability.ts';
 import { injective } from './injective.ts';
 import { noBoundarySteadyState } from './no-boundary-steady-state.ts';
 import { noPositiveSteadyState } from './no-positive-steady-state.ts';
@@ -15,6 +18,9 @@ import type { Theorem } from './theorem.ts';
 export const theorems: readonly Theorem[] = [
   deficiencyZero,
   deficiencyOne,
+  complexBalance,
+  detailedBalance,
+  globalStability,
   existence,
   noPositiveSteadyState,
   persistence,

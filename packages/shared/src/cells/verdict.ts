@@ -105,6 +105,11 @@ export const hypothesisClaims = [
   'complexes are nested',
   'determinants of one sign',
   'concordant',
+  'values given',
+  'complex balance condition',
+  'detailed balance condition',
+  'complex balanced',
+  'attraction is proven',
 ] as const;
 export type HypothesisClaim = (typeof hypothesisClaims)[number];
 

@@ -144,3 +144,11 @@ function confirmPair(
     return 'a complex named is terminal.';
   return related(a, b) ? null : 'the complexes named are not related in this way.';
 }
+
+/** One component, or a dimension of at most 3. */
+export function attractionProven({ plain, holds, witness }: Evidence): string | null {
+  if (!holds || witness?.kind !== 'number') return 'the number is missing.';
+  const groups = components(plain);
+  const rank = plain.complexes.length - groups.length - deficiencyOf(plain, groups);
+  return groups.length === 1 || rank <= 3 ? null : 'there are several components and the rank is above 3.';
+}

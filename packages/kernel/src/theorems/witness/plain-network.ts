@@ -7,6 +7,7 @@ import {
   isZero,
   multiply,
   negate,
+  power,
   rational,
   subtract,
   divide,
@@ -20,6 +21,8 @@ export interface PlainReaction {
   readonly from: number;
   readonly to: number;
   readonly massAction: boolean;
+  /** Its own constant with the powers of fixed species; null where unknown, not rational or not mass action. */
+  readonly constant: Rational | null;
 }
 
 /**
@@ -57,18 +60,46 @@ export function plainNetwork(network: Network): PlainNetwork {
     from: keys[network.reactions.from[j]!]!,
     to: keys[network.reactions.to[j]!]!,
     massAction: (network.laws[network.reactions.law[j]!] ?? { massAction: 0 }).massAction !== null,
+    constant: constantOf(network, j),
   })).filter(({ from, to }) => from !== to);
   const used = new Set(written.flatMap(({ from, to }) => [from, to]));
   const order = [...new Set(keys)].filter((key) => used.has(key));
   return {
     species: network.species.filter((_, i) => stays(i)),
     complexes: order.map((key) => whole[keys.indexOf(key)]!),
-    reactions: written.map(({ from, to, massAction }) => ({
+    reactions: written.map(({ from, to, ...rest }) => ({
       from: order.indexOf(from),
       to: order.indexOf(to),
-      massAction,
+      ...rest,
     })),
   };
+}
+
+function constantOf(network: Network, reaction: number): Rational | null {
+  const law = network.laws[network.reactions.law[reaction]!];
+  const index = law === undefined ? network.reactions.constant[reaction]! : (law.massAction ?? -1);
+  let value = network.constants[index]?.quantity?.exact ?? null;
+  const { offsets, species, numerators, denominators } = network.complexes;
+  const complex = network.reactions.from[reaction]!;
+  for (let k = offsets[complex]!; k < offsets[complex + 1]! && value !== null; k++) {
+    const held = network.fixed.get(species[k]!);
+    if (held === undefined) continue;
+    value =
+      held.exact === null || denominators !== null
+        ? null
+        : multiply(value, power(held.exact, numerators[k]!));
+  }
+  return value;
+}
+
+/** The constant of each arrow "from to", equal rows added; null where one is missing or not positive. */
+export function arrowRates(plain: PlainNetwork): Map<string, Rational> | null {
+  const rates = new Map<string, Rational>();
+  for (const { from, to, constant } of plain.reactions) {
+    if (constant === null) return null;
+    rates.set(`${from} ${to}`, add(rates.get(`${from} ${to}`) ?? ZERO, constant));
+  }
+  return [...rates.values()].some((rate) => rate.numerator <= 0n) ? null : rates;
 }
 
 /** Product minus reactant amounts of a reaction; amounts that cancel are absent. */

@@ -1,6 +1,7 @@
 import type { HypothesisClaim, Hypothesis, Verdict, Witness } from '@stillroom/shared/cells';
 import type { Network } from '@stillroom/shared/network';
 import type { PlainNetwork } from './plain-network.ts';
+import * as balance from './balance-rules.ts';
 import * as graph from './graph-rules.ts';
 import * as rates from './rate-rules.ts';
 import * as signs from './sign-rules.ts';
@@ -42,4 +43,9 @@ export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'complexes are nested': graph.nested,
   'determinants of one sign': signs.oneSign,
   concordant: signs.concordant,
+  'values given': () => 'it is never said to hold or to fail.',
+  'complex balance condition': balance.complexCondition,
+  'detailed balance condition': balance.detailedCondition,
+  'complex balanced': balance.complexBalanced,
+  'attraction is proven': graph.attractionProven,
 };
