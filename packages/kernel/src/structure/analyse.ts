@@ -19,8 +19,8 @@ import { strongLinkageClasses, terminalFlags } from './strong-linkage-classes.ts
 /** Called between and within steps: share done, what is being done; may throw to end the analysis. */
 export type Checkpoint = (progress?: number, words?: string) => void;
 
-/** Every structural quantity of a network, exact. A null says that the network is too large for a proven answer. */
-export interface Structure {
+/** The classes of a network, its rank and its deficiency; nulls where the network is too large for a proven rank. */
+export interface Figures {
   readonly network: StructuralNetwork;
   readonly linkage: Partition;
   readonly strong: Partition;
@@ -29,17 +29,21 @@ export interface Structure {
   readonly terminalCount: number;
   readonly reversible: boolean;
   readonly weaklyReversible: boolean;
+  readonly laws: ConservationLaws | null;
   readonly rank: number | null;
   readonly deficiency: number | null;
+}
+
+/** Every structural quantity of a network, exact. A null says that the network is too large for a proven answer. */
+export interface Structure extends Figures {
   readonly classes: readonly ClassNumbers[];
-  readonly laws: ConservationLaws | null;
   readonly conservative: Conservative;
   readonly consistent: boolean | null;
   readonly siphons: { readonly siphons: readonly Siphon[]; readonly complete: boolean };
 }
 
-/** Computes the whole structure of a network. Deterministic; work is bounded by counted operations. */
-export function analyse(network: StructuralNetwork, checkpoint: Checkpoint = () => undefined): Structure {
+/** Computes classes, rank with its conservation laws, and deficiency. */
+export function figures(network: StructuralNetwork, checkpoint: Checkpoint = () => undefined): Figures {
   checkpoint(0.02, 'linkage classes');
   const linkage = linkageClasses(network);
   const reversible = isReversible(network);
@@ -48,6 +52,24 @@ export function analyse(network: StructuralNetwork, checkpoint: Checkpoint = () 
   checkpoint(0.1, 'rank and conservation laws');
   const laws = conservationLaws(network, checkpoint);
   const rank = laws?.rank ?? null;
+  return {
+    network,
+    linkage,
+    strong,
+    terminal,
+    terminalCount: terminal.reduce((sum, flag) => sum + flag, 0),
+    reversible,
+    weaklyReversible: strong.count === linkage.count,
+    laws,
+    rank,
+    deficiency: deficiency(network.complexes.count, linkage.count, rank),
+  };
+}
+
+/** Computes the whole structure of a network. Deterministic; work is bounded by counted operations. */
+export function analyse(network: StructuralNetwork, checkpoint: Checkpoint = () => undefined): Structure {
+  const found = figures(network, checkpoint);
+  const { linkage, strong, terminal, laws, rank } = found;
   checkpoint(0.5, 'ranks of the linkage classes');
   const ranks =
     rank === null ? [] : ranksOfClasses(network, linkage, spanningForest(network), rank, checkpoint);
@@ -57,17 +79,8 @@ export function analyse(network: StructuralNetwork, checkpoint: Checkpoint = () 
   const siphons = minimalSiphons(network, checkpoint);
   checkpoint(0.9, 'critical siphons');
   return {
-    network,
-    linkage,
-    strong,
-    terminal,
-    terminalCount: terminal.reduce((sum, flag) => sum + flag, 0),
-    reversible,
-    weaklyReversible: strong.count === linkage.count,
-    rank,
-    deficiency: deficiency(network.complexes.count, linkage.count, rank),
+    ...found,
     classes: classNumbers(linkage, strong, terminal, ranks),
-    laws,
     conservative: laws === null ? { holds: null } : conservative(laws, network.species.length),
     consistent: balanced,
     siphons: { siphons: judgeSiphons(network, siphons.siphons, laws), complete: siphons.complete },

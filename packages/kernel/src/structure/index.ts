@@ -1,5 +1,5 @@
-export { analyse } from './analyse.ts';
-export type { Checkpoint, Structure } from './analyse.ts';
+export { analyse, figures } from './analyse.ts';
+export type { Checkpoint, Figures, Structure } from './analyse.ts';
 export { conservationLaws } from './conservation-laws.ts';
 export type { ConservationLaws } from './conservation-laws.ts';
 export { conservative } from './conservative.ts';
