@@ -32,11 +32,13 @@ export interface InitialValueProblem {
   readonly mostSteps?: number;
 }
 
-const defaultMostSteps = 500_000;
+const defaultMostSteps = 2_000_000;
+/** Where the explicit method was asked for and is held back by stability, it is given up after so many. */
+const mostStiffSteps = 100_000;
 /** Steps between two calls of the checkpoint. */
 const checkpointSteps = 16;
-/** A component beyond this, and this much beyond its start, counts as growing without bound. */
-const growthFactor = 1e6;
+/** A state that grew so much in the later half of the steps counts as growing without bound. */
+const growthFactor = 1e3;
 const eventsAtOneTime = 100;
 
 /** The name under which a system offers the leaves of all its events, in their order. */
@@ -63,6 +65,7 @@ class Run {
   private nextSample = 0;
   private steps = 0;
   private rejected = 0;
+  private sizeAtHalf: number[] = [];
 
   constructor(prepared: PreparedSystem, problem: InitialValueProblem) {
     this.prepared = prepared;
@@ -94,9 +97,10 @@ class Run {
   }
 
   private beforeStep(): StopReason | null {
-    const limit = this.problem.mostSteps ?? defaultMostSteps;
+    const stiff = this.stiffness.suspected && this.problem.method === 'nonstiff';
+    const limit = this.problem.mostSteps ?? (stiff ? mostStiffSteps : defaultMostSteps);
     const tried = this.steps + this.rejected;
-    if (tried >= limit) return { kind: 'too many steps', limit, stiff: this.stiffness.suspected };
+    if (tried >= limit) return { kind: 'too many steps', limit, stiff };
     if (tried % checkpointSteps === 0 && this.problem.checkpoint?.(this.time) === false) {
       return { kind: 'stopped from outside' };
     }
@@ -147,6 +151,7 @@ class Run {
       stepper.accept();
     }
     this.time = firing?.time ?? reached;
+    this.noteSize();
     observe?.(this.time, this.state, false);
     if (firing !== null) return this.jump(firing.events);
     this.considerMethod(stepper);
@@ -270,18 +275,29 @@ class Run {
   }
 
   private tooSmall(infinite = false): StopReason {
-    const { start } = this.problem;
-    let largest = 0;
-    for (const value of start) largest = Math.max(largest, Math.abs(value));
-    let component = -1;
-    let size = growthFactor * Math.max(largest, Number.MIN_VALUE);
+    const { size, component } = this.largest();
+    const before = this.sizeAtHalf[0] ?? size;
+    if (size > growthFactor * before) return { kind: 'growth', component, value: this.state[component]! };
+    return { kind: infinite ? 'not finite' : 'step too small' };
+  }
+
+  /** Remembers how large the state was after 1, 2, 4, 8 … steps, of which the last two are kept. */
+  private noteSize(): void {
+    if ((this.steps & (this.steps - 1)) === 0) {
+      const { size } = this.largest();
+      this.sizeAtHalf = [this.sizeAtHalf.at(-1) ?? size, size];
+    }
+  }
+
+  private largest(): { size: number; component: number } {
+    let component = 0;
+    let size = 0;
     this.state.forEach((value, index) => {
       if (Math.abs(value) <= size) return;
       size = Math.abs(value);
       component = index;
     });
-    if (component >= 0) return { kind: 'growth', component, value: this.state[component]! };
-    return { kind: infinite ? 'not finite' : 'step too small' };
+    return { size, component };
   }
 
   private outcome(stop: StopReason | null): Outcome {
