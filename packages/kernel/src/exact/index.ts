@@ -49,7 +49,7 @@ export type { HermiteForm } from './hermite.ts';
 export { solveLinear } from './linear-programme.ts';
 export type { LinearCondition, LinearOutcome, LinearProgramme } from './linear-programme.ts';
 export { AnnihilationCheck } from './annihilates.ts';
-export { certifiedRank, leftKernel } from './left-kernel.ts';
+export { certifiedRank, leftKernel, modularRanks } from './left-kernel.ts';
 export type { LeftKernel } from './left-kernel.ts';
 export { rowIndex } from './sparse.ts';
 export type { RowIndex, SparseColumns, SparseVector } from './sparse.ts';

@@ -62,6 +62,19 @@ export function certifiedRank(matrix: SparseColumns): number | null {
   return leftKernel(matrix)?.rank ?? null;
 }
 
+/**
+ * Ranks modulo a prime of the parts of a matrix in which columns of different parts share no row: lower bounds of the true
+ * ranks. `part` gives the part of each column. Null where the dense core would be too large.
+ */
+export function modularRanks(matrix: SparseColumns, part: Int32Array, parts: number): Int32Array | null {
+  const field = primeField(0);
+  const kernel = modularLeftKernel(modularColumns(matrix, field.p), field);
+  if (kernel === null) return null;
+  const ranks = new Int32Array(parts);
+  for (const column of kernel.pivotColumns) ranks[part[column]!]!++;
+  return ranks;
+}
+
 function blockLeftKernel(matrix: SparseColumns): LeftKernel | null {
   const check = new AnnihilationCheck(matrix);
   const largest = Math.min(matrix.rowCount, matrix.columnCount);

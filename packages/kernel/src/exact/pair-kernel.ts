@@ -67,7 +67,13 @@ class RatioWalk {
         }
       }
     }
-    return consistent ? this.#vector(queue.slice(0, end).sort()) : null;
+    return consistent ? this.#vector(this.#ascending(end)) : null;
+  }
+
+  /** The rows of the queue in order. */
+  #ascending(end: number): Int32Array {
+    const whole = end === this.#matrix.rowCount;
+    return whole ? Int32Array.from({ length: end }, (_, row) => row) : this.#queue.slice(0, end).sort();
   }
 
   /** Position of the other entry of a column, or -1. */

@@ -1,3 +1,4 @@
+import type { Adjacency } from './adjacency.ts';
 import { adjacencyBy } from './adjacency.ts';
 
 /** Written reactions between complexes of the structural network. */
@@ -25,50 +26,57 @@ export interface ArrowTable {
   readonly reaction: Int32Array;
 }
 
+/** Distinct arrows, the reactions that state them, and the arrows by complex. */
+export interface MergedArrows {
+  readonly arrows: ArrowTable;
+  readonly reactions: KeptReactions;
+  readonly outgoing: Adjacency;
+  readonly incoming: Adjacency;
+}
+
 /**
  * Merges reactions with equal sides into distinct arrows, in order of first writing, and pairs opposite arrows. Linear:
  * reactions are grouped by reactant complex and a stamp per complex finds repeats.
  */
-export function mergeArrows(
-  reactions: WrittenReactions,
-  complexCount: number,
-): { arrows: ArrowTable; reactions: KeptReactions } {
-  const firstOf = firstEqual(reactions, complexCount);
-  const arrowOf = new Int32Array(reactions.count);
+export function mergeArrows(reactions: WrittenReactions, complexCount: number): MergedArrows {
+  const grouped = adjacencyBy(reactions.from, complexCount);
+  const firstOf = firstEqual(reactions, grouped, complexCount);
+  const arrow = new Int32Array(reactions.count);
   const first = new Int32Array(reactions.count);
   let count = 0;
   for (let reaction = 0; reaction < reactions.count; reaction++) {
     if (firstOf[reaction] === reaction) {
       first[count] = reaction;
-      arrowOf[reaction] = count++;
+      arrow[reaction] = count++;
     } else {
-      arrowOf[reaction] = arrowOf[firstOf[reaction]!]!;
+      arrow[reaction] = arrow[firstOf[reaction]!]!;
     }
   }
   const merged = count < reactions.count;
   const pick = (ends: Int32Array) =>
-    merged ? Int32Array.from({ length: count }, (_, arrow) => ends[first[arrow]!]!) : ends;
+    merged ? Int32Array.from({ length: count }, (_, index) => ends[first[index]!]!) : ends;
   const from = pick(reactions.from);
   const to = pick(reactions.to);
-  const arrows: ArrowTable = {
-    count,
-    from,
-    to,
-    reverse: oppositeArrows(from, to, complexCount),
-    reaction: first.subarray(0, count),
+  const outgoing = merged ? adjacencyBy(from, complexCount) : grouped;
+  const incoming = adjacencyBy(to, complexCount);
+  const reverse = oppositeArrows(from, to, outgoing, incoming);
+  return {
+    arrows: { count, from, to, reverse, reaction: first.subarray(0, count) },
+    reactions: { ...reactions, arrow },
+    outgoing,
+    incoming,
   };
-  return { arrows, reactions: { ...reactions, arrow: arrowOf } };
 }
 
 /** For each reaction the first one with the same sides. */
-function firstEqual(reactions: WrittenReactions, complexCount: number): Int32Array {
-  const { offsets, arrows: grouped } = adjacencyBy(reactions.from, complexCount);
+function firstEqual(reactions: WrittenReactions, grouped: Adjacency, complexCount: number): Int32Array {
+  const { offsets, arrows } = grouped;
   const stamp = new Int32Array(complexCount).fill(-1);
   const seen = new Int32Array(complexCount);
   const firstOf = new Int32Array(reactions.count);
   for (let complex = 0; complex < complexCount; complex++) {
     for (let k = offsets[complex]!; k < offsets[complex + 1]!; k++) {
-      const reaction = grouped[k]!;
+      const reaction = arrows[k]!;
       const target = reactions.to[reaction]!;
       if (stamp[target] !== complex) {
         stamp[target] = complex;
@@ -80,9 +88,13 @@ function firstEqual(reactions: WrittenReactions, complexCount: number): Int32Arr
   return firstOf;
 }
 
-function oppositeArrows(from: Int32Array, to: Int32Array, complexCount: number): Int32Array {
-  const outgoing = adjacencyBy(from, complexCount);
-  const incoming = adjacencyBy(to, complexCount);
+function oppositeArrows(
+  from: Int32Array,
+  to: Int32Array,
+  outgoing: Adjacency,
+  incoming: Adjacency,
+): Int32Array {
+  const complexCount = outgoing.offsets.length - 1;
   const stamp = new Int32Array(complexCount).fill(-1);
   const leaving = new Int32Array(complexCount);
   const reverse = new Int32Array(from.length).fill(-1);

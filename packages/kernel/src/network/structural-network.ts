@@ -1,6 +1,5 @@
 import type { ComplexTable, Network } from '@stillroom/shared/network';
 import type { Adjacency } from './adjacency.ts';
-import { adjacencyBy } from './adjacency.ts';
 import type { ArrowTable, KeptReactions } from './merge-arrows.ts';
 import { mergeArrows } from './merge-arrows.ts';
 import { strikeOut } from './strike-out.ts';
@@ -34,16 +33,12 @@ export interface StructuralNetwork {
 /** Builds the structural network of a network; time and space linear in its size. */
 export function structuralNetwork(network: Network): StructuralNetwork {
   const struck = strikeOut(network);
-  const { arrows, reactions } = mergeArrows(struck.reactions, struck.complexes.count);
   return {
     source: network,
     species: struck.species,
     sourceSpecies: struck.sourceSpecies,
     complexes: struck.complexes,
-    reactions,
-    arrows,
-    outgoing: adjacencyBy(arrows.from, struck.complexes.count),
-    incoming: adjacencyBy(arrows.to, struck.complexes.count),
+    ...mergeArrows(struck.reactions, struck.complexes.count),
     reduced: struck.reduced,
     warnings: struck.warnings,
   };

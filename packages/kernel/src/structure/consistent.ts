@@ -20,6 +20,7 @@ const PROGRAMME_ENTRIES = 150_000;
 export function consistent(network: StructuralNetwork, strong: Partition): boolean | null {
   const { between, inside } = splitArrows(network, strong);
   if (between.length === 0) return true;
+  if (someSpeciesOnlyMadeOrUsed(network, between, inside)) return false;
   const laws = leftKernel(stoichiometry(network, inside).matrix);
   if (laws === null) return null;
   const changes = changesOfLaws(network, laws.basis, between);
@@ -39,9 +40,33 @@ function splitArrows(
   strong: Partition,
 ): { between: Int32Array; inside: Int32Array } {
   const { from, to, count } = network.arrows;
-  const arrows = Int32Array.from({ length: count }, (_, arrow) => arrow);
-  const within = (arrow: number) => strong.of[from[arrow]!] === strong.of[to[arrow]!];
-  return { between: arrows.filter((arrow) => !within(arrow)), inside: arrows.filter(within) };
+  const between = new Int32Array(count);
+  const inside = new Int32Array(count);
+  let outer = 0;
+  let inner = 0;
+  for (let arrow = 0; arrow < count; arrow++) {
+    if (strong.of[from[arrow]!] === strong.of[to[arrow]!]) inside[inner++] = arrow;
+    else between[outer++] = arrow;
+  }
+  return { between: between.subarray(0, outer), inside: inside.subarray(0, inner) };
+}
+
+/** The cheapest refutation: a species that no arrow on a cycle changes and that all others change in one sense. */
+function someSpeciesOnlyMadeOrUsed(
+  network: StructuralNetwork,
+  between: Int32Array,
+  inside: Int32Array,
+): boolean {
+  const rising = 1;
+  const falling = 2;
+  const free = 4;
+  const seen = new Uint8Array(network.species.length);
+  const changes = stoichiometry(network, between).matrix;
+  for (let k = 0; k < changes.rows.length; k++) {
+    seen[changes.rows[k]!]! |= changes.values[k]! > 0 ? rising : falling;
+  }
+  for (const species of stoichiometry(network, inside).matrix.rows) seen[species]! |= free;
+  return seen.some((senses) => senses === rising || senses === falling);
 }
 
 /** How each arrow of J changes one law: column of J → change, without zeros. */
