@@ -14,6 +14,8 @@ export interface CellInput {
   readonly digest: string | null;
   /** Its text as digested (`sourceText`). */
   readonly text: string;
+  /** Its text as written, where it differs: for the places of errors and nothing else. */
+  readonly written?: string;
   readonly result?: unknown;
   readonly failed?: CellError;
 }
@@ -25,6 +27,8 @@ export interface CellJob {
   readonly kind: CellKind;
   /** The text as digested: NFC, LF, no trailing blanks; for a readable network its canonical print. */
   readonly text: string;
+  /** The text as written, where it differs: for the places of errors and nothing else. */
+  readonly written?: string;
   readonly settings: CellSettings;
   /** By the name under which the text or the settings speak of the cell. */
   readonly inputs: Readonly<Record<string, CellInput>>;

@@ -1,3 +1,4 @@
+export type { CellError } from '../protocol/messages.ts';
 export type { CellInput, CellJob, CellOutcome, CellSettings, EndedBy } from './cell.ts';
 export { claimSettings, claimVerdicts } from './claim.ts';
 export type { ClaimResult, ClaimSide, ClaimVerdict } from './claim.ts';

@@ -17,7 +17,7 @@ export interface WovenSpan {
 }
 
 /** How far a piece may reach, in UTF-16 units: without bounds, unclosed signs would cost the square of the text. */
-const longest = { math: 10_000, woven: 1000, code: 10_000 } as const;
+const longest = { display: 10_000, math: 1500, woven: 400, code: 2000 } as const;
 
 /**
  * The mathematics that begins at `at`, or null. `$` opens where no blank follows and closes where no blank precedes and
@@ -25,8 +25,10 @@ const longest = { math: 10_000, woven: 1000, code: 10_000 } as const;
  */
 export function mathAt(text: string, at: number): MathSpan | null {
   if (text[at] !== '$') return null;
-  const limit = at + (/\n[ \t]*\n/u.exec(text.slice(at, at + longest.math))?.index ?? longest.math);
-  if (text[at + 1] === '$') {
+  const display = text[at + 1] === '$';
+  const reach = display ? longest.display : longest.math;
+  const limit = at + (/\n[ \t]*\n/u.exec(text.slice(at, at + reach))?.index ?? reach);
+  if (display) {
     const close = text.indexOf('$$', at + 2);
     const tex = close === -1 || close >= limit ? '' : text.slice(at + 2, close).trim();
     return tex === '' ? null : { tex, display: true, to: close + 2 };

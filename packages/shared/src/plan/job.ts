@@ -13,8 +13,11 @@ export type Preparation =
   | { readonly state: 'waiting'; readonly on: readonly string[] }
   | { readonly state: 'blocked'; readonly error: CellError };
 
+const writtenOf = ({ written }: PlannedCell) => (written === undefined ? {} : { written });
+
 function inputFor(cell: PlannedCell, outcome: KnownOutcome | undefined): CellInput {
-  const base = { kind: cell.kind, digest: cell.digest, text: cell.text };
+  const { kind, digest, text } = cell;
+  const base = { kind, digest, text, ...writtenOf(cell) };
   if (cell.problem !== null) return { ...base, failed: { message: 'It cannot be computed.' } };
   if (outcome === undefined) return base;
   return outcome.status === 'ok' ? { ...base, result: outcome.result } : { ...base, failed: outcome.error };
@@ -53,5 +56,5 @@ export function prepareJob(
   }
   if (waiting.length > 0) return { state: 'waiting', on: waiting };
   const { digest, kind, text, settings } = cell;
-  return { state: 'ready', job: { digest, kind, text, settings, inputs } };
+  return { state: 'ready', job: { digest, kind, text, ...writtenOf(cell), settings, inputs } };
 }

@@ -25,6 +25,8 @@ export interface PlannedCell {
   readonly kind: CellKind;
   /** The text as digested. */
   readonly text: string;
+  /** The text as written, where it differs. */
+  readonly written?: string;
   readonly settings: CellSettings;
   /** Ids of the cells it draws on, in order of first mention; names that nothing bears are left out. */
   readonly draws: readonly string[];

@@ -165,6 +165,7 @@ class Planning {
       name: cell.name.normalize('NFC'),
       kind: cell.kind,
       text: own.text,
+      ...(own.text === cell.text ? {} : { written: cell.text }),
       settings: cell.settings,
       draws: inputs.map((input) => input.id),
       inputs,

@@ -1,4 +1,5 @@
 import type { CellKind } from '../cells/kind.ts';
+import { canonicalText } from '../notation/print.ts';
 
 const loneSurrogates = /\p{Surrogate}/gu;
 const trailingBlanks = /[^\S\n]+$/gmu;
@@ -18,5 +19,5 @@ export function plainText(text: string): string {
  */
 export function sourceText(kind: CellKind, text: string): string {
   const plain = plainText(text);
-  return kind === 'network' ? plain : plain;
+  return kind === 'network' ? (canonicalText(plain) ?? plain) : plain;
 }
