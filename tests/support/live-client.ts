@@ -72,6 +72,7 @@ export class LiveClient {
     });
     this.provider.on('sync', () => this.#tell());
     doc.on('update', () => this.#tell());
+    this.provider.awareness.on('change', () => this.#tell());
   }
 
   /** Resolves once the condition holds, asked again after everything heard. */

@@ -5,8 +5,10 @@ import { createEvents } from './events.ts';
 import { createRateLimits } from './http/rate-limit.ts';
 import type { Logger } from './logger.ts';
 import { createAuth } from './modules/auth/index.ts';
+import { createCollaboration } from './modules/collaboration/index.ts';
 import { createGroups, type GroupContents, invitedAddress } from './modules/groups/index.ts';
 import { createPostman } from './modules/mail/index.ts';
+import { createNotebooks, notebooksOfGroup } from './modules/notebooks/index.ts';
 import { createOperator, type QueueSource } from './modules/operator/index.ts';
 import type { ServerModule, Services } from './services.ts';
 
@@ -28,13 +30,15 @@ export async function createServices(config: Config, log: Logger): Promise<Servi
  */
 export function createModules(services: Services): ServerModule[] {
   const contents: GroupContents = {
-    notebooks: async () => [],
+    notebooks: notebooksOfGroup,
     records: async () => [],
   };
   const postman = createPostman(services);
   const auth = createAuth(services, invitedAddress);
   const groups = createGroups(services, contents);
+  const notebooks = createNotebooks(services, async () => []);
+  const collaboration = createCollaboration(services, { readPerson: auth.readPerson });
   const queue: QueueSource = async () => ({ workers: [], waiting: 0, running: 0, groups: [] });
   const operator = createOperator(services, queue);
-  return [postman, auth, groups, operator];
+  return [postman, auth, groups, notebooks, collaboration, operator];
 }

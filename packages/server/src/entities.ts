@@ -3,6 +3,7 @@ import { authEntities } from './modules/auth/index.ts';
 import { fileEntities } from './modules/files/index.ts';
 import { groupEntities } from './modules/groups/index.ts';
 import { mailEntities } from './modules/mail/index.ts';
+import { notebookEntities } from './modules/notebooks/index.ts';
 
 /** Every entity of every module. */
 export const entities: readonly Entity[] = [
@@ -10,4 +11,5 @@ export const entities: readonly Entity[] = [
   ...mailEntities,
   ...authEntities,
   ...groupEntities,
+  ...notebookEntities,
 ];

@@ -18,6 +18,8 @@ export interface DomainEvents {
   };
   /** A letter was put into the outbox. */
   'mail.queued': Record<string, never>;
+  /** A notebook was made with cells in it, none of them computed. */
+  'notebook.created': { readonly notebook: string };
   /** Title, public link, bin: anything about a notebook beside its live document. */
   'notebook.changed': { readonly notebook: string };
   /** A remark on a notebook was written, answered or settled. */

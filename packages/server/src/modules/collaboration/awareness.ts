@@ -1,5 +1,6 @@
 import type { Person } from '@stillroom/shared/contracts';
 import * as decoding from 'lib0/decoding';
+import * as encoding from 'lib0/encoding';
 import {
   Awareness,
   applyAwarenessUpdate,
@@ -19,8 +20,9 @@ interface Change {
 }
 
 /**
- * Who is here and where they are. A connection speaks only for itself: a state names the person who is signed in or nobody,
- * and a client number belongs to the person who used it first.
+ * Who is here and where they are. A connection speaks only for itself: a state names the person who is signed in or
+ * nobody, and a client number belongs to the person who used it first. What else a message holds is passed over:
+ * clients send on what they hear of others.
  */
 export class Presences<Owner extends { readonly person: Person }> {
   readonly #awareness: Awareness;
@@ -42,12 +44,14 @@ export class Presences<Owner extends { readonly person: Person }> {
     return clients.length === 0 ? null : awarenessFrame(encodeAwarenessUpdate(this.#awareness, clients));
   }
 
-  /** Takes a connection's own states; false where it speaks for someone else or is not awareness at all. */
+  /** Takes a connection's own states; false where the message is no awareness at all. */
   take(update: Uint8Array, from: Owner): boolean {
     const entries = readEntries(update);
-    if (entries === null || !entries.every((entry) => this.#isOwn(entry, from))) return false;
-    for (const { client } of entries) this.#owners.set(client, from);
-    applyAwarenessUpdate(this.#awareness, update, from);
+    if (entries === null) return false;
+    const own = entries.filter((entry) => this.#isOwn(entry, from));
+    if (own.length === 0) return true;
+    for (const { client } of own) this.#owners.set(client, from);
+    applyAwarenessUpdate(this.#awareness, writeEntries(own), from);
     return true;
   }
 
@@ -67,10 +71,15 @@ export class Presences<Owner extends { readonly person: Person }> {
     return null;
   }
 
-  #isOwn({ client, state }: Entry, from: Owner): boolean {
+  #isOwn({ client, clock, state }: Entry, from: Owner): boolean {
     const owner = this.#owners.get(client);
-    // After a lost line the same client comes back while its old connection still stands: same person, so it may.
-    if (owner !== undefined && owner.person.id !== from.person.id) return false;
+    if (owner === undefined && state === null) return false;
+    if (owner !== undefined && owner !== from) {
+      // After a lost line the same client comes back while its old connection still stands; what its person's other
+      // windows send on of it is not newer.
+      const known = this.#awareness.meta.get(client)?.clock ?? 0;
+      if (owner.person.id !== from.person.id || clock <= known) return false;
+    }
     // A state without a person is what a client shows before it has said who it is.
     return state?.user === undefined || state.user.id === from.person.id;
   }
@@ -78,6 +87,9 @@ export class Presences<Owner extends { readonly person: Person }> {
 
 interface Entry {
   readonly client: number;
+  readonly clock: number;
+  /** The state as JSON. */
+  readonly text: string;
   readonly state: { readonly user?: { readonly id?: unknown } } | null;
 }
 
@@ -89,15 +101,26 @@ function readEntries(update: Uint8Array): Entry[] | null {
     const entries: Entry[] = [];
     for (let index = 0; index < count; index += 1) {
       const client = decoding.readVarUint(decoder);
-      decoding.readVarUint(decoder);
+      const clock = decoding.readVarUint(decoder);
       const text = decoding.readVarString(decoder);
       if (text.length > stateLength) return null;
       const state: unknown = JSON.parse(text);
       if (state !== null && typeof state !== 'object') return null;
-      entries.push({ client, state: state as Entry['state'] });
+      entries.push({ client, clock, text, state: state as Entry['state'] });
     }
     return decoding.hasContent(decoder) ? null : entries;
   } catch {
     return null;
   }
+}
+
+function writeEntries(entries: readonly Entry[]): Uint8Array {
+  const encoder = encoding.createEncoder();
+  encoding.writeVarUint(encoder, entries.length);
+  for (const { client, clock, text } of entries) {
+    encoding.writeVarUint(encoder, client);
+    encoding.writeVarUint(encoder, clock);
+    encoding.writeVarString(encoder, text);
+  }
+  return encoding.toUint8Array(encoder);
 }

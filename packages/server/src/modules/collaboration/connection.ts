@@ -40,7 +40,6 @@ export class Connection {
   readonly #line: Line;
   readonly #access: Access;
   #open = true;
-  /** Whether the person has been told that they may write. Only `reconsider` decides by it. */
   #edits = false;
   #turn: Promise<void> = Promise.resolve();
   /** Document frames received, and those committed, of this connection. */
@@ -55,6 +54,11 @@ export class Connection {
     this.room = room;
     this.#line = line;
     this.#access = access;
+  }
+
+  /** Whether the person could write when last asked; never decides about a message. */
+  get edits(): boolean {
+    return this.#edits;
   }
 
   /** Comes into the room. */

@@ -100,11 +100,7 @@ export class RoomStore {
 
   #take(notebook: string): Open {
     const known = this.#open.get(notebook);
-    if (known !== undefined) {
-      if (known.timer) clearTimeout(known.timer);
-      known.timer = null;
-      return known;
-    }
+    if (known !== undefined) return known;
     const open: Open = { room: this.#load(notebook), users: 0, timer: null, compacting: null };
     this.#open.set(notebook, open);
     open.room.catch(() => this.#open.delete(notebook));
@@ -126,33 +122,35 @@ export class RoomStore {
       void this.#compact(room, open);
   }
 
+  /** Begins to wait for the room to be idle, unless that is under way. */
   #considerClosing(notebook: string, open: Open): void {
     if (this.#stopping || open.timer !== null || open.users > 0) return;
-    void open.room.then(
-      (room) => {
-        if (!room.empty || open.users > 0 || open.timer !== null) return;
-        open.timer = setTimeout(
-          () => void this.#close(notebook, open, room),
-          this.#options.lingering ?? lingering,
-        );
-        open.timer.unref();
-      },
-      () => undefined,
+    open.timer = setTimeout(
+      () =>
+        void open.room.then(
+          (room) => this.#close(notebook, open, room),
+          () => undefined,
+        ),
+      this.#options.lingering ?? lingering,
     );
+    open.timer.unref();
   }
 
-  /** Puts a room away, unless somebody came in meanwhile. */
+  /** Puts a room away; where somebody came in or something goes on, it stays and is looked at again later. */
   async #close(notebook: string, open: Open, room: Room): Promise<void> {
-    open.timer = null;
-    const unused = () => this.#stopping || (room.empty && open.users === 0);
+    const unused = () => this.#stopping || (room.idle && open.users === 0);
     try {
-      await room.settled();
-      await room.closing();
-      if (room.rows > 0 && unused()) await this.#compact(room, open);
+      if (unused()) {
+        await room.settled();
+        await room.closing();
+        if (room.rows > 0) await this.#compact(room, open);
+      }
     } catch (error) {
       this.#options.failed('A notebook could not be put away cleanly; its log is whole.', error);
     }
-    if (!unused() || this.#open.get(notebook) !== open || open.timer !== null) return;
+    open.timer = null;
+    if (this.#open.get(notebook) !== open) return;
+    if (!unused()) return room.inhabited ? undefined : this.#considerClosing(notebook, open);
     this.#open.delete(notebook);
     room.destroy();
   }

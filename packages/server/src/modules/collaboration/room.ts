@@ -12,8 +12,12 @@ export interface RoomObserver {
   changed?(by: Person | null): void;
   /** Somebody came in and has been sent what the room itself has to send. */
   joined?(connection: Connection): void;
-  /** The room is about to go; the last moment to write down. */
+  /** Whether it still has something to do here: the room stays open meanwhile. */
+  readonly busy?: boolean;
+  /** The room is about to go; the last moment to write down. It may yet stay. */
   closing?(): Promise<void>;
+  /** The room is gone. */
+  closed?(): void;
 }
 
 /** One open notebook: its document, and who is here. */
@@ -41,9 +45,14 @@ export class Room {
     });
   }
 
-  /** Whether nobody is here. */
-  get empty(): boolean {
-    return this.#connections.size === 0;
+  /** Whether anybody is here. */
+  get inhabited(): boolean {
+    return this.#connections.size > 0;
+  }
+
+  /** Whether nobody is here and nothing goes on. */
+  get idle(): boolean {
+    return !this.inhabited && !this.#observers.some(({ busy }) => busy === true);
   }
 
   get connections(): Iterable<Connection> {
@@ -125,7 +134,7 @@ export class Room {
     if (changed) for (const observer of this.#observers) observer.changed?.(null);
   }
 
-  /** Takes a connection's awareness; false where it speaks for someone else. */
+  /** Takes a connection's awareness; false where it is none. */
   present(update: Uint8Array, by: Connection): boolean {
     return this.#presences.take(update, by);
   }
@@ -146,6 +155,7 @@ export class Room {
   }
 
   destroy(): void {
+    for (const observer of this.#observers) observer.closed?.();
     this.#presences.destroy();
     this.doc.destroy();
   }

@@ -1,7 +1,23 @@
 import { NotebookEntity } from './entities/notebook.ts';
 import { RemarkAnswerEntity, RemarkEntity } from './entities/remark.ts';
 
+export { readAuthors } from './authors.ts';
+export { keepFace, keepStates, openingOf, readGroup, readStates, workingNotebooks } from './cell-states.ts';
+export type { CellStanding } from './cell-states.ts';
+export { createNotebook } from './commands/create-notebook.ts';
+export { writeRemark } from './commands/remarks.ts';
+export type { RemarkReview, RemarkWords } from './commands/remarks.ts';
 export { loadDocument, readContent } from './document.ts';
 export type { Queries } from './document.ts';
+export { NotebookEntity } from './entities/notebook.ts';
+export { RemarkEntity } from './entities/remark.ts';
+export { fileNameOf } from './files.routes.ts';
+export { notebooksOfGroup } from './lists.ts';
+export { loadNotebook, loadPublicNotebook } from './load.ts';
+export type { LoadedNotebook } from './load.ts';
+export { createNotebooks } from './module.ts';
+export type { RecordsOf } from './notebook.presenter.ts';
+export { presentRemarks } from './remark.presenter.ts';
+export { remarksOf } from './remarks.routes.ts';
 export { readRole } from './roles.ts';
 export const notebookEntities = [NotebookEntity, RemarkEntity, RemarkAnswerEntity];

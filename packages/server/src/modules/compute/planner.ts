@@ -1,0 +1,362 @@
+import type { Person } from '@stillroom/shared/contracts';
+import { type CellContent, type NotebookContent, readNotebook } from '@stillroom/shared/document';
+import {
+  type KnownOutcome,
+  newPlanMemory,
+  type Plan,
+  type PlannedCell,
+  planNotebook,
+  type Preparation,
+  prepareJob,
+} from '@stillroom/shared/plan';
+import { type CellNotice, limits } from '@stillroom/shared/protocol';
+import type { Connection, Room, RoomObserver } from '../collaboration/index.ts';
+import type { CellStanding } from '../notebooks/index.ts';
+import { noticeOf, type Run } from './cell-state.ts';
+import type { Demand } from './demand.ts';
+import { type CellNews, planFrame } from './notices.ts';
+import type { RunQueue } from './queue.ts';
+import type { Known, ResultStore } from './results.ts';
+import { StateKeeper, type NotebookFile } from './state-keeper.ts';
+
+export interface PlannerOptions {
+  readonly room: Room;
+  readonly results: ResultStore;
+  readonly queue: RunQueue;
+  readonly demand: Demand;
+  readonly file: NotebookFile;
+  readonly failed: (words: string, error: unknown) => void;
+}
+
+/** A cell as it stands, for fair copies and records. */
+export interface StandingCell {
+  readonly content: CellContent;
+  readonly planned: PlannedCell;
+  readonly notice: CellNotice;
+  readonly known: Known | undefined;
+}
+
+const nothing: Plan = { cells: [], byId: new Map(), order: [] };
+
+/**
+ * Keeps the cells of one open notebook computed. Every change makes a new plan at once; what is known by its digest is
+ * shown, what is not is run where somebody who may run is here, and everybody in the room is told of the difference.
+ */
+export class Planner implements RoomObserver {
+  readonly #options: PlannerOptions;
+  readonly #keeper: StateKeeper;
+  readonly #memory = newPlanMemory();
+  #content: NotebookContent = { title: '', subject: 'none', cells: [] };
+  #plan = nothing;
+  readonly #known = new Map<string, Known>();
+  readonly #runs = new Map<string, Run>();
+  /** Digests that somebody asked to have computed, whatever is held or failed. */
+  readonly #asked = new Set<string>();
+  #shown = new Map<string, string>();
+  #said = new Map<string, string>();
+  /** Whether somebody who may run cells has been here since the room opened. */
+  #mayRun = false;
+  #group = '';
+  #opened = false;
+  #dirty = false;
+  #passing: Promise<void> | null = null;
+
+  constructor(options: PlannerOptions) {
+    this.#options = options;
+    this.#keeper = new StateKeeper(options.file, options.room.notebook, options.failed);
+  }
+
+  changed(by: Person | null): void {
+    // Whoever writes may run: the role table gives both or neither.
+    if (by !== null) this.#mayRun = true;
+    this.replan();
+  }
+
+  joined(connection: Connection): void {
+    if (connection.edits && !this.#mayRun) {
+      this.#mayRun = true;
+      this.replan();
+    }
+    if (this.#opened) connection.send(planFrame(true, this.#news(), []));
+  }
+
+  /** Whether a run is awaited or a plan is being made. */
+  get busy(): boolean {
+    return this.#runs.size > 0 || this.#passing !== null;
+  }
+
+  async closing(): Promise<void> {
+    await this.#passing;
+    await this.#keeper.flush();
+  }
+
+  closed(): void {
+    for (const digest of this.#runs.keys()) this.#options.demand.release(digest, this);
+  }
+
+  /** Makes a new plan, after what is under way; several asked for at once become one. */
+  replan(): void {
+    this.#dirty = true;
+    this.#passing ??= new Promise((resolve) => setImmediate(resolve))
+      .then(() => this.#passes())
+      .finally(() => {
+        this.#passing = null;
+      });
+  }
+
+  /** Lets cells that nobody has run yet be computed, as when a notebook has just been made. */
+  run(): void {
+    this.#mayRun = true;
+    this.replan();
+  }
+
+  /** Something may be known under a digest now, or its run has ended without. */
+  resultChanged(digest: string): void {
+    if (!this.#runs.has(digest) && !this.#isPlanned(digest)) return;
+    if (this.#known.get(digest)?.kept === false) this.#known.delete(digest);
+    this.#options.demand.settle(digest, this);
+    this.#runs.delete(digest);
+    this.replan();
+  }
+
+  /** A run has begun or come further. */
+  runMoved(digest: string, run: Run): void {
+    if (!this.#isPlanned(digest) || this.#known.has(digest)) return;
+    this.#runs.set(digest, run);
+    this.#announce();
+  }
+
+  /** Forgets what may have changed while no news came. */
+  afterGap(): void {
+    for (const [digest, known] of this.#known) if (!known.kept) this.#known.delete(digest);
+    this.#runs.clear();
+    this.replan();
+  }
+
+  /**
+   * Brings cells up to date: those named, with what their results stand on, or (null) all that are stale or were
+   * ended. Held cells only where they are named.
+   */
+  async bringUpToDate(named: readonly string[] | null): Promise<void> {
+    await this.settled();
+    const ids = new Set(named ?? this.#plan.cells.filter(({ id }) => !this.#isHeld(id)).map(({ id }) => id));
+    for (const id of ids)
+      for (const { id: input, reads } of this.#plan.byId.get(id)?.inputs ?? [])
+        if (reads === 'result' && !this.#isHeld(input)) ids.add(input);
+    const digests = [...ids].flatMap((id) => this.#plan.byId.get(id)?.digest ?? []);
+    const again = digests.filter((digest) => this.#known.get(digest)?.kept === false);
+    await this.#options.queue.forgive(again);
+    for (const digest of again) {
+      this.#options.results.doubt(digest);
+      this.#known.delete(digest);
+    }
+    for (const digest of digests) if (!this.#known.has(digest)) this.#asked.add(digest);
+    this.replan();
+  }
+
+  /** Stops the run of a cell, where one is under way. */
+  async stop(id: string): Promise<void> {
+    await this.settled();
+    const digest = this.#plan.byId.get(id)?.digest;
+    if (typeof digest === 'string' && this.#runs.has(digest)) await this.#options.queue.end(digest, 'stop');
+  }
+
+  /** Resolves when the plan is that of the present document. */
+  async settled(): Promise<void> {
+    if (!this.#opened) this.replan();
+    while (this.#passing !== null) await this.#passing;
+  }
+
+  /** The cells as they stand, in order, with title and subject. */
+  async standing(): Promise<{ content: NotebookContent; cells: readonly StandingCell[]; plan: Plan }> {
+    await this.settled();
+    const cells = this.#each().map(({ content, planned, known, notice }) => ({
+      content,
+      planned,
+      known,
+      notice,
+    }));
+    return { content: this.#content, cells, plan: this.#plan };
+  }
+
+  /** Whether a digest is that of a cell here, or of the result one shows. */
+  shows(digest: string): boolean {
+    return this.#isPlanned(digest) || [...this.#shown.values()].includes(digest);
+  }
+
+  async #passes(): Promise<void> {
+    try {
+      if (!this.#opened) await this.#open();
+      while (this.#dirty) {
+        this.#dirty = false;
+        await this.#pass();
+      }
+    } catch (error) {
+      this.#options.failed('A notebook could not be planned.', error);
+    }
+  }
+
+  async #open(): Promise<void> {
+    const { group, states } = await this.#keeper.open();
+    this.#group = group;
+    this.#shown = new Map(states.flatMap(({ cell, shown }) => (shown === null ? [] : [[cell, shown]])));
+  }
+
+  async #pass(): Promise<void> {
+    this.#content = readNotebook(this.#options.room.doc);
+    this.#plan = planNotebook(this.#content.cells, this.#memory);
+    this.#letGo();
+    await this.#learn();
+    const submitted = this.#submitReady();
+    if (this.#opened) this.#announce();
+    else this.#announceAll();
+    await submitted;
+  }
+
+  /** Forgets what belongs to digests that no cell has any more. */
+  #letGo(): void {
+    const digests = new Set(this.#plan.cells.map(({ digest }) => digest));
+    for (const digest of this.#runs.keys()) {
+      if (digests.has(digest)) continue;
+      this.#options.demand.release(digest, this);
+      this.#runs.delete(digest);
+    }
+    for (const digest of this.#known.keys()) if (!digests.has(digest)) this.#known.delete(digest);
+    for (const digest of this.#asked) if (!digests.has(digest)) this.#asked.delete(digest);
+  }
+
+  /** Finds out what is known under new digests, and where nobody here may run, what is run elsewhere. */
+  async #learn(): Promise<void> {
+    const { results, queue } = this.#options;
+    const asked = this.#plan.cells.flatMap(({ digest }) => digest ?? []).filter((d) => !this.#known.has(d));
+    if (asked.length === 0) return;
+    for (const [digest, known] of await results.find(asked)) {
+      this.#known.set(digest, known);
+      this.#runs.delete(digest);
+      this.#options.demand.settle(digest, this);
+    }
+    const open = asked.filter((digest) => !this.#known.has(digest) && !this.#runs.has(digest));
+    if (open.length === 0 || (this.#mayRun && this.#opened)) return;
+    for (const [digest, since] of await queue.runs(open))
+      this.#runs.set(digest, { since, share: null, words: null });
+  }
+
+  /** Queues every cell that can be computed now and is to be. */
+  async #submitReady(): Promise<void> {
+    const { queue, demand, room } = this.#options;
+    const submissions: Promise<void>[] = [];
+    for (const id of this.#plan.order) {
+      const planned = this.#plan.byId.get(id);
+      const digest = planned?.digest ?? null;
+      if (planned === undefined || digest === null || this.#isSettled(planned) || this.#runs.has(digest))
+        continue;
+      if (!this.#asked.has(digest) && (!this.#mayRun || this.#isHeld(id))) continue;
+      const preparation = this.#prepare(id);
+      if (preparation.state !== 'ready') continue;
+      this.#runs.set(digest, { since: null, share: null, words: null });
+      demand.want(digest, this);
+      const owner = { group: this.#group, notebook: room.notebook, name: planned.name };
+      submissions.push(queue.submit(preparation.job, owner));
+    }
+    await Promise.all(submissions);
+  }
+
+  /**
+   * Whether a cell needs no run: something is known. What is not kept and no failure stands on what was ended before
+   * it, and is worth nothing once that has been run again.
+   */
+  #isSettled({ digest, inputs }: PlannedCell): boolean {
+    const known = digest === null ? undefined : this.#known.get(digest);
+    if (known === undefined) return false;
+    if (known.kept || known.status === 'failed') return true;
+    const ended = inputs.some(({ id }) => this.#knownOf(id)?.kept === false);
+    if (!ended) this.#known.delete(known.digest);
+    return ended;
+  }
+
+  #prepare(id: string): Preparation {
+    return prepareJob(this.#plan, id, (input) => this.#outcomeOf(input));
+  }
+
+  /** Results themselves are put into the job where it runs; here it only counts that there is one. */
+  #outcomeOf(id: string): KnownOutcome | undefined {
+    const known = this.#knownOf(id);
+    if (known === undefined) return undefined;
+    return known.status === 'ok' ? { status: 'ok', result: null } : { status: 'failed', error: known.error };
+  }
+
+  #knownOf(id: string): Known | undefined {
+    const digest = this.#plan.byId.get(id)?.digest ?? null;
+    return digest === null ? undefined : this.#known.get(digest);
+  }
+
+  #isPlanned(digest: string): boolean {
+    return this.#plan.cells.some((cell) => cell.digest === digest);
+  }
+
+  #isHeld(id: string): boolean {
+    return this.#content.cells.some((cell) => cell.id === id && cell.held !== null);
+  }
+
+  /** Everything there is to say of each cell, in document order. */
+  #each(): (StandingCell & CellNews)[] {
+    return this.#content.cells.flatMap((content) => {
+      const planned = this.#plan.byId.get(content.id);
+      if (planned === undefined) return [];
+      const known = this.#knownOf(content.id);
+      if (known?.status === 'ok') this.#shown.set(content.id, known.digest);
+      const run = planned.digest === null ? undefined : this.#runs.get(planned.digest);
+      const open = known === undefined && run === undefined && planned.problem === null;
+      const preparation = open ? this.#prepare(content.id) : undefined;
+      const shown = this.#shown.get(content.id) ?? null;
+      const notice = noticeOf({ content, planned, known, run, preparation, shown }, this.#plan);
+      const json = known !== undefined && rides(known) ? known.json : null;
+      return { content, planned, known, notice, json };
+    });
+  }
+
+  #news(): CellNews[] {
+    return this.#each();
+  }
+
+  /** Tells everybody what is different from what was said last, and has it written down. */
+  #announce(): void {
+    const all = this.#each();
+    const said = new Map(all.map(({ notice }) => [notice.id, JSON.stringify(notice)]));
+    const news = all.filter(({ notice }) => this.#said.get(notice.id) !== said.get(notice.id));
+    const gone = [...this.#said.keys()].filter((id) => !said.has(id));
+    this.#said = said;
+    for (const id of gone) this.#shown.delete(id);
+    if (news.length > 0 || gone.length > 0) this.#options.room.send(planFrame(false, news, gone), null);
+    this.#keeper.keep(this.#content, all.map(asState));
+  }
+
+  /** The first plan goes whole to everybody who came in before it was made. */
+  #announceAll(): void {
+    const all = this.#each();
+    this.#opened = true;
+    this.#said = new Map(all.map(({ notice }) => [notice.id, JSON.stringify(notice)]));
+    this.#options.room.send(planFrame(true, all, []), null);
+    this.#keeper.keep(this.#content, all.map(asState));
+  }
+}
+
+/** Whether a result rides along in a notice: short ones do, and what a failed run left, since nobody can fetch that. */
+const rides = (known: Known): boolean => !known.kept || (known.json?.length ?? 0) <= limits.inlineResult;
+
+function asState({ content, planned, known, notice }: StandingCell, place: number): CellStanding {
+  const judged = planned.kind === 'claim' && known?.status === 'ok' && known.json !== null;
+  return {
+    cell: content.id,
+    place,
+    kind: planned.kind,
+    name: planned.name,
+    state: notice.state,
+    digest: planned.digest,
+    shown: notice.shown,
+    error: notice.error ?? null,
+    verdict: judged
+      ? ((JSON.parse(known.json) as { verdict?: CellStanding['verdict'] }).verdict ?? null)
+      : null,
+  };
+}

@@ -1,0 +1,177 @@
+import { randomUUID } from 'node:crypto';
+import type { CellInput, CellJob, CellOutcome } from '@stillroom/shared/cells';
+import { limits } from '@stillroom/shared/protocol';
+import { Logger as QueueLogger, run, type Runner as QueueRunner, type TaskList } from 'graphile-worker';
+import pg from 'pg';
+import { describeError, type Logger } from '../../logger.ts';
+import type { Pool } from './pool/index.ts';
+import { lanes, type QueuedJob, type RunQueue } from './queue.ts';
+import type { ResultStore } from './results.ts';
+
+/** Runs that end sooner than this, in milliseconds, are not announced as begun. */
+const worthSaying = 120;
+/** How often runs of processes that are no more are looked for, in milliseconds. */
+const sweeping = 15_000;
+
+export interface RunnerOptions {
+  readonly databaseUrl: string;
+  readonly pool: Pool;
+  /** Workers of the pool. */
+  readonly size: number;
+  readonly queue: RunQueue;
+  readonly results: ResultStore;
+  readonly log: Logger;
+  /** Further tasks, run one at a time beside the lanes. */
+  readonly tasks: TaskList;
+}
+
+/** Takes runs from the queue and has the pool compute them. */
+export class Runner {
+  readonly #options: RunnerOptions;
+  /** Names this process by its connections. */
+  readonly #host = `stillroom engine ${randomUUID()}`;
+  readonly #connections: pg.Pool;
+  readonly #running = new Map<string, AbortController>();
+  #runners: QueueRunner[] = [];
+  #sweeper: NodeJS.Timeout | null = null;
+
+  constructor(options: RunnerOptions) {
+    this.#options = options;
+    this.#connections = new pg.Pool({
+      connectionString: options.databaseUrl,
+      application_name: this.#host,
+      max: 8,
+    });
+    this.#connections.on('error', (error) =>
+      options.log.warn('A connection of the queue was lost.', describeError(error)),
+    );
+  }
+
+  async start(): Promise<void> {
+    const { size, queue, tasks } = this.#options;
+    const compute = (payload: unknown) => this.#compute(payload as QueuedJob);
+    // One worker always stays free of long runs, so that what is answered at once has its turn.
+    const long = Math.max(1, size - 1);
+    this.#runners = [
+      await this.#serve({ [lanes.long]: compute }, long),
+      await this.#serve({ [lanes.quick]: compute }, size + 1),
+    ];
+    if (Object.keys(tasks).length > 0) this.#runners.push(await this.#serve(tasks, 1));
+    await queue.sweep();
+    this.#sweeper = setInterval(
+      () =>
+        void queue.sweep().catch((error: unknown) => this.#complain('The queue could not be swept.', error)),
+      sweeping,
+    );
+    this.#sweeper.unref();
+  }
+
+  /** Ends a run of this process; one of another is none of its business. */
+  end(digest: string, by: 'stop' | 'unwanted'): void {
+    this.#running.get(digest)?.abort(by);
+  }
+
+  /** Lets go of everything under way: it is queued again by whoever still needs it. */
+  async stop(): Promise<void> {
+    if (this.#sweeper !== null) clearInterval(this.#sweeper);
+    for (const controller of this.#running.values()) controller.abort('unwanted');
+    await Promise.all(this.#runners.map((runner) => runner.stop()));
+    await this.#connections.end();
+  }
+
+  #serve(taskList: TaskList, concurrency: number): Promise<QueueRunner> {
+    return run({
+      pgPool: this.#connections,
+      taskList,
+      concurrency,
+      noHandleSignals: true,
+      pollInterval: 2000,
+      logger: this.#queueLogger(),
+    });
+  }
+
+  async #compute(queued: QueuedJob): Promise<void> {
+    const { queue, results } = this.#options;
+    const { digest } = queued.job;
+    if (!(await queue.begin(digest, this.#host))) return;
+    const controller = new AbortController();
+    this.#running.set(digest, controller);
+    const began = performance.now();
+    const outcome = await this.#run(queued, controller.signal).catch((error: unknown) => this.#broken(error));
+    const took = performance.now() - began;
+    this.#running.delete(digest);
+    if (controller.signal.reason !== 'unwanted') {
+      const json = outcome.result === undefined ? null : JSON.stringify(outcome.result);
+      await queue.keep(queued.job, outcome, json, took);
+      results.learn(queued.job, outcome, json, took);
+    }
+    await queue.close(digest, took);
+  }
+
+  async #run(queued: QueuedJob, signal: AbortSignal): Promise<CellOutcome> {
+    const { pool } = this.#options;
+    const job = await this.#withResults(queued);
+    if (job === null) return missing;
+    const since = new Date();
+    const say = (share: number | null, words: string | null) =>
+      void this.#options.queue
+        .move(job.digest, since.toISOString(), share, words)
+        .catch((error: unknown) => this.#complain('Progress could not be told.', error));
+    const begun = setTimeout(() => say(null, null), worthSaying);
+    try {
+      return await pool.run(job, {
+        deadline: limits.deadlineUsual,
+        owner: queued.group,
+        signal,
+        onProgress: ({ share, words }) => say(share ?? null, words ?? null),
+      });
+    } finally {
+      clearTimeout(begun);
+    }
+  }
+
+  /** Puts the results of its inputs back into a job; null where one is not there any more. */
+  async #withResults({ job, results: names }: QueuedJob): Promise<CellJob | null> {
+    const inputs: Record<string, CellInput> = { ...job.inputs };
+    for (const name of names) {
+      const input = inputs[name];
+      const digest = input?.digest ?? null;
+      const text = digest === null ? null : await this.#options.results.text(digest);
+      if (input === undefined || text === null) return null;
+      inputs[name] = { ...input, result: JSON.parse(text) as unknown };
+    }
+    return { ...job, inputs };
+  }
+
+  #broken(error: unknown): CellOutcome {
+    this.#complain('A run broke off.', error);
+    return {
+      status: 'failed',
+      error: {
+        message: 'The engine could not run this cell.',
+        hint: 'Bring it up to date to try again; the operator finds the cause in the log.',
+      },
+      warnings: [],
+      keep: false,
+    };
+  }
+
+  #complain(words: string, error: unknown): void {
+    this.#options.log.error(words, describeError(error));
+  }
+
+  /** The queue's own lines: only what went wrong. */
+  #queueLogger(): QueueLogger {
+    return new QueueLogger(() => (level, message) => {
+      if (level === 'error') this.#options.log.error(`Queue: ${message}`);
+      else if (level === 'warning') this.#options.log.warn(`Queue: ${message}`);
+    });
+  }
+}
+
+const missing: CellOutcome = {
+  status: 'failed',
+  error: { message: 'A result it draws on is not there any more.', hint: 'Bring it up to date.' },
+  warnings: [],
+  keep: false,
+};
