@@ -1,25 +1,42 @@
-/** Elementary functions for results. */
+import { exp } from './elementary/exponential.ts';
+import { cosh, sinh, tanh } from './elementary/hyperbolic.ts';
+import { acos, asin, atan } from './elementary/inverse-trigonometric.ts';
+import { ln, log10 } from './elementary/logarithm.ts';
+import { hill, pow } from './elementary/power.ts';
+import { cos, sin, tan } from './elementary/trigonometric.ts';
+
+/** The nearest integer, halves to the even one. */
+function round(x: number): number {
+  if (!Number.isFinite(x) || Math.abs(x) >= 2 ** 52) return x;
+  const below = Math.floor(x);
+  const rest = x - below;
+  const isUp = rest > 0.5 || (rest === 0.5 && below % 2 !== 0);
+  const nearest = isUp ? below + 1 : below;
+  return nearest === 0 && x < 0 ? -0 : nearest;
+}
+
+/**
+ * The functions of results, from + - * / and square roots alone: IEEE 754 fixes every bit of them, where the functions of
+ * `Math` may change with the machine and its version. Errors are below one unit in the last place.
+ */
 export const elementary = {
-  exp: Math.exp,
-  ln: Math.log,
-  log10: Math.log10,
-  pow: Math.pow,
-  sqrt: Math.sqrt,
-  abs: Math.abs,
-  sin: Math.sin,
-  cos: Math.cos,
-  tan: Math.tan,
-  sinh: Math.sinh,
-  cosh: Math.cosh,
-  tanh: Math.tanh,
-  asin: Math.asin,
-  acos: Math.acos,
-  atan: Math.atan,
-  floor: Math.floor,
-  ceil: Math.ceil,
-  round: (x: number): number => Math.round(x),
-  hill: (x: number, k: number, n: number): number => {
-    const a = Math.pow(x, n);
-    return a / (Math.pow(k, n) + a);
-  },
-};
+  exp,
+  ln,
+  log10,
+  pow,
+  sqrt: (x: number): number => Math.sqrt(x),
+  abs: (x: number): number => Math.abs(x),
+  sin,
+  cos,
+  tan,
+  asin,
+  acos,
+  atan,
+  sinh,
+  cosh,
+  tanh,
+  floor: (x: number): number => Math.floor(x),
+  ceil: (x: number): number => -Math.floor(-x),
+  round,
+  hill,
+} as const;
