@@ -81,13 +81,12 @@ async function tellWhereItRuns() {
 function welcome({ port: at, demo }) {
   tell();
   tell(`  Stillroom is ready at ${address(at)}`);
-  if (demo.length > 0) {
+  if (demo !== null) {
     tell();
     tell('  Demo accounts:');
-    for (const { role, email, password, link } of demo) {
-      const how = link === undefined ? `${email}   ${password}` : `${address(at)}${link}`;
-      tell(`    ${role.padEnd(10)} ${how}`);
-    }
+    for (const { role, email, password } of demo.accounts)
+      tell(`    ${role.padEnd(9)} ${email.padEnd(34)} ${password}`);
+    if (demo.review !== null) tell(`    ${'reviewer'.padEnd(9)} ${address(at)}${demo.review}`);
   }
   tell();
   tell('  Ctrl-C stops everything.');

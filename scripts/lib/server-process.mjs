@@ -4,7 +4,7 @@ import { Complaint } from './words.mjs';
 
 /**
  * Starts a server process and waits until it answers.
- * @returns {Promise<{ port: number | null, demo: object[], ended: Promise<number>, stop(): Promise<void> }>}
+ * @returns {Promise<{ port: number | null, demo: object | null, ended: Promise<number>, stop(): Promise<void> }>}
  */
 export function startServerProcess(env, nodeArguments = ['packages/server/dist/main.js']) {
   const child = spawn(process.execPath, nodeArguments, {
@@ -24,7 +24,7 @@ export function startServerProcess(env, nodeArguments = ['packages/server/dist/m
   return new Promise((resolve, reject) => {
     child.on('error', reject);
     child.on('message', (message) => {
-      if (message.ready) resolve({ port: message.port, demo: message.demo ?? [], ended, stop });
+      if (message.ready) resolve({ port: message.port, demo: message.demo ?? null, ended, stop });
     });
     // What went wrong it has said already, on our standard error.
     ended.then(() => reject(new Complaint('The server did not start.')));

@@ -1,6 +1,6 @@
 import { ConfigError, readConfig } from './config/index.ts';
 import { createLogger, describeError } from './logger.ts';
-import { readSettings } from './modules/auth/index.ts';
+import { needDemo } from './demo/index.ts';
 import { startServer } from './server.ts';
 
 /** What the process that started us hears through its channel; a plain start has none. */
@@ -13,8 +13,8 @@ try {
   const log = createLogger(config.LOG_LEVEL);
   const running = await startServer(config, log);
   log.info(running.port === null ? 'Computing.' : `Listening on ${config.HOST}:${running.port}.`);
-  const { demo } = await readSettings(running.services.database.manager);
-  tell({ ready: true, port: running.port, demo: config.DEMO ? demo : [] });
+  const demo = config.DEMO ? await needDemo(running.services) : null;
+  tell({ ready: true, port: running.port, demo });
 
   let stopping = false;
   const stop = (): void => {

@@ -46,6 +46,8 @@ export interface SessionView {
   readonly signUp: 'open' | 'invitation';
   /** Seeded accounts, shown at sign-in on a demo installation only. */
   readonly demo: readonly { readonly email: string; readonly password: string; readonly role: string }[];
+  /** Path of a seeded reviewer's link, on a demo installation only, once its record is frozen. */
+  readonly demoReview?: string;
 }
 
 /** GET /api/account */

@@ -18,8 +18,9 @@ export function sessionRoutes(services: Services, authenticator: passport.Authen
       limit: 'reading',
       who: 'anyone',
       async handle({ person, manager }): Promise<SessionView> {
-        const { signUp, demo } = await readSettings(manager);
-        return { me: person, signUp, demo: services.config.DEMO ? demo : [] };
+        const { signUp, demo, demoReview } = await readSettings(manager);
+        if (!services.config.DEMO) return { me: person, signUp, demo: [] };
+        return { me: person, signUp, demo, ...(demoReview === null ? {} : { demoReview }) };
       },
     }),
   );

@@ -4,11 +4,13 @@ import type { EntityManager } from 'typeorm';
 /** What the operator changes while the installation runs; kept in the database. */
 export interface InstallationSettings {
   readonly signUp: SessionView['signUp'];
-  /** Seeded accounts and links of a demo installation. */
+  /** Seeded accounts of a demo installation. */
   readonly demo: SessionView['demo'];
+  /** Path of the seeded reviewer's link. */
+  readonly demoReview: string | null;
 }
 
-const usual: InstallationSettings = { signUp: 'invitation', demo: [] };
+const usual: InstallationSettings = { signUp: 'invitation', demo: [], demoReview: null };
 
 /** All settings, with the usual value where none was chosen. */
 export async function readSettings(manager: EntityManager): Promise<InstallationSettings> {
