@@ -30,6 +30,8 @@ export interface OdeSystem {
   /** Writes the entries of ∂f/∂y in the order of `pattern`. */
   readonly jacobian: readonly Tape[];
   readonly pattern: SparsePattern;
+  /** Whether f depends on the time, smoothly or not. */
+  readonly timeDependent: boolean;
   /** Writes ∂f/∂t; null where f does not depend on the time. */
   readonly timeDerivative: readonly Tape[] | null;
   /** Further functions of state and time, by name: event functions, outputs. */

@@ -37,6 +37,8 @@ const defaultMostSteps = 2_000_000;
 const mostStiffSteps = 100_000;
 /** Steps between two calls of the checkpoint. */
 const checkpointSteps = 16;
+/** Steps after which "auto" looks at the rates anew. */
+const rateSteps = 8;
 /** A state that grew so much in the later half of the steps counts as growing without bound. */
 const growthFactor = 1e3;
 const eventsAtOneTime = 100;
@@ -65,6 +67,7 @@ class Run {
   private nextSample = 0;
   private steps = 0;
   private rejected = 0;
+  private fastestRate = 0;
   private sizeAtHalf: number[] = [];
 
   constructor(prepared: PreparedSystem, problem: InitialValueProblem) {
@@ -154,7 +157,7 @@ class Run {
     this.noteSize();
     observe?.(this.time, this.state, false);
     if (firing !== null) return this.jump(firing.events);
-    this.considerMethod(stepper);
+    this.considerMethod(stepper, h);
     this.recordHere();
     return null;
   }
@@ -191,9 +194,15 @@ class Run {
   }
 
   /** Changes between the methods where "auto" was asked for and it pays. */
-  private considerMethod(stepper: Stepper): void {
-    const change = this.stiffness.afterStep(this.kind, stepper.stiffness());
-    if (this.problem.method !== 'auto' || change === this.kind) return;
+  private considerMethod(stepper: Stepper, h: number): void {
+    const { method } = this.problem;
+    if (method === 'stiff') return;
+    if (this.steps % rateSteps === 0) {
+      this.fastestRate = this.prepared.fastestRate(this.time, this.prepared.common.state);
+      this.counters.jacobians++;
+    }
+    const change = this.stiffness.afterStep(this.kind, h * this.fastestRate, stepper.stiffness?.() ?? 0);
+    if (method === 'nonstiff' || change === this.kind) return;
     this.kind = change;
     const next = this.current();
     next.stepper.restart();

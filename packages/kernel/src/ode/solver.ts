@@ -2,7 +2,7 @@ import { assemble, type Assembly, type Backend, type Routine } from '../program/
 import { methods } from './methods/registry.ts';
 import type { Counters, Stepper } from './methods/method.ts';
 import type { MethodKind } from './methods/registry.ts';
-import { parameterSlot, timeSlot, type OdeSystem } from './problem.ts';
+import { type OdeSystem, parameterSlot, type SparsePattern, timeSlot } from './problem.ts';
 import { type CommonWorkspace, commonWorkspace, Layout } from './workspace.ts';
 
 /** A system made ready: memory, routines and methods, to be run any number of times. */
@@ -19,6 +19,8 @@ export interface PreparedSystem {
   setParameter(index: number, value: number): void;
   /** f(t, y) into `out`; both are slots of vectors in memory. */
   rightHandSide(time: number, state: number, out: number): void;
+  /** The largest entry on the diagonal of ∂f/∂y at a time and a state (a slot): about the fastest rate of decay. */
+  fastestRate(time: number, state: number): number;
   /** The value of one of the system's functions at a time and a state (a slot); the array is reused by the next call. */
   evaluate(name: string, time: number, state: number): Float64Array;
 }
@@ -37,6 +39,7 @@ export function prepareSystem(
     (memory) => {
       const routines = new Map<string, Routine>([
         ['rightHandSide', { kind: 'straight', tapes: system.rightHandSide }],
+        ['jacobian', { kind: 'straight', tapes: system.jacobian }],
       ]);
       for (const { name, tapes } of system.functions)
         routines.set(`function.${name}`, { kind: 'straight', tapes });
@@ -49,6 +52,8 @@ export function prepareSystem(
   );
   const { memory } = assembly;
   const rightHandSide = assembly.routine('rightHandSide');
+  const jacobian = assembly.routine('jacobian');
+  const diagonal = diagonalEntries(system.pattern);
   const functions = new Map(
     system.functions.map(({ name, length }) => {
       const place = common.functions.get(name)!;
@@ -75,6 +80,13 @@ export function prepareSystem(
       memory[timeSlot] = time;
       rightHandSide(state, out);
     },
+    fastestRate(time, state) {
+      memory[timeSlot] = time;
+      jacobian(state, common.jacobian);
+      let fastest = 0;
+      for (const entry of diagonal) fastest = Math.max(fastest, Math.abs(memory[common.jacobian + entry]!));
+      return fastest;
+    },
     evaluate(name, time, state) {
       const entry = functions.get(name);
       if (entry === undefined) throw new Error(`The system has no function "${name}".`);
@@ -83,4 +95,14 @@ export function prepareSystem(
       return entry.values;
     },
   };
+}
+
+/** Places of the diagonal among the entries of a pattern. */
+function diagonalEntries({ size, rowStart, columns }: SparsePattern): Int32Array {
+  const entries: number[] = [];
+  for (let i = 0; i < size; i++) {
+    const entry = columns.indexOf(i, rowStart[i]);
+    if (entry >= 0 && entry < rowStart[i + 1]!) entries.push(entry);
+  }
+  return Int32Array.from(entries);
 }

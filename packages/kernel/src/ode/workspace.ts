@@ -52,6 +52,8 @@ export interface CommonWorkspace {
   readonly absoluteTolerance: number;
   /** A state between steps, for outputs and events. */
   readonly between: number;
+  /** Entries of ∂f/∂y in the order of its pattern. */
+  readonly jacobian: number;
   /** Where each further function of the system writes. */
   readonly functions: ReadonlyMap<string, number>;
 }
@@ -65,6 +67,7 @@ export function commonWorkspace(system: OdeSystem, layout: Layout): CommonWorksp
     stage: vector(),
     absoluteTolerance: vector(),
     between: vector(),
+    jacobian: layout.region(system.pattern.columns.length),
     functions: new Map(system.functions.map(({ name, length }) => [name, layout.region(length)])),
   };
 }

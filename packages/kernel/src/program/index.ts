@@ -4,5 +4,5 @@ export { gradient } from './derivative.ts';
 export { Graph, spaces } from './graph.ts';
 export type { Node, Space } from './graph.ts';
 export { hostNumber } from './host-functions.ts';
-export { makeTape, makeTapes } from './tape.ts';
+export { makeTape, makeTapes, readsSlot } from './tape.ts';
 export type { Output, Tape } from './tape.ts';

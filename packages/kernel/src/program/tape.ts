@@ -1,4 +1,4 @@
-import { type Graph, type Node, operands, operations, type Space } from './graph.ts';
+import { type Graph, type Node, operands, operations, type Space, spaces } from './graph.ts';
 
 /** A number that a routine writes: the value of `node` goes to `slot` of `space`. */
 export interface Output {
@@ -51,6 +51,14 @@ export function makeTapes(graph: Graph, outputs: readonly Output[], limit: numbe
   }
   if (group.length > 0) tapes.push(renumber(graph, group, nodes));
   return tapes;
+}
+
+/** Whether a tape reads a fixed slot. */
+export function readsSlot(tape: Tape, slot: number): boolean {
+  return tape.operation.some(
+    (operation, node) =>
+      operation === operations.load && tape.left[node] === slot && tape.right[node] === spaces.fixed,
+  );
 }
 
 /** The nodes that `outputs` need and that do not yet bear the mark `epoch`, which they get. */

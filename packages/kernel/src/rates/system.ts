@@ -1,5 +1,19 @@
-import { parameterSlot, type OdeSystem, type SparsePattern, type SystemFunction } from '../ode/problem.ts';
-import { gradient, type Graph, makeTapes, type Node, type Output, spaces } from '../program/index.ts';
+import {
+  parameterSlot,
+  timeSlot,
+  type OdeSystem,
+  type SparsePattern,
+  type SystemFunction,
+} from '../ode/problem.ts';
+import {
+  gradient,
+  type Graph,
+  makeTapes,
+  type Node,
+  type Output,
+  readsSlot,
+  spaces,
+} from '../program/index.ts';
 import { type Change, type RateEquations, slopesOf, type Term } from './equations.ts';
 
 /** About how many operations one routine holds; longer ones are slow to compile. */
@@ -25,15 +39,17 @@ export function odeSystem(
   const dimension = equations.variables.length * (1 + sensitiveTo.length);
   const terms = [...equations.terms, ...sensitivityTerms(equations, sensitiveTo)];
   const { pattern, entries } = jacobian(graph, terms, dimension);
+  const rightHandSide = tapes(
+    graph,
+    sums(graph, terms, dimension, ({ rate }) => rate),
+  );
   return {
     dimension,
     parameters: equations.parameterValues.length,
-    rightHandSide: tapes(
-      graph,
-      sums(graph, terms, dimension, ({ rate }) => rate),
-    ),
+    rightHandSide,
     jacobian: tapes(graph, entries),
     pattern,
+    timeDependent: rightHandSide.some((tape) => readsSlot(tape, timeSlot)),
     timeDerivative: timeDerivative(equations, terms, dimension),
     functions: functions.map<SystemFunction>(({ name, nodes }) => ({
       name,

@@ -1,38 +1,34 @@
-import { elementary } from '@stillroom/shared/expression';
 import { clamp, type Controller } from './controller.ts';
+import { fifthRoot } from './fifth-root.ts';
 
 const safety = 0.9;
 const leastFactor = 0.2;
 const mostFactor = 10;
 
 /**
- * Predictive control for stiff methods: besides h · safety · e^(−1/q) it follows the trend of the last two steps,
- * h · (h/h_old) · (e_old/e²)^(1/q) · safety, and takes the smaller (Gustafsson 1994; Hairer, Wanner, Solving Ordinary
- * Differential Equations II, IV.8).
+ * Predictive control for stiff methods whose error is of order h^5: besides h · safety · e^(−1/5) it follows the trend of
+ * the last two steps, h · safety · (h/h_old) · (e_old/e²)^(1/5), and takes the smaller (Gustafsson 1994; Hairer, Wanner,
+ * Solving Ordinary Differential Equations II, IV.8).
  */
-export function predictive(power: number): Controller {
-  const exponent = 1 / power;
+export function predictive(): Controller {
   let oldStep = 0;
-  let oldError = 0;
+  let oldRoot = 0;
   let rejected = false;
-  const bounded = (factor: number): number => clamp(factor / safety, 1 / mostFactor, 1 / leastFactor);
+  const bounded = (factor: number): number => clamp(safety * factor, leastFactor, mostFactor);
   return {
     accept(h, error) {
-      let factor = bounded(elementary.pow(error, exponent));
-      if (oldStep > 0) {
-        const trend = (oldStep / h) * elementary.pow((error * error) / oldError, exponent);
-        factor = Math.max(factor, bounded(trend));
-      }
+      const root = fifthRoot(error);
+      let factor = bounded(1 / root);
+      if (oldStep > 0) factor = Math.min(factor, bounded(((h / oldStep) * oldRoot) / (root * root)));
       oldStep = h;
-      oldError = Math.max(error, 0.01);
-      const next = h / factor;
-      const step = rejected ? Math.min(next, h) : next;
+      oldRoot = fifthRoot(Math.max(error, 0.01));
+      const step = h * (rejected ? Math.min(factor, 1) : factor);
       rejected = false;
       return step;
     },
     reject(h, error) {
       rejected = true;
-      return h / bounded(elementary.pow(error, exponent));
+      return h * bounded(1 / fifthRoot(error));
     },
     reset() {
       oldStep = 0;

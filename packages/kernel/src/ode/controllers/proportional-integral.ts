@@ -1,35 +1,34 @@
-import { elementary } from '@stillroom/shared/expression';
 import { clamp, type Controller } from './controller.ts';
+import { fifthRoot } from './fifth-root.ts';
 
-const stabilisation = 0.04;
 const safety = 0.9;
 const leastFactor = 0.2;
 const mostFactor = 10;
+/** Errors below this count as this, so that one lucky step does not decide the next. */
+const leastError = 1e-4;
 
 /**
- * h' = h · safety · e^(−α) · e_old^β with β = 0.04 and α = 1/q − 3β/4, q the power of h in the error (Gustafsson 1991;
- * constants of Hairer, Nørsett, Wanner, Solving Ordinary Differential Equations I, IV.2).
+ * PI control for methods whose error is of order h^5: h' = h · safety · e^(−3/25) · e_old^(1/25) (the controller PI.4.2:
+ * Söderlind, Wang 2006; Gustafsson 1991).
  */
-export function proportionalIntegral(power: number): Controller {
-  const exponent = 1 / power - stabilisation * 0.75;
-  let oldError = 1e-4;
+export function proportionalIntegral(): Controller {
+  let oldError = 1;
   let rejected = false;
   return {
     accept(h, error) {
-      const raw = elementary.pow(error, exponent) / elementary.pow(oldError, stabilisation);
-      const factor = clamp(raw / safety, 1 / mostFactor, 1 / leastFactor);
-      oldError = Math.max(error, 1e-4);
-      const next = h / factor;
-      const step = rejected ? Math.min(next, h) : next;
+      const least = Math.max(error, leastError);
+      const factor = safety * fifthRoot(fifthRoot(oldError / (least * least * least)));
+      oldError = least;
+      const step = h * clamp(factor, leastFactor, rejected ? 1 : mostFactor);
       rejected = false;
       return step;
     },
     reject(h, error) {
       rejected = true;
-      return h / Math.min(1 / leastFactor, elementary.pow(error, exponent) / safety);
+      return h * clamp(safety / fifthRoot(error), leastFactor, 1);
     },
     reset() {
-      oldError = 1e-4;
+      oldError = 1;
       rejected = false;
     },
   };

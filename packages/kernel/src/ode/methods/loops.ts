@@ -1,13 +1,55 @@
-import { Graph, makeTape, type Node, type Output, type Routine, spaces } from '../../program/index.ts';
+import {
+  Graph,
+  makeTape,
+  type Node,
+  type Output,
+  type Routine,
+  type Space,
+  spaces,
+} from '../../program/index.ts';
 
-/** Builds the tape of one turn of a loop over the components of vectors, given by their first slots. */
-export class VectorLoop {
-  readonly graph = new Graph();
-  private readonly outputs: Output[] = [];
+/** Up to this dimension loops over components are written out. */
+const unrolledDimension = 12;
 
-  /** The component of the vector that begins at `region`. */
+/**
+ * A routine that does the same for every component of vectors: `body` describes it for one component. Short vectors
+ * are unrolled, which does the same operations in the same order.
+ */
+export function forEachComponent(dimension: number, body: (component: Component) => void): Routine {
+  const graph = new Graph();
+  const sums = new Map<number, Node>();
+  const written: Output[] = [];
+  if (dimension > unrolledDimension) {
+    const component = new Component(graph, spaces.first, 0, sums, written);
+    body(component);
+    return { kind: 'loop', tape: makeTape(graph, [...written, ...sumOutputs(sums)]), count: dimension };
+  }
+  for (let i = 0; i < dimension; i++) body(new Component(graph, spaces.fixed, i, sums, written));
+  return { kind: 'straight', tapes: [makeTape(graph, [...written, ...sumOutputs(sums)])] };
+}
+
+function sumOutputs(sums: ReadonlyMap<number, Node>): Output[] {
+  return [...sums].map(([slot, node]) => ({ node, slot, space: spaces.fixed }));
+}
+
+/** One component of vectors that are given by their first slots. */
+export class Component {
+  readonly graph: Graph;
+  private readonly space: Space;
+  private readonly offset: number;
+  private readonly sums: Map<number, Node>;
+  private readonly written: Output[];
+
+  constructor(graph: Graph, space: Space, offset: number, sums: Map<number, Node>, written: Output[]) {
+    this.graph = graph;
+    this.space = space;
+    this.offset = offset;
+    this.sums = sums;
+    this.written = written;
+  }
+
   at(region: number): Node {
-    return this.graph.load(region, spaces.first);
+    return this.graph.load(region + this.offset, this.space);
   }
 
   scalar(slot: number): Node {
@@ -25,12 +67,12 @@ export class VectorLoop {
   }
 
   write(region: number, node: Node): void {
-    this.outputs.push({ node, slot: region, space: spaces.first });
+    this.written.push({ node, slot: region + this.offset, space: this.space });
   }
 
-  /** slot += node over all turns; the caller sets the slot to 0 before. */
+  /** slot += node over all components; the caller sets the slot to 0 before. */
   accumulate(slot: number, node: Node): void {
-    this.outputs.push({ node: this.graph.add(this.graph.load(slot), node), slot, space: spaces.fixed });
+    this.sums.set(slot, this.graph.add(this.sums.get(slot) ?? this.graph.load(slot), node));
   }
 
   /** atol + rtol · max(|a|, |b|). */
@@ -38,10 +80,6 @@ export class VectorLoop {
     const { graph } = this;
     const size = graph.max(graph.abs(a), graph.abs(b));
     return graph.add(this.at(absoluteTolerance), graph.multiply(this.scalar(relativeToleranceSlot), size));
-  }
-
-  routine(dimension: number): Routine {
-    return { kind: 'loop', tape: makeTape(this.graph, this.outputs), count: dimension };
   }
 }
 

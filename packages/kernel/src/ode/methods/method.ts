@@ -20,8 +20,8 @@ export interface Stepper {
   interpolate(theta: number, out: Float64Array): void;
   /** Makes `next` the state. */
   accept(): void;
-  /** h times the size of the fastest rate, as far as the last step tells; decides between explicit and implicit. */
-  stiffness(): number;
+  /** h|λ| as far as the stages of the last step show it; a method for stiff systems has no need of it. */
+  stiffness?(): number;
 }
 
 /** An integration method: its facts, its memory, its routines, and itself at work. */

@@ -15,11 +15,11 @@ export const dormandPrinceMethod: Method = {
   denseOrder: 4,
   stiff: false,
   errorPower: 5,
-  controller: () => proportionalIntegral(5),
+  controller: proportionalIntegral,
   prepare(system, common, layout) {
     const own = explicitWorkspace(system, layout);
     return {
-      routines: () => explicitRoutines(common, own),
+      routines: () => explicitRoutines(system, common, own),
       stepper: (assembly, counters) => stepper(common, own, assembly, counters),
     };
   },

@@ -1,12 +1,16 @@
-import type { Call, Routine } from '../../../program/index.ts';
-import { timeSlot } from '../../problem.ts';
+import type { Call, Node, Routine } from '../../../program/index.ts';
+import { timeSlot, type OdeSystem } from '../../problem.ts';
 import { type CommonWorkspace, slots } from '../../workspace.ts';
-import { setTime, VectorLoop } from '../loops.ts';
+import { type Component, forEachComponent, setTime } from '../loops.ts';
 import { dormandPrince } from './tableau.ts';
 import type { ExplicitWorkspace } from './workspace.ts';
 
 /** "dormandPrince.first" computes the slope at the state, "dormandPrince.attempt" the other stages and the error. */
-export function explicitRoutines(common: CommonWorkspace, own: ExplicitWorkspace): Map<string, Routine> {
+export function explicitRoutines(
+  system: OdeSystem,
+  common: CommonWorkspace,
+  own: ExplicitWorkspace,
+): Map<string, Routine> {
   const routines = new Map<string, Routine>();
   const last = dormandPrince.stages - 1;
   const calls: Call[] = [];
@@ -17,14 +21,15 @@ export function explicitRoutines(common: CommonWorkspace, own: ExplicitWorkspace
     );
     if (stage === 0) continue;
     const argument = stage === last ? common.next : common.stage;
-    routines.set(`dormandPrince.prepare${stage}`, prepareStage(common, own, stage, argument));
+    const prepare = prepareStage(common, own, stage, argument);
+    routines.set(`dormandPrince.prepare${stage}`, forEachComponent(common.dimension, prepare));
+    if (system.timeDependent) calls.push({ routine: `dormandPrince.time${stage}` });
     calls.push(
-      { routine: `dormandPrince.time${stage}` },
       { routine: `dormandPrince.prepare${stage}` },
       { routine: 'rightHandSide', first: argument, second: own.slopes[stage]! },
     );
   }
-  routines.set('dormandPrince.finish', finish(common, own));
+  routines.set('dormandPrince.finish', forEachComponent(common.dimension, finish(common, own)));
   routines.set('dormandPrince.first', {
     kind: 'sequence',
     calls: [
@@ -44,34 +49,33 @@ function prepareStage(
   own: ExplicitWorkspace,
   stage: number,
   argument: number,
-): Routine {
-  const loop = new VectorLoop();
-  const { graph } = loop;
-  const change = graph.multiply(
-    loop.scalar(slots.step),
-    loop.combination(dormandPrince.a[stage]!, own.slopes),
-  );
-  loop.write(argument, graph.add(loop.at(common.state), change));
-  return loop.routine(common.dimension);
+): (component: Component) => void {
+  return (component) => {
+    const { graph } = component;
+    const slope = component.combination(dormandPrince.a[stage]!, own.slopes);
+    const change = graph.multiply(component.scalar(slots.step), slope);
+    component.write(argument, graph.add(component.at(common.state), change));
+  };
 }
 
 /**
  * The squared scaled error, and the two lengths whose quotient estimates the largest eigenvalue: the last two stages
  * differ in their arguments and their slopes (Hairer, Wanner, Solving Ordinary Differential Equations II, IV.2).
  */
-function finish(common: CommonWorkspace, own: ExplicitWorkspace): Routine {
-  const loop = new VectorLoop();
-  const { graph } = loop;
-  const next = loop.at(common.next);
-  const scale = loop.scale(common.absoluteTolerance, slots.relativeTolerance, loop.at(common.state), next);
-  const squared = (difference: number): number => {
-    const scaled = graph.divide(difference, scale);
-    return graph.multiply(scaled, scaled);
+function finish(common: CommonWorkspace, own: ExplicitWorkspace): (component: Component) => void {
+  return (component) => {
+    const { graph } = component;
+    const next = component.at(common.next);
+    const state = component.at(common.state);
+    const scale = component.scale(common.absoluteTolerance, slots.relativeTolerance, state, next);
+    const squared = (difference: Node): Node => {
+      const scaled = graph.divide(difference, scale);
+      return graph.multiply(scaled, scaled);
+    };
+    const slope = component.combination(dormandPrince.error, own.slopes);
+    component.accumulate(slots.error, squared(graph.multiply(component.scalar(slots.step), slope)));
+    const [sixth, seventh] = [component.at(own.slopes[5]!), component.at(own.slopes[6]!)];
+    component.accumulate(slots.slopeChange, squared(graph.subtract(seventh, sixth)));
+    component.accumulate(slots.stateChange, squared(graph.subtract(next, component.at(common.stage))));
   };
-  const error = graph.multiply(loop.scalar(slots.step), loop.combination(dormandPrince.error, own.slopes));
-  loop.accumulate(slots.error, squared(error));
-  const [sixth, seventh] = [own.slopes[5]!, own.slopes[6]!];
-  loop.accumulate(slots.slopeChange, squared(graph.subtract(loop.at(seventh), loop.at(sixth))));
-  loop.accumulate(slots.stateChange, squared(graph.subtract(next, loop.at(common.stage))));
-  return loop.routine(common.dimension);
 }

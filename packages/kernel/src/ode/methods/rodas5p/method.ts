@@ -1,7 +1,6 @@
 import type { Assembly } from '../../../program/index.ts';
 import { predictive } from '../../controllers/predictive.ts';
 import { factorizeSymbolically } from '../../linear/symbolic.ts';
-import type { OdeSystem } from '../../problem.ts';
 import { type CommonWorkspace, slots } from '../../workspace.ts';
 import type { Counters, Method, Stepper } from '../method.ts';
 import { rosenbrockInterpolant } from './interpolant.ts';
@@ -22,19 +21,18 @@ export const rodas5pMethod: Method = {
   denseOrder: 4,
   stiff: true,
   errorPower: 5,
-  controller: () => predictive(5),
+  controller: predictive,
   prepare(system, common, layout) {
     const symbolic = factorizeSymbolically(system.pattern);
     const own = rosenbrockWorkspace(system, symbolic, layout);
     return {
       routines: (memory) => rosenbrockRoutines(system, common, own, symbolic, memory),
-      stepper: (assembly, counters) => stepper(system, common, own, assembly, counters),
+      stepper: (assembly, counters) => stepper(common, own, assembly, counters),
     };
   },
 };
 
 function stepper(
-  system: OdeSystem,
   common: CommonWorkspace,
   own: RosenbrockWorkspace,
   assembly: Assembly,
@@ -48,7 +46,6 @@ function stepper(
   const interpolant = rosenbrockInterpolant(memory, common, own);
   let linear = false;
   let pivoting = 0;
-  let lastStep = 0;
 
   const run = (routine: () => void): void => {
     memory[slots.error] = 0;
@@ -81,7 +78,6 @@ function stepper(
         pivoting--;
         run(attemptPivoting);
       }
-      lastStep = h;
       return n === 0 ? 0 : Math.sqrt(memory[slots.error]! / n);
     },
     interpolate: (theta, out) => interpolant.at(theta, out),
@@ -89,18 +85,5 @@ function stepper(
       memory.copyWithin(common.state, common.next, common.next + n);
       linear = false;
     },
-    stiffness: () => lastStep * largestRowSum(system, memory, own.jacobian),
   };
-}
-
-/** The largest row sum of |J|: no eigenvalue of J is larger. */
-function largestRowSum({ pattern }: OdeSystem, memory: Float64Array, jacobian: number): number {
-  let largest = 0;
-  for (let i = 0; i < pattern.size; i++) {
-    let sum = 0;
-    for (let e = pattern.rowStart[i]!; e < pattern.rowStart[i + 1]!; e++)
-      sum += Math.abs(memory[jacobian + e]!);
-    largest = Math.max(largest, sum);
-  }
-  return largest;
 }

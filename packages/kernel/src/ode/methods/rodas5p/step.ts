@@ -5,7 +5,7 @@ import { tableSolver } from '../../linear/table.ts';
 import { unrolledFactor, unrolledSolve } from '../../linear/unrolled.ts';
 import { timeSlot, type OdeSystem } from '../../problem.ts';
 import { type CommonWorkspace, slots } from '../../workspace.ts';
-import { setTime, VectorLoop } from '../loops.ts';
+import { type Component, forEachComponent, setTime } from '../loops.ts';
 import { rodas5p } from './tableau.ts';
 import type { RosenbrockWorkspace } from './workspace.ts';
 
@@ -27,13 +27,13 @@ export function rosenbrockRoutines(
   for (const [name, routine] of linearAlgebra(system, own, symbolic, memory)) routines.set(name, routine);
   for (let stage = 0; stage < rodas5p.stages; stage++) {
     routines.set(`rodas5p.time${stage}`, setTime(timeSlot, slots.start, slots.step, rodas5p.times[stage]!));
-    routines.set(`rodas5p.prepare${stage}`, prepareStage(system, common, own, stage));
+    const prepare = prepareStage(system, common, own, stage);
+    routines.set(`rodas5p.prepare${stage}`, forEachComponent(common.dimension, prepare));
   }
-  routines.set('rodas5p.finish', finish(common, own));
-  routines.set('rodas5p.jacobian', { kind: 'straight', tapes: system.jacobian });
+  routines.set('rodas5p.finish', forEachComponent(common.dimension, finish(common, own)));
   const linearise: Call[] = [
     { routine: 'rodas5p.time0' },
-    { routine: 'rodas5p.jacobian', first: common.state, second: own.jacobian },
+    { routine: 'jacobian', first: common.state, second: common.jacobian },
   ];
   if (system.timeDerivative !== null) {
     routines.set('rodas5p.timeDerivative', { kind: 'straight', tapes: system.timeDerivative });
@@ -41,11 +41,11 @@ export function rosenbrockRoutines(
   }
   routines.set('rodas5p.linearise', { kind: 'sequence', calls: linearise });
   for (const kind of ['', 'Pivoting']) {
-    const calls: Call[] = [{ routine: `rodas5p.factor${kind}`, first: own.jacobian, second: own.factors }];
+    const calls: Call[] = [{ routine: `rodas5p.factor${kind}`, first: common.jacobian, second: own.factors }];
     for (let stage = 0; stage < rodas5p.stages; stage++) {
       const argument = stage === 0 ? common.state : common.stage;
+      if (system.timeDependent) calls.push({ routine: `rodas5p.time${stage}` });
       calls.push(
-        { routine: `rodas5p.time${stage}` },
         { routine: `rodas5p.prepare${stage}` },
         { routine: 'rightHandSide', first: argument, second: own.slope },
         { routine: `rodas5p.solve${kind}`, first: own.past, second: own.stages[stage]! },
@@ -63,38 +63,42 @@ function prepareStage(
   common: CommonWorkspace,
   own: RosenbrockWorkspace,
   stage: number,
-): Routine {
-  const loop = new VectorLoop();
-  const { graph } = loop;
-  if (stage > 0) {
-    const row: readonly number[] | undefined = rodas5p.a[stage];
-    const argument =
-      row === undefined
-        ? graph.add(loop.at(common.stage), loop.at(own.stages[stage - 1]!))
-        : graph.add(loop.at(common.state), loop.combination(row, own.stages));
-    loop.write(common.stage, argument);
-  }
-  let past = graph.multiply(loop.combination(rodas5p.c[stage]!, own.stages), loop.scalar(slots.inverseStep));
-  const timeWeight = rodas5p.timeWeights[stage]!;
-  if (system.timeDerivative !== null && timeWeight !== 0) {
-    const weight = graph.multiply(graph.constant(timeWeight), loop.scalar(slots.step));
-    past = graph.add(past, graph.multiply(weight, loop.at(own.timeDerivative)));
-  }
-  loop.write(own.past, past);
-  return loop.routine(common.dimension);
+): (component: Component) => void {
+  return (component) => {
+    const { graph } = component;
+    if (stage > 0) {
+      const row: readonly number[] | undefined = rodas5p.a[stage];
+      const argument =
+        row === undefined
+          ? graph.add(component.at(common.stage), component.at(own.stages[stage - 1]!))
+          : graph.add(component.at(common.state), component.combination(row, own.stages));
+      component.write(common.stage, argument);
+    }
+    const sum = component.combination(rodas5p.c[stage]!, own.stages);
+    let past = graph.multiply(sum, component.scalar(slots.inverseStep));
+    const timeWeight = rodas5p.timeWeights[stage]!;
+    if (system.timeDerivative !== null && timeWeight !== 0) {
+      const weight = graph.multiply(graph.constant(timeWeight), component.scalar(slots.step));
+      past = graph.add(past, graph.multiply(weight, component.at(own.timeDerivative)));
+    }
+    component.write(own.past, past);
+  };
 }
 
 /** The new state, and the squared scaled error: the last K is the difference of the two solutions. */
-function finish(common: CommonWorkspace, own: RosenbrockWorkspace): Routine {
-  const loop = new VectorLoop();
-  const { graph } = loop;
-  const last = loop.at(own.stages[rodas5p.stages - 1]!);
-  const next = graph.add(loop.at(common.stage), last);
-  const scale = loop.scale(common.absoluteTolerance, slots.relativeTolerance, loop.at(common.state), next);
-  const error = graph.divide(last, scale);
-  loop.write(common.next, next);
-  loop.accumulate(slots.error, graph.multiply(error, error));
-  return loop.routine(common.dimension);
+function finish(common: CommonWorkspace, own: RosenbrockWorkspace): (component: Component) => void {
+  return (component) => {
+    const { graph } = component;
+    const last = component.at(own.stages[rodas5p.stages - 1]!);
+    const next = graph.add(component.at(common.stage), last);
+    const state = component.at(common.state);
+    const error = graph.divide(
+      last,
+      component.scale(common.absoluteTolerance, slots.relativeTolerance, state, next),
+    );
+    component.write(common.next, next);
+    component.accumulate(slots.error, graph.multiply(error, error));
+  };
 }
 
 function linearAlgebra(

@@ -6,8 +6,6 @@ import { rodas5p } from './tableau.ts';
 
 /** Regions of Rodas5P, by their first slot. */
 export interface RosenbrockWorkspace {
-  /** Entries of ∂f/∂y in the order of its pattern. */
-  readonly jacobian: number;
   readonly timeDerivative: number;
   readonly factors: number;
   /** f of a stage. */
@@ -24,7 +22,6 @@ export function rosenbrockWorkspace(
   layout: Layout,
 ): RosenbrockWorkspace {
   return {
-    jacobian: layout.region(system.pattern.columns.length),
     timeDerivative: layout.region(system.dimension),
     factors: layout.region(factorLength(symbolic)),
     slope: layout.region(system.dimension),
