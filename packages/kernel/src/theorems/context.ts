@@ -8,7 +8,9 @@ import {
   matrixFrom,
   matrixOfRows,
   primitive,
+  rightNullspace,
   transpose,
+  ZERO,
 } from '../exact/index.ts';
 import type { StructuralNetwork } from '../network/index.ts';
 import { complexLabel, structuralNetwork } from '../network/index.ts';
@@ -184,6 +186,11 @@ export class TheoremContext {
     return this.memo('law basis', () => integerKernel(transpose(this.stoichiometricMatrix)));
   }
 
+  /** A basis of the kernel of N, by arrow. Only where `dense`. */
+  get kernelBasis(): bigint[][] {
+    return this.memo('kernel basis', () => rightNullspace(this.stoichiometricMatrix));
+  }
+
   /**
    * A lattice basis of ker Y ∩ im I_a ∩ Z^n, one vector by complex for each unit of deficiency; null where too large.
    */
@@ -215,6 +222,18 @@ export class TheoremContext {
   /** Positive exact constants by arrow, or null where one is missing, zero or not rational. */
   get exactConstants(): readonly Rational[] | null {
     return this.constants.exact;
+  }
+
+  /** Exact start amounts by species (0 where the text is silent), or null where none is given or one is not rational. */
+  get exactStart(): readonly Rational[] | null {
+    return this.memo('exact start', () => {
+      const { start } = this.network;
+      if (start.size === 0) return null;
+      const amounts = Array.from(this.structure.sourceSpecies, (i) =>
+        start.has(i) ? start.get(i)!.exact : ZERO,
+      );
+      return amounts.every((amount) => amount !== null) ? amounts : null;
+    });
   }
 
   /** A flux by arrow as witness entries, keyed by reaction index. */

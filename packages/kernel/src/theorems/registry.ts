@@ -1,4 +1,5 @@
 import type { VerdictId } from '@stillroom/shared/cells';
+import { atMostOne } from './at-most-one.ts';
 import { complexBalance } from './complex-balance.ts';
 import { concordant } from './concordant.ts';
 import { deficiencyOne } from './deficiency-one.ts';
@@ -12,6 +13,7 @@ import { noPositiveSteadyState } from './no-positive-steady-state.ts';
 import { persistence } from './persistence.ts';
 import { robustExtinction } from './robust-extinction.ts';
 import { robustSpecies } from './robust-species.ts';
+import { severalSteadyStates } from './several-steady-states.ts';
 import type { Theorem } from './theorem.ts';
 
 /** Every theorem, in the order in which verdicts are listed. To add one, write its file and name it here. */
@@ -29,6 +31,8 @@ export const theorems: readonly Theorem[] = [
   robustExtinction,
   injective,
   concordant,
+  severalSteadyStates,
+  atMostOne,
 ];
 
 const byId: ReadonlyMap<VerdictId, Theorem> = new Map(theorems.map((theorem) => [theorem.id, theorem]));

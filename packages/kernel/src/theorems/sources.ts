@@ -8,6 +8,11 @@ export const sources = {
     title:
       'Über simultane Gleichgewichte und die Beziehungen zwischen Thermodynamik und Reactionskinetik homogener Systeme',
   },
+  krawczyk1969: {
+    authors: 'R. Krawczyk',
+    year: 1969,
+    title: 'Newton-Algorithmen zur Bestimmung von Nullstellen mit Fehlerschranken',
+  },
   spitzer1970: { authors: 'F. Spitzer', year: 1970, title: 'Interaction of Markov processes' },
   horn1972: {
     authors: 'F. Horn',

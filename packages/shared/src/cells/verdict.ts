@@ -110,6 +110,9 @@ export const hypothesisClaims = [
   'detailed balance condition',
   'complex balanced',
   'attraction is proven',
+  'several states verified',
+  'several are excluded',
+  'at most one by theorem',
 ] as const;
 export type HypothesisClaim = (typeof hypothesisClaims)[number];
 

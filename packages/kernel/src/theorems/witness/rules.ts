@@ -5,6 +5,7 @@ import * as balance from './balance-rules.ts';
 import * as graph from './graph-rules.ts';
 import * as rates from './rate-rules.ts';
 import * as signs from './sign-rules.ts';
+import * as states from './state-rules.ts';
 import * as vectors from './vector-rules.ts';
 
 /** What a rule looks at: the network read twice, the verdict and the hypothesis in question. */
@@ -48,4 +49,7 @@ export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'detailed balance condition': balance.detailedCondition,
   'complex balanced': balance.complexBalanced,
   'attraction is proven': graph.attractionProven,
+  'several states verified': states.severalStates,
+  'several are excluded': states.severalExcluded,
+  'at most one by theorem': states.atMostOne,
 };

@@ -1,0 +1,190 @@
+import { add, fromDouble, multiply, rational, ZERO } from '../../exact/index.ts';
+import type { Rational } from '../../exact/index.ts';
+import type { TheoremContext } from '../context.ts';
+import { fixedSequence } from '../fixed-sequence.ts';
+import { squareSystem, weightedSum } from '../minors/weighted-sum.ts';
+import type { SquareSystem } from '../minors/weighted-sum.ts';
+import { asDoubles, massActionSystem, monomial } from './mass-action-system.ts';
+import type { MassActionSystem } from './mass-action-system.ts';
+import { relax } from './relax.ts';
+import type { VerifiedStates } from './verified-states.ts';
+import { exactTotals, shortened, verifyStates } from './verified-states.ts';
+
+/** Points of the search times species cubed; counted, so that a search always ends at the same place. */
+const WORK = 1_500_000;
+/** Points at which a wrong sign is followed up by looking for the other states. */
+const FOLLOWED = 6;
+
+/**
+ * Looks for constants with two positive steady states in one class. Any flux v > 0 in the kernel of N and any x > 0 are a
+ * steady state for k = v/x^y; where the determinant of the Jacobian on im N has the sign opposite to that of a stable
+ * state, other states of the class are looked for by following the rate equations from nearby. What is found is proven by
+ * interval arithmetic; finding nothing proves nothing.
+ */
+export function searchPair(context: TheoremContext): VerifiedStates | null {
+  const system = massActionSystem(context);
+  const square = squareSystem(context);
+  const consistency = context.consistency;
+  if (system === null || square === null || consistency?.holds !== true) return null;
+  const random = fixedSequence(2718281);
+  const kernel = kernelDirections(context);
+  const unstable = square.rank % 2 === 0 ? -1 : 1;
+  const largest = consistency.flux.reduce((most, value) => (value > most ? value : most), 1n);
+  let flux = consistency.flux.map((value) => Number(value) / Number(largest));
+  const tries = Math.min(
+    3000,
+    Math.ceil(WORK / context.species.length ** 2 / Math.max(1, context.arrows.length)),
+  );
+  let followed = 0;
+  for (let k = 0; k < tries && followed < FOLLOWED; k++) {
+    flux = wander(flux, kernel, random);
+    const spread = 2 + (k % 5) * 2;
+    const x = context.species.map(() => 2 ** Math.round((random() * 2 - 1) * spread));
+    if (signAt(square, flux, x) !== unstable) continue;
+    followed++;
+    const found = followUp(system, flux, x, random);
+    if (found !== null) return found;
+  }
+  return null;
+}
+
+/** Looks for two states for given constants in the class of a given start. */
+export function pairForConstants(
+  context: TheoremContext,
+  constants: readonly Rational[],
+  start: readonly Rational[],
+): VerifiedStates | null {
+  const system = massActionSystem(context);
+  if (system === null) return null;
+  const totals = system.laws.map((law) => exactSum(law, start));
+  const found = otherStates(
+    system,
+    asDoubles(constants),
+    spreadOver(context, asDoubles(start)),
+    fixedSequence(31),
+  );
+  const states = verifyStates(system, constants, found, totals);
+  return states !== null && states.boxes.length >= 2 ? states : null;
+}
+
+function followUp(
+  system: MassActionSystem,
+  flux: readonly number[],
+  x: readonly number[],
+  random: () => number,
+): VerifiedStates | null {
+  const constants = system.reactions.map((reaction, j) =>
+    fromDouble(shortened(flux[j]! / monomial(reaction, x))),
+  );
+  if (constants.some(({ numerator }) => numerator <= 0n)) return null;
+  const states = verifyStates(
+    system,
+    constants,
+    otherStates(system, asDoubles(constants), [x], random),
+    exactTotals(system, x),
+  );
+  return states !== null && states.boxes.length >= 2 ? states : null;
+}
+
+/** Steady states reached from around given states of one class, nearly equal ones once. */
+function otherStates(
+  system: MassActionSystem,
+  constants: readonly number[],
+  starts: readonly (readonly number[])[],
+  random: () => number,
+): number[][] {
+  const found: number[][] = [];
+  const keep = (state: readonly number[] | null): void => {
+    if (state === null) return;
+    const known = found.some((other) =>
+      other.every((value, i) => Math.abs(value - state[i]!) <= 1e-7 * value),
+    );
+    if (!known) found.push([...state]);
+  };
+  for (const start of starts) {
+    keep([...start]);
+    for (let k = 0; k < 8; k++)
+      keep(relax(system, constants, displaced(system, start, k % 2 === 0 ? 1 : -1, random)));
+  }
+  return found;
+}
+
+/** A positive state of the same class, some way off along a random combination of reaction vectors. */
+function displaced(
+  system: MassActionSystem,
+  x: readonly number[],
+  sense: number,
+  random: () => number,
+): number[] {
+  const move = x.map(() => 0);
+  for (const { change } of system.reactions) {
+    const weight = sense * (random() - 0.3);
+    for (const { species, amount } of change) move[species]! += weight * amount;
+  }
+  let reach = Infinity;
+  x.forEach((value, i) => {
+    if (move[i]! < 0) reach = Math.min(reach, value / -move[i]!);
+  });
+  const step = (Number.isFinite(reach) ? reach : 1) * (random() < 0.5 ? 0.1 : 0.9);
+  return x.map((value, i) => value + step * move[i]!);
+}
+
+/** A start with species at zero is moved into the interior of its class along the reactions. */
+function spreadOver(context: TheoremContext, start: readonly number[]): number[][] {
+  let x = [...start];
+  for (let round = 0; round < context.species.length && x.some((value) => value <= 0); round++) {
+    for (const { from, to } of context.arrows) {
+      const change = [...context.coefficients.change(from, to)];
+      const reach = change.reduce(
+        (most, [i, amount]) => (amount < 0n ? Math.min(most, x[i]! / -Number(amount)) : most),
+        1,
+      );
+      if (reach <= 0) continue;
+      x = x.map(
+        (value, i) => value + 0.2 * reach * Number(context.coefficients.change(from, to).get(i) ?? 0n),
+      );
+    }
+  }
+  return x.every((value) => value > 0) ? [x] : [];
+}
+
+function kernelDirections(context: TheoremContext): number[][] {
+  return context.kernelBasis.map((vector) => vector.map(Number));
+}
+
+/** Moves along kernel directions, by preference close to the edge of the cone of positive fluxes. */
+function wander(
+  flux: readonly number[],
+  directions: readonly (readonly number[])[],
+  random: () => number,
+): number[] {
+  let v = [...flux];
+  for (const direction of directions) {
+    const sense = random() < 0.5 ? 1 : -1;
+    let reach = Infinity;
+    v.forEach((value, j) => {
+      const step = sense * direction[j]!;
+      if (step < 0) reach = Math.min(reach, value / -step);
+    });
+    const room = Math.min(reach, 4);
+    const fraction = random() < 0.3 ? 0.98 : random();
+    v = v.map((value, j) => value + fraction * room * sense * direction[j]!);
+  }
+  const largest = Math.max(...v);
+  return v.map((value) => Math.max(value / largest, 1e-9));
+}
+
+function signAt(square: SquareSystem, flux: readonly number[], x: readonly number[]): number {
+  return weightedSum(
+    square,
+    square.reactions.map((arrow) => flux[arrow]!),
+    x.map((value) => 1 / value),
+  );
+}
+
+function exactSum(law: readonly bigint[], x: readonly Rational[]): Rational {
+  return law.reduce(
+    (sum, weight, i) => (weight === 0n ? sum : add(sum, multiply(rational(weight), x[i]!))),
+    ZERO,
+  );
+}
