@@ -124,6 +124,7 @@ function blocks(changes: readonly LawChange[], columnCount: number): LawChange[]
 
 /** Whether rows · v = 0 has a positive solution; v = 1 + u, u ≥ 0. Equal columns count once: their sum is what matters. */
 function balancePositively(rows: readonly LawChange[]): boolean | null {
+  if (rows.every(sumsToZero)) return true;
   const columns = distinctColumns(rows);
   if (rows.length * columns.length > PROGRAMME_ENTRIES) return null;
   const conditions: LinearCondition[] = rows.map((_, row) => {
@@ -136,6 +137,13 @@ function balancePositively(rows: readonly LawChange[]): boolean | null {
   });
   const outcome = solveLinear({ variables: columns.length, conditions });
   return outcome.kind === 'unfinished' ? null : outcome.kind === 'feasible';
+}
+
+/** Whether v = 1 balances a row. */
+function sumsToZero(row: LawChange): boolean {
+  let sum = 0n;
+  for (const value of row.values()) sum += value;
+  return sum === 0n;
 }
 
 function distinctColumns(rows: readonly LawChange[]): ReadonlyMap<number, bigint>[] {

@@ -8,7 +8,7 @@ export interface SiphonLimits {
   readonly steps: number;
 }
 
-export const SIPHON_LIMITS: SiphonLimits = { siphons: 10_000, steps: 40_000_000 };
+export const SIPHON_LIMITS: SiphonLimits = { siphons: 10_000, steps: 60_000_000 };
 
 /** Minimal siphons, species ascending, ordered by their species; all of them where `complete`. */
 export interface MinimalSiphons {
@@ -19,24 +19,21 @@ export interface MinimalSiphons {
 /**
  * Minimal siphons: non-empty sets Z of species, minimal for inclusion, such that every arrow with a product in Z has a
  * reactant in Z (Angeli, De Leenheer, Sontag 2007; search by branching on unmet clauses, in the manner of Cordone,
- * Ferrarini, Piroddi 2005). The siphons whose first species is i are found while earlier species are excluded, so none
- * is met twice.
+ * Ferrarini, Piroddi 2005). The siphons whose first species is i are found while earlier species are excluded, and of
+ * several candidates for a clause each is tried with the earlier ones excluded, so none is met twice.
  */
 export function minimalSiphons(
   network: StructuralNetwork,
   checkpoint: () => void = () => undefined,
   limits: SiphonLimits = SIPHON_LIMITS,
 ): MinimalSiphons {
-  const clauses = siphonClauses(network);
-  const state = new SiphonState(clauses);
-  const found = new FoundSiphons();
+  const search = new Search(new SiphonState(siphonClauses(network)), limits, checkpoint);
   let complete = true;
-  for (let first = 0; first < clauses.speciesCount && complete; first++) {
-    if (!state.isOpen(first)) continue;
-    complete = searchFrom(first, state, found, limits, checkpoint);
-    state.exclude(first);
+  for (let first = 0; first < network.species.length && complete; first++) {
+    complete = search.from(first);
   }
-  return { siphons: found.minimal(), complete };
+  complete &&= search.found.length <= limits.siphons;
+  return { siphons: search.found.slice(0, limits.siphons).sort(compareSets), complete };
 }
 
 /** An open choice: candidates are tried one after the other, earlier ones excluded. */
@@ -46,84 +43,59 @@ interface Choice {
   next: number;
 }
 
-function searchFrom(
-  first: number,
-  state: SiphonState,
-  found: FoundSiphons,
-  limits: SiphonLimits,
-  checkpoint: () => void,
-): boolean {
-  const base = state.depth;
-  const choices: Choice[] = [{ depth: base, candidates: [first], next: 0 }];
-  while (choices.length > 0) {
-    if (state.steps > limits.steps || found.count > limits.siphons) {
-      state.undo(base);
-      return false;
-    }
-    checkpoint();
-    const choice = choices.at(-1)!;
-    state.undo(choice.depth);
-    if (choice.next === choice.candidates.length) {
-      choices.pop();
-      continue;
-    }
-    const candidate = choice.candidates[choice.next]!;
-    const possible =
-      choice.candidates.slice(0, choice.next).every((earlier) => state.exclude(earlier)) &&
-      state.include(candidate);
-    choice.next++;
-    if (!possible) continue;
-    const inside = state.insideSince(base);
-    state.steps += inside.length;
-    if (found.someWithin(inside, state)) continue;
-    const branches = state.branches(inside);
-    if (branches === null) found.record(inside);
-    else choices.push({ depth: state.depth, candidates: branches, next: 0 });
-  }
-  state.undo(base);
-  return true;
-}
+class Search {
+  readonly found: Int32Array[] = [];
+  readonly #state: SiphonState;
+  readonly #limits: SiphonLimits;
+  readonly #checkpoint: () => void;
 
-/** Recorded siphons by their first species, to tell quickly whether one lies within a set. */
-class FoundSiphons {
-  readonly #siphons: Int32Array[] = [];
-  readonly #byFirst = new Map<number, Int32Array[]>();
-
-  get count(): number {
-    return this.#siphons.length;
+  constructor(state: SiphonState, limits: SiphonLimits, checkpoint: () => void) {
+    this.#state = state;
+    this.#limits = limits;
+    this.#checkpoint = checkpoint;
   }
 
-  someWithin(species: readonly number[], state: SiphonState): boolean {
-    return species.some((first) =>
-      (this.#byFirst.get(first) ?? []).some((siphon) => {
-        state.steps += siphon.length;
-        return siphon.every((member) => state.isInside(member));
-      }),
+  /** Finds the minimal siphons with this first species, then excludes it for good; false beyond the limits. */
+  from(first: number): boolean {
+    const state = this.#state;
+    if (!state.isOpen(first)) return true;
+    const base = state.depth;
+    const choices: Choice[] = [{ depth: base, candidates: [first], next: 0 }];
+    for (let choice = choices.at(-1); choice !== undefined; choice = choices.at(-1)) {
+      this.#checkpoint();
+      if (state.steps > this.#limits.steps || this.found.length > this.#limits.siphons) return false;
+      state.undo(choice.depth);
+      if (choice.next === choice.candidates.length) {
+        choices.pop();
+        continue;
+      }
+      if (!take(state, choice)) continue;
+      const inside = state.insideSince(base);
+      const siphon = state.greatestWithin(inside, null);
+      if (siphon === 0) choices.push({ depth: state.depth, candidates: state.branches(inside), next: 0 });
+      else if (siphon === inside.length && this.#minimal(inside, choices)) this.found.push(inside.sort());
+    }
+    return state.exclude(first);
+  }
+
+  /**
+   * A siphon inside this one misses one of the species that were chosen: all others follow from those. (Where the inside
+   * species hold a smaller siphon the branch is dropped before.)
+   */
+  #minimal(inside: Int32Array, choices: readonly Choice[]): boolean {
+    return choices.every(
+      ({ candidates, next }) => this.#state.greatestWithin(inside, candidates[next - 1]!) === 0,
     );
   }
+}
 
-  record(species: readonly number[]): void {
-    const siphon = Int32Array.from(species).sort();
-    this.#siphons.push(siphon);
-    const first = siphon[0]!;
-    const known = this.#byFirst.get(first);
-    if (known) known.push(siphon);
-    else this.#byFirst.set(first, [siphon]);
+/** Puts the next candidate inside and those before it outside; false when that is impossible. */
+function take(state: SiphonState, choice: Choice): boolean {
+  const candidate = choice.candidates[choice.next++]!;
+  for (let k = 0; k < choice.next - 1; k++) {
+    if (!state.exclude(choice.candidates[k]!)) return false;
   }
-
-  /** The recorded siphons without those that contain another, in order of their species. */
-  minimal(): Int32Array[] {
-    const inOrder = [...this.#siphons].sort(compareSets);
-    return inOrder.filter((siphon) => {
-      const members = new Set(siphon);
-      return !siphon.some((first) =>
-        (this.#byFirst.get(first) ?? []).some(
-          (other) =>
-            other !== siphon && other.length < siphon.length && other.every((member) => members.has(member)),
-        ),
-      );
-    });
-  }
+  return state.include(candidate);
 }
 
 function compareSets(a: Int32Array, b: Int32Array): number {

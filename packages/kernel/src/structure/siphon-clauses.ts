@@ -15,33 +15,45 @@ export interface SiphonClauses {
 
 /** The clauses of a network: one for each reactant complex and each species that its arrows produce. */
 export function siphonClauses(network: StructuralNetwork): SiphonClauses {
+  const counted = { clauses: 0, reactants: 0 };
+  forEachClause(network, (_, from) => {
+    counted.clauses++;
+    counted.reactants += network.complexes.offsets[from + 1]! - network.complexes.offsets[from]!;
+  });
+  const product = new Int32Array(counted.clauses);
+  const offsets = new Int32Array(counted.clauses + 1);
+  const reactants = new Int32Array(counted.reactants);
+  let clause = 0;
+  let end = 0;
+  forEachClause(network, (species, from) => {
+    product[clause++] = species;
+    for (let k = network.complexes.offsets[from]!; k < network.complexes.offsets[from + 1]!; k++) {
+      reactants[end++] = network.complexes.species[k]!;
+    }
+    offsets[clause] = end;
+  });
+  return { speciesCount: network.species.length, count: counted.clauses, product, offsets, reactants };
+}
+
+/** Visits each reactant complex with each species that only its products hold, once. */
+function forEachClause(
+  network: StructuralNetwork,
+  visit: (product: number, reactantComplex: number) => void,
+): void {
   const { complexes, outgoing } = network;
-  const product: number[] = [];
-  const offsets: number[] = [0];
-  const reactants: number[] = [];
-  // One clause per reactant complex and product, whatever the arrow.
   const stamp = new Int32Array(network.species.length).fill(-1);
   for (let from = 0; from < complexes.count; from++) {
-    const start = complexes.offsets[from]!;
-    const end = complexes.offsets[from + 1]!;
-    for (let j = start; j < end; j++) stamp[complexes.species[j]!] = from;
+    for (let j = complexes.offsets[from]!; j < complexes.offsets[from + 1]!; j++) {
+      stamp[complexes.species[j]!] = from;
+    }
     for (let a = outgoing.offsets[from]!; a < outgoing.offsets[from + 1]!; a++) {
       const to = network.arrows.to[outgoing.arrows[a]!]!;
       for (let k = complexes.offsets[to]!; k < complexes.offsets[to + 1]!; k++) {
         const species = complexes.species[k]!;
         if (stamp[species] === from) continue;
         stamp[species] = from;
-        product.push(species);
-        for (let j = start; j < end; j++) reactants.push(complexes.species[j]!);
-        offsets.push(reactants.length);
+        visit(species, from);
       }
     }
   }
-  return {
-    speciesCount: network.species.length,
-    count: product.length,
-    product: Int32Array.from(product),
-    offsets: Int32Array.from(offsets),
-    reactants: Int32Array.from(reactants),
-  };
 }

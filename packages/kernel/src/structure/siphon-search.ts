@@ -17,9 +17,16 @@ export class SiphonState {
   /** Per clause: reactants that are not outside, and reactants that are inside. */
   readonly #candidates: Int32Array;
   readonly #met: Int32Array;
-  readonly #trail: number[] = [];
-  readonly #pending: number[] = [];
+  readonly #trail: Int32Array;
+  #trailEnd = 0;
+  readonly #pending: Int32Array;
+  #pendingEnd = 0;
   #conflict = false;
+  /** For tests of subsets: rounds in which a species was taken out, and how many met reactants a clause has left. */
+  readonly #removedIn: Int32Array;
+  readonly #countedIn: Int32Array;
+  readonly #left: Int32Array;
+  #round = 0;
   /** Elementary steps so far. */
   steps = 0;
 
@@ -28,8 +35,13 @@ export class SiphonState {
     this.#byProduct = groupBy(clauses.product, clauses.speciesCount);
     this.#byReactant = groupReactants(clauses);
     this.#state = new Uint8Array(clauses.speciesCount);
+    this.#trail = new Int32Array(clauses.speciesCount);
+    this.#pending = new Int32Array(clauses.speciesCount);
+    this.#removedIn = new Int32Array(clauses.speciesCount);
     this.#candidates = new Int32Array(clauses.count);
     this.#met = new Int32Array(clauses.count);
+    this.#countedIn = new Int32Array(clauses.count);
+    this.#left = new Int32Array(clauses.count);
     for (let clause = 0; clause < clauses.count; clause++) {
       this.#candidates[clause] = clauses.offsets[clause + 1]! - clauses.offsets[clause]!;
     }
@@ -42,18 +54,15 @@ export class SiphonState {
     return this.#state[species] === OPEN;
   }
 
-  isInside(species: number): boolean {
-    return this.#state[species] === INSIDE;
-  }
-
   /** Length of the trail, to come back to with `undo`. */
   get depth(): number {
-    return this.#trail.length;
+    return this.#trailEnd;
   }
 
   /** Species put inside since the trail had the given length, in that order. */
-  insideSince(depth: number): number[] {
-    return this.#trail.slice(depth).filter((species) => this.#state[species] === INSIDE);
+  insideSince(depth: number): Int32Array {
+    this.steps += this.#trailEnd - depth;
+    return this.#trail.subarray(depth, this.#trailEnd).filter((species) => this.#state[species] === INSIDE);
   }
 
   /** Puts a species inside and draws consequences; false when that is impossible. */
@@ -70,33 +79,76 @@ export class SiphonState {
 
   /** Takes back every change since the trail had the given length. */
   undo(depth: number): void {
+    const { offsets, items } = this.#byReactant;
     this.#conflict = false;
-    this.#pending.length = 0;
-    while (this.#trail.length > depth) {
-      const species = this.#trail.pop()!;
-      const counter = this.#state[species] === INSIDE ? this.#met : this.#candidates;
-      const change = this.#state[species] === INSIDE ? -1 : 1;
-      this.#forReactant(species, (clause) => (counter[clause]! += change));
+    this.#pendingEnd = 0;
+    while (this.#trailEnd > depth) {
+      const species = this.#trail[--this.#trailEnd]!;
+      const inside = this.#state[species] === INSIDE;
+      for (let k = offsets[species]!; k < offsets[species + 1]!; k++) {
+        if (inside) this.#met[items[k]!]!--;
+        else this.#candidates[items[k]!]!++;
+      }
       this.#state[species] = OPEN;
     }
   }
 
   /**
-   * Open candidates of the unmet clause of the given inside species that has the fewest; null when every clause is met, so
-   * that the inside species form a siphon.
+   * Size of the greatest siphon within the inside species, `without` taken out of them (or nothing): species with an
+   * unmet clause fall out, and what depended on them.
    */
-  branches(inside: Iterable<number>): number[] | null {
+  greatestWithin(inside: Int32Array, without: number | null): number {
+    const round = ++this.#round;
+    let size = inside.length;
+    const fallen: number[] = [];
+    const fall = (species: number) => {
+      this.#removedIn[species] = round;
+      fallen.push(species);
+      size--;
+    };
+    if (without !== null) fall(without);
+    for (const species of inside) {
+      if (this.#removedIn[species] !== round && this.#hasUnmetClause(species)) fall(species);
+    }
+    const { offsets, items } = this.#byReactant;
+    for (let species = fallen.pop(); species !== undefined; species = fallen.pop()) {
+      this.steps += offsets[species + 1]! - offsets[species]!;
+      for (let k = offsets[species]!; k < offsets[species + 1]!; k++) {
+        const clause = items[k]!;
+        const product = this.#clauses.product[clause]!;
+        if (this.#state[product] !== INSIDE || this.#removedIn[product] === round) continue;
+        if (this.#countedIn[clause] !== round) {
+          this.#countedIn[clause] = round;
+          this.#left[clause] = this.#met[clause]!;
+        }
+        if (--this.#left[clause]! === 0) fall(product);
+      }
+    }
+    return size;
+  }
+
+  /** Open candidates of the unmet clause of an inside species that has the fewest; some clause must be unmet. */
+  branches(inside: Int32Array): number[] {
+    const { offsets, items } = this.#byProduct;
     let chosen = -1;
     for (const species of inside) {
-      const { offsets, items } = this.#byProduct;
+      this.steps += offsets[species + 1]! - offsets[species]!;
       for (let k = offsets[species]!; k < offsets[species + 1]!; k++) {
-        this.steps++;
         const clause = items[k]!;
         if (this.#met[clause]! > 0) continue;
         if (chosen < 0 || this.#candidates[clause]! < this.#candidates[chosen]!) chosen = clause;
       }
     }
-    return chosen < 0 ? null : this.#openReactants(chosen);
+    return this.#openReactants(chosen);
+  }
+
+  #hasUnmetClause(species: number): boolean {
+    const { offsets, items } = this.#byProduct;
+    for (let k = offsets[species]!; k < offsets[species + 1]!; k++) {
+      this.steps++;
+      if (this.#met[items[k]!] === 0) return true;
+    }
+    return false;
   }
 
   #set(species: number, state: number): void {
@@ -106,19 +158,23 @@ export class SiphonState {
       return;
     }
     this.#state[species] = state;
-    this.#trail.push(species);
-    this.#pending.push(species);
-    // Counters follow at once, so that undoing may stop anywhere.
-    const counter = state === INSIDE ? this.#met : this.#candidates;
-    const change = state === INSIDE ? 1 : -1;
-    this.#forReactant(species, (clause) => (counter[clause]! += change));
+    this.#trail[this.#trailEnd++] = species;
+    this.#pending[this.#pendingEnd++] = species;
+    // Counters follow at once, so that undoing may begin anywhere.
+    const { offsets, items } = this.#byReactant;
+    this.steps += offsets[species + 1]! - offsets[species]!;
+    for (let k = offsets[species]!; k < offsets[species + 1]!; k++) {
+      if (state === INSIDE) this.#met[items[k]!]!++;
+      else this.#candidates[items[k]!]!--;
+    }
   }
 
   #propagate(): boolean {
-    while (this.#pending.length > 0 && !this.#conflict) {
-      const species = this.#pending.pop()!;
-      if (this.#state[species] === INSIDE) this.#forProduct(species, (clause) => this.#force(clause));
-      else this.#forReactant(species, (clause) => this.#force(clause));
+    while (this.#pendingEnd > 0 && !this.#conflict) {
+      const species = this.#pending[--this.#pendingEnd]!;
+      const { offsets, items } = this.#state[species] === INSIDE ? this.#byProduct : this.#byReactant;
+      this.steps += offsets[species + 1]! - offsets[species]!;
+      for (let k = offsets[species]!; k < offsets[species + 1]!; k++) this.#force(items[k]!);
     }
     return !this.#conflict;
   }
@@ -139,23 +195,7 @@ export class SiphonState {
     for (let k = offsets[clause]!; k < offsets[clause + 1]!; k++) {
       if (this.#state[reactants[k]!] === OPEN) open.push(reactants[k]!);
     }
-    this.steps += offsets[clause + 1]! - offsets[clause]!;
     return open;
-  }
-
-  #forProduct(species: number, visit: (clause: number) => void): void {
-    this.#visit(this.#byProduct, species, visit);
-  }
-
-  #forReactant(species: number, visit: (clause: number) => void): void {
-    this.#visit(this.#byReactant, species, visit);
-  }
-
-  #visit(grouping: Grouping, species: number, visit: (clause: number) => void): void {
-    const start = grouping.offsets[species]!;
-    const end = grouping.offsets[species + 1]!;
-    this.steps += end - start;
-    for (let k = start; k < end; k++) visit(grouping.items[k]!);
   }
 }
 
@@ -170,7 +210,7 @@ function groupBy(keys: Int32Array, count: number): Grouping {
   for (let key = 0; key < count; key++) offsets[key + 1]! += offsets[key]!;
   const next = offsets.slice(0, count);
   const items = new Int32Array(keys.length);
-  keys.forEach((key, item) => (items[next[key]!++] = item));
+  for (let item = 0; item < keys.length; item++) items[next[keys[item]!]!++] = item;
   return { offsets, items };
 }
 
@@ -181,5 +221,6 @@ function groupReactants(clauses: SiphonClauses): Grouping {
   for (let clause = 0; clause < clauses.count; clause++) {
     clauseOf.fill(clause, clauses.offsets[clause]!, clauses.offsets[clause + 1]!);
   }
-  return { offsets, items: items.map((position) => clauseOf[position]!) };
+  for (let k = 0; k < items.length; k++) items[k] = clauseOf[items[k]!]!;
+  return { offsets, items };
 }
