@@ -1,3 +1,4 @@
+import { cellsMap } from '@stillroom/shared/document';
 import { messageTypes, type Notice, type PlanNotice } from '@stillroom/shared/protocol';
 import * as decoding from 'lib0/decoding';
 import { IndexeddbPersistence } from 'y-indexeddb';
@@ -99,7 +100,7 @@ export class LiveRoom {
 
   private readonly onTransaction = (transaction: Y.Transaction): void => {
     if (!this.isLocal(transaction.origin) || transaction.changed.size === 0) return;
-    this.events.wrote(touchedCells(transaction, this.doc.getMap<Y.Map<unknown>>('cells')));
+    this.events.wrote(touchedCells(transaction, cellsMap(this.doc)));
   };
 
   private readonly onUpdate = (_update: Uint8Array, origin: unknown): void => {

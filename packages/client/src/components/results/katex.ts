@@ -1,0 +1,3 @@
+import 'katex/dist/katex.min.css';
+
+export { default } from 'katex';

@@ -1,0 +1,55 @@
+import type { Verdict, Witness } from '@stillroom/shared/cells';
+import { numberText } from './numbers.ts';
+import type { StructureResult } from './shapes.ts';
+import { complexLabel } from './terms.ts';
+
+const number = (value: number | string) => (typeof value === 'number' ? numberText(value, 6) : value);
+
+/** The evidence of a hypothesis in a few words; empty where the hypothesis speaks for itself. */
+export function witnessText(witness: Witness | undefined, structure: StructureResult | null): string {
+  if (witness === undefined) return '';
+  const label = (index: number) => complexLabel(structure?.complexes?.[index]?.of ?? {});
+  switch (witness.kind) {
+    case 'arrow': {
+      const reaction = structure?.reactions?.[witness.reaction];
+      return reaction === undefined ? '' : `${label(reaction.from)} → ${label(reaction.to)}`;
+    }
+    case 'set':
+      return 'species' in witness
+        ? `{${witness.species.join(', ')}}`
+        : `{${witness.complexes.map(label).join(', ')}}`;
+    case 'number':
+      return witness.left === witness.right
+        ? `${number(witness.left)}`
+        : `${number(witness.left)} against ${number(witness.right)}`;
+    case 'vector': {
+      const named = (key: string) => {
+        if (witness.of === 'complexes') return label(Number(key));
+        if (witness.of === 'fluxes') {
+          const row = structure?.reactions?.[Number(key)]?.row;
+          return row === undefined ? `reaction ${key}` : `R${row + 1}`;
+        }
+        return key;
+      };
+      const terms = Object.entries(witness.entries).map(([key, value]) =>
+        String(value) === '1' ? named(key) : `${String(value).replace('-', '−')} ${named(key)}`,
+      );
+      return terms.length > 8
+        ? `${terms.slice(0, 8).join(', ')} and ${terms.length - 8} more`
+        : terms.join(', ');
+    }
+    case 'minors':
+      return `${witness.pairs.length} products of minors`;
+    case 'states':
+      return `${witness.boxes.length} steady states in proven boxes`;
+  }
+}
+
+/** "Feinberg 1987, Chem. Eng. Sci. 42, 2229". */
+export const citationText = ({
+  citation,
+}: Pick<Verdict, 'citation'>): readonly { text: string; doi?: string }[] =>
+  citation.map(({ authors, year, title, doi }) => ({
+    text: `${authors} ${year}, ${title}`,
+    ...(doi === undefined ? {} : { doi }),
+  }));

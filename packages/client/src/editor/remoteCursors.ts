@@ -1,0 +1,150 @@
+import { type Extension, type Range, StateEffect } from '@codemirror/state';
+import {
+  Decoration,
+  type DecorationSet,
+  EditorView,
+  ViewPlugin,
+  type ViewUpdate,
+  WidgetType,
+} from '@codemirror/view';
+import type { Presence } from '@stillroom/shared/protocol';
+import type { Awareness } from 'y-protocols/awareness';
+import * as Y from 'yjs';
+import { hueClass } from './hues.ts';
+
+/** Where a person's cursor is, as it travels: Yjs relative positions as JSON. */
+interface TravellingCursor {
+  readonly anchor: unknown;
+  readonly head: unknown;
+}
+
+interface Place {
+  readonly anchor: number;
+  readonly head: number;
+}
+
+const moved = StateEffect.define<null>();
+
+/** A caret with its owner's name to the right of it. */
+class CaretWidget extends WidgetType {
+  constructor(
+    private readonly name: string,
+    private readonly hue: number,
+  ) {
+    super();
+  }
+
+  override eq(other: CaretWidget): boolean {
+    return other.name === this.name && other.hue === this.hue;
+  }
+
+  toDOM(): HTMLElement {
+    const caret = document.createElement('span');
+    caret.className = `caret ${hueClass(this.hue)}`;
+    caret.setAttribute('aria-hidden', 'true');
+    const flag = document.createElement('span');
+    flag.textContent = this.name.split(' ')[0] ?? this.name;
+    caret.append(flag);
+    return caret;
+  }
+
+  override ignoreEvent(): boolean {
+    return true;
+  }
+}
+
+function placeIn(text: Y.Text, cursor: unknown): Place | null {
+  const { anchor, head } = (cursor ?? {}) as Partial<TravellingCursor>;
+  if (text.doc === null || anchor == null || head == null) return null;
+  const at = (position: unknown): number | null => {
+    const found = Y.createAbsolutePositionFromRelativePosition(
+      Y.createRelativePositionFromJSON(position),
+      text.doc as Y.Doc,
+    );
+    return found !== null && found.type === text ? found.index : null;
+  };
+  const from = at(anchor);
+  const to = at(head);
+  return from === null || to === null ? null : { anchor: from, head: to };
+}
+
+function decorate(view: EditorView, text: Y.Text, awareness: Awareness): DecorationSet {
+  const ranges: Range<Decoration>[] = [];
+  const length = view.state.doc.length;
+  for (const [client, state] of awareness.getStates()) {
+    if (client === awareness.clientID) continue;
+    const { user, cursor } = state as Partial<Presence> & { cursor?: unknown };
+    const place = placeIn(text, cursor);
+    if (user === undefined || place === null) continue;
+    const head = Math.min(place.head, length);
+    const from = Math.min(place.anchor, head);
+    const to = Math.min(Math.max(place.anchor, head), length);
+    const hue = hueClass(user.hue);
+    const line = view.state.doc.lineAt(head);
+    ranges.push(Decoration.line({ class: `with-person ${hue}` }).range(line.from));
+    if (from < to) ranges.push(Decoration.mark({ class: `sel-person ${hue}` }).range(from, to));
+    ranges.push(
+      Decoration.widget({
+        widget: new CaretWidget(user.name, user.hue),
+        side: head > place.anchor ? -1 : 1,
+      }).range(head),
+    );
+  }
+  return Decoration.set(ranges, true);
+}
+
+/** Shows co-authors' carets and selections in a text, and tells them of one's own while the editor has the focus. */
+export function remoteCursors(text: Y.Text, awareness: Awareness): Extension {
+  return ViewPlugin.fromClass(
+    class {
+      decorations: DecorationSet;
+
+      constructor(private readonly view: EditorView) {
+        this.decorations = decorate(view, text, awareness);
+        awareness.on('change', this.onAwareness);
+      }
+
+      private readonly onAwareness = (change: {
+        added: number[];
+        updated: number[];
+        removed: number[];
+      }): void => {
+        const others = [...change.added, ...change.updated, ...change.removed];
+        if (others.some((client) => client !== awareness.clientID))
+          this.view.dispatch({ effects: moved.of(null) });
+      };
+
+      update(update: ViewUpdate): void {
+        const told = update.transactions.some((transaction) =>
+          transaction.effects.some((effect) => effect.is(moved)),
+        );
+        if (update.docChanged || told) this.decorations = decorate(update.view, text, awareness);
+        if (update.focusChanged || update.selectionSet || update.docChanged) this.tell(update.view);
+      }
+
+      private tell(view: EditorView): void {
+        if (!view.hasFocus) {
+          if (awareness.getLocalState()?.['cursor'] != null && this.mine) {
+            this.mine = false;
+            awareness.setLocalStateField('cursor', null);
+          }
+          return;
+        }
+        const { anchor, head } = view.state.selection.main;
+        this.mine = true;
+        awareness.setLocalStateField('cursor', {
+          anchor: Y.relativePositionToJSON(Y.createRelativePositionFromTypeIndex(text, anchor)),
+          head: Y.relativePositionToJSON(Y.createRelativePositionFromTypeIndex(text, head)),
+        } satisfies TravellingCursor);
+      }
+
+      private mine = false;
+
+      destroy(): void {
+        awareness.off('change', this.onAwareness);
+        if (this.mine) awareness.setLocalStateField('cursor', null);
+      }
+    },
+    { decorations: (plugin) => plugin.decorations },
+  );
+}

@@ -1,0 +1,65 @@
+import { complexLabel } from '../components/results/terms.ts';
+import type { StructureResult } from '../components/results/shapes.ts';
+
+export interface ComplexNode {
+  readonly index: number;
+  readonly label: string;
+  readonly width: number;
+  readonly terminal: boolean;
+}
+
+/** One line between two complexes; `both` where arrows go both ways. */
+export interface ComplexEdge {
+  readonly from: number;
+  readonly to: number;
+  readonly both: boolean;
+  readonly label: string;
+}
+
+export interface ComplexClass {
+  /** 1-based, as it is named on the page. */
+  readonly number: number;
+  readonly nodes: readonly ComplexNode[];
+  readonly edges: readonly ComplexEdge[];
+  /** Terminal strong linkage classes, as indices of complexes. */
+  readonly terminal: readonly (readonly number[])[];
+  readonly rank: number;
+  readonly deficiency: number;
+}
+
+/** From this many complexes on the graph is set smaller and an outline stands beside it. */
+export const manyComplexes = 24;
+
+const ruler = document.createElement('canvas').getContext('2d');
+
+/** Width of a label in the serif of the page, in pixels. */
+export function labelWidth(label: string, size: number): number {
+  if (ruler === null) return label.length * size * 0.5;
+  ruler.font = `400 ${size}px "Gentium Book Plus", Georgia, serif`;
+  return ruler.measureText(label).width;
+}
+
+/** The linkage classes of a structure, ready to be drawn; reversible pairs are one line. */
+export function complexClasses(structure: StructureResult, size: number): readonly ComplexClass[] {
+  const { complexes = [], reactions = [], linkageClasses = [], terminalStrongClasses = [] } = structure;
+  const terminal = new Set(terminalStrongClasses.flat());
+  const classOf = new Map(linkageClasses.flatMap(({ complexes: members }, i) => members.map((m) => [m, i])));
+  const edges = linkageClasses.map((): ComplexEdge[] => []);
+  const drawn = new Set<number>();
+  reactions.forEach(({ from, to, row, reverse }, i) => {
+    if (drawn.has(i)) return;
+    if (reverse !== null) drawn.add(reverse);
+    edges[classOf.get(from) ?? -1]?.push({ from, to, both: reverse !== null, label: `R${row + 1}` });
+  });
+  return linkageClasses.map((linkage, i) => ({
+    number: i + 1,
+    nodes: linkage.complexes.map((index) => {
+      const label = complexLabel(complexes[index]?.of ?? {});
+      return { index, label, width: Math.ceil(labelWidth(label, size)) + 16, terminal: terminal.has(index) };
+    }),
+    edges: edges[i] ?? [],
+    terminal: terminalStrongClasses.filter(([first]) => first !== undefined && classOf.get(first) === i),
+    rank: linkage.rank,
+    deficiency: linkage.deficiency,
+  }));
+}

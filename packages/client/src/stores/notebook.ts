@@ -1,0 +1,57 @@
+import { defineStore } from 'pinia';
+import { computed, ref } from 'vue';
+
+/** How one person likes one notebook to lie open; kept on this machine. */
+interface Lying {
+  /** Workings' part of the book in hundredths. */
+  seam: number;
+  folded: readonly string[];
+  /** Cells whose Workings are put away, or all of them. */
+  workingsAway: readonly string[];
+}
+
+export const seamBounds = { least: 30, most: 60, usual: 42, step: 2 } as const;
+
+const usual: Lying = { seam: seamBounds.usual, folded: [], workingsAway: [] };
+
+function read(key: string): Lying {
+  try {
+    const kept: unknown = JSON.parse(localStorage.getItem(key) ?? 'null');
+    return { ...usual, ...(typeof kept === 'object' ? kept : {}) };
+  } catch {
+    return usual;
+  }
+}
+
+const toggled = (list: readonly string[], id: string) =>
+  list.includes(id) ? list.filter((other) => other !== id) : [...list, id];
+
+/** How the open notebook lies on the desk: where the seam stands, what is folded, which page shows when only one can. */
+export const useLying = defineStore('lying', () => {
+  let key = '';
+  const lying = ref<Lying>(usual);
+  /** Which page shows where there is room for one only. */
+  const page = ref<'workings' | 'fair'>('fair');
+
+  function open(person: string, notebook: string): void {
+    key = `stillroom.lying.${person}.${notebook}`;
+    lying.value = read(key);
+  }
+
+  function keep(change: Partial<Lying>): void {
+    lying.value = { ...lying.value, ...change };
+    localStorage.setItem(key, JSON.stringify(lying.value));
+  }
+
+  return {
+    page,
+    open,
+    seam: computed(() => lying.value.seam),
+    moveSeam: (to: number) =>
+      keep({ seam: Math.min(seamBounds.most, Math.max(seamBounds.least, Math.round(to))) }),
+    isFolded: (id: string) => lying.value.folded.includes(id),
+    fold: (id: string) => keep({ folded: toggled(lying.value.folded, id) }),
+    isAway: (id: string) => lying.value.workingsAway.includes(id),
+    putAway: (id: string) => keep({ workingsAway: toggled(lying.value.workingsAway, id) }),
+  };
+});
