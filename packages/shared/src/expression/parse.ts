@@ -167,13 +167,13 @@ class ExpressionParser {
 
   private comparison(left: ExpressionSyntax, operator: Comparison): ExpressionSyntax {
     const { scanner } = this;
-    if (left.kind === 'compare') {
+    scanner.advance();
+    const right = this.binary(Level.compare + 1, false);
+    if (scanner.kind === 'symbol' && comparisons.has(scanner.word)) {
       throw new Failure(scanner.from, scanner.to, 'Comparisons cannot be chained.', {
         hint: 'Write a < b and b < c.',
       });
     }
-    scanner.advance();
-    const right = this.binary(Level.compare + 1, false);
     return { kind: 'compare', operator, left, right, from: left.from, to: right.to };
   }
 
@@ -228,7 +228,7 @@ class ExpressionParser {
     if (!this.units) return of;
     const start = scanner.mark();
     const before = scanner.previousEnd;
-    const leadsWithSlash = scanner.is('/') || scanner.kind === 'number';
+    const leadsWithSlash = scanner.is('/');
     if (leadsWithSlash && !first) return of;
     const unit = readUnit(scanner);
     if (unit.length === 0) return of;
@@ -242,7 +242,7 @@ class ExpressionParser {
 
   private atEndOfValue(): boolean {
     const { scanner } = this;
-    if (scanner.kind === 'end' || scanner.is(')') || scanner.is(',')) return true;
+    if (scanner.kind === 'end' || scanner.is(')') || scanner.is(',') || scanner.is(':')) return true;
     return scanner.isName('for') || scanner.isName('in') || scanner.isName('where');
   }
 

@@ -82,7 +82,7 @@ function rangeFollowsComma(scanner: Scanner): boolean {
   for (let depth = 0; scanner.kind !== 'end'; scanner.advance()) {
     if (scanner.is('(') || scanner.is('[')) depth += 1;
     else if (scanner.is(')') || scanner.is(']')) depth -= 1;
-    else if (depth <= 0 && scanner.is(',')) break;
+    else if (depth <= 0 && (scanner.is(',') || scanner.isName('for'))) break;
     else if (depth <= 0 && scanner.is('..')) {
       found = true;
       break;

@@ -1,4 +1,5 @@
 import { printExpression, printRange } from '../expression/print.ts';
+import type { ExpressionSyntax } from '../expression/syntax.ts';
 import type {
   AssignmentSyntax,
   FamilySyntax,
@@ -42,7 +43,7 @@ export function canonicalText(text: string): string | null {
   return tree.lines
     .filter((line) => line.kind !== 'blank')
     .map((line) =>
-      line.kind === 'row' ? joinColumns(rowColumns(line).slice(0, 2), []) : printStatement(line),
+      line.kind === 'row' ? joinColumns(rowColumns({ ...line, note: '' }), []) : printStatement(line),
     )
     .map((line) => `${line}\n`)
     .join('');
@@ -102,10 +103,16 @@ export function printItems(items: readonly ItemSyntax[]): string {
 }
 
 function printItem(item: ItemSyntax): string {
-  if (item.kind === 'value') return printExpression(item.value);
+  if (item.kind === 'value') return printValue(item.value);
   if (item.kind !== 'constant') return `${item.kind} = ${printExpression(item.value)}`;
   const name = printExpression(item.name);
   return item.value ? `${name} = ${printExpression(item.value)}` : name;
+}
+
+/** A value without name: more than a number stands in brackets, since a name there would be a constant's. */
+function printValue(value: ExpressionSyntax): string {
+  const isPlain = value.kind === 'number' || value.kind === 'measured';
+  return isPlain ? printExpression(value) : `(${printExpression(value)})`;
 }
 
 function printAssignment(item: AssignmentSyntax, after: string): string {
