@@ -17,7 +17,7 @@ export function treeConstants(context: TheoremContext, constants: readonly Ratio
     return null;
   const result = Array.from({ length: context.complexCount }, () => 1n);
   const arrowsOf: number[][] = classes.map(() => []);
-  context.arrows.forEach(({ from }, arrow) => arrowsOf[context.facts.linkageClassOf[from]!]!.push(arrow));
+  context.arrows.forEach(({ from }, arrow) => arrowsOf[context.linkageClassOf[from]!]!.push(arrow));
   classes.forEach(({ complexes }, group) => {
     const arrows = arrowsOf[group]!;
     const scale = arrows.reduce((common, arrow) => lcm(common, constants[arrow]!.denominator), 1n);

@@ -34,7 +34,7 @@ export interface StructureOptions {
   /** Told what is being done and how far it is; may throw to end the analysis. */
   readonly checkpoint?: Checkpoint;
   /** Judges the theorems; all of the registry by default. */
-  readonly judge?: (network: Network, structural: StructuralNetwork) => readonly Verdict[];
+  readonly judge?: (network: Network, structure: Structure) => readonly Verdict[];
 }
 
 /** The result of a structure cell: every structural quantity of the network, exact, and every verdict. */
@@ -60,7 +60,7 @@ function study(
 ): { structure: Structure; verdicts: readonly Verdict[] } {
   const structure = analyse(structuralNetwork(network), checkpoint);
   checkpoint(0.95, 'verdicts');
-  return { structure, verdicts: judge(network, structure.network) };
+  return { structure, verdicts: judge(network, structure) };
 }
 
 function describe(

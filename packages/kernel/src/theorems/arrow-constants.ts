@@ -12,6 +12,13 @@ export interface ArrowConstants {
   readonly why: string | null;
 }
 
+/** What stands for the constants of a network that is too large to read them one by one. */
+export const unreadConstants: ArrowConstants = {
+  exact: null,
+  names: [],
+  why: 'the network is too large to read all constants',
+};
+
 /** Reads the constants of a structural network. Laws that are mass action in disguise count as mass action. */
 export function arrowConstants(structure: StructuralNetwork): ArrowConstants {
   const values: (Rational | null)[] = Array.from({ length: structure.arrows.count }, () => ZERO);

@@ -13,9 +13,11 @@ import {
   ZERO,
 } from '../exact/index.ts';
 import type { StructuralNetwork } from '../network/index.ts';
-import { complexLabel, structuralNetwork } from '../network/index.ts';
+import { complexLabel } from '../network/index.ts';
+import type { Structure } from '../structure/index.ts';
+import { membersOf, nonterminalComplexes } from '../structure/index.ts';
 import type { ArrowConstants } from './arrow-constants.ts';
-import { arrowConstants } from './arrow-constants.ts';
+import { arrowConstants, unreadConstants } from './arrow-constants.ts';
 import { positiveCirculation } from './circulation.ts';
 import type { Term } from './coefficients.ts';
 import { Coefficients } from './coefficients.ts';
@@ -23,7 +25,6 @@ import type { KineticsReport } from './kinetics.ts';
 import { reportKinetics } from './kinetics.ts';
 import type { Conservation, Consistency } from './positive-vectors.ts';
 import { decideConservation, decideConsistency } from './positive-vectors.ts';
-import { StructuralFacts } from './structural-facts.ts';
 
 /** One distinct directed arrow between complexes. */
 export interface Arrow {
@@ -31,8 +32,18 @@ export interface Arrow {
   readonly to: number;
 }
 
+/** A linkage class; its deficiency is null where the rank could not be proven. */
+export interface LinkageClass {
+  readonly complexes: readonly number[];
+  readonly deficiency: number | null;
+  readonly terminalStrongClasses: readonly (readonly number[])[];
+}
+
 /** Entries (species × arrows) above which dense exact matrices are not formed; theorems that need them stay undecided. */
 export const DENSE_LIMIT = 250_000;
+
+/** Arrows above which witnesses that name every arrow are left out and constants are not read. */
+const HUGE = 50_000;
 
 /** Judges a theorem by its name on a context, so that verdicts can build on each other. */
 export type JudgeById = (id: VerdictId, context: TheoremContext) => Verdict;
@@ -43,19 +54,34 @@ export type JudgeById = (id: VerdictId, context: TheoremContext) => Verdict;
  */
 export class TheoremContext {
   readonly network: Network;
+  /** The structural network. */
   readonly structure: StructuralNetwork;
+  /** Its structural quantities. */
+  readonly analysis: Structure;
   readonly species: readonly string[];
-  readonly arrows: readonly Arrow[];
   readonly #judge: JudgeById;
   readonly #kept = new Map<string, unknown>();
 
-  constructor(network: Network, judge: JudgeById, structure = structuralNetwork(network)) {
+  constructor(network: Network, judge: JudgeById, analysis: Structure) {
+    const structure = analysis.network;
     this.network = network;
+    this.analysis = analysis;
     this.structure = structure;
     this.#judge = judge;
     this.species = structure.species;
-    const { count, from, to } = structure.arrows;
-    this.arrows = Array.from({ length: count }, (_, arrow) => ({ from: from[arrow]!, to: to[arrow]! }));
+  }
+
+  /** Distinct arrows in order of writing. */
+  get arrows(): readonly Arrow[] {
+    return this.memo('arrows', () => {
+      const { count, from, to } = this.structure.arrows;
+      return Array.from({ length: count }, (_, arrow) => ({ from: from[arrow]!, to: to[arrow]! }));
+    });
+  }
+
+  /** Whether the network is beyond what is looked at arrow by arrow; only structural quantities are used then. */
+  get huge(): boolean {
+    return this.structure.arrows.count > HUGE;
   }
 
   /** The value of `compute`, kept under a name for the life of the context. */
@@ -105,38 +131,51 @@ export class TheoremContext {
     return this.terms(complex).find((term) => term.species === species)?.coefficient ?? 0;
   }
 
-  /** Classes, rank, deficiency, siphons: what the structure room computes. */
-  get facts(): StructuralFacts {
-    return this.memo('facts', () => new StructuralFacts(this.structure));
-  }
-
   /** Null where the rank could not be proven. */
   get deficiency(): number | null {
-    return this.facts.deficiency;
+    return this.analysis.deficiency;
   }
 
   get rank(): number | null {
-    return this.facts.rank;
+    return this.analysis.rank;
   }
 
-  get linkageClasses(): StructuralFacts['linkageClasses'] {
-    return this.facts.linkageClasses;
+  get linkageClasses(): readonly LinkageClass[] {
+    return this.memo('linkage classes', () => {
+      const { linkage, strong, terminal, classes } = this.analysis;
+      const terminalClasses: number[][][] = Array.from({ length: linkage.count }, () => []);
+      for (let group = 0; group < strong.count; group++) {
+        if (terminal[group] === 0) continue;
+        const members = Array.from(membersOf(strong, group));
+        terminalClasses[linkage.of[members[0]!]!]!.push(members);
+      }
+      return terminalClasses.map((terminalStrongClasses, group) => ({
+        complexes: Array.from(membersOf(linkage, group)),
+        deficiency: classes[group]!.deficiency,
+        terminalStrongClasses,
+      }));
+    });
+  }
+
+  /** Linkage class of each complex. */
+  get linkageClassOf(): Int32Array {
+    return this.analysis.linkage.of;
   }
 
   get nonterminalComplexes(): readonly number[] {
-    return this.memo('non-terminal complexes', () => this.facts.nonterminalComplexes);
-  }
-
-  get siphons(): StructuralFacts['siphons'] {
-    return this.facts.siphons;
+    return this.memo('non-terminal complexes', () =>
+      Array.from(nonterminalComplexes(this.analysis.strong, this.analysis.terminal)),
+    );
   }
 
   /** An arrow that lies on no directed cycle, or null in a weakly reversible network. */
   get oneWayArrow(): number | null {
     return this.memo('one-way arrow', () => {
-      const strong = this.facts.strongClassOf;
-      const arrow = this.arrows.findIndex(({ from, to }) => strong[from] !== strong[to]);
-      return arrow < 0 ? null : arrow;
+      const strong = this.analysis.strong.of;
+      const { from, to, count } = this.structure.arrows;
+      for (let arrow = 0; arrow < count; arrow++)
+        if (strong[from[arrow]!] !== strong[to[arrow]!]) return arrow;
+      return null;
     });
   }
 
@@ -152,23 +191,23 @@ export class TheoremContext {
   /** A positive flux on all arrows that leaves every complex balanced, for a weakly reversible network. */
   get circulation(): readonly bigint[] | null {
     return this.memo('circulation', () =>
-      this.weaklyReversible ? positiveCirculation(this.complexCount, this.arrows) : null,
+      this.weaklyReversible && !this.huge ? positiveCirculation(this.complexCount, this.arrows) : null,
     );
   }
 
   /** Whether dense exact matrices of this network are affordable. */
   get dense(): boolean {
-    return this.species.length * Math.max(1, this.arrows.length) <= DENSE_LIMIT;
+    return this.species.length * Math.max(1, this.structure.arrows.count) <= DENSE_LIMIT;
   }
 
   /** Null where the network is too large for the exact test. */
   get consistency(): Consistency | null {
-    return this.memo('consistency', () => decideConsistency(this));
+    return this.memo('consistency', () => (this.huge ? null : decideConsistency(this)));
   }
 
   /** Null where the network is too large for the exact test. */
   get conservation(): Conservation | null {
-    return this.memo('conservation', () => decideConservation(this));
+    return this.memo('conservation', () => (this.huge ? null : decideConservation(this)));
   }
 
   /** N with each species in the unit that makes its coefficients integers; species × arrows. Only where `dense`. */
@@ -216,7 +255,7 @@ export class TheoremContext {
 
   /** The constant of every arrow, its equal rows and fixed species included. */
   get constants(): ArrowConstants {
-    return this.memo('constants', () => arrowConstants(this.structure));
+    return this.memo('constants', () => (this.huge ? unreadConstants : arrowConstants(this.structure)));
   }
 
   /** Positive exact constants by arrow, or null where one is missing, zero or not rational. */

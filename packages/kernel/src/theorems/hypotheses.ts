@@ -1,4 +1,4 @@
-import type { Hypothesis } from '@stillroom/shared/cells';
+import type { Hypothesis, HypothesisClaim } from '@stillroom/shared/cells';
 import type { TheoremContext } from './context.ts';
 
 /** The hypotheses that several theorems share, each with the evidence a checker needs. */
@@ -123,8 +123,7 @@ export function consistent(context: TheoremContext): Hypothesis {
   const claim = 'consistent';
   const text = 'The network is consistent: some positive flux on all arrows leaves every species unchanged.';
   const answer = context.consistency;
-  if (answer === null)
-    return { claim, text: `${text} The network is too large for the exact test.`, holds: null };
+  if (answer === null) return withoutWitness(claim, text, context.analysis.consistent);
   return answer.holds
     ? {
         claim,
@@ -157,8 +156,7 @@ export function conservative(context: TheoremContext): Hypothesis {
   const text =
     'The network is conservative: some conservation law has a positive coefficient for every species.';
   const answer = context.conservation;
-  if (answer === null)
-    return { claim, text: `${text} The network is too large for the exact test.`, holds: null };
+  if (answer === null) return withoutWitness(claim, text, context.analysis.conservative.holds);
   return answer.holds
     ? {
         claim,
@@ -174,47 +172,48 @@ export function conservative(context: TheoremContext): Hypothesis {
       };
 }
 
+/** The answer of the structure, where the evidence would be too long to carry. */
+function withoutWitness(claim: HypothesisClaim, text: string, holds: boolean | null): Hypothesis {
+  return holds === null
+    ? { claim, text: `${text} The network is too large for the exact test.`, holds }
+    : { claim, text, holds };
+}
+
 /** How many siphons are listed one by one with their laws; above, one sentence speaks for all. */
 const LISTED_SIPHONS = 12;
 
 /** Every siphon contains the support of a non-negative law; one hypothesis per minimal siphon while they are few. */
 export function noCriticalSiphon(context: TheoremContext): Hypothesis[] {
   const claim = 'no critical siphon';
-  const { siphons, complete } = context.siphons;
+  const { siphons, complete } = context.analysis.siphons;
   const summary = 'Every siphon contains all species of some conservation law that is not negative.';
-  const critical = siphons.find((siphon) => siphon.critical);
+  const critical = siphons.find((siphon) => siphon.critical === true);
   if (critical !== undefined) {
-    const names = context.speciesNames(critical.species);
-    return [
-      {
-        claim,
-        text: `${summary} The siphon {${names.join(', ')}} contains none.`,
-        holds: false,
-        witness: { kind: 'set', species: names },
-      },
-    ];
+    const names = context.speciesNames(Array.from(critical.species));
+    const text = `${summary} The siphon {${names.join(', ')}} contains none.`;
+    return [{ claim, text, holds: false, witness: { kind: 'set', species: names } }];
   }
-  if (!complete)
+  if (!complete) {
     return [{ claim, text: `${summary} There are too many siphons to look at all of them.`, holds: null }];
+  }
+  if (siphons.some((siphon) => siphon.critical === null)) {
+    return [{ claim, text: `${summary} For some siphon this is too large to be decided.`, holds: null }];
+  }
   if (siphons.length === 0) return [{ claim, text: `${summary} There is no siphon.`, holds: true }];
-  const listed = siphons.slice(0, LISTED_SIPHONS).map((siphon): Hypothesis => {
-    const names = context.speciesNames(siphon.species);
-    const claim = 'siphon holds a law';
-    const text = `The siphon {${names.join(', ')}} contains all species of a conservation law that is not negative.`;
-    return siphon.law === null
-      ? { claim, text, holds: true }
-      : {
-          claim,
-          text,
-          holds: true,
-          witness: { kind: 'vector', of: 'laws', entries: context.sparseLawEntries(siphon.law) },
-        };
-  });
   const all: Hypothesis = {
     claim,
     text: `${summary} The minimal siphons are ${siphons.length} in number.`,
     holds: true,
   };
+  const listed = siphons.slice(0, LISTED_SIPHONS).flatMap(({ species, law }): Hypothesis[] => {
+    if (law === null) return [];
+    const names = context.speciesNames(Array.from(species));
+    const text = `The siphon {${names.join(', ')}} contains all species of a conservation law that is not negative.`;
+    const entries = context.sparseLawEntries(law);
+    return [
+      { claim: 'siphon holds a law', text, holds: true, witness: { kind: 'vector', of: 'laws', entries } },
+    ];
+  });
   return [all, ...listed];
 }
 

@@ -1,5 +1,5 @@
 import { solveLinear } from '../exact/index.ts';
-import type { LinearCondition } from '../exact/index.ts';
+import type { LinearCondition, SparseVector } from '../exact/index.ts';
 import type { TheoremContext } from './context.ts';
 
 /** A positive flux in the kernel of N, or a linear function of the species that no arrow lowers and some arrow raises. */
@@ -11,7 +11,7 @@ export type Conservation =
   { readonly holds: true; readonly law: bigint[] } | { readonly holds: false; readonly flux: bigint[] };
 
 /** Tableau entries above which the exact programmes are not started. */
-const LARGEST_PROGRAMME = 1_500_000;
+const LARGEST_PROGRAMME = 400_000;
 
 /**
  * Consistent or not, with proof: v = 1 + u, u ≥ 0 with N u = −N 1 by exact linear programming; the alternative is
@@ -20,8 +20,8 @@ const LARGEST_PROGRAMME = 1_500_000;
 export function decideConsistency(context: TheoremContext): Consistency | null {
   const circulation = context.circulation;
   if (circulation !== null) return { holds: true, flux: [...circulation] };
+  if (tableauSize(context.species.length, context.arrows.length) > LARGEST_PROGRAMME) return null;
   const columns = changes(context);
-  if (tableauSize(context.species.length, columns.length) > LARGEST_PROGRAMME) return null;
   const conditions = context.species.map((_, i): LinearCondition => {
     const terms: [number, bigint][] = [];
     let right = 0n;
@@ -42,6 +42,9 @@ export function decideConsistency(context: TheoremContext): Consistency | null {
 
 /** Conservative or not, with proof: w = 1 + u, u ≥ 0 with u N = −1 N. */
 export function decideConservation(context: TheoremContext): Conservation | null {
+  const known = context.analysis.conservative;
+  if (known.holds === true) return { holds: true, law: denseLaw(context, known.law) };
+  if (tableauSize(context.arrows.length, context.species.length) > LARGEST_PROGRAMME) return null;
   const columns = changes(context);
   const used = columns
     .map((_, arrow) => arrow)
@@ -49,7 +52,6 @@ export function decideConservation(context: TheoremContext): Conservation | null
       const reverse = context.structure.arrows.reverse[arrow]!;
       return reverse < 0 || reverse > arrow;
     });
-  if (tableauSize(used.length, context.species.length) > LARGEST_PROGRAMME) return null;
   const conditions = used.map((arrow): LinearCondition => {
     const terms = [...columns[arrow]!];
     return { terms, relation: '=', right: -terms.reduce((sum, [, change]) => sum + change, 0n) };
@@ -75,4 +77,10 @@ function changes(context: TheoremContext): ReadonlyMap<number, bigint>[] {
 
 function tableauSize(conditions: number, variables: number): number {
   return (conditions + 1) * (variables + conditions + 1);
+}
+
+function denseLaw(context: TheoremContext, { indices, values }: SparseVector): bigint[] {
+  const law = context.species.map(() => 0n);
+  indices.forEach((species, k) => (law[species] = values[k]!));
+  return law;
 }

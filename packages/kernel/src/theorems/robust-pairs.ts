@@ -13,6 +13,7 @@ export interface RobustPair {
  */
 export function robustPairs(context: TheoremContext): RobustPair[] {
   return context.memo('robust pairs', () => {
+    if (context.huge) return [];
     const filed = new Map<string, number[]>();
     const pairs: RobustPair[] = [];
     for (const complex of context.nonterminalComplexes) file(filed, keyOf(context, complex, -1), complex);
