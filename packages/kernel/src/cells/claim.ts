@@ -104,10 +104,11 @@ function decide(job: CellJob, claim: ClaimExpression): ClaimResult {
     left = evaluation.value(claim.left);
     right = evaluation.value(claim.right);
     const { holds, why } = judge(claim.comparison, left, right);
+    const exactly = left.kind !== 'measured' && right.kind !== 'measured';
     return {
       verdict: holds ? 'holds' : 'fails',
-      left: sideOf(left),
-      right: sideOf(right),
+      left: sideOf(left, exactly),
+      right: sideOf(right, exactly),
       why,
       figures: evaluation.figures,
     };

@@ -1,6 +1,13 @@
 import type { CellKind, ClaimSide } from '@stillroom/shared/cells';
 import { isMeasuredPlace, numberText, type PathStep } from '@stillroom/shared/paths';
-import { formatRational, parseRational, type Rational, rationalForResult } from '../exact/index.ts';
+import {
+  equals,
+  formatRational,
+  parseRational,
+  type Rational,
+  rationalForResult,
+  toDouble,
+} from '../exact/index.ts';
 
 /** A value while a claim is worked out. Exact and measured numbers never mix unnoticed. */
 export type ClaimValue =
@@ -28,7 +35,7 @@ export class ClaimMistake extends Error {
   }
 }
 
-const exactText = /^-?\d+(?:\/\d+)?$/u;
+const exactPattern = /^-?\d+(?:\/\d+)?$/u;
 
 /**
  * What a JSON value of a result means in a claim. Whole numbers and texts like "3/2" are exact unless they stand at a
@@ -50,7 +57,7 @@ export function claimValue(
         return value === null ? { kind: 'measured', value: inner } : { kind: 'exact', value };
       }
       case 'string': {
-        const value = exactText.test(inner) ? parseRational(inner) : null;
+        const value = exactPattern.test(inner) ? parseRational(inner) : null;
         return value === null ? { kind: 'word', text: inner } : { kind: 'exact', value };
       }
       case 'boolean':
@@ -70,11 +77,15 @@ export function claimValue(
   return convert(value);
 }
 
-/** A value as results carry it; lists have none. */
-export function sideOf(value: ClaimValue): ClaimSide {
+/**
+ * A value as results carry it; lists have none.
+ *
+ * @param exactly false for a side of a comparison with a measured number: then both are doubles
+ */
+export function sideOf(value: ClaimValue, exactly = true): ClaimSide {
   switch (value.kind) {
     case 'exact':
-      return rationalForResult(value.value);
+      return exactly ? rationalForResult(value.value) : toDouble(value.value);
     case 'word':
       return value.text;
     case 'truth':
@@ -87,6 +98,16 @@ export function sideOf(value: ClaimValue): ClaimSide {
 
 const shownDigits = 6;
 
+/** Longest decimal that stands in place of a fraction. */
+const longestDecimal = 12;
+
+/** "19/2" as 9.5, "1/3" as it is. */
+function exactText(value: Rational): string {
+  const decimal = String(toDouble(value));
+  const read = decimal.length <= longestDecimal ? parseRational(decimal) : null;
+  return read !== null && equals(read, value) ? decimal : formatRational(value);
+}
+
 /** A measured number as a sentence shows it. */
 export const shownValue = (value: number): number => Number(value.toPrecision(shownDigits));
 
@@ -94,7 +115,7 @@ export const shownValue = (value: number): number => Number(value.toPrecision(sh
 export function valueText(value: ClaimValue, full = false): string {
   switch (value.kind) {
     case 'exact':
-      return formatRational(value.value).replace('-', '−');
+      return exactText(value.value).replace('-', '−');
     case 'measured':
       return full ? String(value.value).replace('-', '−') : numberText(value.value, { digits: shownDigits });
     case 'word':

@@ -1,5 +1,6 @@
 import releaseVariant from '@jitl/quickjs-wasmfile-release-sync';
 import {
+  type EmscriptenModuleLoaderOptions,
   newQuickJSWASMModuleFromVariant,
   newVariant,
   type QuickJSContext,
@@ -10,6 +11,14 @@ import {
 
 /** The package's types speak of its CommonJS form, whose default export is one step further in. */
 const variant = releaseVariant as unknown as QuickJSSyncVariant;
+
+/**
+ * The name of the running program is copied into the guest's memory: it has to be the same wherever a snapshot is made
+ * or used, or everything after it stands elsewhere.
+ */
+const sameEnvironment: EmscriptenModuleLoaderOptions & { readonly thisProgram: string } = {
+  thisProgram: './script',
+};
 
 /** Bytes the guest's heap may take, library included; stack of the guest. */
 const memoryLimit = 192 * 1024 * 1024;
@@ -35,7 +44,8 @@ export class QuickJsInstance {
 
   /** @param wasm bytes of QuickJS */
   static async make(wasm: Uint8Array<ArrayBuffer>): Promise<QuickJsInstance> {
-    const module = await newQuickJSWASMModuleFromVariant(newVariant(variant, { wasmBinary: wasm.buffer }));
+    const options = { wasmBinary: wasm.buffer, emscriptenModule: sameEnvironment };
+    const module = await newQuickJSWASMModuleFromVariant(newVariant(variant, options));
     return new QuickJsInstance(module);
   }
 
