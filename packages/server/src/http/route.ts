@@ -55,8 +55,10 @@ export function route<
       sentence.handle({ person, params, query, body, manager, request, response }),
     );
     if (response.headersSent) return;
-    if (result === undefined) response.status(sentence.status ?? 204).end();
-    else response.status(sentence.status ?? 200).json(result);
+    // A handler whose answers differ in status has set it by itself.
+    const chosen = response.statusCode === 200 ? sentence.status : response.statusCode;
+    if (result === undefined) response.status(chosen ?? 204).end();
+    else response.status(chosen ?? 200).json(result);
   };
   return [services.limits[sentence.limit], json({ limit: sentence.most ?? usualBody }), answer];
 }

@@ -75,21 +75,24 @@ function presentMember({ role, notebooks, since }: MembershipEntity, person: Per
 async function presentInvitations(manager: EntityManager, group: string): Promise<InvitationView[]> {
   const open = { group, usedAt: IsNull(), withdrawnAt: IsNull(), until: MoreThan(new Date()) };
   const invitations = await manager.find(InvitationEntity, { where: open, order: { at: 'DESC' } });
-  return Promise.all(invitations.map((invitation) => presentInvitation(manager, invitation)));
+  const people = await findPeople(
+    manager,
+    invitations.map(({ by }) => by),
+  );
+  return invitations.map((invitation) => presentInvitation(invitation, people.get(invitation.by)));
 }
 
 /** An open invitation, for those who may invite. */
-export async function presentInvitation(
-  manager: EntityManager,
+export function presentInvitation(
   { id, email, role, notebooks, by, at, until }: InvitationEntity,
-): Promise<InvitationView> {
-  const person = (await findPeople(manager, [by])).get(by);
+  inviter: Pick<PersonEntity, 'id' | 'name' | 'hue'> = { id: by, name: 'Someone', hue: 0 },
+): InvitationView {
   return {
     id,
     email,
     role,
     notebooks,
-    by: person === undefined ? { id: by, name: 'Someone', initials: '?', hue: 0 } : presentPerson(person),
+    by: presentPerson(inviter),
     at: at.toISOString(),
     until: until.toISOString(),
   };

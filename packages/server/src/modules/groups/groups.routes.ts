@@ -31,12 +31,13 @@ export function groupsRoutes(services: Services, contents: GroupContents): Route
         const memberships = await membershipsOf(manager, person.id);
         const ids = memberships.map(({ group }) => group);
         const groups = await manager.find(GroupEntity, { where: { id: In(ids) }, order: { name: 'ASC' } });
-        return Promise.all(
-          groups.flatMap((group) => {
-            const membership = memberships.find((candidate) => candidate.group === group.id);
-            return membership === undefined ? [] : summarizeGroup(manager, contents, group, membership);
-          }),
-        );
+        const lines = [];
+        for (const group of groups) {
+          const membership = memberships.find((candidate) => candidate.group === group.id);
+          if (membership !== undefined)
+            lines.push(await summarizeGroup(manager, contents, group, membership));
+        }
+        return lines;
       },
     }),
   );

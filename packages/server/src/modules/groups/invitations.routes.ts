@@ -33,7 +33,7 @@ export function invitationsRoutes(services: Services, contents: GroupContents): 
       async handle({ person, params, body, manager }) {
         const { group } = await loadGroup(manager, person.id, params.group, 'group.invite');
         const invitation = await invite(services, manager, person, group, body);
-        return presentInvitation(manager, invitation);
+        return presentInvitation(invitation, person);
       },
     }),
   );
@@ -59,10 +59,8 @@ export function invitationsRoutes(services: Services, contents: GroupContents): 
       params: linkParams,
       async handle({ params, manager }): Promise<InvitationCard> {
         const { email, role, message, until, by, group } = await openInvitation(manager, params.token);
-        const [host, inviter] = await Promise.all([
-          manager.findOneBy(GroupEntity, { id: group }),
-          findPerson(manager, by),
-        ]);
+        const host = await manager.findOneBy(GroupEntity, { id: group });
+        const inviter = await findPerson(manager, by);
         return {
           group: host?.name ?? '',
           role,

@@ -33,9 +33,7 @@ export async function readOutbox(manager: EntityManager, most = 200): Promise<Ou
 
 /** How many letters wait, and how many were given up. */
 export async function countOutbox(manager: EntityManager): Promise<{ waiting: number; failed: number }> {
-  const [waiting, failed] = await Promise.all([
-    manager.countBy(MailEntity, { state: 'waiting' }),
-    manager.countBy(MailEntity, { state: 'failed' }),
-  ]);
+  const waiting = await manager.countBy(MailEntity, { state: 'waiting' });
+  const failed = await manager.countBy(MailEntity, { state: 'failed' });
   return { waiting, failed };
 }

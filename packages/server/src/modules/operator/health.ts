@@ -15,15 +15,16 @@ export async function readHealth(
   config: Config,
   queue: QueueView,
 ): Promise<HealthView> {
-  const lines = await Promise.all([
-    databaseLine(manager),
-    connectionsLine(manager),
-    sealLine(manager),
-    mailLine(manager, config),
+  // One after another: within a transaction they share one connection.
+  const lines = [
+    await databaseLine(manager),
+    await connectionsLine(manager),
+    await sealLine(manager),
+    await mailLine(manager, config),
     engineLine(queue),
-    diskLine(),
+    await diskLine(),
     memoryLine(),
-  ]);
+  ];
   const { signUp } = await readSettings(manager);
   return { version, lines, signUp };
 }
@@ -73,7 +74,7 @@ async function mailLine(manager: EntityManager, config: Config): Promise<Line> {
   return { name: 'Mail', state: failed === 0 ? 'well' : 'warning', words };
 }
 
-async function engineLine({ workers, waiting, running }: QueueView): Promise<Line> {
+function engineLine({ workers, waiting, running }: QueueView): Line {
   if (workers.length === 0) return { name: 'Engine', state: 'ill', words: 'no worker is there to compute' };
   const kinds = [...new Set(workers.map(({ isolation }) => isolation))].join('; ');
   const words = `${workers.length} workers (${kinds}), ${running} cells running, ${waiting} waiting`;
@@ -88,7 +89,7 @@ async function diskLine(): Promise<Line> {
   return { name: 'Disk', state: free < 0.3 ? 'ill' : free < 2 ? 'warning' : 'well', words };
 }
 
-async function memoryLine(): Promise<Line> {
+function memoryLine(): Line {
   const megabytes = Math.round(process.memoryUsage.rss() / 1e6);
   const hours = process.uptime() / 3600;
   const words = `${megabytes} MB held by this process, up for ${hours.toFixed(1)} hours`;
