@@ -139,6 +139,9 @@ function binaryTex({ operator, left, right }: Extract<Expression, { kind: 'binar
     case '-':
       return { tex: `${a.tex} - ${bracketed(b, binding.product)}`, binding: binding.sum };
     case '*': {
+      if (left.kind === 'negate') {
+        return typeset({ kind: 'negate', of: { kind: 'binary', operator, left: left.of, right } });
+      }
       const tex = [a, b].map((part) => bracketed(part, binding.product));
       const sign = /^[\d.]/.test(tex[1]!) ? ' \\cdot ' : ' \\, ';
       return { tex: tex.join(sign), binding: binding.product };

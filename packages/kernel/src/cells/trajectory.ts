@@ -1,5 +1,5 @@
 import type { TrajectoryResult, TrajectorySettings } from '@stillroom/shared/cells';
-import type { Network, NetworkEvent } from '@stillroom/shared/network';
+import type { Network } from '@stillroom/shared/network';
 import { type Outcome, prepareSystem, solve } from '../ode/index.ts';
 import type { Backend } from '../program/index.ts';
 import {
@@ -24,8 +24,6 @@ export interface TrajectoryOptions {
   readonly progress?: (share: number) => void;
   /** Conservation laws whose drift is reported, as coefficients by species; found here where they are not given. */
   readonly laws?: readonly Law[];
-  /** The cell's own events, read from its settings. */
-  readonly events?: readonly NetworkEvent[];
   /** For tests: the same bits come from either. */
   readonly backend?: Backend;
 }
@@ -46,7 +44,7 @@ export function evaluateTrajectory(
   const { times, until } = timeGrid(settings);
   const values = resolveValues(network, settings);
   const equations = rateEquations(network, values);
-  const events = compileEvents(equations, [...network.events, ...(options.events ?? [])]);
+  const events = compileEvents(equations, network.events);
   const sensitiveTo = sensitivityParameters(network, settings, values.constants);
   if (sensitiveTo.length > 0 && events.events.length > 0) {
     throw new RateError(
