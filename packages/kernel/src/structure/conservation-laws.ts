@@ -52,8 +52,9 @@ function lawsOfKernel(kernel: LeftKernel, checkpoint: () => void): ConservationL
     const found = nonnegativeLawsOf(block, limits);
     steps -= found.steps;
     nonnegativeComplete &&= found.complete;
-    for (const law of found.laws) nonnegative.push(law);
-    for (const law of independentFirst(block, found.laws)) basis.push(law);
+    const extreme = canonicalOrder(found.laws);
+    for (const law of extreme) nonnegative.push(law);
+    for (const law of independentFirst(block, extreme)) basis.push(law);
   }
   const isNonnegative = (law: SparseVector) => law.values.every((value) => value > 0n);
   return {
