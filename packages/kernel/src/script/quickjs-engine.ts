@@ -92,12 +92,13 @@ class QuickJsEngine implements ScriptEngine {
       JSON.stringify(Object.values(globals)),
       seed,
     ].map((argument) => context.newString(argument));
-    const result = instance.withInterrupt(interrupt, () =>
+    let interrupted = false;
+    const asked = () => (interrupted ||= interrupt());
+    const result = instance.withInterrupt(asked, () =>
       context.callFunction(runFunction, context.undefined, ...given),
     );
     const printed = this.printedBy(instance, printedFunction);
     if (result.error !== undefined) {
-      const interrupted = interrupt();
       return interrupted ? { ended: 'interrupted', printed } : { ended: 'memory', printed };
     }
     return readEnvelope(context.getString(result.value), printed);

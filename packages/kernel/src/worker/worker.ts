@@ -9,6 +9,9 @@ import { StopWatch } from './stop-watch.ts';
 /** Milliseconds between two reports of progress. */
 const reportEvery = 150;
 
+/** Bytes of memory above which a process is not used again: what a run took is not always given back. */
+const largestKept = 500 * 1024 * 1024;
+
 const stopWatch = new StopWatch();
 const networks = new NetworkMemory();
 let scripts: Promise<MendableScriptEngine> | null = null;
@@ -48,7 +51,10 @@ function controlOf(run: number, engine: MendableScriptEngine | null): EngineCont
 async function run(number: number, job: CellJob): Promise<void> {
   const engine = job.kind === 'script' ? await readyScripts() : null;
   stopWatch.begin(number);
-  report({ type: 'done', run: number, outcome: evaluateCell(job, controlOf(number, engine)) });
+  const outcome = evaluateCell(job, controlOf(number, engine));
+  const last = process.memoryUsage.rss() > largestKept;
+  report({ type: 'done', run: number, outcome, last });
+  if (last) process.disconnect();
 }
 
 process.on('message', (message: EngineRequest) => {

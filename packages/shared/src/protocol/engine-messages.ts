@@ -16,7 +16,13 @@ export type EngineReport =
       readonly progress?: number;
       readonly words?: string;
     }
-  | { readonly type: 'done'; readonly run: number; readonly outcome: CellOutcome };
+  | {
+      readonly type: 'done';
+      readonly run: number;
+      readonly outcome: CellOutcome;
+      /** The process has grown too large to run another; it ends by itself. */
+      readonly last: boolean;
+    };
 
 /**
  * A run is asked to end by one byte on this inherited pipe, since a computing process reads no messages: at the next

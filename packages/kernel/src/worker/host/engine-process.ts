@@ -45,6 +45,7 @@ export class EngineProcess {
   /** Settled when the process is gone. */
   readonly gone: Promise<void>;
   private alive = true;
+  private spent = false;
 
   private constructor(child: ChildProcess) {
     this.child = child;
@@ -98,7 +99,7 @@ export class EngineProcess {
   }
 
   get usable(): boolean {
-    return this.alive && !this.child.killed;
+    return this.alive && !this.spent && !this.child.killed;
   }
 
   /** Makes ready what scripts need; at once, without waiting for it. */
@@ -154,6 +155,7 @@ export class EngineProcess {
   private heard(message: EngineReport): void {
     if (message.type === 'ready' || this.current?.run !== message.run) return;
     if (message.type === 'done') {
+      this.spent ||= message.last;
       this.current.finish(message.outcome);
       return;
     }

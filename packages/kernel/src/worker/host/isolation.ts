@@ -129,9 +129,8 @@ const sentence = (parts: readonly string[]): string => parts.join(', ');
 
 function inWords({ standing, missing }: Raised): string {
   const held = sentence([...standing, 'no files, no other programs']);
-  return missing.length === 0
-    ? `${held}.`
-    : `${held}; but ${sentence(missing)}.`.replace(/^./u, (first) => first.toUpperCase());
+  const words = missing.length === 0 ? `${held}.` : `${held}; but ${sentence(missing)}.`;
+  return words.replace(/^./u, (first) => first.toUpperCase());
 }
 
 async function starts(command: EngineCommand): Promise<boolean> {

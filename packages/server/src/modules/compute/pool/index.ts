@@ -1,1 +1,2 @@
+export { createPool } from './pool.ts';
 export type { Pool, PoolOptions, RunOptions, WorkerView } from './types.ts';
