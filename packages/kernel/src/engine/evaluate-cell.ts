@@ -2,6 +2,7 @@ import type { CellError, CellJob, CellKind, CellOutcome } from '@stillroom/share
 import { digestOf } from '@stillroom/shared/plan';
 import { evaluateClaim } from '../cells/claim.ts';
 import { evaluateNetwork } from '../cells/evaluate-network.ts';
+import { evaluateStructure } from '../cells/evaluate-structure.ts';
 import { evaluateTrajectoryCell } from '../cells/evaluate-trajectory.ts';
 import { evaluatePlot } from '../cells/plot.ts';
 import { evaluateProse } from '../cells/prose.ts';
@@ -19,7 +20,7 @@ const notYet: Evaluator = ({ kind }) => {
 const evaluators: Readonly<Record<CellKind, Evaluator>> = {
   prose: (job) => ({ result: evaluateProse(job) }),
   network: evaluateNetwork,
-  structure: notYet,
+  structure: evaluateStructure,
   balance: notYet,
   trajectory: evaluateTrajectoryCell,
   claim: (job) => ({ result: evaluateClaim(job) }),
