@@ -1,0 +1,91 @@
+import type { Me } from '@stillroom/shared/contracts';
+import { type GroupRole, groupRoles } from '@stillroom/shared/roles';
+import { keepPicture } from '../../../packages/server/src/modules/files/index.ts';
+import { createNotebook, writeRemark } from '../../../packages/server/src/modules/notebooks/index.ts';
+import { buildGroup, buildMember, buildPerson, signIn } from '../../support/build.ts';
+import type { TestServer } from '../../support/server.ts';
+import { Visitor } from '../../support/visitor.ts';
+
+/** Everybody who may stand before a door of a group: its roles, an outsider with an account, and nobody signed in. */
+export const callers = [...groupRoles, 'outsider', 'nobody'] as const;
+export type Caller = (typeof callers)[number];
+
+export interface Crowd {
+  readonly people: Readonly<Record<GroupRole | 'outsider' | 'founder' | 'target', Me>>;
+  readonly visitors: Readonly<Record<Caller, Visitor>>;
+}
+
+/** One person for each role, signed in once for all cases; the group of each case is fresh. */
+export async function gatherCrowd(server: TestServer): Promise<Crowd> {
+  const [lead, author, remarker, reader, outsider, founder, target] = [
+    await buildPerson(server, { name: 'Lead' }),
+    await buildPerson(server, { name: 'Author' }),
+    await buildPerson(server, { name: 'Remarker' }),
+    await buildPerson(server, { name: 'Reader' }),
+    await buildPerson(server, { name: 'Outsider' }),
+    await buildPerson(server, { name: 'Founder' }),
+    await buildPerson(server, { name: 'Target' }),
+  ];
+  return {
+    people: { lead, author, remarker, reader, outsider, founder, target },
+    visitors: {
+      lead: await signIn(server, lead),
+      author: await signIn(server, author),
+      remarker: await signIn(server, remarker),
+      reader: await signIn(server, reader),
+      outsider: await signIn(server, outsider),
+      nobody: new Visitor(server.url),
+    },
+  };
+}
+
+/** Ids that requests are made of. */
+export interface Fixture {
+  readonly group: string;
+  readonly notebook: string;
+  readonly remark: string;
+  /** Digest of a picture in the notebook. */
+  readonly picture: string;
+  readonly invitation: string;
+  readonly target: string;
+  readonly self: (caller: Caller) => string;
+}
+
+/** The first bytes of a PNG are all that is looked at. */
+export const png = Buffer.from('89504e470d0a1a0a0000000d49484452', 'hex');
+
+const nobody = '00000000-0000-4000-8000-000000000000';
+
+/** A fresh group with everybody in it, a notebook with one cell and a remark, and an open invitation. */
+export async function buildFixture(
+  server: TestServer,
+  { people }: Crowd,
+  chosen: (notebook: string) => string[] | null = () => null,
+): Promise<Fixture> {
+  const { manager } = server.services.database;
+  const group = await buildGroup(server, people.founder);
+  const cell = { id: 'c1', kind: 'prose', name: '', text: 'Words.', settings: {}, held: null } as const;
+  const content = { title: 'A notebook', subject: 'none', cells: [cell] } as const;
+  const notebook = await createNotebook(manager, { group: group.id, by: people.founder.id, content });
+  for (const role of groupRoles) {
+    await buildMember(server, group, people[role], role, chosen(notebook.id));
+  }
+  await buildMember(server, group, people.target, 'reader');
+  const words = { cell: 'c1', quote: '', text: 'A remark.' };
+  const remark = await writeRemark(manager, notebook.id, words, { by: people.founder.id });
+  const picture = await keepPicture(manager, png, notebook.id);
+  const [invitation] = await server.sql<{ id: string }>(
+    `insert into invitation (digest, "group", email, role, message, by, until)
+     values (gen_random_uuid()::text, $1, 'guest@example.org', 'reader', '', $2, now() + interval '1 day') returning id`,
+    [group.id, people.founder.id],
+  );
+  return {
+    group: group.id,
+    notebook: notebook.id,
+    remark: remark.id,
+    picture: picture.digest,
+    invitation: invitation?.id ?? nobody,
+    target: people.target.id,
+    self: (caller) => (caller === 'nobody' ? nobody : people[caller].id),
+  };
+}

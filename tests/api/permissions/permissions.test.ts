@@ -1,0 +1,142 @@
+import { readFileSync } from 'node:fs';
+import { may, type Membership, roleAt } from '@stillroom/shared/roles';
+import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { buildPerson, signIn } from '../../support/build.ts';
+import { startTestServer, type TestServer } from '../../support/server.ts';
+import { type Answer, Visitor } from '../../support/visitor.ts';
+import { buildFixture, type Caller, callers, type Crowd, type Fixture, gatherCrowd } from './fixture.ts';
+import { recordRoutes } from './record-routes.ts';
+import { type GuardedRoute, guardedRoutes, openRoutes, operatorRoutes, ownRoutes } from './routes.ts';
+
+let server: TestServer;
+let crowd: Crowd;
+beforeAll(async () => {
+  server = await startTestServer();
+  crowd = await gatherCrowd(server);
+});
+afterAll(() => server.stop());
+
+function ask(route: GuardedRoute, fixture: Fixture, caller: Caller): Promise<Answer> {
+  const parts: Record<string, string> = {
+    group: fixture.group,
+    notebook: fixture.notebook,
+    ...route.parts?.(fixture, caller),
+  };
+  const path = route.address.replace(/:(\w+)/gu, (_whole, name: string) => parts[name] ?? 'missing');
+  return crowd.visitors[caller].send(route.method, path, route.body?.(fixture));
+}
+
+/** What the door said: let in, or why not. What happens behind it is for other tests. */
+function doorOf({ status, body }: Answer, door: string): string {
+  if (status >= 500) return `broken: ${JSON.stringify(body)}`;
+  if (status === 401) return 'signed out';
+  if (status === 403) return 'forbidden';
+  const words = (body as { message?: string } | null)?.message ?? '';
+  if (words.startsWith('There is no such address')) return 'no such route';
+  return status === 404 && words.startsWith(`There is no such ${door},`) ? 'not there' : 'in';
+}
+
+function expectedDoor(
+  route: GuardedRoute,
+  caller: Caller,
+  membership: (role: Caller) => Membership | null,
+): string {
+  if (caller === 'nobody') return 'signed out';
+  const held = membership(caller);
+  const role = held === null || route.door === 'group' ? (held?.role ?? null) : roleAt(held, 'the notebook');
+  if (role === null) return 'not there';
+  return may(role, route.ability) ? 'in' : 'forbidden';
+}
+
+const memberOf =
+  (notebooks: readonly string[] | null) =>
+  (caller: Caller): Membership | null =>
+    caller === 'outsider' || caller === 'nobody' ? null : { role: caller, notebooks };
+
+const words = ({ method, address, ability }: GuardedRoute) => `${method} ${address} (${ability})`;
+
+describe('every route of groups and notebooks asks the role table', () => {
+  test.each(guardedRoutes.map((route) => [words(route), route] as const))('%s', async (_words, route) => {
+    for (const caller of callers) {
+      const fixture = await buildFixture(server, crowd);
+      const answer = await ask(route, fixture, caller);
+      expect(doorOf(answer, route.door), `${caller}: ${JSON.stringify(answer.body)}`).toBe(
+        expectedDoor(route, caller, memberOf(null)),
+      );
+    }
+  });
+});
+
+describe('a role limited to other notebooks does not count at this one', () => {
+  const elsewhere = ['00000000-0000-4000-8000-00000000000a'];
+  const routes = guardedRoutes.filter(({ door }) => door !== 'group');
+  test.each(routes.map((route) => [words(route), route] as const))('%s', async (_words, route) => {
+    const fixture = await buildFixture(server, crowd, () => elsewhere);
+    for (const caller of callers) {
+      const answer = await ask(route, fixture, caller);
+      expect(doorOf(answer, route.door), caller).toBe(expectedDoor(route, caller, memberOf(elsewhere)));
+    }
+  });
+
+  test('and counts at a chosen one', async () => {
+    const fixture = await buildFixture(server, crowd, (notebook) => [notebook]);
+    const { status } = await crowd.visitors.reader.get(`/api/notebooks/${fixture.notebook}`);
+    expect(status).toBe(200);
+  });
+});
+
+describe('the operator’s room', () => {
+  test.each(operatorRoutes.map((route) => [`${route.method} ${route.address}`, route] as const))(
+    '%s',
+    async (_words, { method, address, body }) => {
+      const operator = await signIn(server, await buildPerson(server, { operator: true }));
+      const send = (visitor: Visitor) => visitor.send(method, address, body?.({} as Fixture));
+      expect((await send(operator)).status).toBe(200);
+      expect((await send(crowd.visitors.lead)).status).toBe(403);
+      expect((await send(crowd.visitors.nobody)).status).toBe(401);
+    },
+  );
+
+  test('being operator opens no group', async () => {
+    const operator = await signIn(server, await buildPerson(server, { operator: true }));
+    const { group, notebook } = await buildFixture(server, crowd);
+    expect((await operator.get(`/api/groups/${group}`)).status).toBe(404);
+    expect((await operator.get(`/api/notebooks/${notebook}`)).status).toBe(404);
+  });
+});
+
+describe('routes about oneself', () => {
+  test.each(ownRoutes)('%s needs an account', async (route) => {
+    const [method = '', address = ''] = route.split(' ');
+    const { status, body } = await new Visitor(server.url).send(
+      method,
+      address.replace(/:\w+/u, 'anything'),
+      {},
+    );
+    expect([status, body]).toMatchObject([401, { error: 'signed-out' }]);
+  });
+});
+
+describe('the list of addresses', () => {
+  test('names no route that these tests do not know', () => {
+    const known = new Set([
+      ...[...guardedRoutes, ...operatorRoutes, ...recordRoutes].map(
+        ({ method, address }) => `${method} ${address}`,
+      ),
+      ...ownRoutes,
+      ...openRoutes,
+    ]);
+    expect(listedRoutes().filter((route) => !known.has(route))).toEqual([]);
+  });
+});
+
+/** The routes of the contract's table: "GET, PATCH /api/account" is two, "…/health, people" as many as there are words. */
+function listedRoutes(): string[] {
+  const readme = new URL('../../../packages/shared/src/contracts/README.md', import.meta.url);
+  const rows = readFileSync(readme, 'utf8').matchAll(/^\| ([A-Z, ]+) (\/api\/[^|]+?) \|/gmu);
+  return [...rows].flatMap(([, methods = '', addresses = '']) => {
+    const [first = '', ...more] = addresses.replace(/\?.*$/u, '').split(', ');
+    const paths = [first, ...more.map((last) => first.replace(/[^/]+$/u, last))];
+    return methods.split(', ').flatMap((method) => paths.map((path) => `${method} ${path}`));
+  });
+}

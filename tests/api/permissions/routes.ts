@@ -1,0 +1,230 @@
+import type { Ability } from '@stillroom/shared/roles';
+import { type Caller, type Fixture, png } from './fixture.ts';
+
+/** A route that the role table guards, and a good request to it. */
+export interface GuardedRoute {
+  readonly method: 'GET' | 'POST' | 'PUT' | 'PATCH' | 'DELETE';
+  /** As the list of addresses writes it. */
+  readonly address: string;
+  readonly ability: Ability;
+  /** What an outsider is told is not there. */
+  readonly door: 'group' | 'notebook' | 'picture';
+  /** Parts of the address beside `:group` and `:notebook`. */
+  readonly parts?: (fixture: Fixture, caller: Caller) => Readonly<Record<string, string>>;
+  readonly body?: (fixture: Fixture) => unknown;
+}
+
+/** Of a result that nobody computed. */
+const digest = `sha256:${'0'.repeat(64)}`;
+const picture = (): FormData => {
+  const form = new FormData();
+  form.set('picture', new Blob([png], { type: 'image/png' }), 'picture.png');
+  return form;
+};
+const file = { format: 'stillroom-notebook/1', title: 'Brought along', subject: 'none', cells: [] };
+const invitation = { email: 'someone@example.org', role: 'reader', notebooks: null, message: '' };
+
+export const guardedRoutes: readonly GuardedRoute[] = [
+  { method: 'GET', address: '/api/groups/:group', ability: 'group.read', door: 'group' },
+  {
+    method: 'PATCH',
+    address: '/api/groups/:group',
+    ability: 'group.rename',
+    door: 'group',
+    body: () => ({ name: 'Another name' }),
+  },
+  {
+    method: 'PATCH',
+    address: '/api/groups/:group/members/:person',
+    ability: 'group.members.write',
+    door: 'group',
+    parts: ({ target }) => ({ person: target }),
+    body: () => ({ role: 'author', notebooks: null }),
+  },
+  {
+    method: 'DELETE',
+    address: '/api/groups/:group/members/:person',
+    ability: 'group.members.write',
+    door: 'group',
+    parts: ({ target }) => ({ person: target }),
+  },
+  {
+    method: 'DELETE',
+    address: '/api/groups/:group/members/:person',
+    ability: 'group.leave',
+    door: 'group',
+    parts: ({ self }, caller) => ({ person: self(caller) }),
+  },
+  {
+    method: 'POST',
+    address: '/api/groups/:group/invitations',
+    ability: 'group.invite',
+    door: 'group',
+    body: () => invitation,
+  },
+  {
+    method: 'DELETE',
+    address: '/api/groups/:group/invitations/:invitation',
+    ability: 'group.invite',
+    door: 'group',
+    parts: (fixture) => ({ invitation: fixture.invitation }),
+  },
+  {
+    method: 'POST',
+    address: '/api/groups/:group/hand-over',
+    ability: 'group.handOver',
+    door: 'group',
+    body: ({ target }) => ({ to: target }),
+  },
+  { method: 'GET', address: '/api/groups/:group/audit', ability: 'group.audit.read', door: 'group' },
+  { method: 'GET', address: '/api/groups/:group/audit.csv', ability: 'group.audit.read', door: 'group' },
+  {
+    method: 'POST',
+    address: '/api/groups/:group/notebooks',
+    ability: 'notebook.create',
+    door: 'group',
+    body: () => ({ title: 'A new one' }),
+  },
+  {
+    method: 'POST',
+    address: '/api/groups/:group/notebook-files',
+    ability: 'notebook.create',
+    door: 'group',
+    body: () => file,
+  },
+  { method: 'GET', address: '/api/notebooks/:notebook', ability: 'notebook.read', door: 'notebook' },
+  { method: 'DELETE', address: '/api/notebooks/:notebook', ability: 'notebook.delete', door: 'notebook' },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/restore',
+    ability: 'notebook.restore',
+    door: 'notebook',
+  },
+  {
+    method: 'PUT',
+    address: '/api/notebooks/:notebook/public',
+    ability: 'notebook.publish',
+    door: 'notebook',
+    body: () => ({ public: true }),
+  },
+  { method: 'GET', address: '/api/notebooks/:notebook/file', ability: 'notebook.export', door: 'notebook' },
+  {
+    method: 'GET',
+    address: '/api/notebooks/:notebook/fair-copy',
+    ability: 'notebook.read',
+    door: 'notebook',
+  },
+  {
+    method: 'GET',
+    address: '/api/notebooks/:notebook/results/:digest',
+    ability: 'notebook.read',
+    door: 'notebook',
+    parts: () => ({ digest }),
+  },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/cells/:cell/run',
+    ability: 'notebook.run',
+    door: 'notebook',
+    parts: () => ({ cell: 'c1' }),
+  },
+  { method: 'POST', address: '/api/notebooks/:notebook/run', ability: 'notebook.run', door: 'notebook' },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/cells/:cell/stop',
+    ability: 'notebook.run',
+    door: 'notebook',
+    parts: () => ({ cell: 'c1' }),
+  },
+  { method: 'GET', address: '/api/notebooks/:notebook/remarks', ability: 'notebook.read', door: 'notebook' },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/remarks',
+    ability: 'notebook.remark',
+    door: 'notebook',
+    body: () => ({ cell: 'c1', quote: '', text: 'Another remark.' }),
+  },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/remarks/:remark/answers',
+    ability: 'notebook.remark',
+    door: 'notebook',
+    parts: ({ remark }) => ({ remark }),
+    body: () => ({ text: 'An answer.' }),
+  },
+  {
+    method: 'PATCH',
+    address: '/api/notebooks/:notebook/remarks/:remark',
+    ability: 'notebook.settle',
+    door: 'notebook',
+    parts: ({ remark }) => ({ remark }),
+    body: () => ({ settled: true }),
+  },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/pictures',
+    ability: 'notebook.edit',
+    door: 'notebook',
+    body: picture,
+  },
+  {
+    method: 'GET',
+    address: '/api/notebooks/:notebook/pictures/:digest',
+    ability: 'notebook.read',
+    door: 'picture',
+    parts: (fixture) => ({ digest: fixture.picture }),
+  },
+  { method: 'GET', address: '/api/notebooks/:notebook/freeze', ability: 'notebook.freeze', door: 'notebook' },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/freeze',
+    ability: 'notebook.freeze',
+    door: 'notebook',
+    body: () => ({ reasons: {} }),
+  },
+];
+
+/** The operator's room. */
+export const operatorRoutes: readonly Pick<GuardedRoute, 'method' | 'address' | 'ability' | 'body'>[] = [
+  { method: 'GET', address: '/api/operator/health', ability: 'operator.health' },
+  { method: 'GET', address: '/api/operator/people', ability: 'operator.people' },
+  { method: 'GET', address: '/api/operator/queue', ability: 'operator.queue' },
+  { method: 'GET', address: '/api/operator/outbox', ability: 'operator.outbox' },
+  {
+    method: 'PATCH',
+    address: '/api/operator/settings',
+    ability: 'operator.settings',
+    body: () => ({ signUp: 'invitation' }),
+  },
+];
+
+/** Routes that ask for an account and nothing more: they are about oneself. */
+export const ownRoutes = [
+  'GET /api/account',
+  'PATCH /api/account',
+  'DELETE /api/account/sessions',
+  'DELETE /api/account/sessions/:session',
+  'GET /api/shelf',
+  'GET /api/groups',
+  'POST /api/groups',
+  'POST /api/invitations/:token',
+];
+
+/** Routes for anybody: what they need is a password, or the secret in the link itself. */
+export const openRoutes = [
+  'GET /api/session',
+  'POST /api/session',
+  'DELETE /api/session',
+  'POST /api/accounts',
+  'POST /api/accounts/confirm',
+  'POST /api/password-resets',
+  'PUT /api/password-resets',
+  'GET /api/invitations/:token',
+  'GET /api/public/:token',
+  'GET /api/public-records/:token',
+  'GET /api/review/:token',
+  'POST /api/review/:token/reruns',
+  'GET /api/review/:token/reruns/:rerun',
+  'POST /api/review/:token/remarks',
+  'PUT /api/review/:token/verdict',
+];
