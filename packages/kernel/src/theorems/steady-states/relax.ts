@@ -4,6 +4,7 @@ import { production, productionJacobian, totalsOf } from './mass-action-system.t
 
 /** Steps that one descent may take. */
 const STEPS = 120;
+const NEWTON_STEPS = 40;
 
 /**
  * Follows the rate equations from a positive state to a steady state of its class by implicit Euler steps of growing
@@ -46,7 +47,7 @@ export function polish(
   totals: readonly number[],
 ): number[] | null {
   let x = [...start];
-  for (let k = 0; k < 30; k++) {
+  for (let k = 0; k < NEWTON_STEPS; k++) {
     const slope = production(system, constants, x);
     const jacobian = productionJacobian(system, constants, x);
     const held = totalsOf(system, x);
@@ -59,8 +60,10 @@ export function polish(
     const move = solveDense(scaled, right);
     if (move === null) return null;
     const size = move.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
-    if (!Number.isFinite(size) || size > 0.9) return null;
-    x = x.map((value, i) => value * (1 + move[i]!));
+    if (!Number.isFinite(size)) return null;
+    // Shortened where a full step would leave the positive states.
+    const factor = size > 0.7 ? 0.7 / size : 1;
+    x = x.map((value, i) => value * (1 + factor * move[i]!));
     if (size < 1e-15) return x;
     if (size < 1e-12 && k > 4) return x;
   }

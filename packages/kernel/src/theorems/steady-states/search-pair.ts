@@ -4,9 +4,9 @@ import type { TheoremContext } from '../context.ts';
 import { fixedSequence } from '../fixed-sequence.ts';
 import { squareSystem, weightedSum } from '../minors/weighted-sum.ts';
 import type { SquareSystem } from '../minors/weighted-sum.ts';
-import { asDoubles, massActionSystem, monomial } from './mass-action-system.ts';
+import { asDoubles, massActionSystem, monomial, totalsOf } from './mass-action-system.ts';
 import type { MassActionSystem } from './mass-action-system.ts';
-import { relax } from './relax.ts';
+import { polish, relax } from './relax.ts';
 import type { VerifiedStates } from './verified-states.ts';
 import { exactTotals, shortened, verifyStates } from './verified-states.ts';
 
@@ -86,7 +86,12 @@ function followUp(
   return states !== null && states.boxes.length >= 2 ? states : null;
 }
 
-/** Steady states reached from around given states of one class, nearly equal ones once. */
+/** Descents from around each start. */
+const DESCENTS = 10;
+/** Points between two states from which Newton's method looks for an unstable one. */
+const BETWEEN = [0.5, 0.1, 0.9, 0.25, 0.75, 0.02, 0.98, 0.05, 0.95];
+
+/** Steady states of one class reached from around given states, nearly equal ones once; unstable ones from between them. */
 function otherStates(
   system: MassActionSystem,
   constants: readonly number[],
@@ -102,20 +107,36 @@ function otherStates(
     if (!known) found.push([...state]);
   };
   for (const start of starts) {
-    keep([...start]);
-    for (let k = 0; k < 8; k++)
-      keep(relax(system, constants, displaced(system, start, k % 2 === 0 ? 1 : -1, random)));
+    const totals = totalsOf(system, start);
+    keep(polish(system, constants, start, totals));
+    for (let k = 0; k < DESCENTS; k++) keep(relax(system, constants, displaced(system, start, k, random)));
+    const stable = [...found];
+    stable.forEach((a, i) => {
+      for (const b of stable.slice(i + 1)) {
+        for (const t of BETWEEN) keep(polish(system, constants, mixed(a, b, t), totals));
+        keep(polish(system, constants, geometricMean(a, b), totals));
+      }
+    });
   }
   return found;
+}
+
+function mixed(a: readonly number[], b: readonly number[], t: number): number[] {
+  return a.map((value, i) => (1 - t) * value + t * b[i]!);
+}
+
+function geometricMean(a: readonly number[], b: readonly number[]): number[] {
+  return a.map((value, i) => Math.sqrt(value * b[i]!));
 }
 
 /** A positive state of the same class, some way off along a random combination of reaction vectors. */
 function displaced(
   system: MassActionSystem,
   x: readonly number[],
-  sense: number,
+  turn: number,
   random: () => number,
 ): number[] {
+  const sense = turn % 2 === 0 ? 1 : -1;
   const move = x.map(() => 0);
   for (const { change } of system.reactions) {
     const weight = sense * (random() - 0.3);
@@ -125,7 +146,9 @@ function displaced(
   x.forEach((value, i) => {
     if (move[i]! < 0) reach = Math.min(reach, value / -move[i]!);
   });
-  const step = (Number.isFinite(reach) ? reach : 1) * (random() < 0.5 ? 0.1 : 0.9);
+  const fraction = [0.1, 0.9, 0.5, 0.99][Math.floor(turn / 2) % 4]!;
+  // Without a boundary ahead the way is measured by the state itself.
+  const step = Number.isFinite(reach) ? reach * fraction : 10 * fraction * fraction * (1 + Math.max(...x));
   return x.map((value, i) => value + step * move[i]!);
 }
 

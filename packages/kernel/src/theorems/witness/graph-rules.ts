@@ -145,10 +145,13 @@ function confirmPair(
   return related(a, b) ? null : 'the complexes named are not related in this way.';
 }
 
-/** One component, or a dimension of at most 3. */
-export function attractionProven({ plain, holds, witness }: Evidence): string | null {
+/** One component (1 and 1), or a dimension of at most 3 (the dimension and 3). */
+export function attractionProven(evidence: Evidence): string | null {
+  const { plain, holds, witness } = evidence;
   if (!holds || witness?.kind !== 'number') return 'the number is missing.';
   const groups = components(plain);
+  if (witness.right === 1)
+    return groups.length === 1 ? numbersAre(evidence, 1, 1) : 'there are several components.';
   const rank = plain.complexes.length - groups.length - deficiencyOf(plain, groups);
-  return groups.length === 1 || rank <= 3 ? null : 'there are several components and the rank is above 3.';
+  return rank <= 3 ? numbersAre(evidence, rank, 3) : 'the rank is above 3.';
 }
