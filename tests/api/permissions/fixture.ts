@@ -1,6 +1,5 @@
 import type { Me } from '@stillroom/shared/contracts';
 import { type GroupRole, groupRoles } from '@stillroom/shared/roles';
-import { keepPicture } from '../../../packages/server/src/modules/files/index.ts';
 import { createNotebook, writeRemark } from '../../../packages/server/src/modules/notebooks/index.ts';
 import { buildGroup, buildMember, buildPerson, signIn } from '../../support/build.ts';
 import type { TestServer } from '../../support/server.ts';
@@ -44,8 +43,6 @@ export interface Fixture {
   readonly group: string;
   readonly notebook: string;
   readonly remark: string;
-  /** Digest of a picture in the notebook. */
-  readonly picture: string;
   readonly invitation: string;
   readonly target: string;
   readonly self: (caller: Caller) => string;
@@ -73,7 +70,6 @@ export async function buildFixture(
   await buildMember(server, group, people.target, 'reader');
   const words = { cell: 'c1', quote: '', text: 'A remark.' };
   const remark = await writeRemark(manager, notebook.id, words, { by: people.founder.id });
-  const picture = await keepPicture(manager, png, notebook.id);
   const [invitation] = await server.sql<{ id: string }>(
     `insert into invitation (digest, "group", email, role, message, by, until)
      values (gen_random_uuid()::text, $1, 'guest@example.org', 'reader', '', $2, now() + interval '1 day') returning id`,
@@ -83,7 +79,6 @@ export async function buildFixture(
     group: group.id,
     notebook: notebook.id,
     remark: remark.id,
-    picture: picture.digest,
     invitation: invitation?.id ?? nobody,
     target: people.target.id,
     self: (caller) => (caller === 'nobody' ? nobody : people[caller].id),

@@ -69,7 +69,7 @@ describe('every route of groups and notebooks asks the role table', () => {
 
 describe('a role limited to other notebooks does not count at this one', () => {
   const elsewhere = ['00000000-0000-4000-8000-00000000000a'];
-  const routes = guardedRoutes.filter(({ door }) => door !== 'group');
+  const routes = guardedRoutes.filter(({ door }) => door === 'notebook');
   test.each(routes.map((route) => [words(route), route] as const))('%s', async (_words, route) => {
     const fixture = await buildFixture(server, crowd, () => elsewhere);
     for (const caller of callers) {
@@ -108,11 +108,8 @@ describe('the operator’s room', () => {
 describe('routes about oneself', () => {
   test.each(ownRoutes)('%s needs an account', async (route) => {
     const [method = '', address = ''] = route.split(' ');
-    const { status, body } = await new Visitor(server.url).send(
-      method,
-      address.replace(/:\w+/u, 'anything'),
-      {},
-    );
+    const path = address.replace(/:\w+/u, 'anything');
+    const { status, body } = await new Visitor(server.url).send(method, path);
     expect([status, body]).toMatchObject([401, { error: 'signed-out' }]);
   });
 });

@@ -8,7 +8,7 @@ export interface GuardedRoute {
   readonly address: string;
   readonly ability: Ability;
   /** What an outsider is told is not there. */
-  readonly door: 'group' | 'notebook' | 'picture';
+  readonly door: 'group' | 'notebook';
   /** Parts of the address beside `:group` and `:notebook`. */
   readonly parts?: (fixture: Fixture, caller: Caller) => Readonly<Record<string, string>>;
   readonly body?: (fixture: Fixture) => unknown;
@@ -167,13 +167,6 @@ export const guardedRoutes: readonly GuardedRoute[] = [
     door: 'notebook',
     body: picture,
   },
-  {
-    method: 'GET',
-    address: '/api/notebooks/:notebook/pictures/:digest',
-    ability: 'notebook.read',
-    door: 'picture',
-    parts: (fixture) => ({ digest: fixture.picture }),
-  },
   { method: 'GET', address: '/api/notebooks/:notebook/freeze', ability: 'notebook.freeze', door: 'notebook' },
   {
     method: 'POST',
@@ -210,7 +203,7 @@ export const ownRoutes = [
   'POST /api/invitations/:token',
 ];
 
-/** Routes for anybody: what they need is a password, or the secret in the link itself. */
+/** Routes for anybody: what they need is a password, or the secret in the address itself (of a picture, its digest). */
 export const openRoutes = [
   'GET /api/session',
   'POST /api/session',
@@ -221,6 +214,7 @@ export const openRoutes = [
   'PUT /api/password-resets',
   'GET /api/invitations/:token',
   'GET /api/public/:token',
+  'GET /api/notebooks/:notebook/pictures/:digest',
   'GET /api/public-records/:token',
   'GET /api/review/:token',
   'POST /api/review/:token/reruns',
