@@ -1,7 +1,9 @@
 import { describe, expect, test } from 'vitest';
+import type { CellInput, CellJob, CellSettings } from '@stillroom/shared/cells';
 import { structureSettings } from '@stillroom/shared/cells';
 import { readNetwork } from '@stillroom/shared/notation';
 import { analyseStructure } from '@stillroom/kernel/cells';
+import { evaluateCell } from '@stillroom/kernel/engine';
 import { buildNetwork } from '../../support/network.ts';
 
 const plain = { judge: () => [] };
@@ -152,6 +154,28 @@ describe('the result of a structure cell', () => {
         },
       }),
     ).toThrow(stop);
+  });
+
+  test('the engine computes the cell from the networks it draws on', () => {
+    const network = (text: string): CellInput => ({ kind: 'network', digest: 'sha256:0', text });
+    const job = (settings: CellSettings): CellJob => ({
+      digest: 'sha256:1',
+      kind: 'structure',
+      text: '',
+      settings,
+      inputs: { enzyme: network('E + S <=> ES -> E + P'), other: network('E + S <=> ES <=> E + P') },
+    });
+    const control = { checkpoint: () => undefined };
+    const outcome = evaluateCell(job({ network: 'enzyme', compare: ['other'] }), control);
+    expect(outcome.status).toBe('ok');
+    expect(outcome.result).toMatchObject({
+      counts: { deficiency: 0 },
+      comparisons: [{ network: 'other', weaklyReversible: true, onlyThere: ['E + P -> ES'] }],
+    });
+    expect(evaluateCell(job({ network: 'missing' }), control)).toMatchObject({
+      status: 'failed',
+      error: { message: 'There is no cell called missing.' },
+    });
   });
 
   test('settings name a network and variants', () => {
