@@ -5,11 +5,15 @@ import { createEvents } from './events.ts';
 import { createRateLimits } from './http/rate-limit.ts';
 import type { Logger } from './logger.ts';
 import { createAuth } from './modules/auth/index.ts';
-import { createCollaboration } from './modules/collaboration/index.ts';
+import { type Collaboration, createCollaboration } from './modules/collaboration/index.ts';
+import { type Compute, createCompute, readQueue } from './modules/compute/index.ts';
+import { createPool } from './modules/compute/pool/index.ts';
 import { createGroups, type GroupContents, invitedAddress } from './modules/groups/index.ts';
 import { createPostman } from './modules/mail/index.ts';
 import { createNotebooks, notebooksOfGroup } from './modules/notebooks/index.ts';
-import { createOperator, type QueueSource } from './modules/operator/index.ts';
+import { createOperator } from './modules/operator/index.ts';
+import { createRecords, recordsOfGroup, recordsOfNotebook } from './modules/records/index.ts';
+import { createReviews, reviewsOfRecord, reviewTasks } from './modules/reviews/index.ts';
 import type { ServerModule, Services } from './services.ts';
 
 /** Opens the database and makes what every module is given. */
@@ -29,16 +33,30 @@ export async function createServices(config: Config, log: Logger): Promise<Servi
  * here as a function.
  */
 export function createModules(services: Services): ServerModule[] {
+  const { config } = services;
   const contents: GroupContents = {
     notebooks: notebooksOfGroup,
-    records: async () => [],
+    records: recordsOfGroup,
   };
   const postman = createPostman(services);
   const auth = createAuth(services, invitedAddress);
   const groups = createGroups(services, contents);
-  const notebooks = createNotebooks(services, async () => []);
-  const collaboration = createCollaboration(services, { readPerson: auth.readPerson });
-  const queue: QueueSource = async () => ({ workers: [], waiting: 0, running: 0, groups: [] });
-  const operator = createOperator(services, queue);
-  return [postman, auth, groups, notebooks, collaboration, operator];
+  const notebooks = createNotebooks(services, recordsOfNotebook);
+  const compute: Compute = createCompute(services, {
+    rooms: () => collaboration.rooms,
+    createPool: (size) =>
+      createPool({
+        size,
+        ...(config.WORKER_FOLDER === undefined ? {} : { engineFolder: config.WORKER_FOLDER }),
+      }),
+    tasks: reviewTasks(services),
+  });
+  const collaboration: Collaboration = createCollaboration(services, {
+    readPerson: auth.readPerson,
+    opened: compute.opened,
+  });
+  const records = createRecords(services, compute, reviewsOfRecord);
+  const reviews = createReviews(services);
+  const operator = createOperator(services, (manager) => readQueue(manager, compute.pool));
+  return [postman, auth, groups, notebooks, compute, collaboration, records, reviews, operator];
 }

@@ -65,6 +65,8 @@ export interface RecordView {
   readonly abilities: readonly Ability[];
   readonly reviews: readonly ReviewSummary[];
   readonly remarks: readonly RemarkView[];
+  /** Address of the public copy for members; null where it is closed, absent for everybody else. */
+  readonly publicLink?: string | null;
 }
 
 /** What the authors' side sees of a review; masked reviewers are "Reviewer 1". */

@@ -3,6 +3,7 @@ import { Compute1796083203000 } from './2026-12-01-compute.ts';
 import { Groups1796083201000 } from './2026-12-01-groups.ts';
 import { Notebooks1796083202000 } from './2026-12-01-notebooks.ts';
 import { People1796083200000 } from './2026-12-01-people.ts';
+import { Records1796083204000 } from './2026-12-01-records.ts';
 
 /** All migrations in the order they run (by the number at the end of each name); what was released never changes. */
 export const migrations: readonly (new () => MigrationInterface)[] = [
@@ -10,4 +11,5 @@ export const migrations: readonly (new () => MigrationInterface)[] = [
   Groups1796083201000,
   Notebooks1796083202000,
   Compute1796083203000,
+  Records1796083204000,
 ];

@@ -27,8 +27,8 @@ export interface ComputeOptions {
   /** The rooms, which are made after this module. */
   readonly rooms: () => RoomStore;
   readonly createPool: (size: number) => Pool;
-  /** Tasks of later modules that need the pool, by name. */
-  readonly tasks?: (pool: Pool) => TaskList;
+  /** Tasks of later modules that need the pool, by name; `host` is this process by the name of its connections. */
+  readonly tasks?: (pool: Pool, host: string) => TaskList;
 }
 
 /** Two at least: one stays free for what is answered at once. */
@@ -90,7 +90,7 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
           queue,
           results,
           log,
-          tasks: options.tasks?.(pool) ?? {},
+          tasks: options.tasks ?? (() => ({})),
         });
 
   const listeners = [

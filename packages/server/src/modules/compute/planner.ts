@@ -34,6 +34,10 @@ export interface StandingCell {
   readonly planned: PlannedCell;
   readonly notice: CellNotice;
   readonly known: Known | undefined;
+  /** Whether it is queued or being computed. */
+  readonly working: boolean;
+  /** Ids of the cells that must be computed before it can be. */
+  readonly waitsFor: readonly string[];
 }
 
 const nothing: Plan = { cells: [], byId: new Map(), order: [] };
@@ -170,12 +174,7 @@ export class Planner implements RoomObserver {
   /** The cells as they stand, in order, with title and subject. */
   async standing(): Promise<{ content: NotebookContent; cells: readonly StandingCell[]; plan: Plan }> {
     await this.settled();
-    const cells = this.#each().map(({ content, planned, known, notice }) => ({
-      content,
-      planned,
-      known,
-      notice,
-    }));
+    const cells = this.#each();
     return { content: this.#content, cells, plan: this.#plan };
   }
 
@@ -262,16 +261,16 @@ export class Planner implements RoomObserver {
   }
 
   /**
-   * Whether a cell needs no run: something is known. What is not kept and no failure stands on what was ended before
-   * it, and is worth nothing once that has been run again.
+   * Whether a cell needs no run: something is known. A result that is not kept stands on a failure before it, and is
+   * worth nothing once that has been overcome.
    */
   #isSettled({ digest, inputs }: PlannedCell): boolean {
     const known = digest === null ? undefined : this.#known.get(digest);
     if (known === undefined) return false;
     if (known.kept || known.status === 'failed') return true;
-    const ended = inputs.some(({ id }) => this.#knownOf(id)?.kept === false);
-    if (!ended) this.#known.delete(known.digest);
-    return ended;
+    const stands = inputs.some(({ id }) => this.#knownOf(id)?.status === 'failed');
+    if (!stands) this.#known.delete(known.digest);
+    return stands;
   }
 
   #prepare(id: string): Preparation {
@@ -311,7 +310,16 @@ export class Planner implements RoomObserver {
       const shown = this.#shown.get(content.id) ?? null;
       const notice = noticeOf({ content, planned, known, run, preparation, shown }, this.#plan);
       const json = known !== undefined && rides(known) ? known.json : null;
-      return { content, planned, known, notice, json };
+      const waitsFor = preparation?.state === 'waiting' ? preparation.on : [];
+      return {
+        content,
+        planned,
+        known,
+        notice,
+        json,
+        waitsFor,
+        working: known === undefined && run !== undefined,
+      };
     });
   }
 

@@ -22,7 +22,7 @@ export interface RunnerOptions {
   readonly results: ResultStore;
   readonly log: Logger;
   /** Further tasks, run one at a time beside the lanes. */
-  readonly tasks: TaskList;
+  readonly tasks: (pool: Pool, host: string) => TaskList;
 }
 
 /** Takes runs from the queue and has the pool compute them. */
@@ -42,13 +42,15 @@ export class Runner {
       application_name: this.#host,
       max: 8,
     });
-    this.#connections.on('error', (error) =>
-      options.log.warn('A connection of the queue was lost.', describeError(error)),
-    );
+    const lost = (error: Error) =>
+      options.log.warn('A connection of the queue was lost.', describeError(error));
+    this.#connections.on('error', lost);
+    this.#connections.on('connect', (client) => client.on('error', lost));
   }
 
   async start(): Promise<void> {
-    const { size, queue, tasks } = this.#options;
+    const { size, queue, pool } = this.#options;
+    const tasks = this.#options.tasks(pool, this.#host);
     const compute = (payload: unknown) => this.#compute(payload as QueuedJob);
     // One worker always stays free of long runs, so that what is answered at once has its turn.
     const long = Math.max(1, size - 1);
