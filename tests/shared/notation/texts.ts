@@ -54,7 +54,7 @@ export const expression: fc.Arbitrary<string> = fc.letrec<{ e: string }>((tie) =
     joined([number, space, unit]),
     joined([text('('), blank, tie('e'), blank, text(')')]),
     joined([text('('), tie('e'), text(')'), space, unit]),
-    joined([tie('e'), space, fc.constantFrom('+', '-', '*', '/', '%', '^', '−', '·'), space, tie('e')]),
+    joined([tie('e'), space, fc.constantFrom('+', '-', '*', '/', '%', '−', '·'), space, tie('e')]),
     joined([
       text('('),
       tie('e'),
@@ -65,6 +65,7 @@ export const expression: fc.Arbitrary<string> = fc.letrec<{ e: string }>((tie) =
     ]),
     joined([text('('), tie('e'), fc.constantFrom(' and ', ' or '), tie('e'), text(')')]),
     joined([text('(not '), tie('e'), text(')')]),
+    joined([text('('), tie('e'), text(')^'), fc.constantFrom('2', '-3', '(1/2)', 'kf')]),
     joined([text('-'), tie('e')]),
     joined([fc.constantFrom('exp', 'ln', 'sqrt', 'tanh'), text('('), tie('e'), text(')')]),
     joined([text('min('), tie('e'), comma, tie('e'), text(')')]),

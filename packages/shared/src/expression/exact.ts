@@ -71,12 +71,8 @@ function limited(value: Rational | null): Rational | null {
   return value && digits(value) <= DIGIT_LIMIT ? value : null;
 }
 
-/** About how many digits numerator and denominator have, at least 1. */
+/** About how many decimal digits the longer of numerator and denominator has. */
 function digits(value: Rational): number {
-  const limit = 1n << 64n;
-  const { numerator, denominator } = value;
-  if (numerator < limit && numerator > -limit && denominator < limit) {
-    return 1 + Math.log2(1 + Math.abs(Number(numerator)) + Number(denominator)) / BITS_PER_DIGIT;
-  }
-  return Math.max(numerator.toString(16).length, denominator.toString(16).length) * (4 / BITS_PER_DIGIT);
+  const length = (part: bigint) => part.toString(16).length;
+  return (Math.max(length(value.numerator), length(value.denominator)) * 4) / BITS_PER_DIGIT;
 }

@@ -2,8 +2,8 @@ import { Failure, makeIt } from '../notation/failure.ts';
 import { nearest } from '../notation/nearest.ts';
 import type { Scanner } from '../notation/tokens.ts';
 import { isFunctionName, isKeyword } from '../notation/words.ts';
-import { commonSymbols } from '../units/table.ts';
-import { readUnit } from '../units/parse.ts';
+import { commonSymbols, findSymbol } from '../units/table.ts';
+import { FACTOR_LIMIT, POWER_LIMIT, readUnit } from '../units/parse.ts';
 import { functionNames } from './expression.ts';
 import type { BinaryOperator, Comparison, FunctionName } from './expression.ts';
 import type { ExpressionSyntax, NameSyntax, RangeSyntax } from './syntax.ts';
@@ -90,7 +90,6 @@ function describeWord(scanner: Scanner): string {
 }
 
 class ExpressionParser {
-  private depth = 0;
   /** Height of the tree read last. */
   private height = 0;
   private readonly scanner: Scanner;
@@ -111,14 +110,15 @@ class ExpressionParser {
   }
 
   private nested<T>(read: () => T): T {
-    this.depth += 1;
-    if (this.depth > DEPTH_LIMIT) {
-      throw new Failure(this.scanner.from, this.scanner.to, `This is nested more than ${DEPTH_LIMIT} deep.`, {
+    const { scanner } = this;
+    scanner.depth += 1;
+    if (scanner.depth > DEPTH_LIMIT) {
+      throw new Failure(scanner.from, scanner.to, `This is nested more than ${DEPTH_LIMIT} deep.`, {
         hint: 'Give a part of it a name with let.',
       });
     }
     const result = read();
-    this.depth -= 1;
+    scanner.depth -= 1;
     this.height += 1;
     return result;
   }
@@ -332,6 +332,16 @@ class ExpressionParser {
     const { from, to, word } = this.scanner;
     const afterNumber = value.kind === 'number' || value.kind === 'measured';
     if (!afterNumber) return unexpected(this.scanner, 'an operator or the end');
+    if (findSymbol(word)) {
+      return new Failure(
+        from,
+        to,
+        `A unit has at most ${FACTOR_LIMIT} factors with whole powers up to ${POWER_LIMIT}.`,
+        {
+          hint: 'Put the value in brackets to raise it to another power.',
+        },
+      );
+    }
     const meant = nearest(word, commonSymbols);
     return new Failure(from, to, `${word} is not a unit.`, {
       hint: 'Units are products of s, min, h, d, mol, M, L, m, g, individuals, molecules and cells; a product with a name needs *.',

@@ -35,8 +35,6 @@ export function parseRow(text: string, line: LogicalLine, complaints: Complaints
 
 type ReactionColumn = Pick<RowSyntax, 'family' | 'sides' | 'arrows' | 'from'>;
 
-const arrowSigns = new Set<string>(['->', '<-', '<=>']);
-
 function parseReaction(scanner: Scanner): ReactionColumn {
   const from = scanner.from;
   const family = parseFamily(scanner);
@@ -49,52 +47,53 @@ function parseReaction(scanner: Scanner): ReactionColumn {
   return { family, sides, arrows, from };
 }
 
-function parseArrow(scanner: Scanner, first: boolean): ArrowSyntax {
-  const { from, to, word } = scanner;
-  if (scanner.kind === 'symbol' && arrowSigns.has(word)) {
-    scanner.advance();
-    return { sign: word as ArrowSyntax['sign'], from, to };
-  }
-  const missing = mistypedArrow(scanner);
-  if (missing) throw missing;
-  if (!first || scanner.kind !== 'end') throw unexpected(scanner, '+, an arrow or |');
-  throw new Failure(from, to, 'Expected an arrow: ->, <- or <=>.', {
-    hint: 'A row says what turns into what: A + B -> C.',
-    repairs: [{ label: 'Add -> 0', from: scanner.previousEnd, to: scanner.previousEnd, insert: ' -> 0' }],
-  });
-}
-
-/** What people type for an arrow: longest first. */
-const mistyped: readonly (readonly [string, string])[] = [
-  ...([
-    ['<-->', '<=>'],
-    ['<==>', '<=>'],
-    ['<->', '<=>'],
-    ['-->', '->'],
-    ['==>', '->'],
-    ['<--', '<-'],
-  ] as const),
-  ...([
-    ['=>', '->'],
-    ['>', '->'],
-    ['<=', '<=>'],
-    ['=', '<=>'],
-    ['↔', '<=>'],
-    ['⇄', '<=>'],
-    ['⟶', '->'],
-  ] as const),
+/** What people type between the sides, and the arrow that it is or was meant to be: the longest that fits is taken. */
+const arrowSigns: readonly (readonly [typed: string, sign: ArrowSyntax['sign']])[] = [
+  ['<-->', '<=>'],
+  ['<==>', '<=>'],
+  ['<=>', '<=>'],
+  ['<->', '<=>'],
+  ['-->', '->'],
+  ['==>', '->'],
+  ['<--', '<-'],
+  ['->', '->'],
+  ['<-', '<-'],
+  ['=>', '->'],
+  ['<=', '<=>'],
+  ['→', '->'],
+  ['←', '<-'],
+  ['⇌', '<=>'],
+  ['↔', '<=>'],
+  ['⇄', '<=>'],
+  ['⟶', '->'],
+  ['=', '<=>'],
+  ['>', '->'],
 ];
+const properSigns = new Set(['->', '<-', '<=>', '→', '←', '⇌']);
 
-function mistypedArrow(scanner: Scanner): Failure | null {
-  const { text, from, limit } = scanner;
-  for (const [typed, meant] of mistyped) {
-    if (!text.startsWith(typed, from) || from + typed.length > limit) continue;
-    return new Failure(from, from + typed.length, `${typed} is no arrow of the notation.`, {
+function parseArrow(scanner: Scanner, first: boolean): ArrowSyntax {
+  const { from, text, limit } = scanner;
+  const fitting = arrowSigns.find(([typed]) => text.startsWith(typed, from) && from + typed.length <= limit);
+  if (!fitting) throw missingArrow(scanner, first);
+  const [typed, sign] = fitting;
+  const to = from + typed.length;
+  if (!properSigns.has(typed)) {
+    throw new Failure(from, to, `${typed} is no arrow of the notation.`, {
       hint: 'Arrows are ->, <- and <=>.',
-      repairs: [makeIt(meant, from, from + typed.length)],
+      repairs: [makeIt(sign, from, to)],
     });
   }
-  return null;
+  scanner.advance();
+  return { sign, from, to };
+}
+
+function missingArrow(scanner: Scanner, first: boolean): Failure {
+  const { from, to, previousEnd } = scanner;
+  if (!first || !scanner.has('end')) return unexpected(scanner, '+, an arrow or |');
+  return new Failure(from, to, 'Expected an arrow: ->, <- or <=>.', {
+    hint: 'A row says what turns into what: A + B -> C.',
+    repairs: [{ label: 'Add -> 0', from: previousEnd, to: previousEnd, insert: ' -> 0' }],
+  });
 }
 
 function parseSide(scanner: Scanner): SideSyntax {

@@ -36,6 +36,7 @@ export function parseTree(text: string, complaints: Complaints): NetworkTree {
 
 function parseLine(text: string, line: LogicalLine, complaints: Complaints): LineSyntax {
   const base = { line: line.line, comment: line.comment, to: line.to };
+  if (line.from === line.to) return { kind: 'blank', ...base, from: line.from };
   const scanner = new Scanner(text, line.from, line.to, 'expression');
   if (scanner.kind === 'end') return { kind: 'blank', ...base, from: line.from };
   const from = scanner.from;

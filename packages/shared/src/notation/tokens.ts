@@ -157,6 +157,8 @@ export class Scanner {
   /** Where the word before the current one ended. */
   previousEnd: number;
   mode: TokenMode;
+  /** How deep the reader is in brackets, signs and powers; kept here because readers call each other. */
+  depth = 0;
   readonly text: string;
   readonly limit: number;
 

@@ -3,8 +3,10 @@ import { findSymbol } from './table.ts';
 import { unitOf } from './unit.ts';
 import type { Unit, UnitFactor } from './unit.ts';
 
+/** No unit that is in use has more. */
+export const FACTOR_LIMIT = 12;
 /** Beyond this a power is a slip of the key, and its scale would be a monster. */
-const POWER_LIMIT = 20;
+export const POWER_LIMIT = 20;
 
 /**
  * Reads as much of a unit as stands at the scanner: factors side by side or after `/`, each with an optional integer
@@ -21,7 +23,11 @@ export function readUnit(scanner: Scanner): Unit {
       return [];
     }
   }
-  for (let factor = readFactor(scanner); factor; factor = readFactor(scanner)) factors.push(factor);
+  while (factors.length < FACTOR_LIMIT) {
+    const factor = readFactor(scanner);
+    if (!factor) break;
+    factors.push(factor);
+  }
   if (factors.length === 0) scanner.reset(start, before);
   return unitOf(factors);
 }

@@ -1,4 +1,4 @@
-import { scaled } from './bits.ts';
+import { powerOfTwo, scaled } from './bits.ts';
 import { difference, exactProduct, product, quickSum, quotient, rounded, sum } from './double-double.ts';
 import type { DoubleDouble } from './double-double.ts';
 import { exponentialParts } from './exponential.ts';
@@ -12,7 +12,7 @@ const OVERFLOW = 710.4758600739439;
 /** e^x and e^-x for 0 ≤ x ≤ 22. */
 function bothExponentials(x: number): { up: DoubleDouble; down: DoubleDouble } {
   const parts = exponentialParts(x);
-  const scale = 2 ** parts.exponent;
+  const scale = powerOfTwo(parts.exponent);
   const up = quickSum(parts.high * scale, parts.low * scale);
   return { up, down: quotient({ high: 1, low: 0 }, up) };
 }

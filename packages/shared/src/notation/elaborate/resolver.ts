@@ -14,14 +14,16 @@ import type { NameTable } from './name-table.ts';
 import type { ResultUnits } from './result-units.ts';
 import type { Scope } from './scope.ts';
 
-/** A `sum` writes out at most this many terms. */
-const SUM_LIMIT = 100_000;
+/** All sums of a text write out at most this many terms. */
+const TERM_LIMIT = 1_000_000;
 
 export type NameTables = Readonly<Record<NameKind, NameTable>>;
 
 /** Turns written expressions into expressions over resolved names and numbers in the units of the results. */
 export class Resolver {
   private readonly compiled = new WeakMap<ExpressionSyntax, IntegerFunction>();
+  /** Terms that sums have written out. */
+  private terms = 0;
   private readonly declarations: Declarations;
   private readonly tables: NameTables;
   private readonly integers: IntegerNames;
@@ -175,8 +177,13 @@ export class Resolver {
     forEachCombination(
       ranges,
       (values) => {
-        if (terms.length >= SUM_LIMIT) {
-          throw new Failure(syntax.from, syntax.to, `This sum has more than ${SUM_LIMIT} terms.`);
+        this.terms += 1;
+        if (this.terms > TERM_LIMIT) {
+          throw new Failure(
+            syntax.from,
+            syntax.to,
+            `The sums of this text have more than ${TERM_LIMIT} terms.`,
+          );
         }
         terms.push(this.resolve(syntax.of, { ...scope, slots, values: [...values] }));
       },
