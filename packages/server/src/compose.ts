@@ -1,5 +1,6 @@
 import type { Config } from './config/index.ts';
 import { createDataSource } from './database/data-source.ts';
+import { createDemo } from './demo/index.ts';
 import { entities } from './entities.ts';
 import { createEvents } from './events.ts';
 import { createRateLimits } from './http/rate-limit.ts';
@@ -14,6 +15,7 @@ import { createNotebooks, notebooksOfGroup } from './modules/notebooks/index.ts'
 import { createOperator } from './modules/operator/index.ts';
 import { createRecords, recordsOfGroup, recordsOfNotebook } from './modules/records/index.ts';
 import { createReviews, reviewsOfRecord, reviewTasks } from './modules/reviews/index.ts';
+import { createShelf } from './modules/shelf/index.ts';
 import type { ServerModule, Services } from './services.ts';
 
 /** Opens the database and makes what every module is given. */
@@ -57,6 +59,8 @@ export function createModules(services: Services): ServerModule[] {
   });
   const records = createRecords(services, compute, reviewsOfRecord);
   const reviews = createReviews(services);
+  const shelf = createShelf(services, collaboration.rooms);
   const operator = createOperator(services, (manager) => readQueue(manager, compute.pool));
-  return [postman, auth, groups, notebooks, compute, collaboration, records, reviews, operator];
+  const demo = createDemo(services, compute);
+  return [postman, auth, groups, notebooks, compute, collaboration, records, reviews, shelf, operator, demo];
 }

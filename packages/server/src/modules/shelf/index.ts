@@ -1,0 +1,1 @@
+export { createShelf } from './module.ts';
