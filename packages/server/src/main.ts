@@ -1,6 +1,6 @@
 import { ConfigError, readConfig } from './config/index.ts';
 import { createLogger, describeError } from './logger.ts';
-import { needDemo } from './demo/index.ts';
+import { readDemo } from './demo/index.ts';
 import { startServer } from './server.ts';
 
 /** What the process that started us hears through its channel; a plain start has none. */
@@ -13,7 +13,7 @@ try {
   const log = createLogger(config.LOG_LEVEL);
   const running = await startServer(config, log);
   log.info(running.port === null ? 'Computing.' : `Listening on ${config.HOST}:${running.port}.`);
-  const demo = config.DEMO ? await needDemo(running.services) : null;
+  const demo = config.DEMO ? await readDemo(running.services.database.manager) : null;
   tell({ ready: true, port: running.port, demo });
 
   let stopping = false;

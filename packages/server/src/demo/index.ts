@@ -1,17 +1,30 @@
-import { readSettings } from '../modules/auth/index.ts';
 import type { SessionView } from '@stillroom/shared/contracts';
-import type { Services } from '../services.ts';
+import type { EntityManager } from 'typeorm';
+import { readSettings } from '../modules/auth/index.ts';
+import type { Compute } from '../modules/compute/index.ts';
+import type { ServerModule, Services } from '../services.ts';
+import { seedReview } from './review.ts';
 import { seedDemo } from './seed.ts';
 
 export interface Demo {
   readonly accounts: SessionView['demo'];
-  /** Path of the reviewer's link. */
+  /** Path of the reviewer's link; null before its record is frozen. */
   readonly review: string | null;
 }
 
-/** Seeds the demo where the installation is empty, and says how to get in. */
-export async function needDemo(services: Services): Promise<Demo> {
-  if (await seedDemo(services)) services.log.info('The demo was seeded.');
-  const { demo, demoReview } = await readSettings(services.database.manager);
+/** Fills an empty demo installation before the first request. To be started last: it uses everything. */
+export function createDemo(services: Services, compute: Compute): ServerModule {
+  if (!services.config.DEMO || compute.pool === null) return {};
+  return {
+    async start() {
+      if (await seedDemo(services)) services.log.info('The demo was seeded.');
+      await seedReview(services, compute);
+    },
+  };
+}
+
+/** How to get into a demo installation. */
+export async function readDemo(manager: EntityManager): Promise<Demo> {
+  const { demo, demoReview } = await readSettings(manager);
   return { accounts: demo, review: demoReview };
 }

@@ -95,3 +95,17 @@ export const demoGroups: readonly DemoGroup[] = [
     remarks: [],
   },
 ];
+
+/** The record that is under review from the first start on. */
+export const demoReview = {
+  notebook: 'diacetyl-rest',
+  /** Why the open remarks may stay open; printed in the record. */
+  reasons: { remarks: 'Both concern the wording, not a result; the next version takes them up.' },
+  reviewer: {
+    email: 'tobias@quenell.example',
+    name: 'Tobias Quenell',
+    masked: true,
+    message: 'Please look hardest at the claim “stalls”: the whole note rests on it.',
+  },
+  days: 180,
+} as const;
