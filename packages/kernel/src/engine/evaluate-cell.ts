@@ -1,6 +1,7 @@
 import type { CellError, CellJob, CellKind, CellOutcome } from '@stillroom/shared/cells';
 import { digestOf } from '@stillroom/shared/plan';
 import { evaluateClaim } from '../cells/claim.ts';
+import { evaluateBalance } from '../cells/evaluate-balance.ts';
 import { evaluateNetwork } from '../cells/evaluate-network.ts';
 import { evaluateStructure } from '../cells/evaluate-structure.ts';
 import { evaluateTrajectoryCell } from '../cells/evaluate-trajectory.ts';
@@ -13,15 +14,11 @@ import { CellFailure } from './failure.ts';
 
 type Evaluator = (job: CellJob, control: EngineControl) => Evaluated;
 
-const notYet: Evaluator = ({ kind }) => {
-  throw new CellFailure(`This version does not compute ${kind} cells.`);
-};
-
 const evaluators: Readonly<Record<CellKind, Evaluator>> = {
   prose: (job) => ({ result: evaluateProse(job) }),
   network: evaluateNetwork,
   structure: evaluateStructure,
-  balance: notYet,
+  balance: evaluateBalance,
   trajectory: evaluateTrajectoryCell,
   claim: (job) => ({ result: evaluateClaim(job) }),
   plot: evaluatePlot,

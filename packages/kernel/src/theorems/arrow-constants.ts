@@ -6,6 +6,12 @@ import type { StructuralNetwork } from '../network/index.ts';
 export interface ArrowConstants {
   /** Positive exact values by arrow; null unless every arrow has one. */
   readonly exact: readonly Rational[] | null;
+  /** What each written reaction adds to the constant of its arrow, under the name of the constant it was written with. */
+  readonly parts: readonly {
+    readonly name: string;
+    readonly arrow: number;
+    readonly value: Rational | null;
+  }[];
   /** Readable, by arrow: "k1", "(k1 + k3)", "k1*A^2" with A fixed. */
   readonly names: readonly string[];
   /** Why `exact` is null, as the end of a sentence ("k3 has no value"); null where it is not. */
@@ -15,6 +21,7 @@ export interface ArrowConstants {
 /** What stands for the constants of a network that is too large to read them one by one. */
 export const unreadConstants: ArrowConstants = {
   exact: null,
+  parts: [],
   names: [],
   why: 'the network is too large to read all constants',
 };
@@ -22,26 +29,30 @@ export const unreadConstants: ArrowConstants = {
 /** Reads the constants of a structural network. Laws that are mass action in disguise count as mass action. */
 export function arrowConstants(structure: StructuralNetwork): ArrowConstants {
   const values: (Rational | null)[] = Array.from({ length: structure.arrows.count }, () => ZERO);
-  const parts: string[][] = values.map(() => []);
+  const labels: string[][] = values.map(() => []);
+  const parts: { name: string; arrow: number; value: Rational | null }[] = [];
   let why: string | null = null;
   for (let reaction = 0; reaction < structure.reactions.count; reaction++) {
     const arrow = structure.reactions.arrow[reaction]!;
-    const { name, value, problem } = constantOf(structure, structure.reactions.source[reaction]!);
-    parts[arrow]!.push(name);
+    const { name, label, value, problem } = constantOf(structure, structure.reactions.source[reaction]!);
+    labels[arrow]!.push(label);
+    parts.push({ name, arrow, value });
     why ??= problem;
     const sum = values[arrow]!;
     values[arrow] = sum === null || value === null ? null : add(sum, value);
   }
-  const names = parts.map((list) => (list.length === 1 ? list[0]! : `(${list.join(' + ')})`));
+  const names = labels.map((list) => (list.length === 1 ? list[0]! : `(${list.join(' + ')})`));
   const zero = values.findIndex((value) => value !== null && isZero(value));
   if (why === null && zero >= 0) why = `${names[zero]} is 0`;
   const exact: Rational[] = [];
   for (const value of values) if (value !== null && sign(value) > 0) exact.push(value);
-  return { exact: exact.length === values.length ? exact : null, names, why };
+  return { exact: exact.length === values.length ? exact : null, parts, names, why };
 }
 
 interface NamedConstant {
   readonly name: string;
+  /** With the powers of fixed species. */
+  readonly label: string;
   readonly value: Rational | null;
   readonly problem: string | null;
 }
@@ -52,13 +63,16 @@ function constantOf({ source }: StructuralNetwork, reaction: number): NamedConst
   const constant = source.constants[index];
   if (constant === undefined) {
     const line = source.rows[source.reactions.row[reaction]!]?.line;
+    const words = `law of line ${line}`;
     return {
-      name: `law of line ${line}`,
+      name: words,
+      label: words,
       value: null,
       problem: `line ${line} has a law that is not mass action`,
     };
   }
-  let { name } = constant;
+  const { name } = constant;
+  let label = name;
   let { value, problem } = valueOf(constant.quantity, name);
   const { complexes } = source;
   const complex = source.reactions.from[reaction]!;
@@ -67,14 +81,14 @@ function constantOf({ source }: StructuralNetwork, reaction: number): NamedConst
     const held = source.fixed.get(species);
     if (held === undefined) continue;
     const exponent = complexes.numerators[k]! / (complexes.denominators?.[k] ?? 1);
-    const label = source.species[species]!;
-    name += exponent === 1 ? `*${label}` : `*${label}^${exponent}`;
-    const factor = valueOf(held, label);
+    const heldName = source.species[species]!;
+    label += exponent === 1 ? `*${heldName}` : `*${heldName}^${exponent}`;
+    const factor = valueOf(held, heldName);
     problem ??= factor.problem;
     value = value === null || factor.value === null ? null : raise(value, factor.value, exponent);
-    if (value === null) problem ??= `${label} enters with a power that is not a whole number`;
+    if (value === null) problem ??= `${heldName} enters with a power that is not a whole number`;
   }
-  return { name, value, problem };
+  return { name, label, value, problem };
 }
 
 function raise(value: Rational, base: Rational, exponent: number): Rational | null {

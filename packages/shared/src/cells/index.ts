@@ -1,4 +1,11 @@
 export type { CellError } from '../protocol/messages.ts';
+export type {
+  BalanceClass,
+  BalanceCondition,
+  BalanceCycle,
+  BalanceResult,
+  DetailedBalanceCondition,
+} from './balance.ts';
 export type { CellInput, CellJob, CellOutcome, CellSettings, EndedBy } from './cell.ts';
 export { claimSettings, claimVerdicts } from './claim.ts';
 export type { ClaimResult, ClaimSide, ClaimVerdict } from './claim.ts';

@@ -4,6 +4,7 @@ import type { TheoremContext } from '../context.ts';
 import { fixedSequence } from '../fixed-sequence.ts';
 import { squareSystem, weightedSum } from '../minors/weighted-sum.ts';
 import type { SquareSystem } from '../minors/weighted-sum.ts';
+import { interiorStart } from './interior-start.ts';
 import { asDoubles, massActionSystem, monomial, totalsOf } from './mass-action-system.ts';
 import type { MassActionSystem } from './mass-action-system.ts';
 import { polish, relax } from './relax.ts';
@@ -56,13 +57,10 @@ export function pairForConstants(
 ): VerifiedStates | null {
   const system = massActionSystem(context);
   if (system === null) return null;
+  const inside = interiorStart(context, asDoubles(start));
+  if (inside === null) return null;
   const totals = system.laws.map((law) => exactSum(law, start));
-  const found = otherStates(
-    system,
-    asDoubles(constants),
-    spreadOver(context, asDoubles(start)),
-    fixedSequence(31),
-  );
+  const found = otherStates(system, asDoubles(constants), [inside], fixedSequence(31));
   const states = verifyStates(system, constants, found, totals);
   return states !== null && states.boxes.length >= 2 ? states : null;
 }
@@ -150,25 +148,6 @@ function displaced(
   // Without a boundary ahead the way is measured by the state itself.
   const step = Number.isFinite(reach) ? reach * fraction : 10 * fraction * fraction * (1 + Math.max(...x));
   return x.map((value, i) => value + step * move[i]!);
-}
-
-/** A start with species at zero is moved into the interior of its class along the reactions. */
-function spreadOver(context: TheoremContext, start: readonly number[]): number[][] {
-  let x = [...start];
-  for (let round = 0; round < context.species.length && x.some((value) => value <= 0); round++) {
-    for (const { from, to } of context.arrows) {
-      const change = [...context.coefficients.change(from, to)];
-      const reach = change.reduce(
-        (most, [i, amount]) => (amount < 0n ? Math.min(most, x[i]! / -Number(amount)) : most),
-        1,
-      );
-      if (reach <= 0) continue;
-      x = x.map(
-        (value, i) => value + 0.2 * reach * Number(context.coefficients.change(from, to).get(i) ?? 0n),
-      );
-    }
-  }
-  return x.every((value) => value > 0) ? [x] : [];
 }
 
 function kernelDirections(context: TheoremContext): number[][] {

@@ -1,0 +1,10 @@
+export { balancedLogarithms, balancedStateOfClass, doublesOf } from './balanced-state.ts';
+export { complexConditions } from './complex-conditions.ts';
+export type { BalanceCondition, ComplexCondition } from './complex-conditions.ts';
+export { detailedConditions, reversiblePairs } from './detailed-conditions.ts';
+export type { DetailedCondition, ReversiblePair } from './detailed-conditions.ts';
+export { complexResidual, entropyProductionOf, fluxesAt } from './flows.ts';
+export { lnOfInteger, lnOfRational } from './log-constants.ts';
+export { namedShares, nearestConstants } from './nearest-constants.ts';
+export type { NamedShare, NearestConstants } from './nearest-constants.ts';
+export { treeConstants } from './tree-constants.ts';
