@@ -26,10 +26,10 @@ export function mapReferences(
 
 /** The names of cells in settings, in order, empty ones included. */
 export function findReferences(entry: CellKindEntry, settings: CellSettings): FoundReference[] {
-  return entry.references.flatMap(({ at, kind, reads }) => {
+  return entry.references.flatMap(({ at, ...asked }) => {
     const found: FoundReference[] = [];
     mapAt(settings, at, (name) => {
-      found.push({ name, kind, reads });
+      found.push({ name, ...asked });
       return name;
     });
     return found;

@@ -17,6 +17,8 @@ export interface SettingReference {
   readonly kind: CellKind | null;
   /** Whether the drawing cell needs that cell's result, or its source is enough. */
   readonly reads: 'source' | 'result';
+  /** Whether the result speaks of that cell by its name, so that another name makes another result. */
+  readonly named?: true;
 }
 
 /** All that is common to the cells of one kind. */
@@ -53,7 +55,7 @@ export const cellRegistry: Readonly<Record<CellKind, CellKindEntry>> = {
     stem: 'structure',
     settings: structureSettings,
     empty: { text: '', settings: { network: '' } },
-    references: [...onNetwork, { at: ['compare', '*'], kind: 'network', reads: 'source' }],
+    references: [...onNetwork, { at: ['compare', '*'], kind: 'network', reads: 'source', named: true }],
   },
   balance: {
     kind: 'balance',
@@ -74,7 +76,7 @@ export const cellRegistry: Readonly<Record<CellKind, CellKindEntry>> = {
     stem: 'script',
     settings: scriptSettings,
     empty: { text: '', settings: { draws: [] } },
-    references: [{ at: ['draws', '*'], kind: null, reads: 'result' }],
+    references: [{ at: ['draws', '*'], kind: null, reads: 'result', named: true }],
   },
   plot: {
     kind: 'plot',

@@ -13,6 +13,8 @@ export interface Draw {
   /** The kind it must be of; null: any. */
   readonly kind: CellKind | null;
   readonly reads: 'source' | 'result';
+  /** Whether the name itself is part of what is computed. */
+  readonly named: boolean;
 }
 
 type TextDraw = Pick<Draw, 'name'> & { readonly at: number };
@@ -68,12 +70,12 @@ export function findDraws(kind: CellKind, text: string, settings: CellSettings):
   const draws = new Map<string, Draw>();
   const replaced = kind === 'plot' && text.trim() !== '';
   const references = replaced ? [] : findReferences(cellRegistry[kind], settings);
-  for (const { name, kind: wanted, reads } of references) {
+  for (const { name, kind: wanted, reads, named = false } of references) {
     const spelt = name.normalize('NFC');
-    if (!draws.has(spelt)) draws.set(spelt, { name: spelt, at: null, kind: wanted, reads });
+    if (!draws.has(spelt)) draws.set(spelt, { name: spelt, at: null, kind: wanted, reads, named });
   }
   for (const { name, at } of textDraws[kind]?.(text) ?? []) {
-    if (!draws.has(name)) draws.set(name, { name, at, kind: null, reads: 'result' });
+    if (!draws.has(name)) draws.set(name, { name, at, kind: null, reads: 'result', named: true });
   }
   return [...draws.values()];
 }

@@ -109,7 +109,7 @@ function circleProblem(circle: readonly string[], nameOf: (id: string) => string
 /** Digest of a cell from its own part and the digests of what it draws on. */
 function makeDigest(own: OwnPart, digestOfName: (name: string) => string | null): string {
   const { kind, settings } = own.content;
-  const spelt = kind === 'script' ? own.draws : own.draws.filter(({ at }) => at !== null);
+  const spelt = own.draws.filter(({ named }) => named);
   return digestOf({
     engine: engineVersion,
     kind,

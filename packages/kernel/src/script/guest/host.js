@@ -6,7 +6,7 @@
   const { math, Function: MakeFunction, String: toText, Promise: Later } = globalThis;
   const keysOf = Object.keys;
   const hasOwn = Object.prototype.hasOwnProperty;
-  const apply = Reflect.apply;
+  const { apply, deleteProperty } = Reflect;
 
   /** Most lines that are kept, longest line and longest value, in UTF-16 units; deepest nesting of a value. */
   const mostLines = 2000;
@@ -123,6 +123,12 @@
     return { name, message, ...place };
   };
 
+  /** What a script taught its own values to say of themselves must not speak for the whole. */
+  const forgeable = [Object, Array, String, Number, Boolean, MakeFunction].map(({ prototype }) => prototype);
+  const unforge = () => {
+    for (let index = 0; index < forgeable.length; index++) deleteProperty(forgeable[index], 'toJSON');
+  };
+
   const clockless = () => {
     const Timed = globalThis.Date;
     const noClock = () => {
@@ -155,11 +161,14 @@
       const body = MakeFunction(...parse(names), '"use strict";\n' + text);
       value = apply(body, undefined, given);
       value = plain(value, 0);
+      unforge();
       const all = stringify({ value, notes });
       if (all.length > 20 * longestOutput) throw new Error('The value is too large to be kept.');
       return all;
     } catch (error) {
-      return stringify({ thrown: thrown(error) });
+      const words = thrown(error);
+      unforge();
+      return stringify({ thrown: words });
     }
   };
 

@@ -19,7 +19,7 @@ export interface EngineRunOptions {
 }
 
 /** Milliseconds that a run is given to leave what it has, after which the process is killed. */
-const grace = { script: 50, other: 400 } as const;
+const grace = { script: 30, other: 400 } as const;
 /** Milliseconds within which a process has to be ready. */
 const startLimit = 20_000;
 /** Characters of standard error that are kept, to tell a lack of memory from other ends. */
@@ -118,7 +118,11 @@ export class EngineProcess {
         if (this.current?.run !== run || this.current.ending !== null) return;
         this.current.ending = reason;
         this.orderStop(reason, run);
-        killing = setTimeout(() => this.kill(), patience);
+        killing = setTimeout(() => {
+          // A killed process computes no more, however long the system takes to clear it away.
+          this.kill();
+          this.endCurrent(reason);
+        }, patience);
       };
       const stop = () => end('stop');
       const timer = setTimeout(() => end('deadline'), options.deadline * 1000);
