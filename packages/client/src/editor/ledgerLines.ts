@@ -1,5 +1,3 @@
-import type { Text } from '@codemirror/state';
-
 const arrow = /<=>|->|<-|[→←⇌]/u;
 const statement = /^\s*(?:start|let|fix|volume|in|weight|event|rate)\b/u;
 
@@ -16,11 +14,11 @@ export function isRow(line: string): boolean {
 }
 
 /** Number of the row that each line of a text writes, 1-based; 0 where it writes none. */
-export function rowNumbers(doc: Text): readonly number[] {
+export function rowNumbers(lines: Iterable<string>): readonly number[] {
   const numbers: number[] = [];
   let count = 0;
   let goesOn = false;
-  for (const line of doc.iterLines()) {
+  for (const line of lines) {
     numbers.push(!goesOn && isRow(line) ? ++count : 0);
     goesOn = line.endsWith('\\');
   }
@@ -34,4 +32,10 @@ export function barsOf(line: string): readonly number[] {
   if (first < 0) return [];
   const second = code.indexOf('|', first + 1);
   return second < 0 ? [first] : [first, second];
+}
+
+/** The notes of a network's rows, in order: what stands after the second bar. */
+export function rowNotes(text: string): readonly string[] {
+  const lines = text.replaceAll(/\\\n/gu, ' ').split('\n');
+  return lines.filter(isRow).map((line) => withoutComment(line).split('|')[2]?.trim() ?? '');
 }

@@ -17,8 +17,8 @@ class RowMarker extends GutterMarker {
 }
 
 const numbers = StateField.define<readonly number[]>({
-  create: (state) => rowNumbers(state.doc),
-  update: (held, transaction) => (transaction.docChanged ? rowNumbers(transaction.newDoc) : held),
+  create: (state) => rowNumbers(state.doc.iterLines()),
+  update: (held, transaction) => (transaction.docChanged ? rowNumbers(transaction.newDoc.iterLines()) : held),
 });
 
 /** Reaction numbers left of the margin line: R1, R2 …, for the lines that write reactions. */

@@ -23,8 +23,9 @@ export interface ComplexClass {
   readonly edges: readonly ComplexEdge[];
   /** Terminal strong linkage classes, as indices of complexes. */
   readonly terminal: readonly (readonly number[])[];
-  readonly rank: number;
-  readonly deficiency: number;
+  /** Null where the network is too large for a proof. */
+  readonly rank: number | null;
+  readonly deficiency: number | null;
 }
 
 /** From this many complexes on the graph is set smaller and an outline stands beside it. */
@@ -44,20 +45,23 @@ export function complexClasses(structure: StructureResult, size: number): readon
   const { complexes = [], reactions = [], linkageClasses = [], terminalStrongClasses = [] } = structure;
   const terminal = new Set(terminalStrongClasses.flat());
   const classOf = new Map(linkageClasses.flatMap(({ complexes: members }, i) => members.map((m) => [m, i])));
-  const edges = linkageClasses.map((): ComplexEdge[] => []);
-  const drawn = new Set<number>();
-  reactions.forEach(({ from, to, row, reverse }, i) => {
-    if (drawn.has(i)) return;
-    if (reverse !== null) drawn.add(reverse);
-    edges[classOf.get(from) ?? -1]?.push({ from, to, both: reverse !== null, label: `R${row + 1}` });
-  });
+  const edges = linkageClasses.map(() => new Map<string, ComplexEdge>());
+  for (const { from, to, row, reverse } of reactions) {
+    const ofClass = edges[classOf.get(from) ?? -1];
+    const back = ofClass?.get(`${to} ${from}`);
+    if (ofClass === undefined || back !== undefined) continue;
+    // Equal rows state one arrow.
+    const stated = ofClass.get(`${from} ${to}`);
+    const label = stated === undefined ? `R${row + 1}` : `${stated.label}, R${row + 1}`;
+    ofClass.set(`${from} ${to}`, { from, to, both: reverse !== null, label });
+  }
   return linkageClasses.map((linkage, i) => ({
     number: i + 1,
     nodes: linkage.complexes.map((index) => {
       const label = complexLabel(complexes[index]?.of ?? {});
       return { index, label, width: Math.ceil(labelWidth(label, size)) + 16, terminal: terminal.has(index) };
     }),
-    edges: edges[i] ?? [],
+    edges: [...(edges[i]?.values() ?? [])],
     terminal: terminalStrongClasses.filter(([first]) => first !== undefined && classOf.get(first) === i),
     rank: linkage.rank,
     deficiency: linkage.deficiency,

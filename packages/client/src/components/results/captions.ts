@@ -15,9 +15,10 @@ function headComment(text: string): string {
   for (const line of text.split('\n')) {
     const comment = /^\s*#\s?(.*)$/u.exec(line)?.[1];
     if (comment === undefined) break;
-    if (comment.trim() !== '') lines.push(comment.trim());
+    // Words set apart by room in the ledger are a list.
+    if (comment.trim() !== '') lines.push(comment.trim().replaceAll(/\s{2,}/gu, ', '));
   }
-  const words = lines.join(' ').replaceAll(/\s+/gu, ' ');
+  const words = lines.join('; ');
   return words === '' || /[.?:;]$/u.test(words) ? words : `${words}.`;
 }
 

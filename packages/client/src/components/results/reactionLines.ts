@@ -26,11 +26,21 @@ const same = (a: Sides, b: Sides) =>
 const isBackOf = (next: NetworkReaction | undefined, first: NetworkReaction) =>
   next !== undefined && next.row === first.row && same(next.from, first.to) && same(next.to, first.from);
 
-/** The lines of a scheme: backward reactions join their forward ones, a row's number stands on its first line. */
-export function reactionLines(result: NetworkResult): readonly ReactionLine[] {
+/** The constant of a mass action rate "kf*E*S": what stands before the powers of its reactants; "" for other laws. */
+function leadingConstant(rate: string, from: Sides): string {
+  const [name = '', ...factors] = rate.split('*').map((factor) => factor.trim());
+  const species = new Set(Object.keys(from));
+  return factors.every((factor) => species.has(factor.replace(/\^.*$/u, ''))) ? name : '';
+}
+
+/**
+ * The lines of a scheme: backward reactions join their forward ones, a row's number stands on its first line. Results
+ * hold no notes, since a changed note reruns nothing; they come from the text as it stands, by row.
+ */
+export function reactionLines(result: NetworkResult, notes: readonly string[]): readonly ReactionLine[] {
   const constants = new Map(result.constants.map((constant) => [constant.name, constant]));
-  const shown = (rate: string): ShownRate => {
-    const constant = constants.get(rate);
+  const shown = (rate: string, from: Sides): ShownRate => {
+    const constant = constants.get(leadingConstant(rate, from));
     return constant === undefined
       ? { name: null, value: null, unit: null, law: rate }
       : { name: constant.name, value: constant.value, unit: constant.unit, law: null };
@@ -47,9 +57,9 @@ export function reactionLines(result: NetworkResult): readonly ReactionLine[] {
       row: reaction.row === above ? null : reaction.row,
       from: reaction.from,
       to: reaction.to,
-      forward: shown(reaction.rate),
-      backward: back === undefined ? null : shown(back.rate),
-      note: reaction.row === above ? '' : reaction.note,
+      forward: shown(reaction.rate, reaction.from),
+      backward: back === undefined ? null : shown(back.rate, back.from),
+      note: reaction.row === above ? '' : (notes[reaction.row] ?? ''),
     });
     above = reaction.row;
     if (back !== undefined) i += 1;

@@ -1,12 +1,20 @@
-import type { Verdict, Witness } from '@stillroom/shared/cells';
+import type { Hypothesis, Verdict } from '@stillroom/shared/cells';
 import { numberText } from './numbers.ts';
 import type { StructureResult } from './shapes.ts';
 import { complexLabel } from './terms.ts';
 
 const number = (value: number | string) => (typeof value === 'number' ? numberText(value, 6) : value);
 
+/** How two numbers stand to each other where a hypothesis compares them. */
+function comparison({ claim, holds }: Hypothesis, left: string, right: string): string {
+  if (claim === 'class deficiency at most one') return `${left} ${holds === false ? '>' : '≤'} ${right}`;
+  if (claim === 'deficiency') return `δ = ${left}`;
+  return `${left} ${left === right ? '=' : '≠'} ${right}`;
+}
+
 /** The evidence of a hypothesis in a few words; empty where the hypothesis speaks for itself. */
-export function witnessText(witness: Witness | undefined, structure: StructureResult | null): string {
+export function witnessText(hypothesis: Hypothesis, structure: StructureResult | null): string {
+  const { witness } = hypothesis;
   if (witness === undefined) return '';
   const label = (index: number) => complexLabel(structure?.complexes?.[index]?.of ?? {});
   switch (witness.kind) {
@@ -19,9 +27,7 @@ export function witnessText(witness: Witness | undefined, structure: StructureRe
         ? `{${witness.species.join(', ')}}`
         : `{${witness.complexes.map(label).join(', ')}}`;
     case 'number':
-      return witness.left === witness.right
-        ? `${number(witness.left)}`
-        : `${number(witness.left)} against ${number(witness.right)}`;
+      return comparison(hypothesis, number(witness.left), number(witness.right));
     case 'vector': {
       const named = (key: string) => {
         if (witness.of === 'complexes') return label(Number(key));
