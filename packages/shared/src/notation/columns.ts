@@ -1,5 +1,5 @@
 /** A column is padded to at most this; a longer cell pushes its own bar only. */
-const WIDEST = 60;
+export const WIDEST = 60;
 
 /** How many letters wide a text is: marks that join the letter before take no room. */
 export function widthOf(text: string): number {
