@@ -1,5 +1,5 @@
 import { spawnSync } from 'node:child_process';
-import { copyFileSync, mkdirSync, renameSync, rmSync } from 'node:fs';
+import { copyFileSync, existsSync, mkdirSync, renameSync, rmSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import { join } from 'node:path';
 import { build } from 'vite';
@@ -11,7 +11,8 @@ import { root } from './lib/place.mjs';
  */
 const kernel = join(root, 'packages/kernel');
 const target = join(kernel, '.build');
-const fresh = join(kernel, '.build.new');
+const fresh = join(root, `.build/engine-new-${process.pid}`);
+const old = join(root, `.build/engine-old-${process.pid}`);
 const require = createRequire(join(kernel, 'package.json'));
 
 /** Bundles one entry with everything it imports but Node's own modules. */
@@ -53,14 +54,17 @@ function makeScriptMemory(wasm) {
   if (status !== 0) throw new Error('The memory that scripts begin with could not be made.');
 }
 
-rmSync(fresh, { recursive: true, force: true });
-mkdirSync(join(fresh, 'worker'), { recursive: true });
-await bundle('worker/worker.ts', 'worker');
-await bundle('worker/make-script-memory.ts', 'make');
-await bundle('cli/evaluate.ts', 'cli');
-const wasm = join(fresh, 'worker/quickjs.wasm');
-copyFileSync(require.resolve('@jitl/quickjs-wasmfile-release-sync/wasm'), wasm);
-makeScriptMemory(wasm);
-rmSync(join(fresh, 'make'), { recursive: true });
-rmSync(target, { recursive: true, force: true });
-renameSync(fresh, target);
+try {
+  mkdirSync(join(fresh, 'worker'), { recursive: true });
+  await bundle('worker/worker.ts', 'worker');
+  await bundle('worker/make-script-memory.ts', 'make');
+  await bundle('cli/evaluate.ts', 'cli');
+  const wasm = join(fresh, 'worker/quickjs.wasm');
+  copyFileSync(require.resolve('@jitl/quickjs-wasmfile-release-sync/wasm'), wasm);
+  makeScriptMemory(wasm);
+  rmSync(join(fresh, 'make'), { recursive: true });
+  if (existsSync(target)) renameSync(target, old);
+  renameSync(fresh, target);
+} finally {
+  for (const folder of [fresh, old]) rmSync(folder, { recursive: true, force: true });
+}

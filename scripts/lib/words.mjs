@@ -4,12 +4,18 @@ import { performance } from 'node:perf_hooks';
 export class Complaint extends Error {}
 
 const began = performance.now();
-const dim = process.stdout.isTTY ? (words) => `\x1b[2m${words}\x1b[0m` : (words) => words;
+let terminal = process.stdout;
+const dim = (words) => (terminal.isTTY ? `\x1b[2m${words}\x1b[0m` : words);
+
+/** From now on progress is told on standard error: for commands whose standard output is a result. */
+export function sayOnStandardError() {
+  terminal = process.stderr;
+}
 
 /** A progress line with the seconds since the start. */
 export function say(words) {
   const seconds = ((performance.now() - began) / 1000).toFixed(1).padStart(6);
-  process.stdout.write(`${dim(`${seconds} s`)}  ${words}\n`);
+  terminal.write(`${dim(`${seconds} s`)}  ${words}\n`);
 }
 
 /** Words without a time: headlines and endings. */
@@ -27,7 +33,8 @@ export async function main(work) {
   }
 }
 
-function inWords(error) {
+/** An error as its reader needs it: one sentence where one is known, else everything. */
+export function inWords(error) {
   if (error instanceof Complaint) return error.message;
   if (error?.code === 'ENOSPC') return 'The disk is full. Free some space and start again; nothing was lost.';
   if (error?.code === 'EROFS')
