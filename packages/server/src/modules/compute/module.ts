@@ -1,4 +1,5 @@
 import { availableParallelism } from 'node:os';
+import type { CellJob } from '@stillroom/shared/cells';
 import type { TaskList } from 'graphile-worker';
 import { describeError } from '../../logger.ts';
 import type { ServerModule, Services } from '../../services.ts';
@@ -8,7 +9,7 @@ import { computeRoutes } from './compute.routes.ts';
 import { Demand } from './demand.ts';
 import { Planner } from './planner.ts';
 import type { Pool } from './pool/index.ts';
-import { RunQueue } from './queue.ts';
+import { type RunOwner, RunQueue } from './queue.ts';
 import { ResultStore } from './results.ts';
 import { Runner } from './runner.ts';
 import type { NotebookFile } from './state-keeper.ts';
@@ -54,9 +55,13 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
     },
   };
 
+  const submit = async (job: CellJob, owner: RunOwner): Promise<void> => {
+    if (runner?.take(job, owner) !== true) await queue.submit(job, owner);
+  };
+
   const planners = new Map<string, Planner>();
   const opened = (room: Room): void => {
-    const planner = new Planner({ room, results, queue, demand, file, failed });
+    const planner = new Planner({ room, results, queue, demand, file, failed, submit });
     planners.set(room.notebook, planner);
     room.observe(planner);
     room.observe({
@@ -65,6 +70,9 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
       },
     });
     planner.replan();
+  };
+  const resultChanged = (digest: string): void => {
+    for (const planner of planners.values()) planner.resultChanged(digest);
   };
   const withPlanner: Compute['withPlanner'] = (notebook, work) =>
     options.rooms().use(notebook, () => {
@@ -90,13 +98,14 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
           queue,
           results,
           log,
+          told: (digest) => resultChanged(digest),
           tasks: options.tasks ?? (() => ({})),
         });
 
   const listeners = [
     events.on('result.changed', ({ digest }) => {
       results.doubt(digest);
-      for (const planner of planners.values()) planner.resultChanged(digest);
+      resultChanged(digest);
     }),
     events.on('run.moved', ({ digest, ...run }) => {
       for (const planner of planners.values()) planner.runMoved(digest, run);

@@ -1,3 +1,4 @@
+import type { CellJob } from '@stillroom/shared/cells';
 import type { Person } from '@stillroom/shared/contracts';
 import { type CellContent, type NotebookContent, readNotebook } from '@stillroom/shared/document';
 import {
@@ -15,7 +16,7 @@ import type { CellStanding } from '../notebooks/index.ts';
 import { noticeOf, type Run } from './cell-state.ts';
 import type { Demand } from './demand.ts';
 import { type CellNews, planFrame } from './notices.ts';
-import type { RunQueue } from './queue.ts';
+import type { RunOwner, RunQueue } from './queue.ts';
 import type { Known, ResultStore } from './results.ts';
 import { StateKeeper, type NotebookFile } from './state-keeper.ts';
 
@@ -23,6 +24,8 @@ export interface PlannerOptions {
   readonly room: Room;
   readonly results: ResultStore;
   readonly queue: RunQueue;
+  /** Has a job computed, wherever there is a place. */
+  readonly submit: (job: CellJob, owner: RunOwner) => Promise<void>;
   readonly demand: Demand;
   readonly file: NotebookFile;
   readonly failed: (words: string, error: unknown) => void;
@@ -117,7 +120,8 @@ export class Planner implements RoomObserver {
   /** Something may be known under a digest now, or its run has ended without. */
   resultChanged(digest: string): void {
     if (!this.#runs.has(digest) && !this.#isPlanned(digest)) return;
-    if (this.#known.get(digest)?.kept === false) this.#known.delete(digest);
+    if (this.#known.get(digest)?.kept === true) return;
+    this.#known.delete(digest);
     this.#options.demand.settle(digest, this);
     this.#runs.delete(digest);
     this.replan();
@@ -242,7 +246,7 @@ export class Planner implements RoomObserver {
 
   /** Queues every cell that can be computed now and is to be. */
   async #submitReady(): Promise<void> {
-    const { queue, demand, room } = this.#options;
+    const { submit, demand, room } = this.#options;
     const submissions: Promise<void>[] = [];
     for (const id of this.#plan.order) {
       const planned = this.#plan.byId.get(id);
@@ -255,7 +259,7 @@ export class Planner implements RoomObserver {
       this.#runs.set(digest, { since: null, share: null, words: null });
       demand.want(digest, this);
       const owner = { group: this.#group, notebook: room.notebook, name: planned.name };
-      submissions.push(queue.submit(preparation.job, owner));
+      submissions.push(submit(preparation.job, owner));
     }
     await Promise.all(submissions);
   }

@@ -42,8 +42,6 @@ export class RunQueue {
    * stands one turn after its last, and never before the turn that is being served.
    */
   async submit(job: CellJob, owner: RunOwner): Promise<void> {
-    const { payload, results } = withoutResults(job);
-    const queued: QueuedJob = { job: payload, group: owner.group, results };
     await this.#queries.query(
       `with next as (
          select greatest(
@@ -64,8 +62,20 @@ export class RunQueue {
         job.kind,
         owner.name,
         laneOf(job.kind),
-        JSON.stringify(queued),
+        JSON.stringify(queuedJob(job, owner.group)),
       ],
+    );
+  }
+
+  /**
+   * Writes down a run that a process takes up at once, past the queue. Where the run is queued or under way already,
+   * that stands.
+   */
+  async record(job: CellJob, owner: RunOwner, host: string): Promise<void> {
+    await this.#queries.query(
+      `insert into cell_run (digest, "group", notebook, kind, name, turn, started_at, host)
+       values ($1, $2, $3, $4, $5, 0, clock_timestamp(), $6) on conflict (digest) do nothing`,
+      [job.digest, owner.group, owner.notebook, job.kind, owner.name, host],
     );
   }
 
@@ -108,23 +118,35 @@ export class RunQueue {
     return rows.length > 0;
   }
 
-  /** Keeps what a run came to; `took` is in milliseconds. */
-  async keep(job: Ran, outcome: CellOutcome, json: string | null, took: number): Promise<void> {
-    if (outcome.keep) await this.#keep(job, outcome, json, took);
-    else await this.#attempt(job, outcome, json, took);
-  }
-
-  /** Ends a run's place in the queue, counts its time for its group, and tells everybody. */
-  async close(digest: string, took: number): Promise<void> {
+  /**
+   * Ends a run: keeps what it came to (null: nothing, nobody needed it any more), takes it out of the queue, counts its
+   * time for its group, and tells everybody. `took` is in milliseconds.
+   */
+  async finish(job: Ran, outcome: CellOutcome | null, json: string | null, took: number): Promise<void> {
+    if (outcome !== null && !outcome.keep) await this.#attempt(job, outcome, json, took);
+    const kept = outcome?.keep === true ? outcome : null;
     await this.#queries.query(
-      `with run as (delete from cell_run where digest = $1 returning "group"),
-       used as (
-         insert into compute_use ("group", day, seconds, runs) select "group", current_date, $2, 1 from run
+      `with kept as (
+         insert into cell_result (digest, kind, result, result_digest, error, warnings, took, engine)
+         select $1, $2, $3, $4, $5, $6, $7, $8 where $9
+         on conflict (digest) do nothing
+       ), overcome as (
+         delete from cell_attempt where digest = $1 and $9
+       ), run as (
+         delete from cell_run where digest = $1 returning "group"
+       ), used as (
+         insert into compute_use ("group", day, seconds, runs) select "group", current_date, $7 / 1000, 1 from run
          on conflict ("group", day) do update
            set seconds = compute_use.seconds + excluded.seconds, runs = compute_use.runs + 1
        )
-       select pg_notify($3, $4)`,
-      [digest, took / 1000, eventChannel, JSON.stringify({ name: 'result.changed', payload: { digest } })],
+       select pg_notify($10, $11)`,
+      [
+        ...columns(job, kept ?? nothing, kept?.status === 'ok' ? json : null, took),
+        engineVersion,
+        kept !== null,
+        eventChannel,
+        JSON.stringify({ name: 'result.changed', payload: { digest: job.digest } }),
+      ],
     );
   }
 
@@ -154,15 +176,6 @@ export class RunQueue {
     await this.#queries.query('delete from cell_attempt where digest = any($1)', [digests]);
   }
 
-  async #keep(job: Ran, outcome: CellOutcome, json: string | null, took: number): Promise<void> {
-    await this.#queries.query(
-      `with overcome as (delete from cell_attempt where digest = $1)
-       insert into cell_result (digest, kind, result, result_digest, error, warnings, took, engine)
-       values ($1, $2, $3, $4, $5, $6, $7, $8) on conflict (digest) do nothing`,
-      [...columns(job, outcome, outcome.status === 'ok' ? json : null, took), engineVersion],
-    );
-  }
-
   async #attempt(job: Ran, outcome: CellOutcome, json: string | null, took: number): Promise<void> {
     await this.#queries.query(
       `insert into cell_attempt (digest, kind, result, result_digest, error, warnings, took)
@@ -180,6 +193,9 @@ export class RunQueue {
 
 type Ran = Pick<CellJob, 'digest' | 'kind'>;
 
+/** Fills the columns of an outcome that is not there. */
+const nothing: CellOutcome = { status: 'failed', error: { message: '' }, warnings: [], keep: false };
+
 /** An outcome as the tables hold it: digest, kind, result, its digest, error, warnings, time. */
 function columns(job: Ran, outcome: CellOutcome, json: string | null, took: number): unknown[] {
   const ok = outcome.status === 'ok';
@@ -194,8 +210,8 @@ function columns(job: Ran, outcome: CellOutcome, json: string | null, took: numb
   ];
 }
 
-/** Splits a job from the results of its inputs. */
-function withoutResults(job: CellJob): { payload: CellJob; results: string[] } {
+/** Splits a job from the results of its inputs, as it is queued. */
+export function queuedJob(job: CellJob, group: string): QueuedJob {
   const results: string[] = [];
   const inputs = Object.fromEntries(
     Object.entries(job.inputs).map(([name, { result, ...input }]) => {
@@ -203,5 +219,5 @@ function withoutResults(job: CellJob): { payload: CellJob; results: string[] } {
       return [name, input];
     }),
   );
-  return { payload: { ...job, inputs }, results };
+  return { job: { ...job, inputs }, group, results };
 }

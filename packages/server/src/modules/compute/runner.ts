@@ -5,7 +5,7 @@ import { Logger as QueueLogger, run, type Runner as QueueRunner, type TaskList }
 import pg from 'pg';
 import { describeError, type Logger } from '../../logger.ts';
 import type { Pool } from './pool/index.ts';
-import { lanes, type QueuedJob, type RunQueue } from './queue.ts';
+import { laneOf, lanes, type QueuedJob, queuedJob, type RunOwner, type RunQueue } from './queue.ts';
 import type { ResultStore } from './results.ts';
 
 /** Runs that end sooner than this, in milliseconds, are not announced as begun. */
@@ -21,6 +21,8 @@ export interface RunnerOptions {
   readonly queue: RunQueue;
   readonly results: ResultStore;
   readonly log: Logger;
+  /** Called in this process when something is known under a digest, before it is kept. */
+  readonly told: (digest: string) => void;
   /** Further tasks, run one at a time beside the lanes. */
   readonly tasks: (pool: Pool, host: string) => TaskList;
 }
@@ -32,6 +34,9 @@ export class Runner {
   readonly #host = `stillroom engine ${randomUUID()}`;
   readonly #connections: pg.Pool;
   readonly #running = new Map<string, AbortController>();
+  /** Runs taken up past the queue. */
+  #taken = 0;
+  #stopped = false;
   #runners: QueueRunner[] = [];
   #sweeper: NodeJS.Timeout | null = null;
 
@@ -51,7 +56,10 @@ export class Runner {
   async start(): Promise<void> {
     const { size, queue, pool } = this.#options;
     const tasks = this.#options.tasks(pool, this.#host);
-    const compute = (payload: unknown) => this.#compute(payload as QueuedJob);
+    const compute = (payload: unknown) => {
+      const queued = payload as QueuedJob;
+      return this.#compute(queued, queue.begin(queued.job.digest, this.#host));
+    };
     // One worker always stays free of long runs, so that what is answered at once has its turn.
     const long = Math.max(1, size - 1);
     this.#runners = [
@@ -75,6 +83,7 @@ export class Runner {
 
   /** Lets go of everything under way: it is queued again by whoever still needs it. */
   async stop(): Promise<void> {
+    this.#stopped = true;
     if (this.#sweeper !== null) clearInterval(this.#sweeper);
     for (const controller of this.#running.values()) controller.abort('unwanted');
     await Promise.all(this.#runners.map((runner) => runner.stop()));
@@ -92,22 +101,48 @@ export class Runner {
     });
   }
 
-  async #compute(queued: QueuedJob): Promise<void> {
-    const { queue, results } = this.#options;
-    const { digest } = queued.job;
-    if (!(await queue.begin(digest, this.#host))) return;
+  /**
+   * Takes a run up at once, where it is of the quick kinds and a place is free: the way through the queue would take
+   * longer than the run. False leaves it to the queue.
+   */
+  take(job: CellJob, owner: RunOwner): boolean {
+    if (laneOf(job.kind) !== lanes.quick || this.#taken >= this.#options.size || this.#stopped) return false;
+    this.#taken += 1;
+    const recorded = this.#options.queue.record(job, owner, this.#host);
+    void this.#compute(
+      queuedJob(job, owner.group),
+      recorded.then(() => true),
+    )
+      .catch((error: unknown) => this.#complain('A run could not be written down.', error))
+      .finally(() => {
+        this.#taken -= 1;
+      });
+    return true;
+  }
+
+  /** Runs a job while it is being marked as begun; `begun` is false where it was taken out of the queue meanwhile. */
+  async #compute(queued: QueuedJob, begun: Promise<boolean>): Promise<void> {
+    const { queue, results, told } = this.#options;
+    const { job } = queued;
     const controller = new AbortController();
-    this.#running.set(digest, controller);
-    const began = performance.now();
-    const outcome = await this.#run(queued, controller.signal).catch((error: unknown) => this.#broken(error));
-    const took = performance.now() - began;
-    this.#running.delete(digest);
-    if (controller.signal.reason !== 'unwanted') {
-      const json = outcome.result === undefined ? null : JSON.stringify(outcome.result);
-      await queue.keep(queued.job, outcome, json, took);
-      results.learn(queued.job, outcome, json, took);
-    }
-    await queue.close(digest, took);
+    this.#running.set(job.digest, controller);
+    const start = performance.now();
+    const [outcome, wanted] = await Promise.all([
+      this.#run(queued, controller.signal).catch((error: unknown) => this.#broken(error)),
+      begun.then((still) => {
+        if (!still) controller.abort('unwanted');
+        return still;
+      }),
+    ]);
+    const took = performance.now() - start;
+    this.#running.delete(job.digest);
+    if (!wanted) return;
+    if (controller.signal.reason === 'unwanted') return queue.finish(job, null, null, took);
+    const json = outcome.result === undefined ? null : JSON.stringify(outcome.result);
+    // Told here before it is kept: whoever loses it in a crash computes the same again.
+    results.learn(job, outcome, json, took);
+    told(job.digest);
+    await queue.finish(job, outcome, json, took);
   }
 
   async #run(queued: QueuedJob, signal: AbortSignal): Promise<CellOutcome> {
