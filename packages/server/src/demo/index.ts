@@ -1,3 +1,4 @@
+import { setTimeout as pause } from 'node:timers/promises';
 import type { SessionView } from '@stillroom/shared/contracts';
 import type { EntityManager } from 'typeorm';
 import { readSettings } from '../modules/auth/index.ts';
@@ -12,13 +13,23 @@ export interface Demo {
   readonly review: string | null;
 }
 
+/** How long the start waits for the record under review; on a slow machine it is frozen later. */
+const patience = 30_000;
+
 /** Fills an empty demo installation before the first request. To be started last: it uses everything. */
 export function createDemo(services: Services, compute: Compute): ServerModule {
   if (!services.config.DEMO || compute.pool === null) return {};
+  const stopping = new AbortController();
+  let review: Promise<void> = Promise.resolve();
   return {
     async start() {
       if (await seedDemo(services)) services.log.info('The demo was seeded.');
-      await seedReview(services, compute);
+      review = seedReview(services, compute, stopping.signal);
+      await Promise.race([review, pause(patience, undefined, { ref: false })]);
+    },
+    async stop() {
+      stopping.abort();
+      await review;
     },
   };
 }
