@@ -1,6 +1,7 @@
 import type { Me } from '@stillroom/shared/contracts';
 import { type GroupRole, groupRoles } from '@stillroom/shared/roles';
 import { createNotebook, writeRemark } from '../../../packages/server/src/modules/notebooks/index.ts';
+import { sealContent } from '../../../packages/server/src/modules/records/content.ts';
 import { buildGroup, buildMember, buildPerson, signIn } from '../../support/build.ts';
 import type { TestServer } from '../../support/server.ts';
 import { Visitor } from '../../support/visitor.ts';
@@ -43,6 +44,8 @@ export interface Fixture {
   readonly group: string;
   readonly notebook: string;
   readonly remark: string;
+  readonly record: string;
+  readonly review: string;
   readonly invitation: string;
   readonly target: string;
   readonly self: (caller: Caller) => string;
@@ -70,6 +73,7 @@ export async function buildFixture(
   await buildMember(server, group, people.target, 'reader');
   const words = { cell: 'c1', quote: '', text: 'A remark.' };
   const remark = await writeRemark(manager, notebook.id, words, { by: people.founder.id });
+  const record = await buildRecord(server, group.id, notebook.id, people.founder.id);
   const [invitation] = await server.sql<{ id: string }>(
     `insert into invitation (digest, "group", email, role, message, by, until)
      values (gen_random_uuid()::text, $1, 'guest@example.org', 'reader', '', $2, now() + interval '1 day') returning id`,
@@ -79,8 +83,45 @@ export async function buildFixture(
     group: group.id,
     notebook: notebook.id,
     remark: remark.id,
+    ...record,
     invitation: invitation?.id ?? nobody,
     target: people.target.id,
     self: (caller) => (caller === 'nobody' ? nobody : people[caller].id),
   };
+}
+
+/** A record with nothing in it, under review; freezing a computed notebook is for other tests. */
+async function buildRecord(
+  server: TestServer,
+  group: string,
+  notebook: string,
+  by: string,
+): Promise<Pick<Fixture, 'record' | 'review'>> {
+  const frozenAt = new Date().toISOString();
+  const { text, digest } = sealContent({
+    format: 'stillroom-record/1',
+    group: { id: group, name: 'Kinetics' },
+    number: 1,
+    notebook,
+    title: 'A notebook',
+    subject: 'none',
+    authors: ['Founder'],
+    frozenAt,
+    frozenBy: 'Founder',
+    engine: 'none',
+    reasons: {},
+    cells: [],
+  });
+  const [record] = await server.sql<{ id: string }>(
+    `insert into record ("group", number, notebook, title, frozen_at, frozen_by, digest, content)
+     values ($1, 1, $2, 'A notebook', $3, $4, $5, $6) returning id`,
+    [group, notebook, frozenAt, by, digest, text],
+  );
+  const [review] = await server.sql<{ id: string }>(
+    `insert into review (record, number, email, name, masked, until, digest, invited_by)
+     values ($1, 1, 'referee@example.org', '', true, now() + interval '9 days', gen_random_uuid()::text, $2)
+     returning id`,
+    [record?.id, by],
+  );
+  return { record: record?.id ?? nobody, review: review?.id ?? nobody };
 }

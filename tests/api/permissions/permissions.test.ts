@@ -5,7 +5,6 @@ import { buildPerson, signIn } from '../../support/build.ts';
 import { startTestServer, type TestServer } from '../../support/server.ts';
 import { type Answer, Visitor } from '../../support/visitor.ts';
 import { buildFixture, type Caller, callers, type Crowd, type Fixture, gatherCrowd } from './fixture.ts';
-import { recordRoutes } from './record-routes.ts';
 import { type GuardedRoute, guardedRoutes, openRoutes, operatorRoutes, ownRoutes } from './routes.ts';
 
 let server: TestServer;
@@ -20,6 +19,7 @@ function ask(route: GuardedRoute, fixture: Fixture, caller: Caller): Promise<Ans
   const parts: Record<string, string> = {
     group: fixture.group,
     notebook: fixture.notebook,
+    record: fixture.record,
     ...route.parts?.(fixture, caller),
   };
   const path = route.address.replace(/:(\w+)/gu, (_whole, name: string) => parts[name] ?? 'missing');
@@ -55,7 +55,7 @@ const memberOf =
 
 const words = ({ method, address, ability }: GuardedRoute) => `${method} ${address} (${ability})`;
 
-describe('every route of groups and notebooks asks the role table', () => {
+describe('every route of groups, notebooks and records asks the role table', () => {
   test.each(guardedRoutes.map((route) => [words(route), route] as const))('%s', async (_words, route) => {
     for (const caller of callers) {
       const fixture = await buildFixture(server, crowd);
@@ -67,9 +67,9 @@ describe('every route of groups and notebooks asks the role table', () => {
   });
 });
 
-describe('a role limited to other notebooks does not count at this one', () => {
+describe('a role limited to other notebooks does not count at this one or its records', () => {
   const elsewhere = ['00000000-0000-4000-8000-00000000000a'];
-  const routes = guardedRoutes.filter(({ door }) => door === 'notebook');
+  const routes = guardedRoutes.filter(({ door }) => door !== 'group');
   test.each(routes.map((route) => [words(route), route] as const))('%s', async (_words, route) => {
     const fixture = await buildFixture(server, crowd, () => elsewhere);
     for (const caller of callers) {
@@ -117,9 +117,7 @@ describe('routes about oneself', () => {
 describe('the list of addresses', () => {
   test('names no route that these tests do not know', () => {
     const known = new Set([
-      ...[...guardedRoutes, ...operatorRoutes, ...recordRoutes].map(
-        ({ method, address }) => `${method} ${address}`,
-      ),
+      ...[...guardedRoutes, ...operatorRoutes].map(({ method, address }) => `${method} ${address}`),
       ...ownRoutes,
       ...openRoutes,
     ]);

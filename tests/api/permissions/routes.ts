@@ -8,8 +8,8 @@ export interface GuardedRoute {
   readonly address: string;
   readonly ability: Ability;
   /** What an outsider is told is not there. */
-  readonly door: 'group' | 'notebook';
-  /** Parts of the address beside `:group` and `:notebook`. */
+  readonly door: 'group' | 'notebook' | 'record';
+  /** Parts of the address beside `:group`, `:notebook` and `:record`. */
   readonly parts?: (fixture: Fixture, caller: Caller) => Readonly<Record<string, string>>;
   readonly body?: (fixture: Fixture) => unknown;
 }
@@ -23,6 +23,8 @@ const picture = (): FormData => {
 };
 const file = { format: 'stillroom-notebook/1', title: 'Brought along', subject: 'none', cells: [] };
 const invitation = { email: 'someone@example.org', role: 'reader', notebooks: null, message: '' };
+
+const inAMonth = (): string => new Date(Date.now() + 30 * 24 * 3_600_000).toISOString().slice(0, 10);
 
 export const guardedRoutes: readonly GuardedRoute[] = [
   { method: 'GET', address: '/api/groups/:group', ability: 'group.read', door: 'group' },
@@ -174,6 +176,29 @@ export const guardedRoutes: readonly GuardedRoute[] = [
     ability: 'notebook.freeze',
     door: 'notebook',
     body: () => ({ reasons: {} }),
+  },
+  { method: 'GET', address: '/api/records/:record', ability: 'record.read', door: 'record' },
+  { method: 'GET', address: '/api/records/:record/file', ability: 'record.export', door: 'record' },
+  {
+    method: 'POST',
+    address: '/api/records/:record/reviews',
+    ability: 'record.invite',
+    door: 'record',
+    body: () => ({ email: 'referee@example.org', name: '', masked: true, until: inAMonth(), message: '' }),
+  },
+  {
+    method: 'DELETE',
+    address: '/api/records/:record/reviews/:review',
+    ability: 'record.withdraw',
+    door: 'record',
+    parts: ({ review }) => ({ review }),
+  },
+  {
+    method: 'PUT',
+    address: '/api/records/:record/public',
+    ability: 'notebook.publish',
+    door: 'record',
+    body: () => ({ public: true }),
   },
 ];
 
