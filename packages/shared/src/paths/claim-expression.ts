@@ -50,7 +50,7 @@ const deepest = 200;
 const comparisons: readonly ClaimComparison[] = ['==', '!=', '<=', '>=', '<', '>'];
 const number = /(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d{1,4})?/uy;
 const word = /"((?:[^"\\\n]|\\.)*)"/uy;
-const call = /([\p{L}_][\p{L}\p{N}_']*)\s*\(/uy;
+const call = /([\p{L}_][\p{L}\p{M}\p{N}_']*)\s*\(/uy;
 
 /** Recursive descent over one claim. `^` binds tightest and to the right, then unary minus, `* /`, `+ -`. */
 class ClaimReader {

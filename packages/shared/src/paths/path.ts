@@ -11,7 +11,7 @@ export interface Path {
   readonly to: number;
 }
 
-const word = /[\p{L}_][\p{L}\p{N}_']*/uy;
+const word = /[\p{L}_][\p{L}\p{M}\p{N}_']*/uy;
 const index = /\[\s*(\d{1,9})\s*\]/uy;
 const key = /\[\s*("(?:[^"\\\n]|\\.)*")\s*\]/uy;
 
@@ -89,7 +89,7 @@ export function parsePath(text: string): Reading<Path> {
   });
 }
 
-const plainStep = /^[\p{L}_][\p{L}\p{N}_']*$/u;
+const plainStep = /^[\p{L}_][\p{L}\p{M}\p{N}_']*$/u;
 
 /** A path as text; the first step is the head. The inverse of `parsePath`. */
 export function printPath(head: string, steps: readonly PathStep[]): string {

@@ -1,0 +1,100 @@
+import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { createPool, type Pool } from '../../../../../packages/server/src/modules/compute/pool/index.ts';
+import { Turns } from '../../../../../packages/server/src/modules/compute/pool/turns.ts';
+import { jobOf } from '../../../../support/cells.ts';
+import '../../../../support/engine.ts';
+
+const claim = (n: number) => jobOf('claim', `${n} == ${n}`);
+const endless = jobOf('script', 'print(1); for (;;);');
+
+describe('turns', () => {
+  const take = (turns: Turns<{ owner: string; n: number }>) => {
+    const item = turns.next();
+    return item === undefined ? null : `${item.owner}${item.n}`;
+  };
+  test('owners alternate, each one in the order of arrival', () => {
+    const turns = new Turns<{ owner: string; n: number }>();
+    for (const n of [1, 2, 3]) turns.add({ owner: 'a', n });
+    turns.add({ owner: 'b', n: 1 });
+    expect([take(turns), take(turns), take(turns), take(turns), take(turns)]).toEqual([
+      'a1',
+      'b1',
+      'a2',
+      'a3',
+      null,
+    ]);
+  });
+  test('who has less under way comes first; what is taken out is not served', () => {
+    const turns = new Turns<{ owner: string; n: number }>();
+    const items = [1, 2].map((n) => ({ owner: 'a', n }));
+    items.forEach((item) => turns.add(item));
+    const first = turns.next();
+    const late = { owner: 'b', n: 1 };
+    turns.add(late);
+    turns.add({ owner: 'b', n: 2 });
+    expect(turns.waiting()).toEqual(
+      new Map([
+        ['a', 1],
+        ['b', 2],
+      ]),
+    );
+    expect(turns.remove(late)).toBe(true);
+    expect(turns.remove(late)).toBe(false);
+    expect(take(turns)).toBe('b2');
+    if (first !== undefined) turns.done(first);
+    expect(take(turns)).toBe('a2');
+  });
+});
+
+describe('a pool', () => {
+  let pool: Pool;
+  beforeAll(() => {
+    pool = createPool({ size: 2 });
+  });
+  afterAll(() => pool.close());
+
+  test('runs what is asked before it is ready, and says how workers are confined', async () => {
+    const outcomes = await Promise.all(
+      Array.from({ length: 30 }, (_, n) => pool.run(claim(n), { deadline: 20 })),
+    );
+    expect(outcomes.every(({ status }) => status === 'ok')).toBe(true);
+    expect(pool.isolation).toMatch(/\.$/u);
+  });
+
+  test('endless runs are ended while others go on, and the workers are three again', async () => {
+    const slow = [0, 1, 2].map(() => pool.run(endless, { deadline: 0.4, owner: 'slow' }));
+    const quick = Array.from({ length: 10 }, (_, n) => pool.run(claim(n), { deadline: 20, owner: 'quick' }));
+    for (const outcome of await Promise.all(slow))
+      expect(outcome).toMatchObject({ status: 'failed', keep: false });
+    for (const outcome of await Promise.all(quick)) expect(outcome.status).toBe('ok');
+    await expect
+      .poll(() => pool.workers().filter(({ state }) => state === 'idle').length, { timeout: 5000 })
+      .toBe(3);
+  });
+
+  test('a worker that is killed is replaced', async () => {
+    const [victim] = pool.workers();
+    process.kill(Number(victim?.id), 'SIGKILL');
+    await expect.poll(() => pool.workers().map(({ id }) => id), { timeout: 5000 }).not.toContain(victim?.id);
+    await expect.poll(() => pool.workers().length, { timeout: 5000 }).toBe(3);
+    expect((await pool.run(claim(1), { deadline: 20 })).status).toBe('ok');
+  });
+
+  test('Stop takes back a run that waits, and ends one that runs', async () => {
+    const stop = new AbortController();
+    const busy = [0, 1].map(() => pool.run(endless, { deadline: 20, signal: stop.signal }));
+    const waiting = pool.run(claim(1), { deadline: 20, signal: stop.signal });
+    await expect.poll(() => pool.workers().filter(({ state }) => state === 'working').length).toBe(2);
+    expect([...pool.waiting().values()]).toEqual([1]);
+    stop.abort();
+    for (const outcome of await Promise.all([...busy, waiting])) {
+      expect(outcome.status === 'failed' && outcome.error.message).toBe('The run was stopped.');
+    }
+  });
+});
+
+test('a pool without an engine fails runs in words, and closes', async () => {
+  const pool = createPool({ size: 1, engineFolder: '/nowhere' });
+  expect(await pool.run(claim(1), { deadline: 5 })).toMatchObject({ status: 'failed', keep: false });
+  await pool.close();
+});
