@@ -26,17 +26,16 @@ function repairButton(view: EditorView, repair: Repair, first: boolean): HTMLBut
 export class ComplaintWidget extends WidgetType {
   constructor(
     private readonly complaint: Complaint,
-    /** Letters from the beginning of the line to what it is about. */
-    private readonly letters: number,
+    /** Where in the document what it is about begins. */
+    private readonly at: number,
   ) {
     super();
   }
 
   override eq(other: ComplaintWidget): boolean {
     return (
-      other.letters === this.letters &&
+      other.at === this.at &&
       other.complaint.message === this.complaint.message &&
-      other.complaint.from === this.complaint.from &&
       JSON.stringify(other.complaint.repairs) === JSON.stringify(this.complaint.repairs)
     );
   }
@@ -48,7 +47,6 @@ export class ComplaintWidget extends WidgetType {
     box.id = `complaint-${(numbered += 1)}`;
     box.setAttribute('role', 'note');
     box.setAttribute('aria-label', `${severity === 'error' ? 'Error' : 'Doubt'} in line ${line}`);
-    box.style.setProperty('--x', `${Math.max(this.letters, 0)}ch`);
     const words = document.createElement('span');
     const what = document.createElement('b');
     what.textContent = message;
@@ -60,7 +58,15 @@ export class ComplaintWidget extends WidgetType {
       actions.append(...repairs.map((repair, i) => repairButton(view, repair, i === 0)));
       box.append(actions);
     }
-    return box;
+    // The room above and below is padding: the editor does not count margins.
+    const place = document.createElement('div');
+    place.className = 'say-place';
+    place.append(box);
+    view.requestMeasure({
+      read: () => (view.coordsAtPos(this.at)?.left ?? 0) - box.getBoundingClientRect().left,
+      write: (x) => box.style.setProperty('--x', `${Math.max(8, Math.round(x) - 6)}px`),
+    });
+    return place;
   }
 
   override ignoreEvent(): boolean {

@@ -28,7 +28,7 @@ function mark(state: EditorState, complaints: readonly Complaint[]): DecorationS
     if (from < to) ranges.push(Decoration.mark({ class: wrong ? 'wavy' : 'wavy doubt' }).range(from, to));
     ranges.push(
       Decoration.widget({
-        widget: new ComplaintWidget(complaint, from - line.from),
+        widget: new ComplaintWidget(complaint, from),
         block: true,
         side: 1,
       }).range(line.to),

@@ -19,6 +19,7 @@ const plain: Extension = [ledgerTheme, inkHighlighting];
 function notation(told: (found: readonly Complaint[]) => void): Extension {
   return [
     ledgerTheme,
+    EditorView.lineWrapping,
     notationLanguage,
     inkHighlighting,
     rowGutter,

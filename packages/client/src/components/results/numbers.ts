@@ -9,12 +9,12 @@ const minus = (text: string) => text.replace('-', '−');
 /** Trims the zeros that rounding left behind a decimal point. */
 const trimmed = (text: string) => (text.includes('.') ? text.replace(/\.?0+$/u, '') : text);
 
-/** Sets a number with at most `digits` significant digits; below 0.001 and from 100 000 on with a power of ten. */
+/** Sets a number with at most `digits` significant digits; below 0.0001 and from 100 000 on with a power of ten. */
 export function setNumber(value: number, digits = 4): SetNumber {
   if (value === 0) return { digits: '0', exponent: null };
   const size = Math.abs(value);
   if (Number.isInteger(value) && size < 1e6) return { digits: minus(String(value)), exponent: null };
-  if (size >= 1e-3 && size < 1e5) {
+  if (size >= 0.99999e-4 && size < 1e5) {
     const plain = value.toPrecision(digits);
     return { digits: minus(trimmed(plain.includes('e') ? String(Number(plain)) : plain)), exponent: null };
   }
