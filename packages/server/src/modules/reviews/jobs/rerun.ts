@@ -60,7 +60,12 @@ async function runFresh(
 ): Promise<CellOutcome> {
   const preparation = prepareJob(plan, id, (input) => outcomes.get(input));
   if (preparation.state === 'ready')
-    return pool.run(preparation.job, { deadline: limits.deadlineUsual, owner, signal });
+    // A signal of its own for each run: listeners on the long-lived one would gather.
+    return pool.run(preparation.job, {
+      deadline: limits.deadlineUsual,
+      owner,
+      signal: AbortSignal.any([signal]),
+    });
   const error =
     preparation.state === 'blocked'
       ? preparation.error
