@@ -9,13 +9,14 @@ import {
   matrixOfRows,
   primitive,
   rightNullspace,
+  toDouble,
   transpose,
   ZERO,
 } from '../exact/index.ts';
 import type { StructuralNetwork } from '../network/index.ts';
-import { complexLabel } from '../network/index.ts';
+import { complexLabel, structuralNetwork } from '../network/index.ts';
 import type { Structure } from '../structure/index.ts';
-import { membersOf, nonterminalComplexes } from '../structure/index.ts';
+import { analyse, membersOf, nonterminalComplexes } from '../structure/index.ts';
 import type { ArrowConstants } from './arrow-constants.ts';
 import { arrowConstants, unreadConstants } from './arrow-constants.ts';
 import { positiveCirculation } from './circulation.ts';
@@ -88,6 +89,32 @@ export class TheoremContext {
   memo<T>(name: string, compute: () => T): T {
     if (!this.#kept.has(name)) this.#kept.set(name, compute());
     return this.#kept.get(name) as T;
+  }
+
+  /** The same network with mass action everywhere and the constants given by arrow; `fix` and weights set aside. */
+  withMassAction(constants: readonly Rational[]): TheoremContext {
+    const { network, structure } = this;
+    const values = Array.from({ length: network.reactions.count }, () => ZERO);
+    constants.forEach(
+      (value, arrow) => (values[structure.reactions.source[this.reactionOf(arrow)]!] = value),
+    );
+    const plain: Network = {
+      ...network,
+      constants: values.map((exact, i) => ({
+        name: `v${i + 1}`,
+        quantity: { value: toDouble(exact), exact },
+        unit: null,
+        line: 0,
+      })),
+      reactions: {
+        ...network.reactions,
+        constant: Int32Array.from(values, (_, i) => i),
+        law: new Int32Array(values.length).fill(-1),
+      },
+      laws: [],
+      weights: new Map(),
+    };
+    return new TheoremContext(plain, this.#judge, analyse(structuralNetwork(plain)));
   }
 
   /** The verdict of another theorem. */

@@ -14,6 +14,13 @@ import { persistence } from './persistence.ts';
 import { robustExtinction } from './robust-extinction.ts';
 import { robustSpecies } from './robust-species.ts';
 import { severalSteadyStates } from './several-steady-states.ts';
+import { productFormAllTimes } from './product-form-all-times.ts';
+import { productForm } from './product-form.ts';
+import { positiveRecurrent } from './positive-recurrent.ts';
+import { oneDimensional } from './one-dimensional.ts';
+import { nonExplosive } from './non-explosive.ts';
+import { monomolecular } from './monomolecular.ts';
+import { massTransport } from './mass-transport.ts';
 import type { Theorem } from './theorem.ts';
 
 /** Every theorem, in the order in which verdicts are listed. To add one, write its file and name it here. */
@@ -25,14 +32,21 @@ export const theorems: readonly Theorem[] = [
   globalStability,
   existence,
   noPositiveSteadyState,
+  severalSteadyStates,
+  atMostOne,
+  injective,
+  concordant,
+  oneDimensional,
   persistence,
   noBoundarySteadyState,
   robustSpecies,
   robustExtinction,
-  injective,
-  concordant,
-  severalSteadyStates,
-  atMostOne,
+  productForm,
+  productFormAllTimes,
+  monomolecular,
+  massTransport,
+  nonExplosive,
+  positiveRecurrent,
 ];
 
 const byId: ReadonlyMap<VerdictId, Theorem> = new Map(theorems.map((theorem) => [theorem.id, theorem]));

@@ -113,6 +113,16 @@ export const hypothesisClaims = [
   'several states verified',
   'several are excluded',
   'at most one by theorem',
+  'mass action or weights in counts',
+  'weight summable',
+  'no large complex',
+  'large complexes balance',
+  'mass moves between sites',
+  'rates factorise',
+  'transport balances',
+  'rank one',
+  'linear growth',
+  'inward drift',
 ] as const;
 export type HypothesisClaim = (typeof hypothesisClaims)[number];
 

@@ -155,3 +155,11 @@ export function attractionProven(evidence: Evidence): string | null {
   const rank = plain.complexes.length - groups.length - deficiencyOf(plain, groups);
   return rank <= 3 ? numbersAre(evidence, rank, 3) : 'the rank is above 3.';
 }
+
+/** The dimension, compared with 1. */
+export function rankOne(evidence: Evidence): string | null {
+  const { plain, holds } = evidence;
+  const groups = components(plain);
+  const rank = plain.complexes.length - groups.length - deficiencyOf(plain, groups);
+  return numbersAre(evidence, rank, 1) ?? (holds === (rank === 1) ? null : 'the numbers say the opposite.');
+}

@@ -2,6 +2,7 @@ import type { HypothesisClaim, Hypothesis, Verdict, Witness } from '@stillroom/s
 import type { Network } from '@stillroom/shared/network';
 import type { PlainNetwork } from './plain-network.ts';
 import * as balance from './balance-rules.ts';
+import * as counts from './count-rules.ts';
 import * as graph from './graph-rules.ts';
 import * as rates from './rate-rules.ts';
 import * as signs from './sign-rules.ts';
@@ -52,4 +53,14 @@ export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'several states verified': states.severalStates,
   'several are excluded': states.severalExcluded,
   'at most one by theorem': states.atMostOne,
+  'mass action or weights in counts': counts.countRates,
+  'weight summable': counts.unchecked,
+  'no large complex': counts.noLargeComplex,
+  'large complexes balance': counts.largeComplexesBalance,
+  'mass moves between sites': counts.sitesOnly,
+  'rates factorise': counts.unchecked,
+  'transport balances': counts.unchecked,
+  'rank one': graph.rankOne,
+  'linear growth': counts.linearGrowth,
+  'inward drift': counts.inwardDrift,
 };

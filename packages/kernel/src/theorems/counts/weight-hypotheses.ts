@@ -1,0 +1,125 @@
+import type { Hypothesis } from '@stillroom/shared/cells';
+import type { Expression } from '@stillroom/shared/expression';
+import { elementary, evaluate } from '@stillroom/shared/expression';
+import { balancedLogarithms } from '../../balance/balanced-state.ts';
+import { treeConstants } from '../../balance/tree-constants.ts';
+import type { Rational } from '../../exact/index.ts';
+import { divide, power, rational, sign } from '../../exact/index.ts';
+import type { TheoremContext } from '../context.ts';
+import { massAction } from '../hypotheses.ts';
+import { isSummable, weightGrowth } from './weight-growth.ts';
+
+/** In counts: mass action with whole numbers of molecules, weights allowed. */
+export function countRates(context: TheoremContext): Hypothesis {
+  const claim = 'mass action or weights in counts';
+  const text =
+    'In counts every rate is mass action, with the weight of a species in place of its count where one is given, and molecules come in whole numbers.';
+  const rates = massAction(context);
+  if (!context.coefficients.whole)
+    return { claim, text: `${text} A coefficient is not a whole number.`, holds: false };
+  const { witness } = rates;
+  return { claim, text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
+}
+
+/** Values of n for which a weight is checked to be positive. */
+const CHECKED = 200;
+
+/** One hypothesis for each weighted species: positive, and summable where its count is not bounded by a law. */
+export function weightsSummable(context: TheoremContext): Hypothesis[] {
+  return [...context.network.weights].flatMap(([written, weight]): Hypothesis[] => {
+    const species = context.structure.sourceSpecies.indexOf(written);
+    if (species < 0) return [];
+    const positive = firstNotPositive(context, weight);
+    const name = context.species[species]!;
+    if (positive !== null) {
+      return [
+        {
+          claim: 'weight summable',
+          text: `The weight of ${name} is positive for every n ≥ 1; at n = ${positive} it is not.`,
+          holds: false,
+        },
+      ];
+    }
+    return [summability(context, species, weight)];
+  });
+}
+
+function firstNotPositive(context: TheoremContext, weight: Expression): number | null {
+  for (let n = 1; n <= CHECKED; n++) {
+    const value = evaluate(weight, (name) =>
+      name === 'n' ? n : (constantNamed(context, name)?.value ?? NaN),
+    );
+    if (!(value > 0)) return n;
+  }
+  return null;
+}
+
+function constantNamed(context: TheoremContext, name: string) {
+  return context.network.constants.find((constant) => constant.name === name)?.quantity ?? undefined;
+}
+
+function summability(context: TheoremContext, species: number, weight: Expression): Hypothesis {
+  const claim = 'weight summable';
+  const name = context.species[species]!;
+  const text = `The terms C^n/∏ θ(j) of ${name} have a finite sum.`;
+  if (context.conservation?.holds === true) {
+    return { claim, text: `${text} Its count is bounded, because the network is conservative.`, holds: true };
+  }
+  const growth = weightGrowth(weight, (constant) => constantNamed(context, constant)?.exact ?? null);
+  if (growth === null)
+    return {
+      claim,
+      text: `${text} The growth of the weight could not be read off its expression.`,
+      holds: null,
+    };
+  if (growth.kind === 'unbounded')
+    return { claim, text: `${text} The weight grows without bound.`, holds: true };
+  if (context.lawBasis.some((law) => law[species] !== 0n)) {
+    return {
+      claim,
+      text: `${text} ${name} takes part in a conservation law that does not bound it.`,
+      holds: null,
+    };
+  }
+  const c = parameterOf(context, species);
+  if (c === null) return { claim, text: `${text} This depends on C, and values are missing.`, holds: null };
+  return { claim, text, holds: isSummable(growth, c) };
+}
+
+/** c of a species that no conservation law touches: the same in every complex-balanced state; exact where one factor gives it. */
+function parameterOf(
+  context: TheoremContext,
+  species: number,
+): { exact: Rational | null; near: number } | null {
+  const constants = context.exactConstants;
+  const logarithms = constants && balancedLogarithms(context, constants);
+  if (constants === null || logarithms === null) return null;
+  return { exact: exactParameter(context, constants, species), near: elementary.exp(logarithms[species]!) };
+}
+
+/** Follows chains of complexes that differ by one molecule of one species: c_i = K_{y'} / K_y. */
+function exactParameter(
+  context: TheoremContext,
+  constants: readonly Rational[],
+  species: number,
+): Rational | null {
+  const trees = treeConstants(context, constants);
+  if (trees === null) return null;
+  const known = new Map<number, Rational>();
+  for (let round = 0; round < context.species.length && !known.has(species); round++) {
+    for (const { from, to } of context.arrows) {
+      const open: { species: number; amount: number }[] = [];
+      let ratio = rational(trees[to]!, trees[from]!);
+      for (const [i, amount] of context.coefficients.change(from, to)) {
+        const value = known.get(i);
+        if (value === undefined) open.push({ species: i, amount: Number(amount) });
+        else ratio = divide(ratio, power(value, Number(amount)));
+      }
+      const [only] = open;
+      if (open.length !== 1 || Math.abs(only!.amount) !== 1) continue;
+      known.set(only!.species, only!.amount > 0 ? ratio : power(ratio, -1));
+    }
+  }
+  const value = known.get(species);
+  return value !== undefined && sign(value) > 0 ? value : null;
+}

@@ -1,0 +1,72 @@
+import type { Hypothesis } from '@stillroom/shared/cells';
+import type { TheoremContext } from './context.ts';
+import { linearDrift } from './counts/linear-drift.ts';
+import { conservative, massActionInCounts, valuesGiven } from './hypotheses.ts';
+import { sources } from './sources.ts';
+import type { Judgement, Theorem } from './theorem.ts';
+import { appliesWhenAllHold } from './theorem.ts';
+
+/** Meyn, Tweedie 1993; Gupta, Briat, Khammash 2014. */
+export const positiveRecurrent: Theorem = {
+  id: 'positive-recurrent',
+  title: 'Stationary law exists on every closed class of counts',
+  statement:
+    'If the mean change of some positive linear function of the counts is at most −1 outside a finite set, every closed irreducible set is positive recurrent and carries exactly one stationary law.',
+  citation: [sources.meynTweedie1993, sources.guptaBriatKhammash2014],
+  kinetics: 'mass action',
+  judge(context): Judgement {
+    const rates = massActionInCounts(context);
+    const route = rates.holds === true ? routeOf(context) : null;
+    const hypotheses = [rates, ...(route?.hypotheses ?? [])];
+    const applies = appliesWhenAllHold(hypotheses);
+    return {
+      applies,
+      scope: route?.scope ?? 'all constants',
+      hypotheses,
+      conclusion: {
+        yes: `In counts and ${route?.scope === 'these constants' ? 'for these constants' : 'for all constants'}: from every start a finite set is reached in finite mean time, and every closed irreducible set is positive recurrent with exactly one stationary law.`,
+        no: 'The theorem does not apply: nothing follows from it about stationary laws.',
+        undecided:
+          'Undecided: no linear function of this kind was found. It does not follow that there is no stationary law.',
+      }[applies],
+      silentOn:
+        'The form of the stationary law. The long-time behaviour of counts and that of rate equations do not imply each other.',
+    };
+  },
+};
+
+interface Route {
+  readonly scope: 'all constants' | 'these constants';
+  readonly hypotheses: readonly Hypothesis[];
+}
+
+function routeOf(context: TheoremContext): Route {
+  const finite = conservative(context);
+  if (finite.holds === true) return { scope: 'all constants', hypotheses: [finite] };
+  const claim = 'inward drift';
+  const drift = linearDrift(context, 'inward');
+  if (drift !== null) {
+    return {
+      scope: drift.scope,
+      hypotheses: [
+        {
+          claim,
+          text: 'A linear function with positive coefficients falls on average, by at least 1, outside a finite set of counts.',
+          holds: true,
+          witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(drift.weights) },
+        },
+      ],
+    };
+  }
+  return {
+    scope: 'all constants',
+    hypotheses: [
+      ...valuesGiven(context),
+      {
+        claim,
+        text: 'A linear function with positive coefficients falls on average outside a finite set of counts.',
+        holds: null,
+      },
+    ],
+  };
+}
