@@ -29,12 +29,15 @@ async function build(): Promise<string> {
   const program = join(await mkdtemp(join(tmpdir(), 'linbox-')), 'rank');
   const source = fileURLToPath(new URL('linbox-rank.cpp', import.meta.url));
   try {
-    const libraries = ['-llinbox', '-lgivaro', '-lopenblas', '-lgmpxx', '-lgmp'];
-    await execute('g++', ['-O3', '-march=native', '-o', program, source, ...libraries]);
+    const libraries = ['-llinbox', '-lgivaro', '-lopenblas', '-lntl', '-lgmpxx', '-lgmp'];
+    await execute('g++', ['-O2', '-march=native', '-o', program, source, ...libraries]);
   } catch (error) {
-    throw new Error('LinBox could not be built: it needs g++ and the Debian package liblinbox-dev.', {
-      cause: error,
-    });
+    throw new Error(
+      'LinBox could not be built: it needs g++ and the Debian packages liblinbox-dev and libntl-dev.',
+      {
+        cause: error,
+      },
+    );
   }
   return program;
 }
