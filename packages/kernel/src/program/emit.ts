@@ -1,6 +1,6 @@
 import type { ByteWriter } from '../wasm/index.ts';
 import { type FunctionIndex, instruction } from '../wasm/index.ts';
-import { operations, spaces } from './graph.ts';
+import { operandCounts, operations, spaces } from './graph.ts';
 import { hostFunctions } from './host-functions.ts';
 import type { Tape } from './tape.ts';
 
@@ -119,32 +119,31 @@ export function emitTape(tape: Tape, hosts: readonly FunctionIndex[], body: Byte
   return locals;
 }
 
+/** Which values go to locals: those used more than once, those nested too deep, loads of slots that are overwritten. */
 function chooseLocals(tape: Tape): Uint8Array {
-  const { operation, left, right, third } = tape;
-  const uses = new Uint32Array(tape.size);
-  const depth = new Uint32Array(tape.size);
-  const keep = new Uint8Array(tape.size);
-  const overwritten = new Set(tape.outputs.map(({ slot, space }) => slot * 4 + space));
-  for (let node = 0; node < tape.size; node++) {
+  const { size, operation, left, right, third, outputs } = tape;
+  const uses = new Uint32Array(size);
+  const depth = new Uint32Array(size);
+  const keep = new Uint8Array(size);
+  const overwritten = new Set<number>();
+  for (const { slot, space } of outputs) overwritten.add(slot * 4 + space);
+  const use = (part: number): number => {
+    uses[part]!++;
+    return keep[part] === 0 ? depth[part]! : 0;
+  };
+  for (let node = 0; node < size; node++) {
     const kind = operation[node]!;
-    if (kind === operations.constant) continue;
-    if (kind === operations.load) {
-      if (overwritten.has(left[node]! * 4 + right[node]!)) keep[node] = 1;
-      continue;
-    }
-    const parts = [left[node]!];
-    if (unary[kind] === undefined) parts.push(right[node]!);
-    if (kind === operations.select) parts.push(third[node]!);
-    let deepest = 0;
-    for (const part of parts) {
-      uses[part]!++;
-      if (keep[part] === 0) deepest = Math.max(deepest, depth[part]!);
-    }
+    if (kind === operations.load && overwritten.has(left[node]! * 4 + right[node]!)) keep[node] = 1;
+    const count = operandCounts[kind]!;
+    if (count === 0) continue;
+    let deepest = use(left[node]!);
+    if (count > 1) deepest = Math.max(deepest, use(right[node]!));
+    if (count > 2) deepest = Math.max(deepest, use(third[node]!));
     depth[node] = deepest + 1;
-    if (depth[node]! > deepestExpression) keep[node] = 1;
+    if (deepest >= deepestExpression) keep[node] = 1;
   }
-  for (const { node } of tape.outputs) uses[node]!++;
-  for (let node = 0; node < tape.size; node++) {
+  for (const { node } of outputs) uses[node]!++;
+  for (let node = 0; node < size; node++) {
     if (uses[node]! > 1 && operation[node] !== operations.constant) keep[node] = 1;
   }
   return keep;

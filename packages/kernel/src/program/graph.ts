@@ -26,6 +26,9 @@ export const operations = {
   call: 17,
 } as const;
 
+/** How many operands each operation has, by its number. */
+export const operandCounts: readonly number[] = [0, 0, 2, 2, 2, 2, 1, 1, 1, 2, 2, 1, 1, 2, 2, 2, 3, 2];
+
 /**
  * Where a slot lies: at a fixed place of the memory, or counted from the first or the second base with which a
  * routine is called.
@@ -201,20 +204,7 @@ export class Graph {
 
 /** The operand nodes of a node, in order; constants and loads have none. */
 export function operands(graph: Graph, node: Node): readonly Node[] {
-  const operation = graph.operation[node]!;
-  switch (operation) {
-    case operations.constant:
-    case operations.load:
-      return [];
-    case operations.negate:
-    case operations.abs:
-    case operations.sqrt:
-    case operations.floor:
-    case operations.ceil:
-      return [graph.left[node]!];
-    case operations.select:
-      return [graph.left[node]!, graph.right[node]!, graph.third[node]!];
-    default:
-      return [graph.left[node]!, graph.right[node]!];
-  }
+  const count = operandCounts[graph.operation[node]!]!;
+  const all = [graph.left[node]!, graph.right[node]!, graph.third[node]!];
+  return all.slice(0, count);
 }

@@ -1,4 +1,4 @@
-import { type Graph, type Node, operands, operations, type Space, spaces } from './graph.ts';
+import { type Graph, type Node, operandCounts, operations, type Space, spaces } from './graph.ts';
 
 /** A number that a routine writes: the value of `node` goes to `slot` of `space`. */
 export interface Output {
@@ -24,7 +24,8 @@ export interface Tape {
 
 /** The tape that computes `outputs`. */
 export function makeTape(graph: Graph, outputs: readonly Output[]): Tape {
-  return renumber(graph, outputs, reachable(graph, outputs, new Uint32Array(graph.size), 1));
+  const nodes = reachable(graph, outputs, new Uint32Array(graph.size), 1);
+  return renumber(graph, outputs, nodes, new Int32Array(graph.size));
 }
 
 /**
@@ -34,13 +35,14 @@ export function makeTape(graph: Graph, outputs: readonly Output[]): Tape {
 export function makeTapes(graph: Graph, outputs: readonly Output[], limit: number): Tape[] {
   const tapes: Tape[] = [];
   const mark = new Uint32Array(graph.size);
+  const place = new Int32Array(graph.size);
   let group: Output[] = [];
   let nodes: Node[] = [];
   let epoch = 1;
   for (const output of outputs) {
     const added = reachable(graph, [output], mark, epoch);
     if (group.length > 0 && nodes.length + added.length > limit) {
-      tapes.push(renumber(graph, group, nodes));
+      tapes.push(renumber(graph, group, nodes, place));
       epoch++;
       group = [];
       nodes = reachable(graph, [output], mark, epoch);
@@ -49,7 +51,7 @@ export function makeTapes(graph: Graph, outputs: readonly Output[], limit: numbe
     }
     group.push(output);
   }
-  if (group.length > 0) tapes.push(renumber(graph, group, nodes));
+  if (group.length > 0) tapes.push(renumber(graph, group, nodes, place));
   return tapes;
 }
 
@@ -64,45 +66,45 @@ export function readsSlot(tape: Tape, slot: number): boolean {
 /** The nodes that `outputs` need and that do not yet bear the mark `epoch`, which they get. */
 function reachable(graph: Graph, outputs: readonly Output[], mark: Uint32Array, epoch: number): Node[] {
   const found: Node[] = [];
-  const stack = outputs.map((output) => output.node);
-  for (let node = stack.pop(); node !== undefined; node = stack.pop()) {
-    if (mark[node] === epoch) continue;
+  const stack: Node[] = [];
+  const visit = (node: Node): void => {
+    if (mark[node] === epoch) return;
     mark[node] = epoch;
     found.push(node);
-    for (const operand of operands(graph, node)) stack.push(operand);
+    stack.push(node);
+  };
+  for (const output of outputs) {
+    visit(output.node);
+    for (let node = stack.pop(); node !== undefined; node = stack.pop()) {
+      const count = operandCounts[graph.operation[node]!]!;
+      if (count > 0) visit(graph.left[node]!);
+      if (count > 1) visit(graph.right[node]!);
+      if (count > 2) visit(graph.third[node]!);
+    }
   }
   return found;
 }
 
-function renumber(graph: Graph, outputs: readonly Output[], nodes: Node[]): Tape {
+/** `place` is scratch space of the graph's size, for where each node goes. */
+function renumber(graph: Graph, outputs: readonly Output[], nodes: readonly Node[], place: Int32Array): Tape {
   const order = Int32Array.from(nodes).sort();
   const size = order.length;
-  const place = new Map<Node, number>();
-  order.forEach((node, index) => place.set(node, index));
-  const tape = {
-    size,
-    operation: new Uint8Array(size),
-    left: new Int32Array(size),
-    right: new Int32Array(size),
-    third: new Int32Array(size),
-    constants: new Float64Array(size),
-    outputs: outputs.map(({ node, slot, space }) => ({ node: place.get(node)!, slot, space })),
-  };
-  order.forEach((node, index) => {
-    const operation = graph.operation[node]!;
-    tape.operation[index] = operation;
-    if (operation === operations.constant) {
-      tape.constants[index] = graph.value(node);
-    } else if (operation === operations.load) {
-      tape.left[index] = graph.left[node]!;
-      tape.right[index] = graph.right[node]!;
-    } else {
-      const [a, b, c] = operands(graph, node);
-      tape.left[index] = place.get(a!)!;
-      tape.right[index] = b === undefined ? 0 : place.get(b)!;
-      tape.third[index] =
-        operation === operations.call ? graph.third[node]! : c === undefined ? 0 : place.get(c)!;
-    }
-  });
-  return tape;
+  const operation = new Uint8Array(size);
+  const left = new Int32Array(size);
+  const right = new Int32Array(size);
+  const third = new Int32Array(size);
+  const constants = new Float64Array(size);
+  for (let i = 0; i < size; i++) {
+    const node = order[i]!;
+    place[node] = i;
+    const kind = graph.operation[node]!;
+    const count = operandCounts[kind]!;
+    operation[i] = kind;
+    if (kind === operations.constant) constants[i] = graph.value(node);
+    else left[i] = count > 0 ? place[graph.left[node]!]! : graph.left[node]!;
+    right[i] = count > 1 ? place[graph.right[node]!]! : graph.right[node]!;
+    third[i] = count > 2 ? place[graph.third[node]!]! : graph.third[node]!;
+  }
+  const written = outputs.map(({ node, slot, space }) => ({ node: place[node]!, slot, space }));
+  return { size, operation, left, right, third, constants, outputs: written };
 }

@@ -156,6 +156,7 @@ function amountScale(
   law: number,
   reaction: number,
 ): (species: number) => number {
+  if (network.compartments.length < 2) return () => 1;
   const touched = [...from, ...to].map(({ species }) => species);
   if (!crossesCompartments(compartmentOf, touched)) return () => 1;
   if (law < 0) {

@@ -21,10 +21,7 @@ export class ByteWriter {
   /** An unsigned integer below 2^32. */
   unsigned(value: number): void {
     let rest = value;
-    while (rest >= 128) {
-      this.byte((rest % 128) | 128);
-      rest = Math.floor(rest / 128);
-    }
+    for (; rest >= 128; rest = Math.floor(rest / 128)) this.byte((rest % 128) | 128);
     this.byte(rest);
   }
 

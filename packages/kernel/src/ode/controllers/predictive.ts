@@ -4,6 +4,8 @@ import { fifthRoot } from './fifth-root.ts';
 const safety = 0.9;
 const leastFactor = 0.2;
 const mostFactor = 10;
+/** The fifth root of 0.01: smaller errors count as 0.01 when the trend is followed. */
+const leastRoot = 0.3981071705534972;
 
 /**
  * Predictive control for stiff methods whose error is of order h^5: besides h · safety · e^(−1/5) it follows the trend of
@@ -21,7 +23,7 @@ export function predictive(): Controller {
       let factor = bounded(1 / root);
       if (oldStep > 0) factor = Math.min(factor, bounded(((h / oldStep) * oldRoot) / (root * root)));
       oldStep = h;
-      oldRoot = fifthRoot(Math.max(error, 0.01));
+      oldRoot = Math.max(root, leastRoot);
       const step = h * (rejected ? Math.min(factor, 1) : factor);
       rejected = false;
       return step;

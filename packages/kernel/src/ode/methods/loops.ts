@@ -9,7 +9,7 @@ import {
 } from '../../program/index.ts';
 
 /** Up to this dimension loops over components are written out. */
-const unrolledDimension = 12;
+const unrolledDimension = 4;
 
 /**
  * A routine that does the same for every component of vectors: `body` describes it for one component. Short vectors
@@ -89,4 +89,10 @@ export function setTime(timeSlot: number, startSlot: number, stepSlot: number, c
   const passed = graph.multiply(graph.constant(c), graph.load(stepSlot));
   const node = graph.add(graph.load(startSlot), passed);
   return { kind: 'straight', tapes: [makeTape(graph, [{ node, slot: timeSlot, space: spaces.fixed }])] };
+}
+
+/** Copies a vector of memory to another place; short ones faster than by a call of `copyWithin`. */
+export function copyVector(memory: Float64Array, to: number, from: number, dimension: number): void {
+  if (dimension > 32) memory.copyWithin(to, from, from + dimension);
+  else for (let i = 0; i < dimension; i++) memory[to + i] = memory[from + i]!;
 }

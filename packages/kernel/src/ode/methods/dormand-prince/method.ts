@@ -2,6 +2,7 @@ import type { Assembly } from '../../../program/index.ts';
 import { proportionalIntegral } from '../../controllers/proportional-integral.ts';
 import { type CommonWorkspace, slots } from '../../workspace.ts';
 import type { Counters, Method, Stepper } from '../method.ts';
+import { copyVector } from '../loops.ts';
 import { explicitInterpolant } from './interpolant.ts';
 import { explicitRoutines } from './step.ts';
 import { dormandPrince } from './tableau.ts';
@@ -62,8 +63,8 @@ function stepper(
     },
     interpolate: (theta, out) => interpolant.at(theta, out),
     accept() {
-      memory.copyWithin(common.state, common.next, common.next + n);
-      memory.copyWithin(own.slopes[0]!, last, last + n);
+      copyVector(memory, common.state, common.next, n);
+      copyVector(memory, own.slopes[0]!, last, n);
     },
     stiffness() {
       const change = memory[slots.stateChange]!;

@@ -3,6 +3,7 @@ import { predictive } from '../../controllers/predictive.ts';
 import { factorizeSymbolically } from '../../linear/symbolic.ts';
 import { type CommonWorkspace, slots } from '../../workspace.ts';
 import type { Counters, Method, Stepper } from '../method.ts';
+import { copyVector } from '../loops.ts';
 import { rosenbrockInterpolant } from './interpolant.ts';
 import { rosenbrockRoutines } from './step.ts';
 import { rodas5p } from './tableau.ts';
@@ -82,7 +83,7 @@ function stepper(
     },
     interpolate: (theta, out) => interpolant.at(theta, out),
     accept() {
-      memory.copyWithin(common.state, common.next, common.next + n);
+      copyVector(memory, common.state, common.next, n);
       linear = false;
     },
   };

@@ -1,0 +1,182 @@
+/**
+ * Work against precision on the published stiff problems: the fastest tolerance that reaches a given error at the end
+ * point, cold (first course of a fresh process) and warm; with --peers in turn with SUNDIALS CVODE.
+ */
+import { spawnSync } from 'node:child_process';
+import { fileURLToPath } from 'node:url';
+import { prepareSystem, solve } from '@stillroom/kernel/ode';
+import { evaluateTrajectory } from '@stillroom/kernel/cells';
+import { odeSystem, rateEquations, resolveValues } from '@stillroom/kernel/rates';
+import type { Network } from '@stillroom/shared/network';
+import { networkOf, type PlainNetwork } from '../support/network-of.ts';
+import table from '../reference/dynamics.json' with { type: 'json' };
+import { buildCvode, type CvodeProblem, needSundials } from './peers/cvode.ts';
+
+interface Problem {
+  readonly name: string;
+  readonly network: Network;
+  readonly until: number;
+  /** Reference end point by species; 0 entries are not compared. */
+  readonly end: Readonly<Record<string, number>>;
+}
+
+interface Setting {
+  readonly rtol: number;
+  readonly atol: number;
+}
+
+/** A solver of one problem at any tolerance. */
+interface Solver {
+  state(setting: Setting): ArrayLike<number> | null;
+  /** Microseconds of one solve. */
+  time(setting: Setting, repeats: number): number;
+}
+
+const problems = ['ivp_hires', 'ivp_orego', 'ivp_rober', 'ivp_pollu'].map<Problem>((id) => {
+  const entry = table.entries.find((one) => one.id === id)!;
+  const plain = entry.problem as unknown as PlainNetwork & { t_end: number };
+  return {
+    name: id.slice(4).toUpperCase(),
+    network: networkOf(plain),
+    until: plain.t_end,
+    end: entry.reference as unknown as Record<string, number>,
+  };
+});
+
+const targets = [1e-4, 1e-7];
+const tolerances = Array.from({ length: 23 }, (_, n) => 10 ** (-2 - n / 2));
+const atolFactors = [1, 1e-3, 1e-6, 1e-9];
+const rounds = 7;
+
+const median = (values: readonly number[]): number => values.toSorted((a, b) => a - b)[values.length >> 1]!;
+
+function ours({ network, until }: Problem): Solver {
+  const equations = rateEquations(network, resolveValues(network, {}));
+  const system = odeSystem(equations);
+  const prepared = prepareSystem(system, ['stiff']);
+  const start = Float64Array.from(equations.variables, (species) => network.start.get(species)?.value ?? 0);
+  const end = new Float64Array(start.length);
+  const run = ({ rtol, atol }: Setting): boolean => {
+    const outcome = solve(prepared, {
+      start,
+      until,
+      parameters: equations.parameterValues,
+      times: [until],
+      method: 'stiff',
+      relativeTolerance: rtol,
+      absoluteTolerance: new Float64Array(start.length).fill(atol),
+      record: (_, state) => end.set(prepared.vector(state)),
+    });
+    return outcome.stop === null;
+  };
+  return {
+    state: (setting) => (run(setting) ? end : null),
+    time(setting, repeats) {
+      const begin = performance.now();
+      for (let r = 0; r < repeats; r++) run(setting);
+      return ((performance.now() - begin) / repeats) * 1000;
+    },
+  };
+}
+
+const theirs = (peer: CvodeProblem): Solver => ({
+  state: ({ rtol, atol }) => peer.solve(rtol, atol),
+  time: ({ rtol, atol }, repeats) => peer.time(rtol, atol, repeats),
+});
+
+function error(problem: Problem, state: ArrayLike<number> | null): number {
+  if (state === null) return Infinity;
+  return Math.max(
+    ...problem.network.species.map((name, i) => {
+      const expected = problem.end[name] ?? 0;
+      return expected === 0 ? 0 : Math.abs(state[i]! - expected) / Math.abs(expected);
+    }),
+  );
+}
+
+/** The fastest setting that reaches the target, as do the next two tighter ones, so that luck does not count. */
+function fastest(problem: Problem, solver: Solver, target: number): Setting | null {
+  let best: { setting: Setting; time: number } | null = null;
+  for (const factor of atolFactors) {
+    const grid = tolerances.map((rtol) => ({ rtol, atol: rtol * factor }));
+    const errors = grid.map((setting) => error(problem, solver.state(setting)));
+    const first = errors.findIndex(
+      (_, i) => i + 2 < errors.length && errors.slice(i, i + 3).every((e) => e <= target),
+    );
+    if (first < 0) continue;
+    const setting = grid[first]!;
+    const time = solver.time(setting, 20);
+    if (best === null || time < best.time) best = { setting, time };
+  }
+  return best?.setting ?? null;
+}
+
+function warm(withPeers: boolean): void {
+  console.log(
+    'Warm, time of one solve at the fastest tolerance that reaches the error (median of paired rounds):',
+  );
+  for (const problem of problems) {
+    const solvers = new Map<string, Solver>([['Stillroom', ours(problem)]]);
+    if (withPeers) solvers.set('CVODE', theirs(buildCvode(problem.name, problem.network, problem.until)));
+    for (const target of targets) {
+      const chosen = [...solvers].map(([name, solver]) => ({
+        name,
+        solver,
+        setting: fastest(problem, solver, target),
+      }));
+      const times = new Map(chosen.map(({ name }) => [name, [] as number[]]));
+      for (let round = 0; round < rounds; round++) {
+        for (const { name, solver, setting } of chosen) {
+          if (setting !== null) times.get(name)!.push(solver.time(setting, 50));
+        }
+      }
+      const words = chosen.map(({ name, solver, setting }) => {
+        if (setting === null) return `${name} does not reach it`;
+        const reached = error(problem, solver.state(setting)).toExponential(1);
+        return `${name} ${median(times.get(name)!).toFixed(1)} µs (rtol ${setting.rtol.toExponential(1)}, error ${reached})`;
+      });
+      const [own, peer] = [times.get('Stillroom')!, times.get('CVODE') ?? []];
+      const ratio =
+        peer.length > 0 ? `, ratio ${median(peer.map((time, i) => time / own[i]!)).toFixed(1)}` : '';
+      console.log(`  ${problem.name.padEnd(6)} error ${target}: ${words.join('; ')}${ratio}`);
+    }
+  }
+}
+
+/** The first course of a process, from the network to the result, in milliseconds, and the second. */
+function coldCourse(name: string): void {
+  const { network, until } = problems.find((problem) => problem.name === name)!;
+  const times = [0, 1].map(() => {
+    const begin = performance.now();
+    evaluateTrajectory(network, { network: 'n', until, rtol: 1e-6 });
+    return performance.now() - begin;
+  });
+  console.log(times.map((time) => time.toFixed(2)).join(' '));
+}
+
+function cold(): void {
+  console.log(
+    'Cold, network to result (201 points, rtol 1e-6, method auto) in a fresh process, median of 5:',
+  );
+  const file = fileURLToPath(import.meta.url);
+  for (const { name } of problems) {
+    const runs = Array.from({ length: 5 }, () => {
+      const child = spawnSync(process.execPath, [...process.execArgv, file, `--cold=${name}`], {
+        encoding: 'utf8',
+      });
+      return child.stdout.trim().split(' ').map(Number);
+    });
+    const at = (place: number): string => median(runs.map((times) => times[place]!)).toFixed(1);
+    console.log(`  ${name.padEnd(6)} first ${at(0)} ms, second ${at(1)} ms`);
+  }
+}
+
+const only = process.argv.find((word) => word.startsWith('--cold='));
+if (only !== undefined) {
+  coldCourse(only.slice('--cold='.length));
+} else {
+  const withPeers = process.argv.includes('--peers');
+  if (withPeers) needSundials();
+  cold();
+  warm(withPeers);
+}
