@@ -1,7 +1,7 @@
 import type { ExpressionSyntax } from '../../expression/syntax.ts';
 import { dimensionNames } from '../../units/table.ts';
 import type { Dimension } from '../../units/table.ts';
-import { printUnit, sameDimension } from '../../units/unit.ts';
+import { sameDimension } from '../../units/unit.ts';
 import type { Elaboration } from './elaborate.ts';
 import type { Scope } from './scope.ts';
 
@@ -39,7 +39,7 @@ export class Dimensions {
   printedUnit(name: string): string | null {
     const dimension = this.ofConstant(name);
     if (dimension === null || dimension === 'pure') return null;
-    return printUnit(this.stage.units.unitFor(dimension)) || null;
+    return this.stage.units.unitFor(dimension).printed || null;
   }
 
   of(syntax: ExpressionSyntax, scope: Scope): ValueDimension {

@@ -35,6 +35,7 @@ export class ResultUnits {
   readonly volume: Unit | null;
   private readonly conversions = new Map<string, Conversion>();
   private readonly rateUnits = new Map<string, ReadyUnit | null>();
+  private readonly byDimension = new Map<string, ReadyUnit>();
 
   constructor(tree: NetworkTree) {
     let time: Unit | null = null;
@@ -77,7 +78,7 @@ export class ResultUnits {
     const key = printUnit(unit);
     const known = this.conversions.get(key);
     if (known) return known;
-    const to = readyUnit(this.unitFor(dimensionOf(unit)));
+    const to = this.unitFor(dimensionOf(unit));
     const conversion = { factor: rational.divide(scaleOf(unit), scaleOf(to.unit)), to };
     this.conversions.set(key, conversion);
     return conversion;
@@ -91,7 +92,16 @@ export class ResultUnits {
   }
 
   /** The unit of a dimension made of the result units, and of L, m and the like for what they leave. */
-  unitFor(dimension: Dimension): Unit {
+  unitFor(dimension: Dimension): ReadyUnit {
+    const key = dimension.join();
+    const known = this.byDimension.get(key);
+    if (known) return known;
+    const ready = readyUnit(this.makeUnit(dimension));
+    this.byDimension.set(key, ready);
+    return ready;
+  }
+
+  private makeUnit(dimension: Dimension): Unit {
     const left = [...dimension];
     let target: Unit = [];
     const divideBy = (part: Unit | null, dimension: number) => {

@@ -22,14 +22,12 @@ export interface AmountUse {
 
 /** A value with the unit that its place asks for. */
 interface Demand {
+  /** The rate constant or the amount whose value it is. */
+  readonly of: ConstantUse | AmountUse;
   readonly value: ExpressionSyntax;
   readonly dimension: ValueDimension;
   /** Null where no unit of the text would do. */
   readonly wanted: ReadyUnit | null;
-  /** "k", "the start of A". */
-  readonly subject: () => string;
-  /** "A + B -> C is of order 2". */
-  readonly reason: () => string;
 }
 
 /** Whether the text is in units: any rate constant, start or fixed value has one. */
@@ -58,26 +56,15 @@ function rateDemands(stage: Elaboration, dimensions: Dimensions): Demand[] {
     const name = stage.constants.nameOf(constant);
     const definition = stage.values.definition(name);
     if (!definition) continue;
-    demands.push({
-      value: definition.value,
-      dimension: dimensions.ofConstant(name),
-      wanted: stage.units.rateUnit(orderOf(use.reactant)),
-      subject: () => name,
-      reason: () => `${printUse(use)} is of order ${rational.print(orderOf(use.reactant))}`,
-    });
+    const wanted = stage.units.rateUnit(orderOf(use.reactant));
+    demands.push({ of: use, value: definition.value, dimension: dimensions.ofConstant(name), wanted });
   }
   return demands;
 }
 
 function amountDemands(stage: Elaboration, dimensions: Dimensions, amounts: readonly AmountUse[]): Demand[] {
   const wanted = stage.units.amount && stage.units.convert(stage.units.amount).to;
-  return amounts.map(({ species, value, scope }) => ({
-    value,
-    dimension: dimensions.of(value, scope),
-    wanted,
-    subject: () => `The value of ${species}`,
-    reason: () => `amounts of this text are in ${wanted?.printed ?? 'no unit'}`,
-  }));
+  return amounts.map((of) => ({ of, value: of.value, dimension: dimensions.of(of.value, of.scope), wanted }));
 }
 
 /** The order of a reaction: the sum of the coefficients of its reactants. */
@@ -100,29 +87,26 @@ function printUse({ reactant, product }: ConstantUse): string {
   });
 }
 
-function checkDemand(stage: Elaboration, demand: Demand): void {
-  const { value, dimension, wanted, subject, reason } = demand;
+function checkDemand(stage: Elaboration, { of, value, dimension, wanted }: Demand): void {
   if (dimension === null) return;
+  if (wanted && dimension !== 'pure' && sameDimension(dimension, wanted.dimension)) return;
+  const isRate = 'constant' in of;
+  const subject = isRate ? stage.constants.nameOf(of.constant) : `The value of ${of.species}`;
   const wantedText = wanted?.printed ?? null;
+  const repairs = repairOf(value, wantedText);
   if (dimension === 'pure') {
     const example = wantedText ? `, such as ${wantedText}` : '';
-    stage.complaints.error(
-      value,
-      `${subject()} has no unit, but other values of this text have.`,
-      `Give it one${example}.`,
-      repairOf(value, wantedText),
-    );
+    const message = `${subject} has no unit, but other values of this text have.`;
+    stage.complaints.error(value, message, `Give it one${example}.`, repairs);
     return;
   }
-  if (wanted && sameDimension(dimension, wanted.dimension)) return;
-  const given = printUnit(unitOfValue(value) ?? stage.units.unitFor(dimension)) || 'no unit';
+  const unit = unitOfValue(value);
+  const given = (unit ? printUnit(unit) : stage.units.unitFor(dimension).printed) || 'no unit';
+  const reason = isRate
+    ? `${printUse(of)} is of order ${rational.print(orderOf(of.reactant))}`
+    : `amounts of this text are in ${wantedText ?? 'no unit'}`;
   const need = wantedText ? `needs ${wantedText}` : 'needs a unit that this text has no amount for';
-  stage.complaints.error(
-    value,
-    `${subject()} is in ${given}, but ${reason()} and ${need}.`,
-    null,
-    repairOf(value, wantedText),
-  );
+  stage.complaints.error(value, `${subject} is in ${given}, but ${reason} and ${need}.`, null, repairs);
 }
 
 function unitOfValue(value: ExpressionSyntax): Unit | null {
