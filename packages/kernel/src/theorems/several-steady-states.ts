@@ -24,7 +24,12 @@ export const severalSteadyStates: Theorem = {
     const proof = uniquenessProof(context);
     if (proof !== null) return excluded(proof.reason);
     const rates = massAction(context);
-    if (rates.holds !== true) return open([rates], 'Undecided: the search works with mass action only.');
+    if (rates.holds !== true) {
+      return open(
+        [notFound],
+        'Undecided: no theorem excludes several positive steady states, and the search for them knows mass action only.',
+      );
+    }
     const given = forGivenConstants(context);
     if (given !== null) return shown(context, rates, given, 'these constants and start');
     const found = constructed(context) ?? (context.dense ? searchPair(context) : null);

@@ -1,16 +1,7 @@
 import { exactValue } from '@stillroom/shared/expression';
 import type { Expression } from '@stillroom/shared/expression';
 import type { Rational } from '../../exact/index.ts';
-import {
-  compare,
-  divide,
-  isZero,
-  ONE,
-  rational,
-  sign,
-  subtract as subtractRational,
-  ZERO,
-} from '../../exact/index.ts';
+import { compare, divide, ONE, rational, sign, ZERO } from '../../exact/index.ts';
 import type { Polynomial } from '../polynomials/polynomial.ts';
 import {
   add,
@@ -51,7 +42,8 @@ export function weightGrowth(weight: Expression, names: ExactNames): WeightGrowt
   if (order < 0) return { kind: 'vanishing' };
   const limit = divide(above.at(-1)!, below.at(-1)!);
   const rest = subtract(above, scale(below, limit));
-  const slope = degree(rest) === degree(below) - 1 ? divide(rest.at(-1)!, below.at(-1)!) : ZERO;
+  const slope =
+    rest.length > 0 && degree(rest) === degree(below) - 1 ? divide(rest.at(-1)!, below.at(-1)!) : ZERO;
   return { kind: 'level', limit, slope };
 }
 
@@ -72,14 +64,8 @@ export function isSummable(
   }
   const order = compare(c.exact, growth.limit);
   if (order !== 0) return order < 0;
-  const exponent = compare(divide(growth.slope, growth.limit), ONE);
-  return exponent > 0
-    ? true
-    : exponent < 0
-      ? false
-      : isZero(subtractRational(growth.slope, growth.limit))
-        ? false
-        : null;
+  // Equal to the first order; an exponent of exactly 1 diverges as well (the test of Gauss).
+  return compare(divide(growth.slope, growth.limit), ONE) > 0;
 }
 
 function fractionOf(expression: Expression, names: ExactNames): Fraction | null {
