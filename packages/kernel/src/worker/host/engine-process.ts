@@ -18,8 +18,14 @@ export interface EngineRunOptions {
   readonly signal?: AbortSignal;
 }
 
-/** Milliseconds that a run is given to leave what it has, after which the process is killed. */
-const grace = { script: 30, other: 400 } as const;
+/**
+ * Milliseconds that a run is given to leave what it has, after which the process is killed. A script at its deadline gets
+ * the least: most scripts that overrun never look up.
+ */
+const grace: Readonly<Record<StopReason, { readonly script: number; readonly other: number }>> = {
+  deadline: { script: 30, other: 400 },
+  stop: { script: 200, other: 1000 },
+};
 /** Milliseconds within which a process has to be ready. */
 const startLimit = 20_000;
 /** Characters of standard error that are kept, to tell a lack of memory from other ends. */
@@ -112,17 +118,19 @@ export class EngineProcess {
     if (!this.usable) return Promise.resolve(endedOutcome('crash', options.deadline));
     return new Promise((resolve) => {
       const run = ++this.runs;
-      const patience = job.kind === 'script' ? grace.script : grace.other;
       let killing: NodeJS.Timeout | undefined;
       const end = (reason: StopReason) => {
         if (this.current?.run !== run || this.current.ending !== null) return;
         this.current.ending = reason;
         this.orderStop(reason, run);
-        killing = setTimeout(() => {
-          // A killed process computes no more, however long the system takes to clear it away.
-          this.kill();
-          this.endCurrent(reason);
-        }, patience);
+        killing = setTimeout(
+          () => {
+            // A killed process computes no more, however long the system takes to clear it away.
+            this.kill();
+            this.endCurrent(reason);
+          },
+          grace[reason][job.kind === 'script' ? 'script' : 'other'],
+        );
       };
       const stop = () => end('stop');
       const timer = setTimeout(() => end('deadline'), options.deadline * 1000);
