@@ -40,7 +40,7 @@ async function run(signal) {
   try {
     migrateDatabase(database.env);
     say('Starting the server …');
-    const env = { DEMO: '1', ...serverEnvironment(database.env), HOST: host, PORT: String(port) };
+    const env = { DEMO: usualDemo(), ...serverEnvironment(database.env), HOST: host, PORT: String(port) };
     const server = await startServerProcess(env);
     runningNote.write({ pid: process.pid, port: server.port });
     welcome(server);
@@ -66,6 +66,11 @@ async function needPort() {
     throw new Complaint(`Port ${port} on ${host} cannot be used (${code}); choose another one with PORT=…`);
 }
 
+/** Accounts whose passwords everybody knows are for this machine alone, unless DEMO says otherwise. */
+function usualDemo() {
+  return ['127.0.0.1', '::1', 'localhost'].includes(host) && !process.env.PUBLIC_URL ? '1' : '0';
+}
+
 /** Another start has the lock: it runs, or is about to. */
 async function tellWhereItRuns() {
   for (let waited = 0; waited < 90; waited += 1) {
@@ -79,18 +84,25 @@ async function tellWhereItRuns() {
 }
 
 function welcome({ port: at, demo }) {
-  tell();
-  tell(`  Stillroom is ready at ${address(at)}`);
-  if (demo !== null) {
-    tell();
-    tell('  Demo accounts:');
-    for (const { role, email, password } of demo.accounts)
-      tell(`    ${role.padEnd(9)} ${email.padEnd(34)} ${password}`);
-    if (demo.review !== null) tell(`    ${'reviewer'.padEnd(9)} ${address(at)}${demo.review}`);
-  }
-  tell();
-  tell('  Ctrl-C stops everything.');
-  tell();
+  const lines = [
+    '',
+    `Stillroom is ready at ${address(at)}`,
+    '',
+    ...(demo === null
+      ? ['Its first operator is made in another terminal: npm run operator -- name@place.org', '']
+      : [...demoLines(demo, at), '']),
+    'Ctrl-C stops everything.',
+    '',
+  ];
+  for (const line of lines) tell(line === '' ? '' : `  ${line}`);
+}
+
+function demoLines({ accounts, review }, at) {
+  const lines = accounts.map(
+    ({ role, email, password }) => `  ${role.padEnd(9)} ${email.padEnd(34)} ${password}`,
+  );
+  if (review !== null) lines.push(`  ${'reviewer'.padEnd(9)} ${address(at)}${review}`);
+  return ['Demo accounts:', ...lines];
 }
 
 function address(at) {

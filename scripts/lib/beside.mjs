@@ -9,7 +9,7 @@ import { Complaint, say } from './words.mjs';
 /** Runs one more process of a running installation until a signal. */
 export async function runBeside(settings, verb) {
   needNode();
-  const env = { DEMO: '1', ...serverEnvironment(joinDatabase()), ...settings };
+  const env = { ...serverEnvironment(joinDatabase()), ...settings };
   needNpmPackages();
   buildStale(['server', 'worker', ...(settings.PROCESS === 'server' ? ['client'] : [])]);
   const signal = stopSignal();

@@ -2,6 +2,7 @@ import { randomBytes } from 'node:crypto';
 import { chmodSync, chownSync, existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { canEnter, databaseAccount } from './account.mjs';
+import { stateFolder } from './place.mjs';
 import { clearStalePid, readPostmaster } from './postmaster.mjs';
 import { freePort } from './port.mjs';
 import { runQuietly, tail } from './run.mjs';
@@ -18,13 +19,12 @@ const application = 'stillroom_app';
 /**
  * Makes the cluster where there is none, starts it where it does not run. The caller holds the lock of the folder.
  * @param {string} home folder for the cluster and its secrets
- * @param {{ programs: string, fallback: string, settings?: string[] }} options `programs`: PostgreSQL's; `fallback`: a
- *   folder for the case that the database account cannot enter `home`.
+ * @param {{ programs: string, settings?: string[] }} options `programs`: the folder of PostgreSQL's
  * @returns {Promise<Cluster>}
  */
-export async function startCluster(home, { programs, fallback, settings = [] }) {
+export async function startCluster(home, { programs, settings = [] }) {
   const account = databaseAccount();
-  const place = choosePlace(home, fallback, account);
+  const place = choosePlace(home, account);
   const folder = join(place, 'postgres');
   const secrets = readSecrets(home);
   if (!existsSync(join(folder, 'made'))) {
@@ -61,8 +61,9 @@ export function needDatabase(cluster, programs, name) {
   if (known.trim() !== '1') query(cluster, programs, `create database "${name}"`);
 }
 
-function choosePlace(home, fallback, account) {
+function choosePlace(home, account) {
   if (canEnter(account, home)) return home;
+  const fallback = stateFolder(home);
   mkdirSync(fallback, { recursive: true, mode: 0o755 });
   if (!existsSync(join(fallback, 'postgres'))) {
     say(`The database account cannot enter ${home}; the cluster is kept in ${fallback}.`);

@@ -1,16 +1,11 @@
-import { createHash } from 'node:crypto';
 import { existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { addresses, needDatabase, startCluster, stopCluster } from './cluster.mjs';
 import { needPostgres } from './debian.mjs';
-import { dataPath, root } from './place.mjs';
+import { dataPath } from './place.mjs';
 import { readPostmaster } from './postmaster.mjs';
 import { runQuietly, tail } from './run.mjs';
 import { Complaint, say } from './words.mjs';
-
-/** The system's own folder for what programs keep, where the database account cannot enter ours. */
-const stateFolder = (name) =>
-  join('/var/lib/stillroom', createHash('sha256').update(root).digest('hex').slice(0, 12), name);
 
 /**
  * The database of this installation, started: our own cluster, or the one DATABASE_URL names.
@@ -22,7 +17,7 @@ export async function openDatabase() {
     return { env: {}, programs: null, stop() {} };
   }
   const programs = needPostgres();
-  const cluster = await startCluster(dataPath('cluster'), { programs, fallback: stateFolder('cluster') });
+  const cluster = await startCluster(dataPath('cluster'), { programs });
   needDatabase(cluster, programs, 'stillroom');
   const { owner, application } = addresses(cluster, 'stillroom');
   writeFileSync(noteFile(), JSON.stringify({ folder: cluster.folder }), { mode: 0o600 });

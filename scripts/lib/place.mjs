@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { mkdirSync } from 'node:fs';
 import { dirname, join } from 'node:path';
 import { fileURLToPath } from 'node:url';
@@ -13,4 +14,9 @@ export function dataPath(...parts) {
   const path = join(dataFolder, ...parts);
   mkdirSync(path, { recursive: true });
   return path;
+}
+
+/** The system's own folder for what a program keeps: for what stands in `home` when others may not enter there. */
+export function stateFolder(home) {
+  return join('/var/lib/stillroom', createHash('sha256').update(home).digest('hex').slice(0, 12));
 }

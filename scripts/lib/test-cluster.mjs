@@ -1,9 +1,8 @@
-import { createHash } from 'node:crypto';
 import { join } from 'node:path';
 import { addresses, startCluster, stopCluster } from './cluster.mjs';
 import { needPostgres } from './debian.mjs';
 import { takeLock } from './lock.mjs';
-import { dataPath, root } from './place.mjs';
+import { dataPath } from './place.mjs';
 import { Complaint } from './words.mjs';
 
 /** Data of tests may be lost with the machine: no waiting for the disk. */
@@ -21,13 +20,8 @@ export async function useTestCluster() {
   if (starting === null)
     throw new Complaint('The cluster for tests is being started by somebody else, for too long.');
   const use = await takeLock(join(home, 'use.lock'), { shared: true, wait: 90 });
-  const fallback = join(
-    '/var/lib/stillroom',
-    createHash('sha256').update(root).digest('hex').slice(0, 12),
-    'test',
-  );
   try {
-    const cluster = await startCluster(home, { programs, fallback, settings });
+    const cluster = await startCluster(home, { programs, settings });
     return { ...addresses(cluster, 'postgres'), release: () => leave(use, home, cluster.folder, programs) };
   } finally {
     await starting.release();

@@ -4,6 +4,7 @@ import { PersonEntity } from './entities/person.ts';
 export { createAuth } from './module.ts';
 export type { AuthModule, Caller } from './module.ts';
 export { createPerson } from './commands/create-person.ts';
+export { makeOperator } from './commands/make-operator.ts';
 export { PersonEntity } from './entities/person.ts';
 export { findPeople, findPerson, findPersonByEmail } from './people.ts';
 export { presentMe, presentPerson } from './person.presenter.ts';
