@@ -156,6 +156,11 @@ describe('complaints', () => {
     ['[i = 1..L] X[i] -> 0', /L has no whole number/],
     ['A -> A[1', /\] or another index/],
     ['A -> B | let = 3', /let is a word/],
+    ['A -> B | k = 2*A', /A changes in time/],
+    ['A -> B\nvolume V = 2*A', /A changes in time/],
+    ['A -> B | k\nvolume V = k', /V needs a value/],
+    ['A -> B | k = 1/2 /h', /h is not known/],
+    ['A -> B\nlet b = 2*A\nB -> A | b', /b changes in time/],
     ['A -> B | k = 2 /s\nB + C -> A | k', /k is in \/s, but B \+ C -> A is of order 2/],
   ])('%s is refused with %s', (text, message) => {
     const { network, complaints } = readNetwork(text);
@@ -164,7 +169,9 @@ describe('complaints', () => {
   });
 
   test('a name in a line with an error is not called unknown', () => {
-    const { complaints } = readNetwork('A => B\nstart B = 3');
-    expect(complaints).toHaveLength(1);
+    expect(readNetwork('A => B\nstart B = 3').complaints).toHaveLength(1);
+    expect(readNetwork('let L = (3\nlet q =\n[i = 1..L] X[i] -> 0 | law = q*X[i]').complaints).toHaveLength(
+      2,
+    );
   });
 });

@@ -63,7 +63,8 @@ export class Complaints {
   /** Notes a failure; anything else that was thrown is a fault of ours and goes on its way. */
   failure(thrown: unknown): void {
     if (!(thrown instanceof Failure)) throw thrown;
-    this.error(thrown, thrown.message, thrown.hint, thrown.repairs);
+    if (thrown.silent) this.errors += 1;
+    else this.error(thrown, thrown.message, thrown.hint, thrown.repairs);
   }
 
   /** In order of position; of more than 500 the first 500. */

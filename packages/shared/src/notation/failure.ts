@@ -4,6 +4,8 @@ import type { Repair } from './complaint.ts';
 export interface FailureDetail {
   readonly hint?: string | null;
   readonly repairs?: readonly Repair[];
+  /** Follows from another error that is told already, and is itself not told. */
+  readonly silent?: boolean;
 }
 
 /** Ends the reading of one part of the text (an item, a column, a statement); caught where that part began. */
@@ -12,6 +14,7 @@ export class Failure extends Error {
   readonly to: number;
   readonly hint: string | null;
   readonly repairs: readonly Repair[];
+  readonly silent: boolean;
 
   constructor(from: number, to: number, message: string, detail: FailureDetail = {}) {
     super(message);
@@ -19,6 +22,7 @@ export class Failure extends Error {
     this.to = to;
     this.hint = detail.hint ?? null;
     this.repairs = detail.repairs ?? [];
+    this.silent = detail.silent ?? false;
   }
 }
 

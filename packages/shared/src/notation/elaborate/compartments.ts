@@ -6,8 +6,9 @@ import { nearest } from '../nearest.ts';
 import { compileFamily } from './families.ts';
 import type { Elaboration } from './elaborate.ts';
 import { memberScope } from './scope.ts';
-import { complainUnknownSpecies } from './statements.ts';
+import { refuseUnknownSpecies } from './statements.ts';
 
+const noNames: ReadonlyMap<string, unknown> = new Map();
 const litre = [{ symbol: 'L', power: 1 }];
 
 /** The volumes of a text with the species that `in` places in them; the first holds the rest. */
@@ -41,6 +42,11 @@ function readVolume(
     complaints.error(target, 'A volume has a name without index.');
     return null;
   }
+  const moving = stage.declarations.movingName(value, noNames);
+  if (moving !== null) {
+    complaints.error(value, `${moving} changes in time and cannot be part of a volume.`);
+    return null;
+  }
   const volume = stage.values.of(target.name);
   const isMeasured = value.kind === 'measured';
   if (isMeasured && !sameDimension(dimensionOf(value.unit), dimensionOf(litre))) {
@@ -52,7 +58,10 @@ function readVolume(
     return null;
   }
   if (volume && volume.value <= 0) complaints.error(value, 'A volume must be positive.');
-  if (!volume) return null;
+  if (!volume) {
+    complaints.error(value, `${target.name} needs a value: what it draws on has none.`);
+    return null;
+  }
   const unit = isMeasured ? stage.units.convert(value.unit).to.printed : null;
   return { name: target.name, volume, unit };
 }
@@ -89,10 +98,7 @@ function placeItem(stage: Elaboration, item: PlacedSyntax, own: Set<number>, eve
   family.forEach((values) => {
     const indices = stage.resolver.indicesOf(item.target.indices, memberScope(family.slots, values));
     const species = stage.species.find(item.target.name, indices);
-    if (species < 0) {
-      complainUnknownSpecies(stage, item, indices);
-      return;
-    }
+    if (species < 0) refuseUnknownSpecies(stage, item, indices);
     if (everywhere.has(species)) {
       throw new Failure(item.from, item.to, `${stage.species.nameOf(species)} is placed twice.`);
     }

@@ -55,6 +55,17 @@ export class Declarations {
       .map(([name]) => name);
   }
 
+  /** A name in a value that changes in time: a species, an output or `t`; null where all are constants. */
+  movingName(value: ExpressionSyntax, indices: ReadonlyMap<string, unknown>): string | null {
+    let found: string | null = null;
+    walkSyntax(value, (part) => {
+      if (found !== null || part.kind !== 'name' || indices.has(part.name)) return;
+      const kind = this.kindOf(part.name);
+      if (part.name === 't' || kind === 'species' || kind === 'output') found = part.name;
+    });
+    return found;
+  }
+
   private declareLine(line: LineSyntax): void {
     switch (line.kind) {
       case 'row':

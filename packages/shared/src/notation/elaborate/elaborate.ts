@@ -67,7 +67,7 @@ function prepare(tree: NetworkTree, complaints: Complaints): Elaboration {
   const constants = new NameTable();
   const outputs = new NameTable();
   const units = new ResultUnits(tree);
-  const integers = integerLets(declarations.plainLets);
+  const integers = integerLets(declarations.plainLets, declarations.inBrokenLines);
   const resolver = new Resolver(
     declarations,
     { species, constant: constants, output: outputs },

@@ -1,5 +1,5 @@
 import type { ExpressionSyntax } from '../../expression/syntax.ts';
-import { Failure } from '../failure.ts';
+import { Failure, makeIt } from '../failure.ts';
 import { nearest } from '../nearest.ts';
 
 /** Values of the indices in scope, by slot. */
@@ -146,15 +146,18 @@ function compileCall(
   });
 }
 
-/** Reads the integer value of lets on demand, each once. */
-export function integerLets(lets: ReadonlyMap<string, ExpressionSyntax>): IntegerNames {
+/** Reads the integer value of lets on demand, each once. About names in lines with an error nothing is told. */
+export function integerLets(
+  lets: ReadonlyMap<string, ExpressionSyntax>,
+  inBrokenLines: ReadonlySet<string>,
+): IntegerNames {
   const known = new Map<string, number>();
   const open = new Set<string>();
   const names: IntegerNames = (name, at) => {
     const value = known.get(name);
     if (value !== undefined) return value;
     const definition = lets.get(name);
-    if (!definition) throw unknownInteger(name, at, lets.keys());
+    if (!definition) throw unknownInteger(name, at, lets.keys(), inBrokenLines.has(name));
     // A long chain of lets would otherwise overflow the stack.
     if (open.has(name) || open.size > 100)
       throw new Failure(at.from, at.to, `${name} is defined through itself.`);
@@ -176,10 +179,16 @@ export function integerLets(lets: ReadonlyMap<string, ExpressionSyntax>): Intege
   return names;
 }
 
-function unknownInteger(name: string, at: ExpressionSyntax, candidates: Iterable<string>): Failure {
+function unknownInteger(
+  name: string,
+  at: ExpressionSyntax,
+  candidates: Iterable<string>,
+  silent: boolean,
+): Failure {
   const meant = nearest(name, candidates);
   return new Failure(at.from, at.to, `${name} has no whole number as its value.`, {
     hint: `Give it one: let ${name} = 10.`,
-    repairs: meant ? [{ label: `Make it ${meant}`, from: at.from, to: at.to, insert: meant }] : [],
+    repairs: meant ? [makeIt(meant, at.from, at.to)] : [],
+    silent,
   });
 }

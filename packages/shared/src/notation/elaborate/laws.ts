@@ -1,4 +1,5 @@
 import type { Expression } from '../../expression/expression.ts';
+import type { ExpressionSyntax } from '../../expression/syntax.ts';
 import type { RateLaw } from '../../network/network.ts';
 import type { Elaboration } from './elaborate.ts';
 import type { NameTable } from './name-table.ts';
@@ -17,13 +18,17 @@ export function resolveLaws(stage: Elaboration): { laws: RateLaw[]; lawOf: Int32
   const lawOf = new Int32Array(rows.count).fill(-1);
   const laws: RateLaw[] = [];
   const recognise = massActionRecogniser(stage);
+  // A law that fails for one member of a family is told once.
+  const failed = new Set<ExpressionSyntax>();
   for (const job of rows.laws) {
+    if (failed.has(job.syntax)) continue;
     try {
       const expression = resolver.resolve(job.syntax, job.scope);
       lawOf[job.reaction] = laws.length;
       laws.push({ expression, net: job.net, massAction: job.net ? null : recognise(job, expression) });
     } catch (thrown) {
       complaints.failure(thrown);
+      failed.add(job.syntax);
     }
   }
   if (rows.zeroLawReactions.length > 0) {

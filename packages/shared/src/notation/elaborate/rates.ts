@@ -145,6 +145,17 @@ export class RateReader {
     const product = place && row.sides[place.to];
     if (reactant && product) this.uses.push({ constant, reactant, product, at });
     if (!value) return;
+    const moving = this.parts.declarations.movingName(value, family.slots);
+    if (moving !== null) {
+      throw new Failure(
+        value.from,
+        value.to,
+        `${moving} changes in time and cannot be part of a rate constant.`,
+        {
+          hint: 'Write law = … for a rate that is not mass action.',
+        },
+      );
+    }
     const scope = values.length > 0 ? memberScope(family.slots, values, valueScope) : valueScope;
     this.parts.values.define(this.parts.constants.nameOf(constant), { value, scope, at, line: row.line });
   }

@@ -3,6 +3,7 @@ import type { Rational } from '../../network/network.ts';
 import type { Expression } from '../../expression/expression.ts';
 import type { ExpressionSyntax, MeasuredSyntax, NameSyntax } from '../../expression/syntax.ts';
 import type { Unit } from '../../units/unit.ts';
+import { findSymbol } from '../../units/table.ts';
 import { unitOf } from '../../units/unit.ts';
 import { Failure, makeIt } from '../failure.ts';
 import { nearest } from '../nearest.ts';
@@ -99,15 +100,14 @@ export class Resolver {
     return { unit: unitOf(syntax.unit.filter((factor) => !divisors.includes(factor))), divisors };
   }
 
-  /** The failure of a name that stands for nothing. */
-  unknownName(at: NameSyntax, kind?: NameKind): Failure {
-    const meant = nearest(at.name, this.declarations.all(kind));
-    const { from, name } = at;
-    const hint = kind === 'species' ? `No row has ${name}.` : `Give it a value: let ${name} = 1.`;
-    return new Failure(from, at.to, `${name} is not known.`, {
-      hint,
-      repairs: meant ? [makeIt(meant, from, from + name.length)] : [],
-    });
+  private unknownName({ name, from, to }: NameSyntax): Failure {
+    const meant = nearest(name, this.declarations.all());
+    const hint = findSymbol(name)
+      ? `If ${name} is a unit: it stands after a number or a closing bracket, as in (1/2) /${name}.`
+      : `Give it a value: let ${name} = 1.`;
+    const repairs = meant ? [makeIt(meant, from, from + name.length)] : [];
+    const silent = this.declarations.inBrokenLines.has(name);
+    return new Failure(from, to, `${name} is not known.`, { hint, repairs, silent });
   }
 
   private integer(syntax: ExpressionSyntax, scope: Scope): number {

@@ -44,6 +44,7 @@ class StatementReader {
   readonly rateRules = new Map<number, Expression>();
   readonly events: NetworkEvent[] = [];
   readonly amounts: AmountUse[] = [];
+  private readonly failed = new Set<AssignmentSyntax>();
   private readonly stage: Elaboration;
 
   constructor(stage: Elaboration) {
@@ -75,11 +76,14 @@ class StatementReader {
     }
   }
 
+  /** The value of an item; null where it fails, which is told once also where the item is a family. */
   resolve(item: AssignmentSyntax, scope: Scope): Expression | null {
+    if (this.failed.has(item)) return null;
     try {
       return this.stage.resolver.resolve(item.value, scope);
     } catch (thrown) {
       this.stage.complaints.failure(thrown);
+      this.failed.add(item);
       return null;
     }
   }
@@ -170,28 +174,29 @@ class StatementReader {
   ): void {
     forEachTarget(this.stage, { items }, (base, indices, item, scope) => {
       const species = this.stage.species.find(base, indices);
-      if (species < 0) complainUnknownSpecies(this.stage, item, indices);
+      if (species < 0) refuseUnknownSpecies(this.stage, item, indices);
       else visit(species, item, scope);
     });
   }
 }
 
-/** Throws Failure for a species that occurs in no row; silent where a line with an error mentions it. */
-export function complainUnknownSpecies(
+/** Throws Failure for a species that occurs in no row; a silent one where a line with an error mentions it. */
+export function refuseUnknownSpecies(
   stage: Elaboration,
   { target }: Pick<AssignmentSyntax, 'target'>,
   indices: readonly number[],
-): void {
+): never {
   const { declarations } = stage;
   const { name, from } = target;
-  if (declarations.inBrokenLines.has(name)) return;
+  const silent = declarations.inBrokenLines.has(name);
   if (declarations.kindOf(name) === 'species') {
     const shown = indices.length > 0 ? `${name}[${indices.join(',')}]` : name;
-    throw new Failure(from, target.to, `${shown} occurs in no row.`);
+    throw new Failure(from, target.to, `${shown} occurs in no row.`, { silent });
   }
   const meant = nearest(name, declarations.all('species'));
   throw new Failure(from, target.to, `No row has a species ${name}.`, {
     hint: meant ? null : `A constant is given by let ${name} = ….`,
     repairs: meant ? [makeIt(meant, from, from + name.length)] : [],
+    silent,
   });
 }
