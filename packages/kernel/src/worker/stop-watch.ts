@@ -1,5 +1,4 @@
 import { readSync } from 'node:fs';
-import { Socket } from 'node:net';
 import { stopPipe, stopReasons } from '@stillroom/shared/protocol';
 import { StopRequested } from '../engine/index.ts';
 
@@ -17,20 +16,10 @@ export class StopWatch {
   private held = 0;
   private run = 0;
   private nextLook = 0;
-  private readonly open: boolean;
 
   constructor() {
-    this.open = StopWatch.makeNonBlocking();
-  }
-
-  /** Wrapping the descriptor in a socket, at rest, is what makes reading from it return at once when it is empty. */
-  private static makeNonBlocking(): boolean {
-    try {
-      new Socket({ fd: stopPipe, readable: true, writable: false }).pause().unref();
-      return true;
-    } catch {
-      return false;
-    }
+    // Taking hold of standard input, at rest, is what makes reading from it return at once when it is empty.
+    process.stdin.pause();
   }
 
   begin(run: number): void {
@@ -41,7 +30,7 @@ export class StopWatch {
   /** @throws StopRequested where the present run is to end */
   check(): void {
     const now = performance.now();
-    if (!this.open || now < this.nextLook) return;
+    if (now < this.nextLook) return;
     this.nextLook = now + lookEvery;
     const reason = this.readOrder();
     if (reason !== null) throw new StopRequested(reason);

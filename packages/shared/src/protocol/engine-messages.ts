@@ -25,10 +25,10 @@ export type EngineReport =
     };
 
 /**
- * A run is asked to end by one byte on this inherited pipe, since a computing process reads no messages: at the next
+ * A run is asked to end by one byte on this pipe, standard input, since a computing process reads no messages: at the next
  * checkpoint it leaves what it has. The byte says why; it counts for the run whose number follows as four bytes,
  * little-endian.
  */
-export const stopPipe = 4;
+export const stopPipe = 0;
 export const stopReasons = { deadline: 1, stop: 2 } as const;
 export type StopReason = keyof typeof stopReasons;

@@ -81,7 +81,7 @@ export class EngineProcess {
       cwd: command.cwd,
       env: command.env,
       serialization: 'advanced',
-      stdio: ['ignore', 'ignore', 'pipe', 'ipc', 'pipe'],
+      stdio: ['pipe', 'ignore', 'pipe', 'ipc'],
     });
     const engine = new EngineProcess(child);
     await new Promise<void>((resolve, reject) => {
