@@ -156,6 +156,8 @@ describe('complaints', () => {
     ['[i = 1..L] X[i] -> 0', /L has no whole number/],
     ['A -> A[1', /\] or another index/],
     ['A -> B | let = 3', /let is a word/],
+    ['A -> B | k\nlet k = p[1/2]\nlet p[1] = 3', /whole number/],
+    ['A -> B\nstart A = p[1/2]\nlet p[1] = 3 uM', /whole number/],
     ['A -> B | k = 2*A', /A changes in time/],
     ['A -> B\nvolume V = 2*A', /A changes in time/],
     ['A -> B | k\nvolume V = k', /V needs a value/],

@@ -4,9 +4,9 @@ import type { AssignmentsSyntax, PlacedSyntax, PlaceSyntax } from '../ast.ts';
 import { Failure, makeIt } from '../failure.ts';
 import { nearest } from '../nearest.ts';
 import { compileFamily } from './families.ts';
-import type { Elaboration } from './elaborate.ts';
+import type { Elaboration } from './stage.ts';
 import { memberScope } from './scope.ts';
-import { refuseUnknownSpecies } from './statements.ts';
+import { refuseUnknownSpecies } from './unknown-species.ts';
 
 const noNames: ReadonlyMap<string, unknown> = new Map();
 const litre = [{ symbol: 'L', power: 1 }];

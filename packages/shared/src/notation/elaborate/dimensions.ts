@@ -2,7 +2,8 @@ import type { ExpressionSyntax } from '../../expression/syntax.ts';
 import { dimensionNames } from '../../units/table.ts';
 import type { Dimension } from '../../units/table.ts';
 import { sameDimension } from '../../units/unit.ts';
-import type { Elaboration } from './elaborate.ts';
+import { Failure } from '../failure.ts';
+import type { Elaboration } from './stage.ts';
 import type { Scope } from './scope.ts';
 
 /** The dimension of a value; "pure" for a number without unit; null where it is not followed. */
@@ -68,9 +69,16 @@ export class Dimensions {
 
   private ofName(name: string, indices: readonly ExpressionSyntax[] | null, scope: Scope): ValueDimension {
     if (!indices && scope.slots.has(name)) return 'pure';
-    if (this.stage.declarations.kindOf(name) !== 'constant') return null;
-    const number = this.stage.constants.find(name, this.stage.resolver.indicesOf(indices, scope));
-    return number < 0 ? null : this.ofConstant(this.stage.constants.nameOf(number));
+    const { declarations, constants, resolver } = this.stage;
+    if (declarations.kindOf(name) !== 'constant') return null;
+    try {
+      const number = constants.find(name, resolver.indicesOf(indices, scope));
+      return number < 0 ? null : this.ofConstant(constants.nameOf(number));
+    } catch (thrown) {
+      // An index that cannot be had was told when the value was computed.
+      if (thrown instanceof Failure) return null;
+      throw thrown;
+    }
   }
 
   private ofOperation(syntax: ExpressionSyntax & { kind: 'binary' }, scope: Scope): ValueDimension {

@@ -2,38 +2,19 @@ import type { Constant, Network } from '../../network/network.ts';
 import type { AssignmentsSyntax, NetworkTree } from '../ast.ts';
 import type { Complaints } from '../complaints.ts';
 import { Declarations } from './declarations.ts';
-import { compileFamily } from './families.ts';
 import { integerLets } from './integers.ts';
-import type { IntegerNames } from './integers.ts';
 import { resolveLaws } from './laws.ts';
 import { NameTable } from './name-table.ts';
 import { Resolver } from './resolver.ts';
 import { ResultUnits } from './result-units.ts';
 import { RowWriter } from './rows.ts';
-import { memberScope } from './scope.ts';
-import type { Scope } from './scope.ts';
+import { forEachTarget } from './stage.ts';
+import type { Elaboration, OutputJob } from './stage.ts';
 import { elaborateStatements } from './statements.ts';
 import { Dimensions } from './dimensions.ts';
 import { checkRateConstants } from './rate-constants.ts';
 import { checkUnits, unitsOfRates } from './unit-check.ts';
 import { Values } from './values.ts';
-
-/** What the stages of elaboration share. */
-export interface Elaboration {
-  readonly tree: NetworkTree;
-  readonly complaints: Complaints;
-  readonly declarations: Declarations;
-  readonly species: NameTable;
-  readonly constants: NameTable;
-  readonly outputs: NameTable;
-  readonly units: ResultUnits;
-  readonly integers: IntegerNames;
-  readonly resolver: Resolver;
-  readonly values: Values;
-  readonly rows: RowWriter;
-  /** Line of the first use or the value of each constant. */
-  readonly constantLines: number[];
-}
 
 /**
  * Turns a syntax tree into a network: names resolved, families written out, units converted, values computed. Null where
@@ -94,13 +75,6 @@ function prepare(tree: NetworkTree, complaints: Complaints): Elaboration {
   };
 }
 
-/** A `let` of species or time that waits until all names are known. */
-export interface OutputJob {
-  readonly name: string;
-  readonly item: AssignmentsSyntax['items'][number];
-  readonly scope: Scope;
-}
-
 /** Writes out rows and takes down lets, in order of writing, so that names are numbered in order of first appearance. */
 function expandLines(stage: Elaboration): OutputJob[] {
   const outputs: OutputJob[] = [];
@@ -136,25 +110,6 @@ function expandLets(stage: Elaboration, line: AssignmentsSyntax, outputs: Output
       line: line.line,
     });
   });
-}
-
-/** Calls `visit` for each target of a statement, once per member where it has a `for`. */
-export function forEachTarget(
-  stage: Elaboration,
-  line: Pick<AssignmentsSyntax, 'items'>,
-  visit: (base: string, indices: number[], item: AssignmentsSyntax['items'][number], scope: Scope) => void,
-): void {
-  for (const item of line.items) {
-    try {
-      const family = compileFamily(item.family, stage.integers, 1, 'values');
-      family.forEach((values) => {
-        const scope = memberScope(family.slots, values);
-        visit(item.target.name, stage.resolver.indicesOf(item.target.indices, scope), item, scope);
-      });
-    } catch (thrown) {
-      stage.complaints.failure(thrown);
-    }
-  }
 }
 
 function readConstants(stage: Elaboration, dimensions: Dimensions): Constant[] {

@@ -1,7 +1,7 @@
 import type { Expression } from '../../expression/expression.ts';
 import type { ExpressionSyntax } from '../../expression/syntax.ts';
 import type { RateLaw } from '../../network/network.ts';
-import type { Elaboration } from './elaborate.ts';
+import type { Elaboration } from './stage.ts';
 import type { NameTable } from './name-table.ts';
 import type { LawJob } from './rows.ts';
 import { outermost } from './scope.ts';

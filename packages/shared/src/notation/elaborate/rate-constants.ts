@@ -1,5 +1,5 @@
 import type { Constant } from '../../network/network.ts';
-import type { Elaboration } from './elaborate.ts';
+import type { Elaboration } from './stage.ts';
 
 /** Rate constants are not negative; one that is 0 leaves its arrow in the structure, with a warning. */
 export function checkRateConstants(stage: Elaboration, constants: readonly Constant[]): void {

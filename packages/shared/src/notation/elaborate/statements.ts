@@ -2,11 +2,11 @@ import type { Expression } from '../../expression/expression.ts';
 import type { Compartment, Network, NetworkEvent, Quantity } from '../../network/network.ts';
 import type { AssignmentSyntax, EventSyntax, LineSyntax, PlaceSyntax } from '../ast.ts';
 import { nameOfTarget } from '../parse-names.ts';
-import { Failure, makeIt } from '../failure.ts';
-import { nearest } from '../nearest.ts';
+import { Failure } from '../failure.ts';
 import { readCompartments } from './compartments.ts';
-import { forEachTarget } from './elaborate.ts';
-import type { Elaboration, OutputJob } from './elaborate.ts';
+import { forEachTarget } from './stage.ts';
+import type { Elaboration, OutputJob } from './stage.ts';
+import { refuseUnknownSpecies } from './unknown-species.ts';
 import { outermost } from './scope.ts';
 import type { Scope } from './scope.ts';
 import type { AmountUse } from './unit-check.ts';
@@ -178,25 +178,4 @@ class StatementReader {
       else visit(species, item, scope);
     });
   }
-}
-
-/** Throws Failure for a species that occurs in no row; a silent one where a line with an error mentions it. */
-export function refuseUnknownSpecies(
-  stage: Elaboration,
-  { target }: Pick<AssignmentSyntax, 'target'>,
-  indices: readonly number[],
-): never {
-  const { declarations } = stage;
-  const { name, from } = target;
-  const silent = declarations.inBrokenLines.has(name);
-  if (declarations.kindOf(name) === 'species') {
-    const shown = indices.length > 0 ? `${name}[${indices.join(',')}]` : name;
-    throw new Failure(from, target.to, `${shown} occurs in no row.`, { silent });
-  }
-  const meant = nearest(name, declarations.all('species'));
-  throw new Failure(from, target.to, `No row has a species ${name}.`, {
-    hint: meant ? null : `A constant is given by let ${name} = ….`,
-    repairs: meant ? [makeIt(meant, from, from + name.length)] : [],
-    silent,
-  });
 }

@@ -10,7 +10,7 @@ import type { ReadyUnit } from './result-units.ts';
 import type { ConstantUse } from './rates.ts';
 import { printExpression } from '../../expression/print.ts';
 import type { Dimensions, ValueDimension } from './dimensions.ts';
-import type { Elaboration } from './elaborate.ts';
+import type { Elaboration } from './stage.ts';
 import type { Scope } from './scope.ts';
 
 /** A value that must be an amount: a start or a fixed value. */

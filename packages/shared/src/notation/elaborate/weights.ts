@@ -2,7 +2,7 @@ import { evaluate } from '../../expression/evaluate.ts';
 import type { Expression } from '../../expression/expression.ts';
 import { freeNames } from '../../expression/names.ts';
 import type { AssignmentSyntax } from '../ast.ts';
-import type { Elaboration } from './elaborate.ts';
+import type { Elaboration } from './stage.ts';
 
 /** A weight is looked at for these counts; beyond them the cell that counts looks. */
 const COUNTS = 100;
