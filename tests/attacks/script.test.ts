@@ -1,7 +1,7 @@
 import { EngineProcess, findIsolation } from '@stillroom/kernel/worker';
 import type { CellOutcome, ScriptResult } from '@stillroom/shared/cells';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
-import { jobOf } from '../support/cells.ts';
+import { jobOf } from '../support/cell-jobs.ts';
 import { engineFolder } from '../support/engine.ts';
 import { bombs, escapes, stalls } from './script-attempts.ts';
 

@@ -3,7 +3,7 @@ import { fileURLToPath } from 'node:url';
 import { EngineProcess, findIsolation } from '@stillroom/kernel/worker';
 import { createPool, type Pool } from '../../packages/server/src/modules/compute/pool/index.ts';
 import { afterAll, beforeAll, describe, expect, inject, test } from 'vitest';
-import { jobOf } from '../support/cells.ts';
+import { jobOf } from '../support/cell-jobs.ts';
 import '../support/engine.ts';
 
 const probeFolder = fileURLToPath(new URL('probe', import.meta.url));

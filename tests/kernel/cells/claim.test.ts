@@ -2,7 +2,7 @@ import type { ClaimResult } from '@stillroom/shared/cells';
 import { evaluateCell } from '@stillroom/kernel/engine';
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
-import { course, drawn, errorOf, jobOf, resultOf } from '../../support/cells.ts';
+import { course, drawn, errorOf, jobOf, resultOf } from '../../support/cell-jobs.ts';
 
 const structure = {
   counts: { deficiency: 0, species: 4 },

@@ -2,7 +2,7 @@ import type { PlotResult } from '@stillroom/shared/cells';
 import { evaluateCell } from '@stillroom/kernel/engine';
 import { describe, expect, test } from 'vitest';
 import { compile } from 'vega-lite';
-import { course, drawn, errorOf, jobOf, resultOf } from '../../support/cells.ts';
+import { course, drawn, errorOf, jobOf, resultOf } from '../../support/cell-jobs.ts';
 
 const inputs = { run1: drawn('trajectory', course), run2: drawn('trajectory', course) };
 const form = (settings: Record<string, unknown>) => jobOf('plot', '', inputs, settings);

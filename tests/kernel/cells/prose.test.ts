@@ -1,6 +1,6 @@
 import type { ProseResult } from '@stillroom/shared/cells';
 import { describe, expect, test } from 'vitest';
-import { course, drawn, errorOf, jobOf, resultOf } from '../../support/cells.ts';
+import { course, drawn, errorOf, jobOf, resultOf } from '../../support/cell-jobs.ts';
 
 const inputs = {
   run1: drawn('trajectory', course),

@@ -2,7 +2,7 @@ import type { CellJob, TrajectoryResult } from '@stillroom/shared/cells';
 import { type EngineControl, evaluateCell, StopRequested } from '@stillroom/kernel/engine';
 import { digestOf } from '@stillroom/shared/plan';
 import { describe, expect, test } from 'vitest';
-import { drawn, jobOf } from '../../support/cells.ts';
+import { drawn, jobOf } from '../../support/cell-jobs.ts';
 
 const freely: EngineControl = { checkpoint: () => undefined };
 const network = (text: string) => ({ yeast: { ...drawn('network', undefined), text } });

@@ -2,7 +2,7 @@ import { EngineProcess, engineCommand } from '@stillroom/kernel/worker';
 import type { ScriptResult } from '@stillroom/shared/cells';
 import { tmpdir } from 'node:os';
 import { afterEach, describe, expect, test } from 'vitest';
-import { course, drawn, jobOf } from '../../support/cells.ts';
+import { course, drawn, jobOf } from '../../support/cell-jobs.ts';
 import { engineFolder } from '../../support/engine.ts';
 
 const command = engineCommand({ folder: engineFolder, cwd: tmpdir(), confinements: [], heap: 256 });

@@ -1,19 +1,10 @@
 import { spawnSync } from 'node:child_process';
-import {
-  cpSync,
-  existsSync,
-  mkdirSync,
-  mkdtempSync,
-  readFileSync,
-  renameSync,
-  rmSync,
-  chmodSync,
-} from 'node:fs';
+import { existsSync, mkdirSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { createHash } from 'node:crypto';
 import { type EngineCommand, engineCommand, workerFile } from './command.ts';
 import { EngineProcess } from './engine-process.ts';
+import { readableCopy } from './readable-copy.ts';
 
 export interface IsolationOptions {
   /** Folder of the bundled engine. */
@@ -34,6 +25,7 @@ export interface Isolation {
 }
 
 interface Wall {
+  readonly against: 'network' | 'account' | 'memory';
   /** What it keeps out, to be said when it stands, and when it does not. */
   readonly stands: string;
   readonly missing: string;
@@ -48,11 +40,13 @@ function walls(memory: number): readonly Wall[] {
   const root = process.getuid?.() === 0;
   return [
     {
+      against: 'network',
       stands: 'no network',
       missing: 'the network is within reach, since this system lets nobody make a network of their own',
       ways: root ? [['unshare', '-n', '--']] : [['unshare', '-r', '-n', '--']],
     },
     {
+      against: 'account',
       stands: root ? 'an account without rights' : 'no new rights',
       missing: 'the rights of this account',
       ways: root
@@ -60,6 +54,7 @@ function walls(memory: number): readonly Wall[] {
         : [['setpriv', '--no-new-privs']],
     },
     {
+      against: 'memory',
       stands: `at most ${Math.round(memory / 1024 / 1024)} MB each`,
       missing: 'no ceiling on buffers',
       ways: [['prlimit', `--data=${memory}`]],
@@ -80,27 +75,6 @@ function canRead(confinements: readonly (readonly string[])[], folder: string): 
   );
 }
 
-/** Copies the engine to where every account can read it; a copy of the same bytes is used again. */
-function readableCopy(folder: string, stateFolder: string): string {
-  const hash = createHash('sha256')
-    .update(readFileSync(join(folder, workerFile)))
-    .digest('hex')
-    .slice(0, 16);
-  const copy = join(stateFolder, `stillroom-engine-${hash}`);
-  if (existsSync(join(copy, workerFile))) return copy;
-  mkdirSync(stateFolder, { recursive: true });
-  const half = mkdtempSync(`${copy}-`);
-  cpSync(folder, half, { recursive: true });
-  chmodSync(half, 0o755);
-  try {
-    renameSync(half, copy);
-  } catch (error) {
-    rmSync(half, { recursive: true, force: true });
-    if (!existsSync(join(copy, workerFile))) throw error;
-  }
-  return copy;
-}
-
 function emptyFolder(): string {
   const folder = join(tmpdir(), 'stillroom-empty');
   mkdirSync(folder, { recursive: true, mode: 0o755 });
@@ -113,10 +87,12 @@ interface Raised {
   readonly missing: readonly string[];
 }
 
-function raise(all: readonly Wall[]): Raised {
+/** Raises those walls that can be raised here; `without` leaves some out, which then count as missing. */
+function raise(all: readonly Wall[], without: readonly Wall['against'][]): Raised {
   return all.reduce<Raised>(
     ({ confinements, standing, missing }, wall) => {
-      const way = wall.ways.find((one) => works([...confinements.flat(), ...one]));
+      const ways = without.includes(wall.against) ? [] : wall.ways;
+      const way = ways.find((one) => works([...confinements.flat(), ...one]));
       return way === undefined
         ? { confinements, standing, missing: [...missing, wall.missing] }
         : { confinements: [...confinements, way], standing: [...standing, wall.stands], missing };
@@ -133,16 +109,19 @@ function inWords({ standing, missing }: Raised): string {
   return words.replace(/^./u, (first) => first.toUpperCase());
 }
 
-async function starts(command: EngineCommand): Promise<boolean> {
-  try {
-    const engine = await EngineProcess.start(command);
-    engine.kill();
-    await engine.gone;
-    return true;
-  } catch {
-    return false;
-  }
+/** @throws Error with the words of the process where it does not come up */
+async function mustStart(command: EngineCommand): Promise<void> {
+  const engine = await EngineProcess.start(command);
+  engine.kill();
+  await engine.gone;
 }
+
+/** What is given up, step by step, where a process does not start with everything: an account may lack rights it needs. */
+const concessions: readonly (readonly Wall['against'][])[] = [
+  [],
+  ['account'],
+  ['account', 'network', 'memory'],
+];
 
 /**
  * Finds out how engine processes can be confined on this machine, by trying: no network, an account without rights, no
@@ -156,16 +135,21 @@ export async function findIsolation({
   stateFolder = tmpdir(),
   memory,
 }: IsolationOptions): Promise<Isolation> {
+  if (!existsSync(join(folder, workerFile)))
+    throw new Error(`The engine has not been built: ${folder} holds none.`);
   const heap = Math.max(64, Math.floor(memory / 1024 / 1024 / 2));
   const cwd = emptyFolder();
-  const raised = raise(walls(memory));
-  const readable = canRead(raised.confinements, folder) ? folder : readableCopy(folder, stateFolder);
-  const command = engineCommand({ folder: readable, cwd, confinements: raised.confinements, heap });
-  if (await starts(command)) return { command, words: inWords(raised), whole: raised.missing.length === 0 };
-  const bare = raise([]);
-  const weakest = engineCommand({ folder, cwd, confinements: [], heap });
-  const engine = await EngineProcess.start(weakest);
-  engine.kill();
-  const missing = walls(memory).map((wall) => wall.missing);
-  return { command: weakest, words: inWords({ ...bare, missing }), whole: false };
+  let trouble: unknown = null;
+  for (const without of concessions) {
+    const raised = raise(walls(memory), without);
+    try {
+      const readable = canRead(raised.confinements, folder) ? folder : readableCopy(folder, stateFolder);
+      const command = engineCommand({ folder: readable, cwd, confinements: raised.confinements, heap });
+      await mustStart(command);
+      return { command, words: inWords(raised), whole: raised.missing.length === 0 };
+    } catch (error) {
+      trouble = error;
+    }
+  }
+  throw trouble;
 }

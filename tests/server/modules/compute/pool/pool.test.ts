@@ -1,7 +1,7 @@
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { createPool, type Pool } from '../../../../../packages/server/src/modules/compute/pool/index.ts';
 import { Turns } from '../../../../../packages/server/src/modules/compute/pool/turns.ts';
-import { jobOf } from '../../../../support/cells.ts';
+import { jobOf } from '../../../../support/cell-jobs.ts';
 import '../../../../support/engine.ts';
 
 const claim = (n: number) => jobOf('claim', `${n} == ${n}`);
