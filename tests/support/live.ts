@@ -6,13 +6,7 @@ import { type LiveAddress, LiveClient } from './live-client.ts';
 import type { TestServer } from './server.ts';
 import type { Visitor } from './visitor.ts';
 
-/** A cell; what is not said is empty. */
-export const cell = (
-  id: string,
-  kind: CellContent['kind'],
-  text: string,
-  rest: Partial<CellContent> = {},
-): CellContent => ({ id, kind, name: kind === 'prose' ? '' : id, text, settings: {}, held: null, ...rest });
+export { cell } from './cells.ts';
 
 /** A notebook with these cells in a group. @returns its id. */
 export async function buildNotebook(

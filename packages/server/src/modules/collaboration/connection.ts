@@ -72,6 +72,11 @@ export class Connection {
     if (this.#open) this.#line.send(frame);
   }
 
+  /** Says how many of its document frames are committed. */
+  tellKept(): void {
+    this.send(keptFrame(this.#kept));
+  }
+
   /** Takes a frame in turn. */
   receive(bytes: Uint8Array): void {
     if (!this.#open) return;
@@ -164,7 +169,7 @@ export class Connection {
         // Several frames of one batch are acknowledged together.
         queueMicrotask(() => {
           this.#telling = false;
-          this.send(keptFrame(this.#kept));
+          this.tellKept();
         });
       },
       () => this.room.abandon(),

@@ -25,8 +25,11 @@ export interface GatewayOptions {
 
 const address = /^\/live\/([0-9a-f]{8}(?:-[0-9a-f]{4}){3}-[0-9a-f]{12})$/u;
 
-/** How often a line is asked whether it is still there, in milliseconds; no answer until the next time ends it. */
-const heartbeat = 30_000;
+/**
+ * How often a line is asked whether it is still there, in milliseconds; no answer until the next time ends it. The live
+ * client takes half a minute of silence for a lost line, and hears no pings: it is told its count again.
+ */
+const heartbeat = 12_000;
 /** A line that has this much unsent, in bytes, is too slow to follow and comes back for the whole. */
 const backlog = 16 * 1024 * 1024;
 
@@ -152,6 +155,7 @@ export class Gateway {
   }
 
   #beat(): void {
+    for (const connection of this.#sessions.keys()) connection.tellKept();
     for (const line of this.#server.clients) {
       if (!this.#alive.has(line)) {
         line.terminate();

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { IncomingMessage } from 'node:http';
 import type { NoticeTopic } from '@stillroom/shared/protocol';
+import { openConnections } from '../../database/connections.ts';
 import { isSameOrigin } from '../../http/origin.ts';
 import { describeError } from '../../logger.ts';
 import type { ServerModule, Services } from '../../services.ts';
@@ -37,9 +38,15 @@ export function createCollaboration(services: Services, options: CollaborationOp
   const origin = randomUUID();
   const failed = (words: string, error: unknown) => log.error(words, describeError(error));
   const access = new Access((person, notebook) => readRole(database, person, notebook));
+  // One INSERT runs at a time: one connection, and one in reserve while a broken one is being replaced.
+  const connections = openConnections(config.DATABASE_URL, log, {
+    name: 'stillroom log',
+    most: 2,
+    durable: true,
+  });
   const rooms = new RoomStore({
     database,
-    log: new UpdateLog(database, origin),
+    log: new UpdateLog(connections, origin),
     failed,
     ...(options.opened === undefined ? {} : { opened: options.opened }),
   });
@@ -97,6 +104,7 @@ export function createCollaboration(services: Services, options: CollaborationOp
       for (const unlisten of listeners) unlisten();
       gateway.stop();
       await rooms.stop();
+      await connections.end();
     },
   };
 }

@@ -1,6 +1,8 @@
+import { randomUUID } from 'node:crypto';
 import { availableParallelism } from 'node:os';
 import type { CellJob } from '@stillroom/shared/cells';
 import type { TaskList } from 'graphile-worker';
+import { openConnections } from '../../database/connections.ts';
 import { describeError } from '../../logger.ts';
 import type { ServerModule, Services } from '../../services.ts';
 import type { Room, RoomStore } from '../collaboration/index.ts';
@@ -37,21 +39,23 @@ const poolSize = (asked: number | undefined): number => Math.max(2, asked ?? ava
 
 /** Planning, running and keeping: what makes the cells of open notebooks current. */
 export function createCompute(services: Services, options: ComputeOptions): Compute {
-  const { config, database, events, log } = services;
+  const { config, events, log } = services;
   const failed = (words: string, error: unknown) => log.error(words, describeError(error));
-  const results = new ResultStore(database);
-  const queue = new RunQueue(database);
+  const host = `stillroom engine ${randomUUID()}`;
+  const connections = openConnections(config.DATABASE_URL, log, { name: host, most: 10, durable: false });
+  const results = new ResultStore(connections);
+  const queue = new RunQueue(connections);
   const demand = new Demand((digest) => {
     queue.end(digest, 'unwanted').catch((error: unknown) => failed('A run could not be ended.', error));
   });
   const file: NotebookFile = {
     read: async (notebook) => ({
-      group: await readGroup(database, notebook),
-      states: await readStates(database, notebook),
+      group: await readGroup(connections, notebook),
+      states: await readStates(connections, notebook),
     }),
     async write(notebook, content, states) {
-      await keepStates(database, notebook, states);
-      await keepFace(database, notebook, content);
+      await keepStates(connections, notebook, states);
+      await keepFace(connections, notebook, content);
     },
   };
 
@@ -92,7 +96,8 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
     pool === null
       ? null
       : new Runner({
-          databaseUrl: config.DATABASE_URL,
+          connections,
+          host,
           pool,
           size,
           queue,
@@ -129,13 +134,14 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
     async start() {
       await runner?.start();
       // Runs that were under way when the last process ended are taken up again.
-      if (config.PROCESS !== 'worker') (await workingNotebooks(database)).forEach(bringToLife);
+      if (config.PROCESS !== 'worker') (await workingNotebooks(connections)).forEach(bringToLife);
     },
     async stop() {
       for (const unlisten of listeners) unlisten();
       demand.stop();
       await runner?.stop();
       await pool?.close();
+      await connections.end();
     },
   };
 }

@@ -111,10 +111,12 @@ export class RunQueue {
 
   /** Marks a run as begun; false where it was taken out meanwhile. */
   async begin(digest: string, host: string): Promise<boolean> {
-    const [rows] = (await this.#queries.query(
-      'update cell_run set started_at = clock_timestamp(), host = $2 where digest = $1 returning digest',
+    const rows = (await this.#queries.query(
+      `with begun as (
+         update cell_run set started_at = clock_timestamp(), host = $2 where digest = $1 returning digest
+       ) select digest from begun`,
       [digest, host],
-    )) as [unknown[], number];
+    )) as unknown[];
     return rows.length > 0;
   }
 

@@ -1,8 +1,7 @@
-import { randomUUID } from 'node:crypto';
 import type { CellInput, CellJob, CellOutcome } from '@stillroom/shared/cells';
 import { limits } from '@stillroom/shared/protocol';
 import { Logger as QueueLogger, run, type Runner as QueueRunner, type TaskList } from 'graphile-worker';
-import pg from 'pg';
+import type { Connections } from '../../database/connections.ts';
 import { describeError, type Logger } from '../../logger.ts';
 import type { Pool } from './pool/index.ts';
 import { laneOf, lanes, type QueuedJob, queuedJob, type RunOwner, type RunQueue } from './queue.ts';
@@ -14,7 +13,9 @@ const worthSaying = 120;
 const sweeping = 15_000;
 
 export interface RunnerOptions {
-  readonly databaseUrl: string;
+  /** Connections of this process for computing; their name is how others see whether it is still there. */
+  readonly connections: Connections;
+  readonly host: string;
   readonly pool: Pool;
   /** Workers of the pool. */
   readonly size: number;
@@ -30,9 +31,6 @@ export interface RunnerOptions {
 /** Takes runs from the queue and has the pool compute them. */
 export class Runner {
   readonly #options: RunnerOptions;
-  /** Names this process by its connections. */
-  readonly #host = `stillroom engine ${randomUUID()}`;
-  readonly #connections: pg.Pool;
   readonly #running = new Map<string, AbortController>();
   /** Runs taken up past the queue. */
   #taken = 0;
@@ -42,23 +40,14 @@ export class Runner {
 
   constructor(options: RunnerOptions) {
     this.#options = options;
-    this.#connections = new pg.Pool({
-      connectionString: options.databaseUrl,
-      application_name: this.#host,
-      max: 8,
-    });
-    const lost = (error: Error) =>
-      options.log.warn('A connection of the queue was lost.', describeError(error));
-    this.#connections.on('error', lost);
-    this.#connections.on('connect', (client) => client.on('error', lost));
   }
 
   async start(): Promise<void> {
     const { size, queue, pool } = this.#options;
-    const tasks = this.#options.tasks(pool, this.#host);
+    const tasks = this.#options.tasks(pool, this.#options.host);
     const compute = (payload: unknown) => {
       const queued = payload as QueuedJob;
-      return this.#compute(queued, queue.begin(queued.job.digest, this.#host));
+      return this.#compute(queued, queue.begin(queued.job.digest, this.#options.host));
     };
     // One worker always stays free of long runs, so that what is answered at once has its turn.
     const long = Math.max(1, size - 1);
@@ -87,12 +76,11 @@ export class Runner {
     if (this.#sweeper !== null) clearInterval(this.#sweeper);
     for (const controller of this.#running.values()) controller.abort('unwanted');
     await Promise.all(this.#runners.map((runner) => runner.stop()));
-    await this.#connections.end();
   }
 
   #serve(taskList: TaskList, concurrency: number): Promise<QueueRunner> {
     return run({
-      pgPool: this.#connections,
+      pgPool: this.#options.connections.pool,
       taskList,
       concurrency,
       noHandleSignals: true,
@@ -108,7 +96,7 @@ export class Runner {
   take(job: CellJob, owner: RunOwner): boolean {
     if (laneOf(job.kind) !== lanes.quick || this.#taken >= this.#options.size || this.#stopped) return false;
     this.#taken += 1;
-    const recorded = this.#options.queue.record(job, owner, this.#host);
+    const recorded = this.#options.queue.record(job, owner, this.#options.host);
     void this.#compute(
       queuedJob(job, owner.group),
       recorded.then(() => true),
