@@ -1,4 +1,6 @@
 import { rodas5p } from '../../../../packages/kernel/src/ode/methods/rodas5p/tableau.ts';
+import { prepareSystem } from '@stillroom/kernel/ode';
+import { odeSystem, rateEquations, resolveValues } from '@stillroom/kernel/rates';
 import { describe, expect, test } from 'vitest';
 import { fixedStepErrors, observedOrder } from '../../../support/measured-order.ts';
 import { binary, name, networkOf, num } from '../../../support/network-of.ts';
@@ -83,6 +85,29 @@ describe('Rodas5P at work', () => {
     const fine = fixedStepErrors(rational, 'stiff', 20, exact);
     expect(observedOrder(coarse.end, fine.end)).toBeGreaterThan(4.7);
     expect(observedOrder(coarse.inside, fine.inside)).toBeGreaterThan(4.6);
+  });
+
+  test('pivots by size give the step that the fixed order gives', () => {
+    const network = networkOf({
+      reactions: [
+        { from: { A: 1 }, to: { B: 1 }, k: 0.04 },
+        { from: { B: 2 }, to: { B: 1, C: 1 }, k: 3e7 },
+        { from: { B: 1, C: 1 }, to: { A: 1, C: 1 }, k: 1e4 },
+      ],
+    });
+    const equations = rateEquations(network, resolveValues(network, {}));
+    const prepared = prepareSystem(odeSystem(equations), ['stiff']);
+    prepared.setParameters(equations.parameterValues);
+    const { state, next, absoluteTolerance } = prepared.common;
+    prepared.vector(absoluteTolerance).fill(1e-9);
+    const stepper = prepared.stepper('stiff', { rhs: 0, jacobians: 0, factorizations: 0 });
+    prepared.vector(state).set([0.9, 3e-5, 0.1]);
+    stepper.restart();
+    stepper.attempt(0, 0.01);
+    const fixed = prepared.vector(next).slice();
+    prepared.vector(next).fill(0);
+    prepared.assembly.routine('rodas5p.attemptPivoting')();
+    prepared.vector(next).forEach((value, i) => expect(Math.abs(value / fixed[i]! - 1)).toBeLessThan(1e-12));
   });
 
   test('a mode a million times faster than the step dies out (L-stability)', () => {

@@ -1,6 +1,6 @@
 import type { Assembly } from '../../../program/index.ts';
 import { predictive } from '../../controllers/predictive.ts';
-import { factorizeSymbolically } from '../../linear/symbolic.ts';
+import { planElimination } from '../../linear/elimination.ts';
 import { type CommonWorkspace, slots } from '../../workspace.ts';
 import type { Counters, Method, Stepper } from '../method.ts';
 import { copyVector } from '../loops.ts';
@@ -24,10 +24,10 @@ export const rodas5pMethod: Method = {
   errorPower: 5,
   controller: predictive,
   prepare(system, common, layout) {
-    const symbolic = factorizeSymbolically(system.pattern);
-    const own = rosenbrockWorkspace(system, symbolic, layout);
+    const elimination = planElimination(system.pattern);
+    const own = rosenbrockWorkspace(system, elimination, layout);
     return {
-      routines: (memory) => rosenbrockRoutines(system, common, own, symbolic, memory),
+      routines: (memory) => rosenbrockRoutines(system, common, own, elimination, memory),
       stepper: (assembly, counters) => stepper(common, own, assembly, counters),
     };
   },

@@ -1,16 +1,10 @@
 import type { Call, Routine } from '../../../program/index.ts';
-import { pivotingSolver } from '../../linear/pivoting.ts';
-import type { SymbolicFactorization } from '../../linear/symbolic.ts';
-import { tableSolver } from '../../linear/table.ts';
-import { unrolledFactor, unrolledSolve } from '../../linear/unrolled.ts';
+import { type Elimination, eliminationRoutines } from '../../linear/elimination.ts';
 import { timeSlot, type OdeSystem } from '../../problem.ts';
 import { type CommonWorkspace, slots } from '../../workspace.ts';
 import { type Component, forEachComponent, setTime } from '../loops.ts';
 import { rodas5p } from './tableau.ts';
 import type { RosenbrockWorkspace } from './workspace.ts';
-
-/** Factorisations of more multiply-subtract operations than this are driven by tables. */
-const unrolledWork = 4000;
 
 /**
  * The routines of one step. "rodas5p.linearise" fills Jacobian and ∂f/∂t at the state; "rodas5p.attempt" factorises and
@@ -20,11 +14,14 @@ export function rosenbrockRoutines(
   system: OdeSystem,
   common: CommonWorkspace,
   own: RosenbrockWorkspace,
-  symbolic: SymbolicFactorization,
+  elimination: Elimination,
   memory: Float64Array,
 ): Map<string, Routine> {
   const routines = new Map<string, Routine>();
-  for (const [name, routine] of linearAlgebra(system, own, symbolic, memory)) routines.set(name, routine);
+  const places = { shift: slots.shift, growth: slots.growth, factors: own.factors, addend: own.slope };
+  const linearAlgebra = { ...eliminationRoutines(elimination, places, memory) };
+  for (const [name, routine] of Object.entries<Routine>(linearAlgebra))
+    routines.set(`rodas5p.${name}`, routine);
   for (let stage = 0; stage < rodas5p.stages; stage++) {
     routines.set(`rodas5p.time${stage}`, setTime(timeSlot, slots.start, slots.step, rodas5p.times[stage]!));
     const prepare = prepareStage(system, common, own, stage);
@@ -99,70 +96,4 @@ function finish(common: CommonWorkspace, own: RosenbrockWorkspace): (component: 
     component.write(common.next, next);
     component.accumulate(slots.error, graph.multiply(error, error));
   };
-}
-
-function linearAlgebra(
-  system: OdeSystem,
-  own: RosenbrockWorkspace,
-  symbolic: SymbolicFactorization,
-  memory: Float64Array,
-): [string, Routine][] {
-  const { pattern, dimension } = system;
-  const entriesAt = (slot: number): Float64Array => memory.subarray(slot, slot + pattern.columns.length);
-  const vectorAt = (slot: number): Float64Array => memory.subarray(slot, slot + dimension);
-  const sum = new Float64Array(dimension);
-  const withSlope = (past: number): Float64Array => {
-    for (let i = 0; i < dimension; i++) sum[i] = memory[past + i]! + memory[own.slope + i]!;
-    return sum;
-  };
-  const pivoting = pivotingSolver(pattern, symbolic.order);
-  const fallback: [string, Routine][] = [
-    [
-      'rodas5p.factorPivoting',
-      {
-        kind: 'host',
-        run: (entries = 0) => {
-          const regular = pivoting.factor(entriesAt(entries), memory[slots.shift]!);
-          memory[slots.growth] = regular ? 0 : NaN;
-        },
-      },
-    ],
-    [
-      'rodas5p.solvePivoting',
-      {
-        kind: 'host',
-        run: (past = 0, out = 0) => {
-          if (Number.isNaN(memory[slots.growth])) return void vectorAt(out).fill(NaN);
-          pivoting.solve(withSlope(past));
-          vectorAt(out).set(sum);
-        },
-      },
-    ],
-  ];
-  if (symbolic.work <= unrolledWork) {
-    const factor = unrolledFactor(pattern, symbolic, slots.shift, slots.growth);
-    const solve = unrolledSolve(symbolic, own.factors, own.slope);
-    return [
-      ...fallback,
-      ['rodas5p.factor', { kind: 'straight', tapes: [factor] }],
-      ['rodas5p.solve', { kind: 'straight', tapes: [solve] }],
-    ];
-  }
-  const table = tableSolver(pattern, symbolic);
-  return [
-    ...fallback,
-    [
-      'rodas5p.factor',
-      {
-        kind: 'host',
-        run: (entries = 0) => {
-          memory[slots.growth] = table.factor(entriesAt(entries), memory[slots.shift]!);
-        },
-      },
-    ],
-    [
-      'rodas5p.solve',
-      { kind: 'host', run: (past = 0, out = 0) => table.solve(withSlope(past), vectorAt(out)) },
-    ],
-  ];
 }

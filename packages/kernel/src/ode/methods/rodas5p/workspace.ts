@@ -1,5 +1,4 @@
-import { factorLength } from '../../linear/unrolled.ts';
-import type { SymbolicFactorization } from '../../linear/symbolic.ts';
+import type { Elimination } from '../../linear/elimination.ts';
 import type { OdeSystem } from '../../problem.ts';
 import type { Layout } from '../../workspace.ts';
 import { rodas5p } from './tableau.ts';
@@ -18,12 +17,12 @@ export interface RosenbrockWorkspace {
 
 export function rosenbrockWorkspace(
   system: OdeSystem,
-  symbolic: SymbolicFactorization,
+  elimination: Elimination,
   layout: Layout,
 ): RosenbrockWorkspace {
   return {
     timeDerivative: layout.region(system.dimension),
-    factors: layout.region(factorLength(symbolic)),
+    factors: layout.region(elimination.factorLength),
     slope: layout.region(system.dimension),
     past: layout.region(system.dimension),
     stages: Array.from({ length: rodas5p.stages }, () => layout.region(system.dimension)),
