@@ -11,8 +11,8 @@ export interface LinearDrift {
   readonly scope: 'all constants' | 'these constants';
 }
 
-/** Tableau entries above which no function is looked for. */
-const LARGEST = 200_000;
+/** Species times arrows above which no function is looked for. */
+const LARGEST = 60_000;
 
 /**
  * Looks for w ≥ 1 with, in counts, (Qg)(x) = Σ λ_j(x) w·ν_j for g = w·x bounded by c + d g ("bounded growth": reactant
@@ -59,10 +59,14 @@ function solved(
       });
     }
   }
-  // w = 1 + u with u ≥ 0; strict conditions are scaled by the solver's freedom in w.
-  context.species.forEach((_, i) => conditions.push({ terms: [[i, 1n]], relation: '>=', right: 1n }));
-  const outcome = solveLinear({ variables: context.species.length, conditions });
-  return outcome.kind === 'feasible' ? outcome.values : null;
+  // Unknowns u ≥ 0 with w = 1 + u.
+  const moved = conditions.map(({ terms, relation, right }) => ({
+    terms,
+    relation,
+    right: terms.reduce((rest, [, coefficient]) => rest - coefficient, right),
+  }));
+  const outcome = solveLinear({ variables: context.species.length, conditions: moved });
+  return outcome.kind === 'feasible' ? outcome.values.map((value) => value + outcome.denominator) : null;
 }
 
 function arrowsByReactant(context: TheoremContext): Map<number, number[]> {

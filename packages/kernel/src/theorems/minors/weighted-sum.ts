@@ -1,54 +1,75 @@
 import type { TheoremContext } from '../context.ts';
 
-/** Matrices of a network for `weightedSum`. */
+/** A species with its integer coefficient. */
+interface Entry {
+  readonly species: number;
+  readonly amount: number;
+}
+
+/** The matrices of a network for `weightedSum`, reactions without reactant left out. */
 export interface SquareSystem {
   readonly rank: number;
   readonly species: readonly number[];
+  /** Arrows that have a reactant. */
   readonly reactions: readonly number[];
-  /** Conservation laws by rows. */
-  readonly laws: readonly (readonly number[])[];
-  readonly n: readonly (readonly number[])[];
-  readonly b: readonly (readonly number[])[];
+  /** Column of N and row of B of each of them. */
+  readonly changes: readonly (readonly Entry[])[];
+  readonly reactants: readonly (readonly Entry[])[];
+  /** WᵀW by rows, W the conservation laws. */
+  readonly complement: readonly Float64Array[];
 }
 
-/** The matrices of a network, reactions without reactant left out; null where it is too large. */
+/** Species above which determinants in doubles are not worth trusting. */
+const MOST_SPECIES = 120;
+
+/** The matrices of a network; null where it is too large. */
 export function squareSystem(context: TheoremContext): SquareSystem | null {
   const { rank } = context;
-  if (rank === null || !context.dense || context.species.length > 120) return null;
+  if (rank === null || !context.dense || context.species.length > MOST_SPECIES) return null;
   const reactions = context.arrows
     .map((_, arrow) => arrow)
     .filter((arrow) => context.terms(context.arrows[arrow]!.from).length > 0);
+  const entries = (amounts: Iterable<readonly [number, bigint]>): Entry[] =>
+    [...amounts].map(([species, amount]) => ({ species, amount: Number(amount) }));
+  const laws = context.lawBasis.map((law) => law.map(Number));
   return {
     rank,
     species: context.species.map((_, i) => i),
     reactions,
-    laws: context.lawBasis.map((law) => law.map(Number)),
-    n: context.stoichiometricMatrix.entries.map((row) => reactions.map((arrow) => Number(row[arrow]!))),
-    b: reactions.map((arrow) =>
-      context.species.map((_, i) => Number(context.coefficients.scaled(context.arrows[arrow]!.from, i))),
+    changes: reactions.map((arrow) => {
+      const { from, to } = context.arrows[arrow]!;
+      return entries(context.coefficients.change(from, to));
+    }),
+    reactants: reactions.map((arrow) => {
+      const { from } = context.arrows[arrow]!;
+      return entries(
+        context
+          .terms(from)
+          .map(({ species }) => [species, context.coefficients.scaled(from, species)] as const),
+      );
+    }),
+    complement: context.species.map((_, i) =>
+      Float64Array.from(context.species, (_unused, l) =>
+        laws.reduce((sum, law) => sum + law[i]! * law[l]!, 0),
+      ),
     ),
   };
 }
 
 /**
- * The sum over all pairs of κ^J h^I det N[I,J] det B[J,I], up to a positive factor: the determinant of N diag(κ) B diag(h)
- * on im N, here as that of the same matrix plus WᵀW, which is positive definite on the complement and 0 on im N.
+ * The sign of the sum over all pairs of κ^J h^I det N[I,J] det B[J,I]: that of the determinant of N diag(κ) B diag(h) on
+ * im N, here of the same matrix plus WᵀW, which is positive definite on the complement and 0 on im N.
  */
 export function weightedSum(system: SquareSystem, kappa: readonly number[], h: readonly number[]): number {
-  const m = system.species.length;
-  const matrix = Array.from({ length: m }, (_, i) => {
-    const row = new Float64Array(m);
-    system.n[i]!.forEach((coefficient, j) => {
-      const weight = coefficient * kappa[j]!;
-      if (weight === 0) return;
-      const reactants = system.b[j]!;
-      for (let l = 0; l < m; l++) if (reactants[l] !== 0) row[l]! += weight * reactants[l]! * h[l]!;
-    });
-    for (const law of system.laws) {
-      if (law[i] === 0) continue;
-      for (let l = 0; l < m; l++) row[l]! += law[i]! * law[l]!;
+  const matrix = system.complement.map((row) => row.slice());
+  system.changes.forEach((change, j) => {
+    const weight = kappa[j]!;
+    if (weight === 0) return;
+    for (const { species: column, amount } of system.reactants[j]!) {
+      const entry = weight * amount * h[column]!;
+      if (entry === 0) continue;
+      for (const { species: row, amount: step } of change) matrix[row]![column]! += step * entry;
     }
-    return row;
   });
   return signOfDeterminant(matrix);
 }

@@ -18,9 +18,9 @@ export type PatternSearch =
   | { readonly kind: 'open'; readonly nodes: number };
 
 /** Nodes of the search tree times species times arrows that one search may spend; each node solves linear programmes. */
-const WORK = 120_000;
+const WORK = 80_000;
 const MOST_NODES = 400;
-const FEWEST_NODES = 12;
+const FEWEST_NODES = 10;
 
 /**
  * Searches a pattern of signs that makes a network discordant (Shinar, Feinberg 2012, definition 4.1) or, for mass
@@ -28,6 +28,7 @@ const FEWEST_NODES = 12;
  * the equations, open ones branched on, and every node is confirmed or cut by exact linear programmes.
  */
 export function searchPattern(context: TheoremContext, kind: PatternKind): PatternSearch {
+  if (context.species.length * context.arrows.length * FEWEST_NODES > WORK) return { kind: 'open', nodes: 0 };
   const system = signSystem(context);
   const state: SearchState = { context, system, kind, nodes: 0, most: affordableNodes(system), open: false };
   const domains = openDomains(system);
@@ -46,7 +47,7 @@ export function searchPattern(context: TheoremContext, kind: PatternKind): Patte
 }
 
 function affordableNodes({ species, arrows }: SignSystem): number {
-  return Math.max(FEWEST_NODES, Math.min(MOST_NODES, Math.floor(WORK / Math.max(1, species * arrows))));
+  return Math.min(MOST_NODES, Math.floor(WORK / Math.max(1, species * arrows)));
 }
 
 interface SearchState {

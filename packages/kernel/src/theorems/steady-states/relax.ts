@@ -3,7 +3,7 @@ import type { MassActionSystem } from './mass-action-system.ts';
 import { production, productionJacobian, totalsOf } from './mass-action-system.ts';
 
 /** Steps that one descent may take. */
-const STEPS = 120;
+const STEPS = 80;
 const NEWTON_STEPS = 40;
 
 /**

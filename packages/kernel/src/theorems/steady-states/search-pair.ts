@@ -14,7 +14,7 @@ import { exactTotals, shortened, verifyStates } from './verified-states.ts';
 /** Points of the search times species cubed; counted, so that a search always ends at the same place. */
 const WORK = 1_500_000;
 /** Points at which a wrong sign is followed up by looking for the other states. */
-const FOLLOWED = 6;
+const FOLLOWED = 4;
 
 /**
  * Looks for constants with two positive steady states in one class. Any flux v > 0 in the kernel of N and any x > 0 are a
@@ -86,6 +86,8 @@ function followUp(
 
 /** Descents from around each start. */
 const DESCENTS = 10;
+/** States of one class after which no further ones are looked for by descents. */
+const ENOUGH = 4;
 /** Points between two states from which Newton's method looks for an unstable one. */
 const BETWEEN = [0.5, 0.1, 0.9, 0.25, 0.75, 0.02, 0.98, 0.05, 0.95];
 
@@ -107,7 +109,8 @@ function otherStates(
   for (const start of starts) {
     const totals = totalsOf(system, start);
     keep(polish(system, constants, start, totals));
-    for (let k = 0; k < DESCENTS; k++) keep(relax(system, constants, displaced(system, start, k, random)));
+    for (let k = 0; k < DESCENTS && found.length < ENOUGH; k++)
+      keep(relax(system, constants, displaced(system, start, k, random)));
     const stable = [...found];
     stable.forEach((a, i) => {
       for (const b of stable.slice(i + 1)) {
