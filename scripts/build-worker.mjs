@@ -54,6 +54,18 @@ function makeScriptMemory(wasm) {
   if (status !== 0) throw new Error('The memory that scripts begin with could not be made.');
 }
 
+/** Swaps the new build for the old one; another build may do the same at this moment. */
+function putInPlace(attempts = 5) {
+  try {
+    if (existsSync(target)) renameSync(target, old);
+    renameSync(fresh, target);
+  } catch (error) {
+    if (attempts <= 1) throw error;
+    rmSync(old, { recursive: true, force: true });
+    putInPlace(attempts - 1);
+  }
+}
+
 try {
   mkdirSync(join(fresh, 'worker'), { recursive: true });
   await bundle('worker/worker.ts', 'worker');
@@ -63,8 +75,7 @@ try {
   copyFileSync(require.resolve('@jitl/quickjs-wasmfile-release-sync/wasm'), wasm);
   makeScriptMemory(wasm);
   rmSync(join(fresh, 'make'), { recursive: true });
-  if (existsSync(target)) renameSync(target, old);
-  renameSync(fresh, target);
+  putInPlace();
 } finally {
   for (const folder of [fresh, old]) rmSync(folder, { recursive: true, force: true });
 }
