@@ -6,5 +6,5 @@ export type { Outcome, Statistics, StopReason } from './outcome.ts';
 export type { OdeSystem, SparsePattern, SystemFunction } from './problem.ts';
 export { leavesFunction, solve } from './solve.ts';
 export type { InitialValueProblem } from './solve.ts';
-export { prepareSystem } from './solver.ts';
-export type { PreparedSystem } from './solver.ts';
+export { prepareSystem } from './prepared-system.ts';
+export type { PreparedSystem } from './prepared-system.ts';

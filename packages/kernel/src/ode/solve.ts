@@ -4,7 +4,7 @@ import { initialStep } from './initial-step.ts';
 import type { Counters, Stepper } from './methods/method.ts';
 import { type MethodKind, methods } from './methods/registry.ts';
 import type { Outcome, StopReason } from './outcome.ts';
-import type { PreparedSystem } from './solver.ts';
+import type { PreparedSystem } from './prepared-system.ts';
 import { StiffnessWatch } from './stiffness.ts';
 import { slots } from './workspace.ts';
 
@@ -35,8 +35,9 @@ export interface InitialValueProblem {
 const defaultMostSteps = 2_000_000;
 /** Where the explicit method was asked for and is held back by stability, it is given up after so many. */
 const mostStiffSteps = 100_000;
-/** Steps between two calls of the checkpoint. */
+/** Steps between two calls of the checkpoint, for systems of fewer than so many components; larger ones ask every step. */
 const checkpointSteps = 16;
+const largeDimension = 200;
 /** Steps after which "auto" looks at the rates anew. */
 const rateSteps = 8;
 /** A state that grew so much in the later half of the steps counts as growing without bound. */
@@ -59,6 +60,7 @@ class Run {
   private readonly state: Float64Array;
   private readonly between: Float64Array;
   private readonly stiffness = new StiffnessWatch();
+  private readonly checkpointSteps: number;
   private readonly watch: EventWatch | null;
   private steppers = new Map<MethodKind, { stepper: Stepper; controller: Controller }>();
   private kind: MethodKind;
@@ -76,6 +78,7 @@ class Run {
     this.kind = problem.method === 'auto' ? 'nonstiff' : problem.method;
     this.time = problem.startTime ?? 0;
     const { common } = prepared;
+    this.checkpointSteps = common.dimension < largeDimension ? checkpointSteps : 1;
     this.state = prepared.vector(common.state);
     this.between = prepared.vector(common.between);
     this.state.set(problem.start);
@@ -104,7 +107,7 @@ class Run {
     const limit = this.problem.mostSteps ?? (stiff ? mostStiffSteps : defaultMostSteps);
     const tried = this.steps + this.rejected;
     if (tried >= limit) return { kind: 'too many steps', limit, stiff };
-    if (tried % checkpointSteps === 0 && this.problem.checkpoint?.(this.time) === false) {
+    if (tried % this.checkpointSteps === 0 && this.problem.checkpoint?.(this.time) === false) {
       return { kind: 'stopped from outside' };
     }
     return null;
@@ -124,7 +127,7 @@ class Run {
       this.rejected++;
       if (error < Infinity) this.step = controller.reject(h, error);
       else this.step = h * 0.1;
-      if (this.rejected % checkpointSteps === 0) {
+      if (this.rejected % this.checkpointSteps === 0) {
         const stop = this.beforeStep();
         if (stop !== null) return stop;
       }
