@@ -1,7 +1,7 @@
 import { Failure, makeIt } from '../notation/failure.ts';
 import { nearest } from '../notation/nearest.ts';
 import type { Scanner } from '../notation/tokens.ts';
-import { isFunctionName, isKeyword } from '../notation/words.ts';
+import { isFunctionName, isKeyword, reservedReason } from '../notation/words.ts';
 import { commonSymbols, findSymbol } from '../units/table.ts';
 import { FACTOR_LIMIT, POWER_LIMIT, readUnit } from '../units/parse.ts';
 import { functionNames } from './expression.ts';
@@ -57,8 +57,8 @@ export function parseRange(scanner: Scanner): RangeSyntax {
   const from = scanner.from;
   if (scanner.kind !== 'name') throw unexpected(scanner, 'an index such as i = 1..10');
   const name = scanner.word;
-  if (isKeyword(name) || isFunctionName(name))
-    throw new Failure(from, scanner.to, `${name} cannot be an index: it is reserved.`);
+  const reason = reservedReason(name);
+  if (reason !== null) throw new Failure(from, scanner.to, `${reason} and cannot be an index.`);
   scanner.advance();
   if (!scanner.take('=')) throw unexpected(scanner, `= after the index ${name}`);
   const first = parseExpression(scanner, { units: false });

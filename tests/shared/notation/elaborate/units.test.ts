@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import { readNetwork } from '@stillroom/shared/notation';
-import { networkOf, valuesOf } from './reading.ts';
+import { networkOf, valuesOf, warningsOf } from './reading.ts';
 
 const unitsOf = (text: string) =>
   Object.fromEntries(networkOf(text).constants.map(({ name, unit }) => [name, unit]));
@@ -72,6 +72,14 @@ describe('units', () => {
     expect(valuesOf(networkOf('s + A -> s | k = 2 /uM/s\nstart A = 1 uM, s = 1 uM'))).toEqual({ k: 2 });
     const { outputs } = networkOf('s -> 0\nlet inverse = 1/s');
     expect(outputs.map(({ name }) => name)).toEqual(['inverse']);
+    expect(valuesOf(networkOf('let m[s] = 6/s for s = 1..3'))).toEqual({ 'm[1]': 6, 'm[2]': 3, 'm[3]': 2 });
+  });
+
+  test('in a text with units a number and /d is in units, also where d is a name, with a warning', () => {
+    const text = 'A -> B | d = 0.5 /d\nB -> A | a\nlet a = 0.25 /d';
+    expect(valuesOf(networkOf(text))).toEqual({ d: 0.5, a: 0.25 });
+    expect(warningsOf(text)).toEqual(['/d is read as a unit here, though this text has a d.']);
+    expect(valuesOf(networkOf('let d = 2 /d\nlet c = 3 uM'))['d']).toBe(2);
   });
 
   test('volumes', () => {

@@ -3,6 +3,7 @@ import { walkSyntax } from '../../expression/names.ts';
 import type { AssignmentSyntax, LineSyntax, NetworkTree, RowSyntax } from '../ast.ts';
 import type { Complaints } from '../complaints.ts';
 import { endOfName, normalName } from '../tokens.ts';
+import { UnitNames } from './unit-names.ts';
 
 /** What a name without its indices stands for. An output is a `let` of species or time. */
 export type NameKind = 'species' | 'constant' | 'output';
@@ -10,8 +11,6 @@ export type NameKind = 'species' | 'constant' | 'output';
 interface Declaration {
   kind: NameKind;
   readonly line: number;
-  /** Whether a row uses it as a rate constant. */
-  rate: boolean;
 }
 
 const kindNames: Readonly<Record<NameKind, string>> = {
@@ -27,13 +26,18 @@ export class Declarations {
   readonly plainLets = new Map<string, ExpressionSyntax>();
   /** Names that stand in lines with an error: about them nothing is said. */
   readonly inBrokenLines = new Set<string>();
+  readonly unitNames: UnitNames;
   private readonly complaints: Complaints;
 
   constructor(tree: NetworkTree, complaints: Complaints) {
     this.complaints = complaints;
     for (const line of tree.lines) this.declareLine(line);
+    this.unitNames = new UnitNames(tree, (word) => this.names.has(word));
     this.findOutputs(tree);
-    for (const line of tree.lines) if (line.kind === 'row') this.checkIndices(line);
+    for (const line of tree.lines) {
+      if (line.kind === 'row') this.checkIndices(line);
+      this.unitNames.warn(line, complaints);
+    }
   }
 
   kindOf(name: string): NameKind | null {
@@ -42,10 +46,6 @@ export class Declarations {
 
   lineOf(name: string): number {
     return this.names.get(name)?.line ?? 0;
-  }
-
-  isRate(name: string): boolean {
-    return this.names.get(name)?.rate ?? false;
   }
 
   /** All names of a kind, or all. */
@@ -73,7 +73,7 @@ export class Declarations {
           for (const { species } of side.terms) this.declare(species.name, 'species', species, line.line);
         }
         for (const item of line.items) {
-          if (item.kind === 'constant') this.declare(item.name.name, 'constant', item.name, line.line, true);
+          if (item.kind === 'constant') this.declare(item.name.name, 'constant', item.name, line.line);
         }
         return;
       case 'rate':
@@ -98,13 +98,12 @@ export class Declarations {
       this.plainLets.set(target.name, value);
   }
 
-  private declare(name: string, kind: NameKind, at: Span, line: number, rate = false): void {
+  private declare(name: string, kind: NameKind, at: Span, line: number): void {
     const known = this.names.get(name);
     if (!known) {
-      this.names.set(name, { kind, line, rate });
+      this.names.set(name, { kind, line });
       return;
     }
-    known.rate ||= rate;
     if (known.kind === kind) return;
     this.complaints.error(
       at,
@@ -123,9 +122,9 @@ export class Declarations {
         walkSyntax(value, (part) => {
           const used = part.kind === 'name' && !indices.has(part.name) ? part.name : null;
           if (used !== null) append(users, used, target.name);
-          // A unit after `/` may turn out to be a name: `let a = 1/S`.
-          if (part.kind === 'measured')
-            for (const { symbol } of part.unit) append(users, symbol, target.name);
+          if (part.kind !== 'measured') return;
+          const { divisors } = this.unitNames.split(part, noSlots, false);
+          for (const { symbol } of divisors) append(users, symbol, target.name);
         });
       }
     }
@@ -165,6 +164,8 @@ export class Declarations {
     }
   }
 }
+
+const noSlots: ReadonlyMap<string, number> = new Map();
 
 function append(lists: Map<string, string[]>, key: string, value: string): void {
   const list = lists.get(key);

@@ -46,7 +46,7 @@ export class Dimensions {
   of(syntax: ExpressionSyntax, scope: Scope): ValueDimension {
     switch (syntax.kind) {
       case 'measured': {
-        const { unit, divisors } = this.stage.resolver.namesInUnit(syntax, scope);
+        const { unit, divisors } = this.stage.resolver.splitUnit(syntax, scope);
         const own = unit.length > 0 ? this.stage.units.convert(unit).to.dimension : 'pure';
         return divisors.length > 0 ? null : product(this.of(syntax.of, scope), own, 1);
       }

@@ -2,9 +2,7 @@ import { rational } from '../../network/index.ts';
 import type { Rational } from '../../network/network.ts';
 import type { Expression } from '../../expression/expression.ts';
 import type { ExpressionSyntax, MeasuredSyntax, NameSyntax } from '../../expression/syntax.ts';
-import type { Unit } from '../../units/unit.ts';
 import { findSymbol } from '../../units/table.ts';
-import { unitOf } from '../../units/unit.ts';
 import { Failure, makeIt } from '../failure.ts';
 import { nearest } from '../nearest.ts';
 import type { Declarations, NameKind } from './declarations.ts';
@@ -14,6 +12,7 @@ import type { IntegerFunction, IntegerNames } from './integers.ts';
 import type { NameTable } from './name-table.ts';
 import type { ResultUnits } from './result-units.ts';
 import type { Scope } from './scope.ts';
+import type { SplitUnit } from './unit-names.ts';
 
 /** All sums of a text write out at most this many terms. */
 const TERM_LIMIT = 1_000_000;
@@ -92,12 +91,9 @@ export class Resolver {
     return (indices ?? []).map((index) => checkedIndex(this.integer(index, scope), index));
   }
 
-  /** The names that a unit takes from the words after `/`: those that stand for something in this scope. */
-  namesInUnit(syntax: MeasuredSyntax, scope: Scope): { unit: Unit; divisors: Unit } {
-    if (scope.unitsFirst && syntax.of.kind === 'number') return { unit: syntax.unit, divisors: [] };
-    const isName = (symbol: string) => scope.slots.has(symbol) || this.declarations.kindOf(symbol) !== null;
-    const divisors = syntax.unit.filter(({ symbol, power }) => power < 0 && isName(symbol));
-    return { unit: unitOf(syntax.unit.filter((factor) => !divisors.includes(factor))), divisors };
+  /** A unit without the names among its words. */
+  splitUnit(syntax: MeasuredSyntax, scope: Scope): SplitUnit {
+    return this.declarations.unitNames.split(syntax, scope.slots, scope.unitsFirst);
   }
 
   private unknownName({ name, from, to }: NameSyntax): Failure {
@@ -151,7 +147,7 @@ export class Resolver {
   }
 
   private resolveMeasured(syntax: MeasuredSyntax, scope: Scope): Expression {
-    const { unit, divisors } = this.namesInUnit(syntax, scope);
+    const { unit, divisors } = this.splitUnit(syntax, scope);
     let value = this.resolve(syntax.of, scope);
     if (unit.length > 0) value = scaled(value, this.units.convert(unit).factor, syntax);
     for (const { symbol, power } of divisors) {

@@ -1,12 +1,12 @@
 import { rational } from '../../network/index.ts';
 import type { NetworkUnits, Rational } from '../../network/network.ts';
 import { walkSyntax } from '../../expression/names.ts';
-import type { ExpressionSyntax } from '../../expression/syntax.ts';
 import { dimensionNames } from '../../units/table.ts';
 import { dimensionOf, printUnit, scaleOf, unitOf, unitPower, unitProduct } from '../../units/unit.ts';
 import type { Dimension } from '../../units/table.ts';
 import type { Unit } from '../../units/unit.ts';
-import type { LineSyntax, NetworkTree } from '../ast.ts';
+import type { NetworkTree } from '../ast.ts';
+import { valuesOf } from './line-values.ts';
 
 const TIME = dimensionNames.indexOf('time');
 const LENGTH = dimensionNames.indexOf('length');
@@ -122,24 +122,6 @@ export class ResultUnits {
 
 function readyUnit(unit: Unit): ReadyUnit {
   return { unit, dimension: dimensionOf(unit), printed: printUnit(unit) };
-}
-
-function valuesOf(line: LineSyntax): readonly ExpressionSyntax[] {
-  switch (line.kind) {
-    case 'row':
-      return line.items.flatMap((item) => (item.value ? [item.value] : []));
-    case 'start':
-    case 'let':
-    case 'fix':
-    case 'volume':
-    case 'weight':
-    case 'rate':
-      return line.items.map((item) => item.value);
-    case 'event':
-      return [line.when, ...line.set.map((item) => item.value)];
-    default:
-      return [];
-  }
 }
 
 function timeIn(unit: Unit): Unit | null {

@@ -80,7 +80,7 @@ export class Values {
       return { value: finiteNumber(syntax.text, syntax), exact: rational.ofDecimal(syntax.text) };
     }
     if (syntax.kind !== 'measured' || syntax.of.kind !== 'number') return null;
-    const { unit, divisors } = this.resolver.namesInUnit(syntax, scope);
+    const { unit, divisors } = this.resolver.splitUnit(syntax, scope);
     if (divisors.length > 0) return null;
     const value = finiteNumber(syntax.of.text, syntax.of);
     const decimal = rational.ofDecimal(syntax.of.text);
