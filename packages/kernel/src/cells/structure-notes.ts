@@ -25,6 +25,11 @@ export function structureNotes({ network, laws, siphons, consistent, conservativ
   if (consistent === null) {
     notes.push('Whether the network is consistent is undecided: it is too large for the exact test.');
   }
+  if (siphons.siphons.some(({ critical }) => critical === null)) {
+    notes.push(
+      'Whether some of the minimal siphons are critical is undecided: they are too many or too large.',
+    );
+  }
   if (!siphons.complete) {
     notes.push('Not all minimal siphons are listed: the search was ended by its limit.');
   }

@@ -85,6 +85,7 @@ function describe(
     weaklyReversible: structure.weaklyReversible,
     conservationLaws: listLaws(structural, laws?.basis ?? []),
     nonnegativeConservationLaws: nonnegative.map((law) => bySpecies(structural, law)),
+    ...positiveLaw(structure),
     conservative: structure.conservative.holds,
     consistent: structure.consistent,
     siphons: listSiphons(structural, siphons.siphons),
@@ -101,6 +102,13 @@ function describe(
     ...(comparisons.length > 0 ? { comparisons } : {}),
     units: resultUnits(network),
   };
+}
+
+/** Stands for the extreme laws where there are too many to list. */
+function positiveLaw({ network, laws, conservative }: Structure): Pick<StructureResult, 'positiveLaw'> {
+  if (!conservative.holds || laws === null || laws.nonnegativeComplete) return {};
+  const { law } = conservative;
+  return law.indices.length > LONGEST_SET ? {} : { positiveLaw: bySpecies(network, law) };
 }
 
 function lists(structure: Structure): Partial<StructureResult> {

@@ -83,6 +83,9 @@ export function analyse(network: StructuralNetwork, checkpoint: Checkpoint = () 
     classes: classNumbers(linkage, strong, terminal, ranks),
     conservative: laws === null ? { holds: null } : conservative(laws, network.species.length),
     consistent: balanced,
-    siphons: { siphons: judgeSiphons(network, siphons.siphons, laws), complete: siphons.complete },
+    siphons: {
+      siphons: judgeSiphons(network, siphons.siphons, laws, checkpoint),
+      complete: siphons.complete,
+    },
   };
 }

@@ -8,7 +8,7 @@ import { nonnegativeLawsOf } from './nonnegative-laws.ts';
 import { spanningForest } from './spanning-forest.ts';
 
 /** Limits of the enumeration of extreme non-negative laws, in laws and in elementary steps. */
-export const LAW_LIMITS = { rays: 10_000, steps: 30_000_000 } as const;
+export const LAW_LIMITS = { rays: 10_000, steps: 100_000_000 } as const;
 
 /** Linear functions of the species that no reaction changes: the left kernel of N. */
 export interface ConservationLaws {

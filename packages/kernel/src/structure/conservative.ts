@@ -1,10 +1,13 @@
-import type { SparseVector } from '../exact/index.ts';
+import type { LinearCondition, SparseVector } from '../exact/index.ts';
 import { content, solveLinear } from '../exact/index.ts';
 import type { ConservationLaws } from './conservation-laws.ts';
+import type { SpeciesInequality } from './nonnegative-laws.ts';
 import { orientedLaws, speciesInequalities } from './nonnegative-laws.ts';
 
 /** Linear programmes beyond this many entries are not tried. */
-const PROGRAMME_ENTRIES = 400_000;
+const PROGRAMME_ENTRIES = 60_000;
+/** Pivots times entries of one programme. */
+const PROGRAMME_WORK = 2_000_000;
 
 /**
  * Whether some law is positive at every species. `law` is one such; `outside` is a species at which every non-negative
@@ -31,31 +34,47 @@ function firstMissing(laws: readonly SparseVector[], speciesCount: number): numb
   return covered.indexOf(0);
 }
 
-/** Block by block: coefficients c of the laws with Σ c_j law_j ≥ 1 everywhere. */
+/**
+ * Block by block: coefficients c of the laws with Σ c_j law_j > 0 at every species, or weights y ≥ 0 on the species, not
+ * all 0, under which every law sums to 0: then a non-negative law is 0 wherever y is not (Gordan 1873). The programme is
+ * put to the weights, whose tableau has one row per law instead of one per species.
+ */
 function byProgramme(laws: ConservationLaws, speciesCount: number): Conservative {
   const parts: SparseVector[] = [];
   for (const block of laws.blocks) {
     const oriented = orientedLaws(block);
     const inequalities = speciesInequalities(oriented);
-    if (inequalities.length * oriented.length > PROGRAMME_ENTRIES) return { holds: null };
-    const outcome = solveLinear({
-      variables: oriented.length,
-      conditions: inequalities.map(({ terms }) => ({ terms, relation: '>=' as const, right: 1n })),
-    });
+    const entries = inequalities.length * oriented.length;
+    if (entries > PROGRAMME_ENTRIES) return { holds: null };
+    const outcome = solveLinear(
+      { variables: inequalities.length, conditions: weightConditions(inequalities, oriented.length) },
+      Math.ceil(PROGRAMME_WORK / entries),
+    );
     if (outcome.kind === 'unfinished') return { holds: null };
-    if (outcome.kind === 'infeasible') {
-      // Where a multiplier is positive every non-negative law is 0.
-      const zero = outcome.multipliers.findIndex((multiplier) => multiplier > 0n);
+    if (outcome.kind === 'feasible') {
+      const zero = outcome.values.findIndex((weight) => weight > 0n);
       return { holds: false, outside: inequalities[zero]!.species };
     }
-    for (const [j, law] of oriented.entries()) {
-      const coefficient = outcome.values[j]!;
-      if (coefficient !== 0n) {
-        parts.push({ indices: law.indices, values: law.values.map((value) => coefficient * value) });
-      }
-    }
+    oriented.forEach(({ indices, values }, j) => {
+      const coefficient = -outcome.multipliers[j]!;
+      if (coefficient === 0n) return;
+      parts.push({ indices, values: values.map((value) => coefficient * value) });
+    });
   }
   return { holds: true, law: sumOf(parts, speciesCount) };
+}
+
+/** Σ_i y_i law_j(i) = 0 for every law j, Σ y = 1. */
+function weightConditions(inequalities: readonly SpeciesInequality[], lawCount: number): LinearCondition[] {
+  const terms: (readonly [number, bigint])[][] = Array.from({ length: lawCount }, () => []);
+  inequalities.forEach((inequality, i) => {
+    for (const [j, value] of inequality.terms) terms[j]!.push([i, value]);
+  });
+  const all = inequalities.map((_, i) => [i, 1n] as const);
+  return [
+    ...terms.map((list): LinearCondition => ({ terms: list, relation: '=', right: 0n })),
+    { terms: all, relation: '=', right: 1n },
+  ];
 }
 
 function sumOf(laws: readonly SparseVector[], speciesCount: number): SparseVector {

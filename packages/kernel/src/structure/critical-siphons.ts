@@ -1,12 +1,13 @@
-import type { LinearCondition, SparseVector } from '../exact/index.ts';
-import { primitive, solveLinear } from '../exact/index.ts';
+import type { LinearCondition, RowIndex, SparseColumns, SparseVector } from '../exact/index.ts';
+import { primitive, rowIndex, solveLinear } from '../exact/index.ts';
 import type { StructuralNetwork } from '../network/index.ts';
 import { stoichiometry } from '../network/index.ts';
 import type { ConservationLaws } from './conservation-laws.ts';
 import { spanningForest } from './spanning-forest.ts';
 
-/** Linear programmes beyond this many entries are not tried. */
-const PROGRAMME_ENTRIES = 200_000;
+/** Entries (conditions × variables) of one linear programme, and of all of them together, beyond which none is tried. */
+const PROGRAMME_ENTRIES = 50_000;
+const ALL_ENTRIES = 2_000_000;
 
 /**
  * A minimal siphon; critical when it contains the support of no non-negative law (`null`: undecided). `law` is one with
@@ -18,19 +19,22 @@ export interface Siphon {
   readonly law: SparseVector | null;
 }
 
-/** Judges siphons by the extreme non-negative laws, or by linear programmes where not all of those are known. */
+/** Judges siphons by the non-negative laws that are known, or by linear programmes where not all of those are. */
 export function judgeSiphons(
   network: StructuralNetwork,
   siphons: readonly Int32Array[],
   laws: ConservationLaws | null,
+  checkpoint: () => void = () => undefined,
 ): Siphon[] {
+  const known = [...(laws?.nonnegative ?? []), ...(laws?.basis ?? []).filter(isNonnegative)];
   const byFirst = new Map<number, SparseVector[]>();
-  for (const law of laws?.nonnegative ?? []) {
-    const known = byFirst.get(law.indices[0]!);
-    if (known) known.push(law);
+  for (const law of known) {
+    const same = byFirst.get(law.indices[0]!);
+    if (same) same.push(law);
     else byFirst.set(law.indices[0]!, [law]);
   }
   const mark = new Int32Array(network.species.length).fill(-1);
+  let programmes: SupportProgrammes | null = null;
   return siphons.map((species, index) => {
     for (const member of species) mark[member] = index;
     for (const member of species) {
@@ -38,33 +42,60 @@ export function judgeSiphons(
         if (law.indices.every((other) => mark[other] === index)) return { species, critical: false, law };
       }
     }
-    return laws?.nonnegativeComplete ? { species, critical: true, law: null } : byProgramme(network, species);
+    if (laws?.nonnegativeComplete) return { species, critical: true, law: null };
+    checkpoint();
+    programmes ??= new SupportProgrammes(network);
+    return programmes.judge(species);
   });
 }
 
-/** w ≥ 0 on the siphon, w·N = 0, Σ w = 1. */
-function byProgramme(network: StructuralNetwork, species: Int32Array): Siphon {
-  const place = new Map(Array.from(species, (member, i) => [member, i]));
-  const { matrix } = stoichiometry(network, spanningForest(network));
-  const conditions: LinearCondition[] = [];
-  for (let column = 0; column < matrix.columnCount; column++) {
-    const terms: (readonly [number, bigint])[] = [];
-    for (let k = matrix.offsets[column]!; k < matrix.offsets[column + 1]!; k++) {
-      const variable = place.get(matrix.rows[k]!);
-      if (variable !== undefined) terms.push([variable, BigInt(matrix.values[k]!)]);
-    }
-    if (terms.length > 0) conditions.push({ terms, relation: '=', right: 0n });
+function isNonnegative(law: SparseVector): boolean {
+  return law.values.every((value) => value > 0n);
+}
+
+/** Decides by exact linear programmes whether a set of species holds the support of a non-negative law. */
+class SupportProgrammes {
+  readonly #matrix: SparseColumns;
+  readonly #byRow: RowIndex;
+  #entries = 0;
+
+  constructor(network: StructuralNetwork) {
+    this.#matrix = stoichiometry(network, spanningForest(network)).matrix;
+    this.#byRow = rowIndex(this.#matrix);
   }
-  if (conditions.length * species.length > PROGRAMME_ENTRIES) return { species, critical: null, law: null };
-  conditions.push({
-    terms: Array.from(species, (_, i) => [i, 1n] as const),
-    relation: '=',
-    right: 1n,
-  });
-  const outcome = solveLinear({ variables: species.length, conditions });
-  if (outcome.kind === 'unfinished') return { species, critical: null, law: null };
-  if (outcome.kind === 'infeasible') return { species, critical: true, law: null };
-  const support = species.filter((_, i) => outcome.values[i] !== 0n);
-  const values = primitive(outcome.values.filter((value) => value !== 0n));
-  return { species, critical: false, law: { indices: support, values } };
+
+  /** w ≥ 0 on the species, w·N = 0, Σ w = 1. */
+  judge(species: Int32Array): Siphon {
+    const conditions = this.#conditions(species);
+    const entries = conditions.length * species.length;
+    this.#entries += entries;
+    const undecided: Siphon = { species, critical: null, law: null };
+    if (entries > PROGRAMME_ENTRIES || this.#entries > ALL_ENTRIES) return undecided;
+    const outcome = solveLinear({ variables: species.length, conditions });
+    if (outcome.kind === 'unfinished') return undecided;
+    if (outcome.kind === 'infeasible') return { species, critical: true, law: null };
+    const indices = species.filter((_, i) => outcome.values[i] !== 0n);
+    const values = primitive(outcome.values.filter((value) => value !== 0n));
+    return { species, critical: false, law: { indices, values } };
+  }
+
+  #conditions(species: Int32Array): LinearCondition[] {
+    const { offsets, columns, positions } = this.#byRow;
+    const terms = new Map<number, (readonly [number, bigint])[]>();
+    species.forEach((row, variable) => {
+      for (let k = offsets[row]!; k < offsets[row + 1]!; k++) {
+        const term = [variable, BigInt(this.#matrix.values[positions[k]!]!)] as const;
+        const column = terms.get(columns[k]!);
+        if (column) column.push(term);
+        else terms.set(columns[k]!, [term]);
+      }
+    });
+    const balanced = [...terms.values()].map((column): LinearCondition => ({
+      terms: column,
+      relation: '=',
+      right: 0n,
+    }));
+    const all = Array.from(species, (_, variable) => [variable, 1n] as const);
+    return [...balanced, { terms: all, relation: '=', right: 1n }];
+  }
 }

@@ -128,6 +128,8 @@ export interface StructureResult {
   readonly conservationLaws: readonly ConservationLaw[];
   /** All extreme non-negative laws, as far as `complete` says. */
   readonly nonnegativeConservationLaws: readonly BySpecies[];
+  /** A law that is positive at every species, where there is one and not all extreme laws are listed. */
+  readonly positiveLaw?: BySpecies;
   /** Some law is positive at every species. */
   readonly conservative: boolean | null;
   /** Some positive flux leaves every species balanced. */
