@@ -2,9 +2,12 @@ import { readFileSync } from 'node:fs';
 import type { Verdict, VerdictId } from '@stillroom/shared/cells';
 import type { Expression } from '@stillroom/shared/expression';
 import type { Network } from '@stillroom/shared/network';
-import { checkWitness, judgeAll } from '@stillroom/kernel/theorems';
+import { divide, formatRational, rational } from '@stillroom/kernel/exact';
+import { exactBalancedState } from '@stillroom/kernel/balance';
+import { checkWitness, contextOf, judgeAll } from '@stillroom/kernel/theorems';
 import { describe, expect, test } from 'vitest';
 import { analyseBalance } from '../../packages/kernel/src/cells/balance.ts';
+import { closedMarginals, siteWeights } from '../../packages/kernel/src/theorems/counts/product-form-law.ts';
 import type { NetworkOptions } from '../support/network.ts';
 import { buildNetwork } from '../support/network.ts';
 
@@ -109,8 +112,14 @@ describe('reference verdicts', () => {
     });
     expect(verdicts.get('product-form')).toMatchObject({ applies: 'yes', case: 'weights' });
     expect(verdicts.get('product-form')!.conclusion).toContain('neither independent');
-    const { equilibrium } = analyseBalance(plain);
-    expect(equilibrium!.X1! / equilibrium!.X2!).toBeCloseTo(2, 14);
+    const [c1, c2] = exactBalancedState(contextOf(plain))!;
+    expect(divide(c1!, c2!)).toEqual(rational(2n));
+    const weights = new Map([
+      [0, servers],
+      [1, servers],
+    ]);
+    const [marginal] = closedMarginals(contextOf({ ...plain, weights }), 3)!;
+    expect(marginal!.map(formatRational)).toEqual(['1/21', '4/21', '8/21', '8/21']);
   });
 
   test('condensation: weight 1 + b/n is summable for b = 3 and c = 1, not for b = 1/2, nor for c = 2', () => {
@@ -132,6 +141,16 @@ describe('reference verdicts', () => {
       return verdict.applies;
     };
     expect([applies(1, '3'), applies(1, '0.5'), applies(2, '3')]).toEqual(['yes', 'no', 'no']);
+    // Weights 6/((n+1)(n+2)(n+3)) of sum 3/2, hence P = 4/((n+1)(n+2)(n+3)).
+    const network = {
+      ...buildNetwork(caseOf('condensation_threshold').text, { constants: [1, 1] }),
+      weights: new Map([[0, weight('3')]]),
+    };
+    const terms = siteWeights(contextOf(network), 0, 60)!;
+    terms.forEach((term, n) => expect(term).toEqual(rational(6n, BigInt((n + 1) * (n + 2) * (n + 3)))));
+    // The tail from N on is 3/((N+1)(N+2)).
+    const sum = terms.reduce((total, term) => total + Number(term.numerator) / Number(term.denominator), 0);
+    expect(sum + 3 / (62 * 63)).toBeCloseTo(3 / 2, 14);
   });
 
   test('X -> 2 X, X -> 0 does not stay Poisson: 2 X is only produced', () => {

@@ -1,6 +1,8 @@
+import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { contextOf } from '@stillroom/kernel/theorems';
 import { minorProducts } from '../../../packages/kernel/src/theorems/minors/minor-products.ts';
+import { monomolecularUniqueness } from '../../../packages/kernel/src/theorems/monomolecular-uniqueness.ts';
 import { searchPattern } from '../../../packages/kernel/src/theorems/signs/sign-search.ts';
 import { buildNetwork } from '../../support/network.ts';
 import { expectSilence, judge } from '../../support/verdicts.ts';
@@ -59,9 +61,33 @@ describe('determinant criterion', () => {
   });
 
   test('undecided beyond the size limit, and it says so', () => {
-    const ring = Array.from({ length: 600 }, (_, i) => `X${i} <=> X${(i + 1) % 600}`).join('; ');
+    const ring = Array.from(
+      { length: 600 },
+      (_, i) => `X${i} + X${(i + 1) % 600} <=> X${(i + 2) % 600}`,
+    ).join('; ');
     const verdict = contextOf(buildNetwork(ring)).verdict(id);
     expect(verdict.applies).toBe('undecided');
     expect(verdict.hypotheses[1]?.text).toContain('too large');
+  });
+
+  test('monomolecular networks of any size are decided by their terminal classes, as minors and sign patterns say', () => {
+    const ring = Array.from({ length: 600 }, (_, i) => `X${i} <=> X${(i + 1) % 600}`).join('; ');
+    expect(contextOf(buildNetwork(ring)).verdict(id).applies).toBe('yes');
+    const end = fc.constantFrom('0', 'A', 'B', 'C', 'D');
+    const rows = fc
+      .array(fc.tuple(end, fc.constantFrom('->', '<=>'), end), { minLength: 1, maxLength: 6 })
+      .map((list) => list.filter(([from, , to]) => from !== to).map((row) => row.join(' ')))
+      .filter((list) => list.length > 0);
+    fc.assert(
+      fc.property(rows, (list) => {
+        const context = contextOf(buildNetwork(list.join('; ')));
+        const products = minorProducts(context, 1_000_000)!;
+        const oneSigned =
+          products.positive + products.negative > 0 && (products.positive === 0 || products.negative === 0);
+        expect(monomolecularUniqueness(context)).toBe(oneSigned);
+        expect(searchPattern(context, 'weakly monotonic').kind).toBe(oneSigned ? 'none' : 'found');
+      }),
+      { seed: 11, numRuns: 150 },
+    );
   });
 });

@@ -3,6 +3,7 @@ export { complexConditions } from './complex-conditions.ts';
 export type { BalanceCondition, ComplexCondition } from './complex-conditions.ts';
 export { detailedConditions, reversiblePairs } from './detailed-conditions.ts';
 export type { DetailedCondition, ReversiblePair } from './detailed-conditions.ts';
+export { exactBalancedState } from './exact-state.ts';
 export { complexResidual, entropyProductionOf, fluxesAt } from './flows.ts';
 export { lnOfInteger, lnOfRational } from './log-constants.ts';
 export { namedShares, nearestConstants } from './nearest-constants.ts';

@@ -1,6 +1,7 @@
 import type { Applies, Hypothesis } from '@stillroom/shared/cells';
 import type { TheoremContext } from './context.ts';
 import { ratesAreWeaklyMonotonic } from './hypotheses.ts';
+import { monomolecularUniqueness } from './monomolecular-uniqueness.ts';
 import type { PatternSearch } from './signs/sign-search.ts';
 import { searchPattern } from './signs/sign-search.ts';
 import { sources } from './sources.ts';
@@ -47,6 +48,11 @@ function noDiscordance(context: TheoremContext): Hypothesis[] {
   const claim = 'concordant';
   const text =
     'The network is concordant: no change of the species within a class can leave every net rate unchanged by signs alone.';
+  if (monomolecularUniqueness(context)) {
+    const reason =
+      'No complex has two or more molecules and every linkage class has one terminal strong class, which suffices.';
+    return [{ claim, text: `${text} ${reason}`, holds: true }];
+  }
   const search = discordanceOf(context);
   if (search === null)
     return [{ claim, text: `${text} The network is too large for the search.`, holds: null }];

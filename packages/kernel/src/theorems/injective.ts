@@ -5,6 +5,7 @@ import { massAction } from './hypotheses.ts';
 import type { MinorProducts } from './minors/minor-products.ts';
 import { minorProducts } from './minors/minor-products.ts';
 import { oppositeMinors } from './minors/opposite-minors.ts';
+import { monomolecularUniqueness } from './monomolecular-uniqueness.ts';
 import { searchPattern } from './signs/sign-search.ts';
 import { sources } from './sources.ts';
 import type { Theorem } from './theorem.ts';
@@ -47,13 +48,21 @@ const text =
 const SHORT_LIST = 4_000;
 const LONG_LIST = 20_000;
 
+const compartmental: Hypothesis = {
+  claim,
+  text: `${text} No complex has two or more molecules and every linkage class has one terminal strong class, so they have one sign.`,
+  holds: true,
+};
+
 /** Decides the sign condition: a full list where it is short, else two opposite products, else the equivalent sign patterns. */
 function oneSign(context: TheoremContext): Hypothesis[] {
   return context.memo('one sign', () => {
-    if (!context.dense)
-      return [{ claim, text: `${text} The network is too large for this test.`, holds: null }];
     const listed = minorProducts(context, SHORT_LIST);
     if (listed !== null) return [fromList(listed)];
+    if (monomolecularUniqueness(context)) return [compartmental];
+    if (!context.dense) {
+      return [{ claim, text: `${text} The network is too large for this test.`, holds: null }];
+    }
     const opposite = oppositeMinors(context);
     if (opposite !== null) {
       return [

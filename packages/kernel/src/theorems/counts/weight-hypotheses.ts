@@ -2,9 +2,8 @@ import type { Hypothesis } from '@stillroom/shared/cells';
 import type { Expression } from '@stillroom/shared/expression';
 import { elementary, evaluate } from '@stillroom/shared/expression';
 import { balancedLogarithms } from '../../balance/balanced-state.ts';
-import { treeConstants } from '../../balance/tree-constants.ts';
+import { exactBalancedState } from '../../balance/exact-state.ts';
 import type { Rational } from '../../exact/index.ts';
-import { divide, power, rational, sign } from '../../exact/index.ts';
 import type { TheoremContext } from '../context.ts';
 import { massAction } from '../hypotheses.ts';
 import { isSummable, weightGrowth } from './weight-growth.ts';
@@ -86,40 +85,16 @@ function summability(context: TheoremContext, species: number, weight: Expressio
   return { claim, text, holds: isSummable(growth, c) };
 }
 
-/** c of a species that no conservation law touches: the same in every complex-balanced state; exact where one factor gives it. */
+/** c of a species that no conservation law touches: the same in every complex-balanced state. */
 function parameterOf(
   context: TheoremContext,
   species: number,
 ): { exact: Rational | null; near: number } | null {
   const constants = context.exactConstants;
   const logarithms = constants && balancedLogarithms(context, constants);
-  if (constants === null || logarithms === null) return null;
-  return { exact: exactParameter(context, constants, species), near: elementary.exp(logarithms[species]!) };
-}
-
-/** Follows chains of complexes that differ by one molecule of one species: c_i = K_{y'} / K_y. */
-function exactParameter(
-  context: TheoremContext,
-  constants: readonly Rational[],
-  species: number,
-): Rational | null {
-  const trees = treeConstants(context, constants);
-  if (trees === null) return null;
-  const known = new Map<number, Rational>();
-  for (let round = 0; round < context.species.length && !known.has(species); round++) {
-    for (const { from, to } of context.arrows) {
-      const open: { species: number; amount: number }[] = [];
-      let ratio = rational(trees[to]!, trees[from]!);
-      for (const [i, amount] of context.coefficients.change(from, to)) {
-        const value = known.get(i);
-        if (value === undefined) open.push({ species: i, amount: Number(amount) });
-        else ratio = divide(ratio, power(value, Number(amount)));
-      }
-      const [only] = open;
-      if (open.length !== 1 || Math.abs(only!.amount) !== 1) continue;
-      known.set(only!.species, only!.amount > 0 ? ratio : power(ratio, -1));
-    }
-  }
-  const value = known.get(species);
-  return value !== undefined && sign(value) > 0 ? value : null;
+  if (logarithms === null) return null;
+  return {
+    exact: exactBalancedState(context)?.[species] ?? null,
+    near: elementary.exp(logarithms[species]!),
+  };
 }

@@ -15,25 +15,35 @@ const STARTS = 60;
  * product. Doubles propose, exact determinants decide; null only means that none was met.
  */
 export function oppositeMinors(context: TheoremContext): readonly [MinorPair, MinorPair] | null {
-  const system = squareSystem(context);
-  if (system === null) return null;
-  const random = fixedSequence(12345);
-  const found = new Map<number, MinorPair>();
-  for (let start = 0; start < STARTS && found.size < 2; start++) {
-    const spread = start % 3 === 0 ? 1 : start % 3 === 1 ? 6 : 12;
-    const kappa = system.reactions.map(() => 2 ** (spread * (random() - 0.5) * 2));
-    const h = system.species.map(() => 2 ** (spread * (random() - 0.5) * 2));
-    const sign = weightedSum(system, kappa, h);
-    if (sign === 0 || found.has(sign)) continue;
-    const indices = isolate(system, kappa, h, sign);
-    if (indices === null) continue;
-    const product = stoichiometricMinor(context, indices) * reactantMinor(context, indices);
-    const exactSign = product > 0n ? 1 : product < 0n ? -1 : 0;
-    if (exactSign !== 0 && !found.has(exactSign)) found.set(exactSign, minorPair(context, indices));
-  }
-  const positive = found.get(1);
-  const negative = found.get(-1);
-  return positive !== undefined && negative !== undefined ? [positive, negative] : null;
+  const found = oppositeIndices(context);
+  return found && [minorPair(context, found.positive), minorPair(context, found.negative)];
+}
+
+/** The same as indices, worked out once. */
+export function oppositeIndices(
+  context: TheoremContext,
+): { readonly positive: MinorIndices; readonly negative: MinorIndices } | null {
+  return context.memo('opposite minors', () => {
+    const system = squareSystem(context);
+    if (system === null) return null;
+    const random = fixedSequence(12345);
+    const found = new Map<number, MinorIndices>();
+    for (let start = 0; start < STARTS && found.size < 2; start++) {
+      const spread = start % 3 === 0 ? 1 : start % 3 === 1 ? 6 : 12;
+      const kappa = system.reactions.map(() => 2 ** Math.round(spread * (random() - 0.5) * 2));
+      const h = system.species.map(() => 2 ** Math.round(spread * (random() - 0.5) * 2));
+      const sign = weightedSum(system, kappa, h);
+      if (sign === 0 || found.has(sign)) continue;
+      const indices = isolate(system, kappa, h, sign);
+      if (indices === null) continue;
+      const product = stoichiometricMinor(context, indices) * reactantMinor(context, indices);
+      const exactSign = product > 0n ? 1 : product < 0n ? -1 : 0;
+      if (exactSign !== 0 && !found.has(exactSign)) found.set(exactSign, indices);
+    }
+    const positive = found.get(1);
+    const negative = found.get(-1);
+    return positive !== undefined && negative !== undefined ? { positive, negative } : null;
+  });
 }
 
 /** Drops every weight that the sign can do without and raises the others, until one I and one J are left. */

@@ -2,8 +2,11 @@ import { add, fromDouble, multiply, rational, ZERO } from '../../exact/index.ts'
 import type { Rational } from '../../exact/index.ts';
 import type { TheoremContext } from '../context.ts';
 import { fixedSequence } from '../fixed-sequence.ts';
+import { oppositeIndices } from '../minors/opposite-minors.ts';
 import { squareSystem, weightedSum } from '../minors/weighted-sum.ts';
 import type { SquareSystem } from '../minors/weighted-sum.ts';
+import { NAUGHT, POSITIVE } from '../signs/domain.ts';
+import { kernelVector } from '../signs/sign-vectors.ts';
 import { interiorStart } from './interior-start.ts';
 import { asDoubles, massActionSystem, monomial, totalsOf } from './mass-action-system.ts';
 import type { MassActionSystem } from './mass-action-system.ts';
@@ -28,25 +31,69 @@ export function searchPair(context: TheoremContext): VerifiedStates | null {
   const consistency = context.consistency;
   if (system === null || square === null || consistency?.holds !== true) return null;
   const random = fixedSequence(2718281);
-  const kernel = kernelDirections(context);
   const unstable = square.rank % 2 === 0 ? -1 : 1;
+  let followed = 0;
   const largest = consistency.flux.reduce((most, value) => (value > most ? value : most), 1n);
-  let flux = consistency.flux.map((value) => Number(value) / Number(largest));
+  const positive = consistency.flux.map((value) => Number(value) / Number(largest));
+  for (const { flux, x } of candidates(context, positive, unstable, random)) {
+    if (signAt(square, flux, x) !== unstable) continue;
+    const found = followUp(system, flux, x, random);
+    if (found !== null) return found;
+    if (++followed >= FOLLOWED) return null;
+  }
+  return null;
+}
+
+interface Candidate {
+  readonly flux: readonly number[];
+  readonly x: readonly number[];
+}
+
+/** First points at which one product of the wrong sign outweighs the others, then random ones. */
+function* candidates(
+  context: TheoremContext,
+  positive: readonly number[],
+  unstable: number,
+  random: () => number,
+): Generator<Candidate> {
+  const opposite = oppositeIndices(context);
+  const wanted = unstable > 0 ? opposite?.positive : opposite?.negative;
+  const directed = wanted === undefined ? null : fluxThrough(context, wanted.arrows);
+  if (wanted !== undefined && directed !== null) {
+    const inside = new Set(wanted.species);
+    for (const [rest, scale] of [
+      [1e-2, 16],
+      [1e-3, 64],
+      [1e-1, 4],
+      [1e-4, 256],
+    ] as const) {
+      yield {
+        flux: directed.map((value, j) => value + rest * positive[j]!),
+        x: context.species.map((_, i) => (inside.has(i) ? 1 / scale : 1)),
+      };
+    }
+  }
+  const directions = context.kernelBasis.map((vector) => vector.map(Number));
   const tries = Math.min(
     3000,
     Math.ceil(WORK / context.species.length ** 2 / Math.max(1, context.arrows.length)),
   );
-  let followed = 0;
-  for (let k = 0; k < tries && followed < FOLLOWED; k++) {
-    flux = wander(flux, kernel, random);
+  let flux: readonly number[] = positive;
+  for (let k = 0; k < tries; k++) {
+    flux = wander(flux, directions, random);
     const spread = 2 + (k % 5) * 2;
-    const x = context.species.map(() => 2 ** Math.round((random() * 2 - 1) * spread));
-    if (signAt(square, flux, x) !== unstable) continue;
-    followed++;
-    const found = followUp(system, flux, x, random);
-    if (found !== null) return found;
+    yield { flux, x: context.species.map(() => 2 ** Math.round((random() * 2 - 1) * spread)) };
   }
-  return null;
+}
+
+/** A flux in the kernel of N, not negative, of size at least 1 on the given arrows and small elsewhere. */
+function fluxThrough(context: TheoremContext, arrows: readonly number[]): number[] | null {
+  const wanted = new Set(arrows);
+  const signs = context.arrows.map((_, arrow) => (wanted.has(arrow) ? POSITIVE : POSITIVE | NAUGHT));
+  const flux = kernelVector(context, signs);
+  if (flux === null || flux === 'unfinished') return null;
+  const least = arrows.reduce((least, arrow) => Math.min(least, Number(flux[arrow]!)), Infinity);
+  return flux.map((value) => Number(value) / least);
 }
 
 /** Looks for two states for given constants in the class of a given start. */
@@ -151,10 +198,6 @@ function displaced(
   // Without a boundary ahead the way is measured by the state itself.
   const step = Number.isFinite(reach) ? reach * fraction : 10 * fraction * fraction * (1 + Math.max(...x));
   return x.map((value, i) => value + step * move[i]!);
-}
-
-function kernelDirections(context: TheoremContext): number[][] {
-  return context.kernelBasis.map((vector) => vector.map(Number));
 }
 
 /** Moves along kernel directions, by preference close to the edge of the cone of positive fluxes. */
