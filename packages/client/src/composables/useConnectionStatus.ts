@@ -48,10 +48,11 @@ export function useConnectionStatus(line: Readonly<Line>): ComputedRef<Connectio
         ? { since: clock(line.downSince.toISOString()) }
         : null;
     const ended = line.endedBy === null ? null : (endings[line.endedBy] ?? otherEnding);
-    if (line.pending > 0 && line.phase !== 'open')
+    if (line.pending > 0 && (line.phase !== 'open' || line.overdue))
       return { words: `${counted(line.pending, 'change')} kept here only`, tone: 'here only', down, ended };
     if (line.keptAt !== null && line.pending === 0)
       return { words: `Kept ${clock(line.keptAt.toISOString())}`, tone: 'kept', down, ended };
-    return { words: line.phase === 'open' ? 'Keeping…' : 'Opening…', tone: 'keeping', down, ended };
+    const words = line.phase === 'open' ? 'Keeping…' : down === null ? 'Opening…' : 'Not connected';
+    return { words, tone: 'keeping', down, ended };
   });
 }

@@ -19,6 +19,8 @@ export interface Line {
   ready: boolean;
   /** Changes on this machine only. */
   pending: number;
+  /** Whether the server has been silent about them for longer than a line that is well takes. */
+  overdue: boolean;
   /** When all was last known to be kept. */
   keptAt: Date | null;
   downSince: Date | null;
@@ -36,10 +38,14 @@ export interface LiveDocument {
   clearSetAside(): void;
 }
 
+/** Milliseconds after which an answer that has not come is told. */
+const longestWait = 4000;
+
 const fresh = (): Line => ({
   phase: 'opening',
   ready: false,
   pending: 0,
+  overdue: false,
   keptAt: null,
   downSince: null,
   endedBy: null,
@@ -52,13 +58,14 @@ const fresh = (): Line => ({
 export function useLiveDocument(
   notebook: string,
   person: string,
-  on: { plan(notice: PlanNotice): void; notice(notice: Notice): void },
+  on: { plan(notice: PlanNotice): void; notice(notice: Notice): void; refused(): void },
 ): LiveDocument {
   const room = shallowRef<LiveRoom | null>(null);
   const line = reactive<Line>(fresh());
   const setAside = shallowRef<readonly SetAside[]>([]);
   const unkept = new Set<string>();
   let closed = false;
+  let patience: ReturnType<typeof setTimeout> | undefined;
 
   function rescue(from: LiveRoom): SetAside[] {
     return [...unkept].flatMap((id) => {
@@ -95,6 +102,11 @@ export function useLiveDocument(
       },
       counted(count) {
         line.pending = count.pending;
+        if (count.settled) {
+          clearTimeout(patience);
+          patience = undefined;
+          line.overdue = false;
+        } else patience ??= setTimeout(() => (line.overdue = true), longestWait);
         if (!count.settled || line.phase !== 'open') return;
         line.keptAt = new Date();
         unkept.clear();
@@ -108,26 +120,33 @@ export function useLiveDocument(
       plan: on.plan,
       notice: on.notice,
       ended(code) {
-        if (code === closeCodes.refused) void refused(opened);
-        else Object.assign(line, { phase: 'ended', endedBy: code });
+        if (code === closeCodes.refused) {
+          on.refused();
+          void refused(opened);
+        } else Object.assign(line, { phase: 'ended', endedBy: code });
       },
     });
     room.value = opened;
   }
 
   // A line that could not be opened at all is told as down, not as opening for ever.
-  const patience = setTimeout(() => {
+  const opening = setTimeout(() => {
     if (line.phase === 'opening') Object.assign(line, { phase: 'down', downSince: new Date() });
-  }, 4000);
+  }, longestWait);
   const back = () => room.value?.connect();
+  // The browser knows sooner than the socket does.
+  const away = () => room.value?.disconnect();
 
   open();
   addEventListener('online', back);
+  addEventListener('offline', away);
 
   onScopeDispose(() => {
     closed = true;
+    clearTimeout(opening);
     clearTimeout(patience);
     removeEventListener('online', back);
+    removeEventListener('offline', away);
     void room.value?.destroy();
     room.value = null;
   });

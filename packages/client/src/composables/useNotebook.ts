@@ -97,6 +97,7 @@ export function openNotebook(id: string): Notebook {
       if (topic === 'remarks') void remarks.refresh();
       else void askAbout();
     },
+    refused: () => void askAbout(),
   });
   const cells = useCells(live.room);
   const presence = usePresence(live.room, () => session.me);

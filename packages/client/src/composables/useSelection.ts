@@ -12,12 +12,31 @@ export interface Selection {
 export const cellElement = (id: string) => `cell-${id}`;
 export const slipElement = (id: string) => `slip-${id}`;
 
-/** The first thing one can type into in the Workings of a cell. */
+/** The first thing one can type into in the Workings of a cell; null while its editor is still being made. */
 function firstField(cell: Element): HTMLElement | null {
-  return (
-    cell.querySelector<HTMLElement>('.cm-content') ??
-    cell.querySelector<HTMLElement>('.wk input, .wk select, .wk textarea, .wk [tabindex="0"], .wk button')
-  );
+  const editor = cell.querySelector('.wk .text-editor');
+  if (editor !== null) return editor.querySelector<HTMLElement>('.cm-content');
+  return cell.querySelector<HTMLElement>('.wk .stick :is(input, select, textarea, [tabindex="0"], button)');
+}
+
+/** Tries for about a second, frame by frame: a cell just sewn in has yet to be made. */
+function whenThere(attempt: () => boolean, frames = 60): void {
+  if (attempt() || frames === 0) return;
+  requestAnimationFrame(() => whenThere(attempt, frames - 1));
+}
+
+/** Goes into what is typed in a cell: its Workings, or the prose on its right page. */
+function enter(id: string): boolean {
+  const cell = document.getElementById(cellElement(id));
+  if (cell === null) return false;
+  if (cell.classList.contains('kind-prose')) {
+    const prose = cell.querySelector('[data-write]');
+    prose?.dispatchEvent(new CustomEvent('prose-write'));
+    return prose !== null;
+  }
+  const field = firstField(cell);
+  field?.focus({ preventScroll: true });
+  return field !== null;
 }
 
 /** Which cell is selected; `on` hears of it, so that co-authors can see where one is. */
@@ -36,10 +55,9 @@ export function useSelection(on: (id: string | null) => void): Selection {
     goTo(id, into = 'slip') {
       select(id);
       void nextTick(() => {
-        const cell = document.getElementById(cellElement(id));
-        cell?.scrollIntoView({ block: 'nearest', behavior: 'instant' });
-        const target = into === 'workings' && cell !== null ? firstField(cell) : null;
-        (target ?? document.getElementById(slipElement(id)))?.focus({ preventScroll: true });
+        document.getElementById(cellElement(id))?.scrollIntoView({ block: 'nearest', behavior: 'instant' });
+        document.getElementById(slipElement(id))?.focus({ preventScroll: true });
+        if (into === 'workings') whenThere(() => enter(id));
       });
     },
   };

@@ -93,6 +93,11 @@ export class LiveRoom {
     this.provider.connect();
   }
 
+  /** Closes the line until `connect`. */
+  disconnect(): void {
+    this.provider.disconnect();
+  }
+
   /** Whether an origin stands for a change made on this page. */
   private isLocal(origin: unknown): boolean {
     return origin !== this.provider && origin !== this.copy;

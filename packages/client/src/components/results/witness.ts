@@ -32,8 +32,10 @@ export function witnessText(hypothesis: Hypothesis, structure: StructureResult |
       const named = (key: string) => {
         if (witness.of === 'complexes') return label(Number(key));
         if (witness.of === 'fluxes') {
-          const row = structure?.reactions?.[Number(key)]?.row;
-          return row === undefined ? `reaction ${key}` : `R${row + 1}`;
+          const reaction = structure?.reactions?.[Number(key)];
+          if (reaction === undefined) return `reaction ${key}`;
+          const back = reaction.reverse !== null && reaction.reverse < Number(key);
+          return `R${reaction.row + 1}${reaction.reverse === null ? '' : back ? '←' : '→'}`;
         }
         return key;
       };
