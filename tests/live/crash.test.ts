@@ -80,7 +80,7 @@ function startTyping(
       if (edit.frame <= client.kept) acknowledged.add(edit.word);
       else underway.push(edit);
     }
-  }, 5);
+  }, 10);
   return { acknowledged, written, stop: () => clearInterval(timer) };
 }
 
@@ -91,11 +91,13 @@ describe('kill -9 of the server under typing authors', () => {
     await Promise.all(clients.map((client) => client.synced()));
     const typing = clients.map((client, index) => startTyping(client, index));
     for (let crash = 0; crash < crashes; crash += 1) {
-      await new Promise((resolve) => setTimeout(resolve, 700));
+      const before = typing.map(({ acknowledged }) => acknowledged.size);
+      const goesOn = () =>
+        typing.every(({ acknowledged }, index) => acknowledged.size > (before[index] ?? 0) + 15);
+      await expect.poll(goesOn, { timeout: 45_000, interval: 20 }).toBe(true);
       await victim?.kill();
       const known = typing.flatMap(({ acknowledged }) => [...acknowledged]);
       const kept = await keptWords();
-      expect(known.length).toBeGreaterThan(50 * (crash + 1));
       expect(known.filter((word) => !kept.includes(word))).toEqual([]);
       victim = await startVictim(port);
       await Promise.all(clients.map((client) => client.synced()));
@@ -111,5 +113,5 @@ describe('kill -9 of the server under typing authors', () => {
         () => JSON.stringify(other.doc.getMap('cells')) === JSON.stringify(first?.doc.getMap('cells')),
         'the documents differ',
       );
-  });
+  }, 240_000);
 });

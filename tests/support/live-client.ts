@@ -12,6 +12,9 @@ export interface LiveAddress {
   readonly headers: Readonly<Record<string, string>>;
 }
 
+/** Seconds after which waiting is given up: far more than anything here takes on a busy machine. */
+const patience = 45;
+
 type Decoder = decoding.Decoder;
 interface Provider extends WebsocketProvider {
   messageHandlers: ((encoder: unknown, decoder: Decoder, ...rest: unknown[]) => void)[];
@@ -76,7 +79,7 @@ export class LiveClient {
   }
 
   /** Resolves once the condition holds, asked again after everything heard. */
-  async until(holds: () => boolean, what: string, seconds = 15): Promise<void> {
+  async until(holds: () => boolean, what: string, seconds = patience): Promise<void> {
     if (holds()) return;
     await new Promise<void>((resolve, reject) => {
       const check = () => {
@@ -86,7 +89,7 @@ export class LiveClient {
       };
       const timer = setTimeout(() => {
         done();
-        reject(new Error(`Waited ${seconds} s in vain: ${what}.`));
+        reject(new Error(`Waited ${seconds} s in vain: ${what}; the line is ${this.#lineInWords()}.`));
       }, seconds * 1000);
       const done = () => {
         clearTimeout(timer);
@@ -133,6 +136,12 @@ export class LiveClient {
   close(): void {
     this.provider.destroy();
     this.doc.destroy();
+  }
+
+  #lineInWords(): string {
+    if (this.closed !== null) return `ended with ${this.closed.code} (${this.closed.reason})`;
+    const { wsconnected, synced } = this.provider;
+    return wsconnected ? (synced ? 'in step' : 'open') : 'down';
   }
 
   #take({ whole, cells, gone }: PlanNotice): void {

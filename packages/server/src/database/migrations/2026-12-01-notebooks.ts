@@ -58,6 +58,8 @@ export class Notebooks1796083202000 implements MigrationInterface {
         verdict text check (verdict in ('holds', 'fails', 'undecided')),
         primary key (notebook, cell)
       )`);
+    await runner.query(`create index notebook_cell_digest on notebook_cell (digest)`);
+    await runner.query(`create index notebook_cell_shown on notebook_cell (shown)`);
     await runner.query(`
       create table remark (
         id uuid primary key default gen_random_uuid(),

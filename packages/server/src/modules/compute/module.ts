@@ -13,6 +13,7 @@ import { Planner } from './planner.ts';
 import type { Pool } from './pool/index.ts';
 import { type RunOwner, RunQueue } from './queue.ts';
 import { ResultStore } from './results.ts';
+import { takeOutOldResults } from './retention.ts';
 import { Runner } from './runner.ts';
 import type { NotebookFile } from './state-keeper.ts';
 
@@ -33,6 +34,9 @@ export interface ComputeOptions {
   /** Tasks of later modules that need the pool, by name; `host` is this process by the name of its connections. */
   readonly tasks?: (pool: Pool, host: string) => TaskList;
 }
+
+/** How often old results are taken out, in milliseconds. */
+const retentionEvery = 6 * 3_600_000;
 
 /** Two at least: one stays free for what is answered at once. */
 const poolSize = (asked: number | undefined): number => Math.max(2, asked ?? availableParallelism());
@@ -125,6 +129,7 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
     }),
   ];
 
+  let retention: NodeJS.Timeout | null = null;
   return {
     results,
     pool,
@@ -135,8 +140,14 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
       await runner?.start();
       // Runs that were under way when the last process ended are taken up again.
       if (config.PROCESS !== 'worker') (await workingNotebooks(connections)).forEach(bringToLife);
+      retention = setInterval(() => {
+        takeOutOldResults(connections).catch((error: unknown) =>
+          failed('Old results could not be taken out.', error),
+        );
+      }, retentionEvery).unref();
     },
     async stop() {
+      if (retention !== null) clearInterval(retention);
       for (const unlisten of listeners) unlisten();
       demand.stop();
       await runner?.stop();
