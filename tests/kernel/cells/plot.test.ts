@@ -23,7 +23,7 @@ describe('from the form', () => {
     expect(spec.data.values).toHaveLength(8);
     expect(spec.data.values[3]).toEqual({ x: 4, y: 9.8765, series: 'P' });
     expect(spec.encoding['x']?.title).toBe('time (s)');
-    expect(spec.encoding['y']?.title).toBe('(µM)');
+    expect(spec.encoding['y']?.title).toBe('µM');
   });
 
   test('two courses are told apart by labels or numbers, never by the names of cells', () => {

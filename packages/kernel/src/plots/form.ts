@@ -1,155 +1,90 @@
-import { type CellJob, plotSettings } from '@stillroom/shared/cells';
-import { parsePath, type PathStep, printPath, resolvePath, unitAt, unitText } from '@stillroom/shared/paths';
-import type * as z from 'zod/mini';
-import { CellFailure } from '../engine/failure.ts';
-import { resultOf } from '../engine/inputs.ts';
+import { type CellJob, type PlotMark, type PlotSettings, plotSettings } from '@stillroom/shared/cells';
+import { unitText } from '@stillroom/shared/paths';
+import { type PlotLine, plotLines, plotPoints } from './lines.ts';
 
-type PlotSettings = z.infer<typeof plotSettings>;
 type Spec = Readonly<Record<string, unknown>>;
-
-interface Column {
-  readonly values: readonly (number | string | null)[];
-  readonly unit: string | null;
-  /** Last name of its path. */
-  readonly label: string;
-}
 
 export const vegaLiteSchema = 'https://vega.github.io/schema/vega-lite/v6.json';
 
-/** Steps of a path within the result of `cell`; one that begins with the cell's own name counts from there. */
-function stepsWithin(text: string, cell: string, result: unknown): readonly PathStep[] {
-  const read = parsePath(text);
-  if (!read.ok) {
-    throw new CellFailure(`"${text}" is no path: ${read.misreading.message}`, {
-      hint: 'Write a place in the result of the cell, such as times or species.P.',
-    });
-  }
-  const { head, steps } = read.value;
-  const whole = [head, ...steps];
-  return head === cell && !resolvePath(result, { head, steps: whole.slice(0, 1) }).found ? steps : whole;
-}
-
-function columnAt(job: CellJob, cell: string, text: string): Column {
-  const { input, result } = resultOf(job, cell);
-  const steps = stepsWithin(text, cell, result);
-  const found = resolvePath(result, { head: cell, steps });
-  if (!found.found) throw new CellFailure(found.message, found.hint === null ? {} : { hint: found.hint });
-  if (!Array.isArray(found.value)) {
-    throw new CellFailure(`${printPath(cell, steps)} is no list, so it cannot be drawn.`);
-  }
-  const values = found.value.map((value: unknown) =>
-    typeof value === 'number' || typeof value === 'string' ? value : null,
-  );
-  const last = steps.findLast((step) => typeof step === 'string');
-  return { values, unit: unitAt(input.kind, result, steps), label: last ?? text };
-}
-
-/** Names of lines, told apart by their label, else by numbers: the names of cells are no part of a result. */
-function distinct(labels: readonly string[]): string[] {
-  const seen = new Map<string, number>();
-  return labels.map((label) => {
-    const count = (seen.get(label) ?? 0) + 1;
-    seen.set(label, count);
-    return labels.indexOf(label) === labels.lastIndexOf(label) ? label : `${label} (${count})`;
-  });
-}
-
-function axisTitle(words: string | undefined, units: readonly (string | null)[], usual: string): string {
-  if (words !== undefined && words !== '') return words;
-  const known = [...new Set(units)];
-  const unit = known.length === 1 ? known[0] : null;
-  return unit === null || unit === undefined ? usual : `${usual} (${unitText(unit)})`.trim();
-}
-
-const marks: Readonly<Record<NonNullable<PlotSettings['mark']>, Spec>> = {
+const marks: Readonly<Record<PlotMark, Spec>> = {
   line: { type: 'line', interpolate: 'linear' },
   point: { type: 'point', filled: true },
   area: { type: 'area', line: true, opacity: 0.4 },
   bar: { type: 'bar' },
 };
 
-/** A logarithmic axis has no place for what is not above 0; such points are left out and told. */
-function drawable(value: number | string | null, scale: string | undefined): boolean {
-  return value !== null && (scale !== 'log' || (typeof value === 'number' && value > 0));
+/** What tells several lines apart besides colour, for those who do not see it. */
+const secondChannel: Partial<Record<PlotMark, string>> = { line: 'strokeDash', point: 'shape' };
+
+/** The author's words, else what the axis shows with the unit that all its lists share. */
+function axisTitle(words: string | undefined, units: readonly (string | null)[], usual: string): string {
+  if (words !== undefined && words !== '') return words;
+  const [unit = null, ...others] = [...new Set(units)];
+  if (unit === null || others.length > 0) return usual;
+  return usual === '' ? unitText(unit) : `${usual} (${unitText(unit)})`;
 }
 
-/** The Vega-Lite specification of a filled-in form, with its data. */
+const scaleOf = (scale: string | undefined): Spec => (scale === undefined ? {} : { scale: { type: scale } });
+
+function alongChannel(lines: readonly PlotLine[], axis: PlotSettings['x']): Spec {
+  const nominal = lines.some(({ along }) => along.values.some((value) => typeof value === 'string'));
+  const label = lines[0]?.along.label ?? '';
+  const units = lines.map(({ along }) => along.unit);
+  return {
+    field: 'x',
+    type: nominal ? 'nominal' : 'quantitative',
+    title: axisTitle(axis?.title, units, label === 'times' ? 'time' : label),
+    ...(nominal ? {} : scaleOf(axis?.scale)),
+  };
+}
+
+function upChannel(lines: readonly PlotLine[], axis: PlotSettings['y']): Spec {
+  const [only, another] = lines;
+  const units = lines.map(({ up }) => up.unit);
+  return {
+    field: 'y',
+    type: 'quantitative',
+    title: axisTitle(axis?.title, units, another === undefined ? (only?.name ?? '') : ''),
+    ...scaleOf(axis?.scale),
+  };
+}
+
+function seriesChannels(lines: readonly PlotLine[], mark: PlotMark): Spec {
+  if (lines.length < 2) return {};
+  const series = { field: 'series', type: 'nominal', sort: null, title: null };
+  const second = secondChannel[mark];
+  return { color: series, ...(second === undefined ? {} : { [second]: series }) };
+}
+
+function leftOut(count: number): string[] {
+  if (count === 0) return [];
+  return count === 1
+    ? ['1 point has no place in the picture and is left out.']
+    : [`${count} points have no place in the picture and are left out.`];
+}
+
+/**
+ * The Vega-Lite specification of a filled-in form, with its data, and what was left out in words.
+ *
+ * @throws CellFailure where there is nothing to draw, or a path leads nowhere
+ */
 export function formSpecification(job: CellJob): { spec: Spec; warnings: string[] } {
   const settings = plotSettings.parse(job.settings) as PlotSettings;
-  const draw = settings.draw ?? [];
-  if (draw.every(({ y }) => y.length === 0)) {
-    throw new CellFailure('There is nothing to draw yet.', {
-      hint: 'Choose a cell, what runs along, and what goes up.',
-    });
-  }
-  const lines = draw.flatMap(({ cell, x, y, label }) => {
-    const along = columnAt(job, cell, x);
-    return y.map((path) => ({ along, up: columnAt(job, cell, path), label }));
-  });
-  const names = distinct(
-    lines.map(({ up, label }) => (label === undefined ? up.label : `${label} ${up.label}`)),
-  );
-  let left = 0;
-  const values = lines.flatMap(({ along, up }, index) =>
-    up.values.flatMap((value, place) => {
-      const x = along.values[place] ?? null;
-      if (drawable(x, settings.x?.scale) && drawable(value, settings.y?.scale)) {
-        return [{ x, y: value, series: names[index] ?? '' }];
-      }
-      left++;
-      return [];
-    }),
-  );
-  const along = lines.map((line) => line.along);
-  const nominal = along.some((column) => column.values.some((value) => typeof value === 'string'));
-  const type = (scale: string | undefined) => (scale === undefined ? {} : { scale: { type: scale } });
-  const alongName = along[0]?.label === 'times' ? 'time' : (along[0]?.label ?? '');
-  const description = settings.alternative ?? settings.caption;
+  const lines = plotLines(job, settings);
+  const { points, left } = plotPoints(lines, settings);
+  const mark = settings.mark ?? 'line';
+  const description = settings.alternative ?? settings.caption ?? '';
   const spec = {
     $schema: vegaLiteSchema,
-    ...(description === undefined || description === '' ? {} : { description }),
+    ...(description === '' ? {} : { description }),
     width: 'container',
-    data: { values },
-    mark: marks[settings.mark ?? 'line'],
+    data: { values: points },
+    mark: marks[mark],
     encoding: {
-      x: {
-        field: 'x',
-        type: nominal ? 'nominal' : 'quantitative',
-        title: axisTitle(
-          settings.x?.title,
-          along.map(({ unit }) => unit),
-          alongName,
-        ),
-        ...(nominal ? {} : type(settings.x?.scale)),
-      },
-      y: {
-        field: 'y',
-        type: 'quantitative',
-        title: axisTitle(
-          settings.y?.title,
-          lines.map(({ up }) => up.unit),
-          names.length === 1 ? (names[0] ?? '') : '',
-        ),
-        ...type(settings.y?.scale),
-      },
-      ...(names.length > 1
-        ? {
-            color: { field: 'series', type: 'nominal', sort: null, title: null },
-            ...(settings.mark === undefined || settings.mark === 'line'
-              ? { strokeDash: { field: 'series', type: 'nominal', sort: null, title: null } }
-              : {}),
-            ...(settings.mark === 'point'
-              ? { shape: { field: 'series', type: 'nominal', sort: null, title: null } }
-              : {}),
-          }
-        : {}),
+      x: alongChannel(lines, settings.x),
+      y: upChannel(lines, settings.y),
+      ...seriesChannels(lines, mark),
     },
   };
-  const warnings =
-    left === 0
-      ? []
-      : [
-          `${left} ${left === 1 ? 'point has' : 'points have'} no place in the picture and ${left === 1 ? 'is' : 'are'} left out.`,
-        ];
-  return { spec, warnings };
+  return { spec, warnings: leftOut(left) };
 }

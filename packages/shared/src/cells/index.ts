@@ -17,7 +17,7 @@ export { cellNamePattern, isCellName } from './name.ts';
 export { networkSettings } from './network.ts';
 export type { ListedReaction, NetworkResult, ResultUnits } from './network.ts';
 export { plotMarks, plotSettings } from './plot.ts';
-export type { PlotMark, PlotResult } from './plot.ts';
+export type { PlotMark, PlotResult, PlotSettings } from './plot.ts';
 export { proseSettings } from './prose.ts';
 export type { ProseResult, WovenValue } from './prose.ts';
 export { findReferences, mapReferences } from './references.ts';

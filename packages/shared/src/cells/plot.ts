@@ -34,6 +34,8 @@ export const plotSettings = z.strictObject({
   alternative: z.optional(z.string().check(z.maxLength(2000))),
 });
 
+export type PlotSettings = z.infer<typeof plotSettings>;
+
 /** A Vega-Lite 6 specification that holds its data. */
 export interface PlotResult {
   readonly spec: Readonly<Record<string, unknown>>;
