@@ -60,7 +60,10 @@ function secondLook(cells: readonly FileCell[]): string | null {
     names.set(name, place);
     ids.set(id, place);
   }
-  return null;
+  const keyed = cells.find(({ id, name }) => name === '' && names.has(id));
+  return keyed === undefined
+    ? null
+    : `A cell without a name has the id "${keyed.id}", which is the name of another: their results could not be told apart.`;
 }
 
 /** Ids for cells that go without: c and the place, or the next number that no cell bears. */
