@@ -11,7 +11,7 @@ import { treeConstants } from './tree-constants.ts';
 export function exactBalancedState(context: TheoremContext): readonly Rational[] | null {
   return context.memo('exact balanced state', () => {
     const constants = context.exactConstants;
-    const trees = constants && context.coefficients.whole ? treeConstants(context, constants) : null;
+    const trees = constants && context.whole ? treeConstants(context, constants) : null;
     if (trees === null) return null;
     const known = new Map<number, Rational>();
     while (known.size < context.species.length) {

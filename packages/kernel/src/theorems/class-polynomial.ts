@@ -27,12 +27,7 @@ const HIGHEST_DEGREE = 40;
 export function zerosOnClass(context: TheoremContext): number | 'all' | null {
   const constants = context.exactConstants;
   const start = context.exactStart;
-  if (
-    constants === null ||
-    start === null ||
-    !context.coefficients.whole ||
-    context.kinetics.otherLaw !== null
-  )
+  if (constants === null || start === null || !context.whole || context.kinetics.otherLaw !== null)
     return null;
   const direction = directionOf(context);
   const lead = direction.findIndex((entry) => sign(entry) !== 0);

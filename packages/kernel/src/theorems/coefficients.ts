@@ -13,8 +13,6 @@ export interface Term {
  */
 export class Coefficients {
   readonly scale: readonly bigint[];
-  /** Whether every coefficient is an integer. */
-  readonly whole: boolean;
   readonly #terms: readonly (readonly Term[])[];
   readonly #scaled: readonly ReadonlyMap<number, bigint>[];
 
@@ -26,7 +24,6 @@ export class Coefficients {
       scale[i] = lcm(scale[i]!, BigInt(denominators[k]!));
     }
     this.scale = scale;
-    this.whole = scale.every((factor) => factor === 1n);
     const terms: Term[][] = [];
     const scaled: Map<number, bigint>[] = [];
     for (let complex = 0; complex < count; complex++) {

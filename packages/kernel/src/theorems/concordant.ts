@@ -50,7 +50,7 @@ function noDiscordance(context: TheoremContext): Hypothesis[] {
     'The network is concordant: no change of the species within a class can leave every net rate unchanged by signs alone.';
   if (monomolecularUniqueness(context)) {
     const reason =
-      'No complex has two or more molecules and every linkage class has one terminal strong class, which suffices.';
+      'No complex has two or more molecules, and every linkage class has one terminal strong class, which holds the zero complex where the class does; that suffices.';
     return [{ claim, text: `${text} ${reason}`, holds: true }];
   }
   const search = discordanceOf(context);

@@ -145,6 +145,11 @@ export class TheoremContext {
     return species.map((i) => this.species[i]!);
   }
 
+  /** Whether every coefficient is a whole number. */
+  get whole(): boolean {
+    return this.structure.complexes.denominators?.every((denominator) => denominator === 1) ?? true;
+  }
+
   get coefficients(): Coefficients {
     return this.memo('coefficients', () => new Coefficients(this.structure));
   }

@@ -223,8 +223,7 @@ export function massActionInCounts(context: TheoremContext): Hypothesis {
   const claim = 'mass action in counts';
   const text =
     'All rates are mass action in counts, with whole numbers of molecules, and nothing but reactions changes a species.';
-  if (!context.coefficients.whole)
-    return { claim, text: `${text} A coefficient is not a whole number.`, holds: false };
+  if (!context.whole) return { claim, text: `${text} A coefficient is not a whole number.`, holds: false };
   const weighted = [...context.network.weights.keys()].map((species) => context.network.species[species]!);
   if (weighted.length > 0)
     return { claim, text: `${text} Here ${weighted.join(', ')} has a weight of its own.`, holds: false };

@@ -50,7 +50,7 @@ const LONG_LIST = 20_000;
 
 const compartmental: Hypothesis = {
   claim,
-  text: `${text} No complex has two or more molecules and every linkage class has one terminal strong class, so they have one sign.`,
+  text: `${text} No complex has two or more molecules, and every linkage class has one terminal strong class, which holds the zero complex where the class does; so they have one sign.`,
   holds: true,
 };
 

@@ -10,7 +10,7 @@ const MOST_MOLECULES = 6;
  * that suffices. False says only that a bounded search did not show it.
  */
 export function wholeLattice(context: TheoremContext): boolean {
-  if (!context.coefficients.whole || context.species.length > 40 || context.arrows.length > 200) return false;
+  if (!context.whole || context.species.length > 40 || context.arrows.length > 200) return false;
   if (context.conservation?.holds === true) return false;
   const forward = context.arrows.map(({ from, to }) => [context.terms(from), context.terms(to)] as const);
   const backward = context.arrows.map(({ from, to }) => [context.terms(to), context.terms(from)] as const);

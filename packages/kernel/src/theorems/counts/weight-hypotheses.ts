@@ -14,8 +14,7 @@ export function countRates(context: TheoremContext): Hypothesis {
   const text =
     'In counts every rate is mass action, with the weight of a species in place of its count where one is given, and molecules come in whole numbers.';
   const rates = massAction(context);
-  if (!context.coefficients.whole)
-    return { claim, text: `${text} A coefficient is not a whole number.`, holds: false };
+  if (!context.whole) return { claim, text: `${text} A coefficient is not a whole number.`, holds: false };
   const { witness } = rates;
   return { claim, text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
 }

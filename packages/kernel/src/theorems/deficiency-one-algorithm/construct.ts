@@ -25,7 +25,7 @@ export function constructPair(
 ): ConstructedPair | null {
   const regular = regularNetwork(context);
   const flow = realisedFlow(context, outcome.g);
-  if (typeof regular === 'string' || flow === null || !context.coefficients.whole) return null;
+  if (typeof regular === 'string' || flow === null || !context.whole) return null;
   const largest = [...outcome.mu, outcome.level].reduce(
     (most, value) => Math.max(most, Math.abs(Number(value))),
     1,

@@ -27,7 +27,7 @@ export interface MassActionSystem {
 /** Builds the equations, or null where the network is too large or has coefficients that are not whole. */
 export function massActionSystem(context: TheoremContext): MassActionSystem | null {
   return context.memo('mass-action system', () => {
-    if (!context.dense || !context.coefficients.whole || context.species.length > 60) return null;
+    if (!context.dense || !context.whole || context.species.length > 60) return null;
     return {
       species: context.species.length,
       reactions: context.arrows.map(({ from, to }) => ({
