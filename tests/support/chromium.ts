@@ -1,5 +1,7 @@
 import { existsSync } from 'node:fs';
+import { fileURLToPath } from 'node:url';
 import { type Browser, type BrowserContext, chromium, type Page } from 'playwright-core';
+import type { TestContext } from 'vitest';
 
 const executable = ['/usr/bin/chromium', '/usr/bin/chromium-browser'].find((path) => existsSync(path));
 
@@ -68,4 +70,16 @@ export async function signIn(page: Page, email: string, password: string): Promi
   await page.locator('#password').fill(password);
   await page.getByRole('button', { name: 'Sign in', exact: true }).click();
   await page.waitForURL((url) => url.pathname !== '/sign-in');
+}
+
+const pictures = fileURLToPath(new URL('../browser/pictures/', import.meta.url));
+
+/** Leaves a picture of every open page when the test fails, by test and person. */
+export function pictureOnFailure(context: TestContext, people: ReadonlyMap<string, WatchedPage>): void {
+  context.onTestFailed(async () => {
+    for (const [name, { page }] of people) {
+      const file = `${context.task.name} ${name}`.replaceAll(/[^\w]+/g, '-').slice(0, 90);
+      await page.screenshot({ path: `${pictures}${file}.png` }).catch(() => undefined);
+    }
+  });
 }

@@ -25,7 +25,8 @@ function notation(told: (found: readonly Complaint[]) => void): Extension {
     rowGutter,
     alignedColumns,
     complaints(checkNotation, told),
-    autocompletion({ override: [notationCompletion], icons: false, defaultKeymap: true }),
+    // Nothing is chosen until an arrow chooses it: Enter after "10 uM" begins a line, whatever is on offer.
+    autocompletion({ override: [notationCompletion], icons: false, selectOnOpen: false }),
   ];
 }
 
