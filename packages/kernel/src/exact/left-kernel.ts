@@ -34,15 +34,20 @@ const EXACT_ENTRIES = 250_000;
  * Certified rank and left kernel of a sparse integer matrix, block by block (blocks: connected components of the
  * bipartite graph of rows and columns). Blocks whose columns have at most two entries are solved exactly along a forest;
  * others modulo primes below 2^22, lifted and verified over the integers (after Dumas, Saunders, Villard 2001). Null where
- * a block is too large to be decided. Deterministic.
+ * a block is too large to be decided. Deterministic. `checkpoint` is called often and may throw to end the work.
  */
-export function leftKernel(matrix: SparseColumns): LeftKernel | null {
+export function leftKernel(
+  matrix: SparseColumns,
+  checkpoint: () => void = () => undefined,
+): LeftKernel | null {
   if (onlyPairs(matrix)) return pairLeftKernel(matrix);
   let rank = 0;
   let complete = true;
   const basis: SparseVector[] = [];
   for (const block of connectedBlocks(matrix)) {
-    const local = onlyPairs(block.matrix) ? pairLeftKernel(block.matrix) : blockLeftKernel(block.matrix);
+    const local = onlyPairs(block.matrix)
+      ? pairLeftKernel(block.matrix)
+      : blockLeftKernel(block.matrix, checkpoint);
     if (local === null) return null;
     rank += local.rank;
     complete &&= local.complete;
@@ -75,13 +80,13 @@ export function modularRanks(matrix: SparseColumns, part: Int32Array, parts: num
   return ranks;
 }
 
-function blockLeftKernel(matrix: SparseColumns): LeftKernel | null {
+function blockLeftKernel(matrix: SparseColumns, checkpoint: () => void): LeftKernel | null {
   const check = new AnnihilationCheck(matrix);
   const largest = Math.min(matrix.rowCount, matrix.columnCount);
   let lift: ModularLift | null = null;
   for (let attempt = 0; attempt < PRIMES; attempt++) {
     const field = primeField(attempt);
-    const kernel = modularLeftKernel(modularColumns(matrix, field.p), field);
+    const kernel = modularLeftKernel(modularColumns(matrix, field.p), field, checkpoint);
     if (kernel === null) return null;
     if (lift === null || kernel.rank > lift.rank) lift = new ModularLift(kernel, check);
     if (lift.include(kernel, field)) return { rank: lift.rank, basis: lift.proven(), complete: true };

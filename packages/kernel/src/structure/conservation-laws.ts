@@ -36,7 +36,7 @@ export function conservationLaws(
   network: StructuralNetwork,
   checkpoint: () => void = () => undefined,
 ): ConservationLaws | null {
-  const kernel = leftKernel(stoichiometry(network, spanningForest(network)).matrix);
+  const kernel = leftKernel(stoichiometry(network, spanningForest(network)).matrix, checkpoint);
   return kernel === null ? null : lawsOfKernel(kernel, checkpoint);
 }
 

@@ -8,6 +8,8 @@ import { UnionFind } from './union-find.ts';
 
 /** Linear programmes beyond this many entries are not tried. */
 const PROGRAMME_ENTRIES = 150_000;
+/** Pivots times entries of one programme. */
+const PROGRAMME_WORK = 40_000_000;
 
 /**
  * Whether N v = 0 has a solution v that is positive at every arrow; null where the network is too large to be decided.
@@ -126,7 +128,8 @@ function blocks(changes: readonly LawChange[], columnCount: number): LawChange[]
 function balancePositively(rows: readonly LawChange[]): boolean | null {
   if (rows.every(sumsToZero)) return true;
   const columns = distinctColumns(rows);
-  if (rows.length * columns.length > PROGRAMME_ENTRIES) return null;
+  const entries = rows.length * columns.length;
+  if (entries > PROGRAMME_ENTRIES) return null;
   const conditions: LinearCondition[] = rows.map((_, row) => {
     const terms = columns.flatMap((column, variable) => {
       const value = column.get(row);
@@ -135,7 +138,8 @@ function balancePositively(rows: readonly LawChange[]): boolean | null {
     const right = -terms.reduce((sum, [, value]) => sum + value, 0n);
     return { terms, relation: '=', right };
   });
-  const outcome = solveLinear({ variables: columns.length, conditions });
+  const pivots = Math.ceil(PROGRAMME_WORK / entries);
+  const outcome = solveLinear({ variables: columns.length, conditions }, pivots);
   return outcome.kind === 'unfinished' ? null : outcome.kind === 'feasible';
 }
 

@@ -27,10 +27,18 @@ export interface ModularKernel {
   readonly forms: LinearForms;
 }
 
-/** Computes the left kernel of a sparse matrix modulo p; null where the dense core would be too large. */
-export function modularLeftKernel(matrix: ModularColumns, field: PrimeField): ModularKernel | null {
+/**
+ * Computes the left kernel of a sparse matrix modulo p; null where the dense core would be too large. `checkpoint` is
+ * called before each vector of the dense core.
+ */
+export function modularLeftKernel(
+  matrix: ModularColumns,
+  field: PrimeField,
+  checkpoint: () => void = () => undefined,
+): ModularKernel | null {
   const order = eliminationOrder(matrix);
-  const core = coreKernel(matrix, order, field);
+  checkpoint();
+  const core = coreKernel(matrix, order, field, checkpoint);
   if (core === null) return null;
   const width = core.parameters.length + order.free.length;
   const forms = new LinearForms(matrix.rowCount, width, field);
@@ -58,7 +66,12 @@ interface CoreKernel {
   assign(forms: LinearForms): void;
 }
 
-function coreKernel(matrix: ModularColumns, order: EliminationOrder, field: PrimeField): CoreKernel | null {
+function coreKernel(
+  matrix: ModularColumns,
+  order: EliminationOrder,
+  field: PrimeField,
+  checkpoint: () => void,
+): CoreKernel | null {
   const { core, unused } = order;
   const none = new Int32Array(0);
   if (unused.length === 0) {
@@ -74,9 +87,9 @@ function coreKernel(matrix: ModularColumns, order: EliminationOrder, field: Prim
   order.resolvedRows.forEach((row, k) => overCore.resolve(matrix, row, order.resolvedColumns[k]!));
   const undetermined = core.length + order.resolvedRows.length;
   const sparse = core.length > SMALL_CORE && core.length < 0.8 * undetermined && overCore.density < 0.1;
-  if (sparse) return sparseCore(matrix, order, overCore, field);
+  if (sparse) return sparseCore(matrix, order, overCore, field, checkpoint);
   if (core.length > DENSE_LIMIT) return null;
-  return denseCore(matrix, order, overCore, field);
+  return denseCore(matrix, order, overCore, field, checkpoint);
 }
 
 /** The restrictions are a smaller sparse matrix: treat it in the same way. */
@@ -85,9 +98,10 @@ function sparseCore(
   order: EliminationOrder,
   overCore: LinearForms,
   field: PrimeField,
+  checkpoint: () => void,
 ): CoreKernel | null {
   const { core, unused } = order;
-  const inner = modularLeftKernel(restrictions(matrix, unused, overCore), field);
+  const inner = modularLeftKernel(restrictions(matrix, unused, overCore), field, checkpoint);
   if (inner === null) return null;
   return {
     parameters: inner.parameters.map((j) => core[j]!),
@@ -116,11 +130,13 @@ function denseCore(
   order: EliminationOrder,
   overCore: LinearForms,
   field: PrimeField,
+  checkpoint: () => void,
 ): CoreKernel {
   const { core, unused } = order;
   const space = new DenseCore(core.length, field);
   const vector = new Float64Array(core.length);
   const add = (column: number) => {
+    checkpoint();
     overCore.restrictionInto(vector, matrix, column);
     return space.add(vector, column);
   };
