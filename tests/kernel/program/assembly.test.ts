@@ -10,7 +10,7 @@ import {
   spaces,
 } from '@stillroom/kernel/program';
 import fc from 'fast-check';
-import { describe, expect, test } from 'vitest';
+import { describe, expect, test, vi } from 'vitest';
 
 const inputs = 4;
 const results = 6;
@@ -132,5 +132,18 @@ describe('a program', () => {
     assembly.memory.set([5, 6], 2);
     assembly.routine('swap')();
     expect([...assembly.memory.slice(2, 4)]).toEqual([6, 5]);
+  });
+
+  test('falls back on the interpreter where WebAssembly may not be compiled', () => {
+    const compile = vi.spyOn(WebAssembly, 'Module').mockImplementation(function refuse() {
+      throw new WebAssembly.CompileError('refused by the content policy');
+    });
+    try {
+      expect(assemble(8, () => new Map()).backend).toBe('interpreted');
+      expect(() => assemble(8, () => new Map(), 'wasm')).toThrow('refused');
+    } finally {
+      compile.mockRestore();
+    }
+    expect(assemble(8, () => new Map()).backend).toBe('wasm');
   });
 });

@@ -35,29 +35,27 @@ export interface Assembly {
 
 /**
  * Makes a program of named routines over `slots` numbers. `makeRoutines` is given the memory, for host routines that
- * work on it; routines are named before they are called. Both backends give the same bits.
+ * work on it; routines are named before they are called. Unless a backend is asked for, WebAssembly is taken wherever
+ * the host has it and its content policy lets it be compiled. Both backends give the same bits.
  */
-export function assemble(
-  slots: number,
-  makeRoutines: (memory: Float64Array) => ReadonlyMap<string, Routine>,
-  backend: Backend = preferredBackend(),
-): Assembly {
-  return backend === 'wasm' ? assembleModule(slots, makeRoutines) : assembleInterpreted(slots, makeRoutines);
+export function assemble(slots: number, makeRoutines: MakeRoutines, backend?: Backend): Assembly {
+  const wanted = backend ?? (typeof WebAssembly === 'object' ? 'wasm' : 'interpreted');
+  if (wanted === 'interpreted') return assembleInterpreted(slots, makeRoutines);
+  try {
+    return assembleModule(slots, makeRoutines);
+  } catch (error) {
+    if (backend !== undefined || !(error instanceof WebAssembly.CompileError)) throw error;
+    return assembleInterpreted(slots, makeRoutines);
+  }
 }
 
-/** WebAssembly wherever the host has it. */
-export function preferredBackend(): Backend {
-  return typeof WebAssembly === 'object' ? 'wasm' : 'interpreted';
-}
+type MakeRoutines = (memory: Float64Array) => ReadonlyMap<string, Routine>;
 
 function missing(name: string): Error {
   return new Error(`The program has no routine "${name}" at this point.`);
 }
 
-function assembleInterpreted(
-  slots: number,
-  makeRoutines: (memory: Float64Array) => ReadonlyMap<string, Routine>,
-): Assembly {
+function assembleInterpreted(slots: number, makeRoutines: MakeRoutines): Assembly {
   const memory = new Float64Array(slots);
   const routines = makeRoutines(memory);
   const runs = new Map<string, RunRoutine>();
@@ -105,10 +103,7 @@ function interpreted(
 const bases = [valueType.i32, valueType.i32];
 const pageBytes = 65536;
 
-function assembleModule(
-  slots: number,
-  makeRoutines: (memory: Float64Array) => ReadonlyMap<string, Routine>,
-): Assembly {
+function assembleModule(slots: number, makeRoutines: MakeRoutines): Assembly {
   const pages = Math.max(1, Math.ceil((slots * 8) / pageBytes));
   const storage = new WebAssembly.Memory({ initial: pages });
   const memory = new Float64Array(storage.buffer, 0, slots);

@@ -1,4 +1,4 @@
-export { assemble, preferredBackend } from './assembly.ts';
+export { assemble } from './assembly.ts';
 export type { Assembly, Backend, Call, Routine, RunRoutine } from './assembly.ts';
 export { gradient } from './derivative.ts';
 export { Graph, spaces } from './graph.ts';
