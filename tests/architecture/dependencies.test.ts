@@ -57,7 +57,7 @@ describe('modules of the server', () => {
     ['collaboration', 'compute'],
     ['records'],
     ['reviews'],
-    ['operator'],
+    ['shelf', 'operator'],
   ];
   const rank = (module: string) => order.findIndex((level) => level.includes(module));
   const moduleOf = (path: string) => /^packages\/server\/src\/modules\/([^/]+)\//.exec(path)?.[1] ?? null;
