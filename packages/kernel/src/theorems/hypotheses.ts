@@ -181,6 +181,9 @@ function withoutWitness(claim: HypothesisClaim, text: string, holds: boolean | n
 
 /** How many siphons are listed one by one with their laws; above, one sentence speaks for all. */
 const LISTED_SIPHONS = 12;
+/** Names of one siphon that its sentence shows, and species up to which it is carried as evidence. */
+const SHOWN_NAMES = 24;
+const LONGEST_WITNESS = 2_000;
 
 /** Every siphon contains the support of a non-negative law; one hypothesis per minimal siphon while they are few. */
 export function noCriticalSiphon(context: TheoremContext): Hypothesis[] {
@@ -189,9 +192,16 @@ export function noCriticalSiphon(context: TheoremContext): Hypothesis[] {
   const summary = 'Every siphon contains all species of some conservation law that is not negative.';
   const critical = siphons.find((siphon) => siphon.critical === true);
   if (critical !== undefined) {
-    const names = context.speciesNames(Array.from(critical.species));
-    const text = `${summary} The siphon {${names.join(', ')}} contains none.`;
-    return [{ claim, text, holds: false, witness: { kind: 'set', species: names } }];
+    const text = `${summary} The siphon ${setText(context, critical.species)} contains none.`;
+    if (critical.species.length > LONGEST_WITNESS) return [{ claim, text, holds: false }];
+    return [
+      {
+        claim,
+        text,
+        holds: false,
+        witness: { kind: 'set', species: context.speciesNames(Array.from(critical.species)) },
+      },
+    ];
   }
   if (!complete) {
     return [{ claim, text: `${summary} There are too many siphons to look at all of them.`, holds: null }];
@@ -202,19 +212,26 @@ export function noCriticalSiphon(context: TheoremContext): Hypothesis[] {
   if (siphons.length === 0) return [{ claim, text: `${summary} There is no siphon.`, holds: true }];
   const all: Hypothesis = {
     claim,
-    text: `${summary} The minimal siphons are ${siphons.length} in number.`,
+    text: `${summary} There ${siphons.length === 1 ? 'is one minimal siphon' : `are ${siphons.length} minimal siphons`}.`,
     holds: true,
   };
   const listed = siphons.slice(0, LISTED_SIPHONS).flatMap(({ species, law }): Hypothesis[] => {
-    if (law === null) return [];
-    const names = context.speciesNames(Array.from(species));
-    const text = `The siphon {${names.join(', ')}} contains all species of a conservation law that is not negative.`;
+    if (law === null || species.length > LONGEST_WITNESS) return [];
+    const text = `The siphon ${setText(context, species)} contains all species of a conservation law that is not negative.`;
     const entries = context.sparseLawEntries(law);
     return [
       { claim: 'siphon holds a law', text, holds: true, witness: { kind: 'vector', of: 'laws', entries } },
     ];
   });
   return [all, ...listed];
+}
+
+/** A set of species in braces; long ones are cut. */
+function setText(context: TheoremContext, species: Int32Array): string {
+  const shown = context.speciesNames(Array.from(species.subarray(0, SHOWN_NAMES)));
+  return species.length <= SHOWN_NAMES
+    ? `{${shown.join(', ')}}`
+    : `{${shown.join(', ')}, …} of ${species.length} species`;
 }
 
 /** Counts need whole numbers of molecules, and rates that are falling factorials. */
