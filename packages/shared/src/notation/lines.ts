@@ -3,6 +3,9 @@ import { afterContinuation, afterNewline, isBlank } from './tokens.ts';
 const HASH = 35;
 const BAR = 124;
 
+/** Most lines of a long text have none. */
+const noBars: readonly number[] = [];
+
 /** A line of the text with those that its `\` joins to it. Offsets into the text; `to` is before the comment. */
 export interface LogicalLine {
   /** 1-based number of its first line. */
@@ -23,14 +26,14 @@ export function logicalLines(text: string): LogicalLine[] {
   while (at < text.length) {
     const first = line;
     const from = at;
-    const bars: number[] = [];
+    let bars: number[] | null = null;
     let comment: number | null = null;
     for (;;) {
       const next = afterNewline(text, at);
       if (at >= text.length || next >= 0) {
         const to = comment ?? at;
         const rest = comment === null ? null : text.slice(comment + 1, at);
-        lines.push({ line: first, from, to, bars, comment: rest });
+        lines.push({ line: first, from, to, bars: bars ?? noBars, comment: rest });
         at = next >= 0 ? next : at;
         line += 1;
         break;
@@ -43,7 +46,7 @@ export function logicalLines(text: string): LogicalLine[] {
         continue;
       }
       if (comment === null && code === HASH) comment = at;
-      if (comment === null && code === BAR) bars.push(at);
+      if (comment === null && code === BAR) (bars ??= []).push(at);
       at += 1;
     }
   }

@@ -35,16 +35,16 @@ export function parseTree(text: string, complaints: Complaints): NetworkTree {
 }
 
 function parseLine(text: string, line: LogicalLine, complaints: Complaints): LineSyntax {
-  const base = { line: line.line, comment: line.comment, to: line.to };
-  if (line.from === line.to) return { kind: 'blank', ...base, from: line.from };
+  const { from: begin, to, line: number, comment } = line;
+  if (begin === to) return { kind: 'blank', line: number, comment, from: begin, to };
   const scanner = new Scanner(text, line.from, line.to, 'expression');
-  if (scanner.kind === 'end') return { kind: 'blank', ...base, from: line.from };
+  if (scanner.kind === 'end') return { kind: 'blank', line: number, comment, from: begin, to };
   const from = scanner.from;
   const read =
     scanner.kind === 'name' && isStatementWord(scanner.word)
       ? parseStatement(scanner, line, complaints)
       : parseRow(text, line, complaints);
-  return read ?? { kind: 'broken', source: plainText(text, line.from, line.to), ...base, from };
+  return read ?? { kind: 'broken', source: plainText(text, begin, to), line: number, comment, from, to };
 }
 
 function parseStatement(scanner: Scanner, line: LogicalLine, complaints: Complaints): LineSyntax | null {

@@ -21,7 +21,8 @@ import { Values } from './values.ts';
  * an error stands in the way; every error is told.
  */
 export function elaborate(tree: NetworkTree, complaints: Complaints): Network | null {
-  const stage = prepare(tree, complaints);
+  const lines = tree.lines.filter((line) => line.kind !== 'blank');
+  const stage = prepare({ lines }, complaints);
   const outputs = expandLines(stage);
   const laws = resolveLaws(stage);
   const statements = elaborateStatements(stage, outputs);
