@@ -15,7 +15,16 @@ await main(() => {
   mkdirSync(dirname(file), { recursive: true });
   const draft = `${file}.part`;
   // Rights are given anew when restoring, so that the names of the roles may differ there.
-  const args = ['--format=custom', '--no-owner', '--no-privileges', `--file=${draft}`, url];
+  // What was being computed stays out: its results are kept by digest, and what is missing is queued again.
+  const args = [
+    '--format=custom',
+    '--no-owner',
+    '--no-privileges',
+    '--exclude-schema=graphile_worker',
+    '--exclude-table-data=cell_run',
+    `--file=${draft}`,
+    url,
+  ];
   const { ok, output } = runQuietly(join(needPostgres(), 'pg_dump'), args);
   if (!ok) {
     rmSync(draft, { force: true });

@@ -17,9 +17,15 @@ export interface TestServer {
   stop(): Promise<void>;
 }
 
-/** A whole server on a free port with a database of its own; limits are wide unless a test sets them. */
-export async function startTestServer(settings: Readonly<Record<string, string>> = {}): Promise<TestServer> {
-  const database = await createTestDatabase();
+/**
+ * A whole server on a free port with a database of its own, or with a given one that the caller drops; limits are wide
+ * unless a test sets them.
+ */
+export async function startTestServer(
+  settings: Readonly<Record<string, string>> = {},
+  given?: TestDatabase,
+): Promise<TestServer> {
+  const database = given ?? (await createTestDatabase());
   const log: string[] = [];
   const logger: Logger = createLogger('info', (line) => void log.push(line.trimEnd()));
   const config = readConfig({
@@ -40,7 +46,7 @@ export async function startTestServer(settings: Readonly<Record<string, string>>
     async stop() {
       await running.stop();
       await owner.end();
-      await database.drop();
+      if (given === undefined) await database.drop();
     },
   };
 }
