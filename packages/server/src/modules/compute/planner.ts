@@ -13,9 +13,10 @@ import {
 import { type CellNotice, limits } from '@stillroom/shared/protocol';
 import type { Connection, Room, RoomObserver } from '../collaboration/index.ts';
 import type { CellStanding } from '../notebooks/index.ts';
+import { Announcer } from './announcer.ts';
 import { noticeOf, type Run } from './cell-state.ts';
 import type { Demand } from './demand.ts';
-import { type CellNews, planFrame } from './notices.ts';
+import type { CellNews } from './notices.ts';
 import type { RunOwner, RunQueue } from './queue.ts';
 import type { Known, ResultStore } from './results.ts';
 import { StateKeeper, type NotebookFile } from './state-keeper.ts';
@@ -52,6 +53,7 @@ const nothing: Plan = { cells: [], byId: new Map(), order: [] };
 export class Planner implements RoomObserver {
   readonly #options: PlannerOptions;
   readonly #keeper: StateKeeper;
+  readonly #announcer: Announcer;
   readonly #memory = newPlanMemory();
   #content: NotebookContent = { title: '', subject: 'none', cells: [] };
   #plan = nothing;
@@ -60,7 +62,6 @@ export class Planner implements RoomObserver {
   /** Digests that somebody asked to have computed, whatever is held or failed. */
   readonly #asked = new Set<string>();
   #shown = new Map<string, string>();
-  #said = new Map<string, string>();
   /** Whether somebody who may run cells has been here since the room opened. */
   #mayRun = false;
   #group = '';
@@ -70,6 +71,7 @@ export class Planner implements RoomObserver {
 
   constructor(options: PlannerOptions) {
     this.#options = options;
+    this.#announcer = new Announcer(options.room);
     this.#keeper = new StateKeeper(options.file, options.room.notebook, options.failed);
   }
 
@@ -84,7 +86,7 @@ export class Planner implements RoomObserver {
       this.#mayRun = true;
       this.replan();
     }
-    if (this.#opened) connection.send(planFrame(true, this.#news(), []));
+    if (this.#opened) this.#announcer.greet(connection, this.#each());
   }
 
   /** Whether a run is awaited or a plan is being made. */
@@ -98,6 +100,7 @@ export class Planner implements RoomObserver {
   }
 
   closed(): void {
+    this.#announcer.stop();
     for (const digest of this.#runs.keys()) this.#options.demand.release(digest, this);
   }
 
@@ -211,8 +214,7 @@ export class Planner implements RoomObserver {
     this.#letGo();
     await this.#learn();
     const submitted = this.#submitReady();
-    if (this.#opened) this.#announce();
-    else this.#announceAll();
+    this.#announce();
     await submitted;
   }
 
@@ -327,28 +329,14 @@ export class Planner implements RoomObserver {
     });
   }
 
-  #news(): CellNews[] {
-    return this.#each();
-  }
-
-  /** Tells everybody what is different from what was said last, and has it written down. */
+  /** Tells everybody how the cells stand now, and has it written down. */
   #announce(): void {
     const all = this.#each();
-    const said = new Map(all.map(({ notice }) => [notice.id, JSON.stringify(notice)]));
-    const news = all.filter(({ notice }) => this.#said.get(notice.id) !== said.get(notice.id));
-    const gone = [...this.#said.keys()].filter((id) => !said.has(id));
-    this.#said = said;
-    for (const id of gone) this.#shown.delete(id);
-    if (news.length > 0 || gone.length > 0) this.#options.room.send(planFrame(false, news, gone), null);
-    this.#keeper.keep(this.#content, all.map(asState));
-  }
-
-  /** The first plan goes whole to everybody who came in before it was made. */
-  #announceAll(): void {
-    const all = this.#each();
+    for (const id of this.#shown.keys()) if (!this.#plan.byId.has(id)) this.#shown.delete(id);
+    if (this.#opened) this.#announcer.tell(all);
+    // The first plan goes whole to everybody who came in before it was made.
+    else this.#announcer.tellAll(all);
     this.#opened = true;
-    this.#said = new Map(all.map(({ notice }) => [notice.id, JSON.stringify(notice)]));
-    this.#options.room.send(planFrame(true, all, []), null);
     this.#keeper.keep(this.#content, all.map(asState));
   }
 }
