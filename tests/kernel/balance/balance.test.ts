@@ -105,4 +105,15 @@ describe('balance', () => {
     const balanced = balance(text, { constants: ['3/2', 1, power, lower] });
     expect(balanced.complexConditions[0]).toMatchObject({ holds: true, left: null, right: null });
   });
+
+  test('a constant that is 0 leaves balance open and says so', () => {
+    const result = balance('A <=> B', { constants: [0, 1] });
+    expect(result).toMatchObject({ complexBalanced: null, detailedBalanced: null, nearest: null });
+    expect(result.why).toContain('k1 is 0');
+  });
+
+  test('coefficients of a million and an empty network have defined answers', () => {
+    expect(balance('1000000 A <=> B', { constants: [1, 2], start: { A: 1 } }).complexBalanced).toBe(true);
+    expect(balance('', {})).toMatchObject({ complexBalanced: true, complexConditions: [], cycles: [] });
+  });
 });

@@ -80,6 +80,32 @@ describe('stationary law of product form', () => {
   });
 });
 
+describe('laws in counts', () => {
+  test('law = k*A^2 is mass action in rate equations but no falling factorial in counts', () => {
+    const plain = buildNetwork('2 A <=> B', { constants: [1, 1] });
+    const square: Expression = {
+      kind: 'binary',
+      operator: '*',
+      left: { kind: 'name', name: 'k1' },
+      right: {
+        kind: 'binary',
+        operator: '^',
+        left: { kind: 'name', name: 'A' },
+        right: { kind: 'number', value: 2 },
+      },
+    };
+    const network = {
+      ...plain,
+      laws: [{ expression: square, net: false, massAction: 0 }],
+      reactions: { ...plain.reactions, law: Int32Array.from([0, -1]) },
+    };
+    expect(verdictOn(network, 'complex-balance').applies).toBe('yes');
+    const verdict = verdictOn(network, 'product-form');
+    expectSilence(verdict, /not of product form/);
+    expect(verdict.hypotheses[0]).toMatchObject({ holds: false, witness: { kind: 'arrow', reaction: 0 } });
+  });
+});
+
 describe('product form at all times', () => {
   const id = 'product-form-all-times';
   const pairs = '0 <=> A; 0 <=> B; 2 A <=> 2 B';

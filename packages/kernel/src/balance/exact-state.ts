@@ -3,6 +3,9 @@ import { divide, equals, multiply, ONE, power, rational } from '../exact/index.t
 import type { TheoremContext } from '../theorems/context.ts';
 import { treeConstants } from './tree-constants.ts';
 
+/** Largest coefficient for which exact powers are formed. */
+const HIGHEST = 100;
+
 /**
  * A complex-balanced state with rational entries, where one is found by following arrows: (c^{y'} / c^y) = K_{y'} / K_y gives
  * one species after another where it enters with one molecule more or less; species that remain free are set to 1. Null
@@ -12,7 +15,7 @@ export function exactBalancedState(context: TheoremContext): readonly Rational[]
   return context.memo('exact balanced state', () => {
     const constants = context.exactConstants;
     const trees = constants && context.whole ? treeConstants(context, constants) : null;
-    if (trees === null) return null;
+    if (trees === null || context.highestCoefficient > HIGHEST) return null;
     const known = new Map<number, Rational>();
     while (known.size < context.species.length) {
       if (!extend(context, trees, known))

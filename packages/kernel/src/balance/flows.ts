@@ -18,8 +18,12 @@ export function fluxesAt(
   );
 }
 
+/** Exponents up to which powers are multiplied out. */
+const HIGHEST = 100;
+
 function powerOf(base: number, exponent: number): number {
-  if (!Number.isInteger(exponent)) return elementary.exp(exponent * elementary.ln(base));
+  if (!Number.isInteger(exponent) || exponent > HIGHEST)
+    return elementary.exp(exponent * elementary.ln(base));
   let value = 1;
   for (let k = 0; k < exponent; k++) value *= base;
   return value;

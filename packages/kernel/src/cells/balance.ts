@@ -46,11 +46,15 @@ export function analyseBalance(
   const undecided = [complex, detailed].find(({ applies }) => applies === 'undecided');
   const conditions = context.kinetics.otherLaw === null ? complexConditions(context) : null;
   const circuits = context.kinetics.otherLaw === null ? detailedConditions(context) : null;
+  const { zero, why } = context.constants;
   const answer = { yes: true, no: false, undecided: null } as const;
   return {
-    complexBalanced: answer[complex.applies],
-    detailedBalanced: answer[detailed.applies],
-    ...(undecided === undefined ? {} : { why: undecided.conclusion }),
+    complexBalanced: zero ? null : answer[complex.applies],
+    detailedBalanced: zero ? null : answer[detailed.applies],
+    ...(zero
+      ? { why: `${why}: balance needs positive constants. Leave that arrow out to see the rest.` }
+      : {}),
+    ...(zero || undecided === undefined ? {} : { why: undecided.conclusion }),
     complexConditions: (conditions ?? []).map(shown),
     detailedConditions: (circuits ?? []).map((condition) => ({ kind: condition.kind, ...shown(condition) })),
     ...listedTrees(context),

@@ -14,6 +14,8 @@ export interface ArrowConstants {
   }[];
   /** Readable, by arrow: "k1", "(k1 + k3)", "k1*A^2" with A fixed. */
   readonly names: readonly string[];
+  /** Whether some arrow has the constant 0. */
+  readonly zero: boolean;
   /** Why `exact` is null, as the end of a sentence ("k3 has no value"); null where it is not. */
   readonly why: string | null;
 }
@@ -23,6 +25,7 @@ export const unreadConstants: ArrowConstants = {
   exact: null,
   parts: [],
   names: [],
+  zero: false,
   why: 'the network is too large to read all constants',
 };
 
@@ -46,7 +49,7 @@ export function arrowConstants(structure: StructuralNetwork): ArrowConstants {
   if (why === null && zero >= 0) why = `${names[zero]} is 0`;
   const exact: Rational[] = [];
   for (const value of values) if (value !== null && sign(value) > 0) exact.push(value);
-  return { exact: exact.length === values.length ? exact : null, parts, names, why };
+  return { exact: exact.length === values.length ? exact : null, parts, names, zero: zero >= 0, why };
 }
 
 interface NamedConstant {

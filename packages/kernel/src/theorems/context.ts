@@ -150,6 +150,12 @@ export class TheoremContext {
     return this.structure.complexes.denominators?.every((denominator) => denominator === 1) ?? true;
   }
 
+  /** The largest coefficient of a species in a complex. */
+  get highestCoefficient(): number {
+    const { numerators, denominators } = this.structure.complexes;
+    return numerators.reduce((most, value, k) => Math.max(most, value / (denominators?.[k] ?? 1)), 0);
+  }
+
   get coefficients(): Coefficients {
     return this.memo('coefficients', () => new Coefficients(this.structure));
   }

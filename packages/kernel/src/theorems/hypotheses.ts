@@ -234,6 +234,9 @@ function setText(context: TheoremContext, species: Int32Array): string {
     : `{${shown.join(', ')}, …} of ${species.length} species`;
 }
 
+/** Why a written law is not mass action in counts. */
+export const NOT_FALLING = 'A written law with a power of a count is no falling factorial.';
+
 /** Counts need whole numbers of molecules, and rates that are falling factorials. */
 export function massActionInCounts(context: TheoremContext): Hypothesis {
   const rates = massAction(context);
@@ -244,6 +247,15 @@ export function massActionInCounts(context: TheoremContext): Hypothesis {
   const weighted = [...context.network.weights.keys()].map((species) => context.network.species[species]!);
   if (weighted.length > 0)
     return { claim, text: `${text} Here ${weighted.join(', ')} has a weight of its own.`, holds: false };
+  const { unlikeInCounts } = context.kinetics;
+  if (rates.holds === true && unlikeInCounts !== null) {
+    return {
+      claim,
+      text: `${text} ${NOT_FALLING}`,
+      holds: false,
+      witness: { kind: 'arrow', reaction: unlikeInCounts },
+    };
+  }
   const { witness } = rates;
   return { claim, text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
 }

@@ -13,6 +13,8 @@ import { appliesWhenAllHold } from './theorem.ts';
 /** Derivatives along the solution that are looked at, and species times arrows up to which they are. */
 const DERIVATIVES = 8;
 const LARGEST = 2_500;
+/** Largest coefficient for which powers of series are formed. */
+const HIGHEST = 12;
 
 /** Anderson, Schnoerr, Yuan 2020 (necessary and sufficient); Jahnke, Huisinga 2007 without larger complexes. */
 export const productFormAllTimes: Theorem = {
@@ -32,7 +34,7 @@ export const productFormAllTimes: Theorem = {
     if (rates.holds !== true) return judged([rates], '');
     if (constants === null || start === null)
       return judged([rates, ...needs], needs.map(({ text }) => text).join(' '));
-    if (context.species.length * context.arrows.length > LARGEST) {
+    if (context.species.length * context.arrows.length > LARGEST || context.highestCoefficient > HIGHEST) {
       return judged(
         [rates, { claim: 'large complexes balance', text: BALANCE, holds: null }],
         'The network is too large for the exact derivatives.',

@@ -5,7 +5,7 @@ import { balancedLogarithms } from '../../balance/balanced-state.ts';
 import { exactBalancedState } from '../../balance/exact-state.ts';
 import type { Rational } from '../../exact/index.ts';
 import type { TheoremContext } from '../context.ts';
-import { massAction } from '../hypotheses.ts';
+import { massAction, NOT_FALLING } from '../hypotheses.ts';
 import { isSummable, weightGrowth } from './weight-growth.ts';
 
 /** In counts: mass action with whole numbers of molecules, weights allowed. */
@@ -15,6 +15,15 @@ export function countRates(context: TheoremContext): Hypothesis {
     'In counts every rate is mass action, with the weight of a species in place of its count where one is given, and molecules come in whole numbers.';
   const rates = massAction(context);
   if (!context.whole) return { claim, text: `${text} A coefficient is not a whole number.`, holds: false };
+  const { unlikeInCounts } = context.kinetics;
+  if (rates.holds === true && unlikeInCounts !== null) {
+    return {
+      claim,
+      text: `${text} ${NOT_FALLING}`,
+      holds: false,
+      witness: { kind: 'arrow', reaction: unlikeInCounts },
+    };
+  }
   const { witness } = rates;
   return { claim, text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
 }

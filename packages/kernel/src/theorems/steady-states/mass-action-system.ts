@@ -24,10 +24,15 @@ export interface MassActionSystem {
   readonly lawNumbers: readonly (readonly number[])[];
 }
 
+/** Sizes beyond which the equations are not formed. */
+const MOST_SPECIES = 60;
+const HIGHEST_EXPONENT = 40;
+
 /** Builds the equations, or null where the network is too large or has coefficients that are not whole. */
 export function massActionSystem(context: TheoremContext): MassActionSystem | null {
   return context.memo('mass-action system', () => {
-    if (!context.dense || !context.whole || context.species.length > 60) return null;
+    if (!context.dense || !context.whole || context.species.length > MOST_SPECIES) return null;
+    if (context.highestCoefficient > HIGHEST_EXPONENT) return null;
     return {
       species: context.species.length,
       reactions: context.arrows.map(({ from, to }) => ({

@@ -82,7 +82,7 @@ export function isDetailedBalanced(plain: PlainNetwork): boolean | null {
   const pairs = keys.filter((key, i) => keys.indexOf(reversed(key)) > i);
   const changes = pairs.map((key) => {
     const [from, to] = key.split(' ').map(Number);
-    return changeOf(plain, { from: from!, to: to!, massAction: true, constant: null });
+    return changeOf(plain, { from: from!, to: to!, massAction: true, written: false, constant: null });
   });
   const relations = nullspace(
     plain.species.map((name) => changes.map((change) => change.get(name) ?? ZERO)),

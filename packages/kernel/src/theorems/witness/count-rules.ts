@@ -2,7 +2,7 @@ import type { Rational } from '../../exact/index.ts';
 import { add, isZero, multiply, ONE, rational, sign, toDouble, ZERO } from '../../exact/index.ts';
 import type { Amounts, PlainNetwork } from './plain-network.ts';
 import { arrowRates, changeOf, paired } from './plain-network.ts';
-import { massAction } from './rate-rules.ts';
+import { massAction, namesPower } from './rate-rules.ts';
 import { speciesVector } from './reading.ts';
 import type { Evidence } from './rules.ts';
 
@@ -16,7 +16,7 @@ export function countRates(evidence: Evidence): string | null {
   const whole = evidence.plain.complexes.every((complex) =>
     [...complex.values()].every(({ denominator }) => denominator === 1n),
   );
-  if (whole) return massAction(evidence);
+  if (whole) return namesPower(evidence) ? null : massAction(evidence);
   return evidence.holds ? 'a coefficient is not a whole number.' : null;
 }
 
@@ -154,6 +154,7 @@ function alongSolution(plain: PlainNetwork, rates: ReadonlyMap<string, Rational>
         from: from!,
         to: to!,
         massAction: true,
+        written: false,
         constant: null,
       })) {
         const i = plain.species.indexOf(name);

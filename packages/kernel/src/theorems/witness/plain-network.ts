@@ -21,6 +21,8 @@ export interface PlainReaction {
   readonly from: number;
   readonly to: number;
   readonly massAction: boolean;
+  /** Whether its rate stands as a law in the text. */
+  readonly written: boolean;
   /** Its own constant with the powers of fixed species; null where unknown, not rational or not mass action. */
   readonly constant: Rational | null;
 }
@@ -60,6 +62,7 @@ export function plainNetwork(network: Network): PlainNetwork {
     from: keys[network.reactions.from[j]!]!,
     to: keys[network.reactions.to[j]!]!,
     massAction: (network.laws[network.reactions.law[j]!] ?? { massAction: 0 }).massAction !== null,
+    written: network.reactions.law[j]! >= 0,
     constant: constantOf(network, j),
   })).filter(({ from, to }) => from !== to);
   const used = new Set(written.flatMap(({ from, to }) => [from, to]));

@@ -19,9 +19,17 @@ export function massActionInCounts(evidence: Evidence): string | null {
     [...complex.values()].every(({ denominator }) => denominator === 1n),
   );
   const plainCounts = whole && network.weights.size === 0;
+  if (plainCounts && namesPower(evidence)) return null;
   if (holds)
     return plainCounts ? massAction(evidence) : 'coefficients are fractions, or a species has a weight.';
   return plainCounts ? massAction(evidence) : null;
+}
+
+/** A "no" that names a written law whose reactants hold several molecules of one species. */
+export function namesPower({ plain, holds, witness }: Evidence): boolean {
+  const reaction = !holds && witness?.kind === 'arrow' ? plain.reactions[witness.reaction] : undefined;
+  if (reaction === undefined || !reaction.written || !reaction.massAction) return false;
+  return [...plain.complexes[reaction.from]!.values()].some(({ numerator }) => numerator > 1n);
 }
 
 /** Mass action has all of these properties; for other laws only the prover's reading of the formula speaks. */
