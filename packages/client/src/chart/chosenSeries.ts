@@ -11,7 +11,7 @@ const largest = (values: readonly (number | null)[]) =>
   values.reduce<number>((most, value) => Math.max(most, Math.abs(value ?? 0)), 0);
 
 /** The first six lines that rise from the axis at all; the first six where none does. */
-function tellingLines(all: readonly Series[]): readonly string[] {
+export function tellingLines(all: readonly Series[]): readonly string[] {
   const sizes = all.map(({ values }) => largest(values));
   const least = Math.max(...sizes, 0) * 0.02;
   const telling = all.filter((_, i) => (sizes[i] ?? 0) > least);

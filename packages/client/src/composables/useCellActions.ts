@@ -18,6 +18,7 @@ import * as api from '../api/notebooks.ts';
 import { wordsOf } from '../api/client.ts';
 import type { LiveRoom } from '../live/room.ts';
 import { renameUses } from '../live/renameUses.ts';
+import { newCellSettings, type ResultOf } from './newCellSettings.ts';
 import type { Cells } from './useCells.ts';
 
 export interface CellActions {
@@ -61,22 +62,13 @@ function replaceText(text: Y.Text, next: string): void {
   if (next.length - start - end > 0) text.insert(start, next.slice(start, next.length - end));
 }
 
-/** The settings of a new cell, drawing on what stands nearest before it where its kind needs something. */
-function settingsFor(kind: CellKind, after: string | null, cells: Cells): CellContent['settings'] {
-  const settings = cellRegistry[kind].empty.settings;
-  if (settings['network'] !== '') return settings;
-  const before = cells.order.value.slice(0, after === null ? 0 : cells.order.value.indexOf(after) + 1);
-  const nearest = [...before].reverse().find((id) => cells.byId.get(id)?.kind === 'network');
-  const network = nearest ?? cells.order.value.find((id) => cells.byId.get(id)?.kind === 'network');
-  return network === undefined ? settings : { ...settings, network: cells.byId.get(network)?.name ?? '' };
-}
-
 /** Everything an author does to cells. Each is one change of the document, so that undo takes back exactly that. */
 export function useCellActions(
   notebook: string,
   room: Readonly<{ value: LiveRoom | null }>,
   cells: Cells,
   me: () => string,
+  resultOf: ResultOf,
 ): CellActions {
   const trouble = ref<string | null>(null);
   const doc = () => room.value?.doc ?? null;
@@ -99,7 +91,8 @@ export function useCellActions(
   ): string {
     const id = crypto.randomUUID();
     const name = freshName(kind, names());
-    const { text = cellRegistry[kind].empty.text, settings = settingsFor(kind, after, cells) } = content;
+    const { text = cellRegistry[kind].empty.text, settings = newCellSettings(kind, after, cells, resultOf) } =
+      content;
     change((open) => addCell(open, { id, kind, name, text, settings }, after, origins.author));
     return id;
   }

@@ -43,6 +43,8 @@ export interface Notebook {
   readonly actions: CellActions;
   readonly undo: Undo;
   readonly selection: Selection;
+  /** The result a cell shows, where it is on this page. */
+  resultOf(cell: string): unknown;
   /** "Scheme 1" … by cell id. */
   readonly numbers: ComputedRef<ReadonlyMap<string, string>>;
   /** State of a cell; `stale` until the planner has spoken of it. */
@@ -100,6 +102,11 @@ export function openNotebook(id: string): Notebook {
     refused: () => void askAbout(),
   });
   const cells = useCells(live.room);
+  const resultOf = (cell: string): unknown => {
+    const digest = plan.notices.get(cell)?.shown;
+    const kept = digest == null ? undefined : results.byDigest.get(digest);
+    return kept?.state === 'here' ? kept.result : undefined;
+  };
   const presence = usePresence(live.room, () => session.me);
   const notebook: Notebook = {
     id,
@@ -113,7 +120,8 @@ export function openNotebook(id: string): Notebook {
     presence,
     remarks,
     abilities: useAbilities(() => about.value?.abilities ?? []),
-    actions: useCellActions(id, live.room, cells, () => session.me?.name ?? ''),
+    actions: useCellActions(id, live.room, cells, () => session.me?.name ?? '', resultOf),
+    resultOf,
     undo: useUndo(live.room),
     selection: useSelection((cell) => presence.moveTo(cell)),
     numbers: computed(() => numberCells(cells.list.value)),

@@ -16,6 +16,8 @@ function comparison({ claim, holds }: Hypothesis, left: string, right: string): 
 export function witnessText(hypothesis: Hypothesis, structure: StructureResult | null): string {
   const { witness } = hypothesis;
   if (witness === undefined) return '';
+  const speaksOfStructure = witness.kind === 'arrow' || (witness.kind === 'vector' && witness.of !== 'laws');
+  if (structure === null && speaksOfStructure) return '';
   const label = (index: number) => complexLabel(structure?.complexes?.[index]?.of ?? {});
   switch (witness.kind) {
     case 'arrow': {
@@ -39,6 +41,8 @@ export function witnessText(hypothesis: Hypothesis, structure: StructureResult |
         }
         return key;
       };
+      const count = Object.keys(witness.entries).length;
+      if (witness.of === 'fluxes' && count > 4) return `a flux on ${count} arrows`;
       const terms = Object.entries(witness.entries).map(([key, value]) =>
         String(value) === '1' ? named(key) : `${String(value).replace('-', '−')} ${named(key)}`,
       );

@@ -1,0 +1,40 @@
+import { type CellKind, cellRegistry, type TrajectoryResult } from '@stillroom/shared/cells';
+import type { CellContent } from '@stillroom/shared/document';
+import { tellingLines } from '../chart/chosenSeries.ts';
+import type { Cells } from './useCells.ts';
+
+/** The result a cell shows, where this page has it. */
+export type ResultOf = (id: string) => unknown;
+
+/** The nearest cell of a kind at or before a place (null: the beginning), else the first of all. */
+function nearest(kind: CellKind, after: string | null, cells: Cells): CellContent | undefined {
+  const order = cells.order.value;
+  const before = order.slice(0, after === null ? 0 : order.indexOf(after) + 1).reverse();
+  const id = [...before, ...order].find((one) => cells.byId.get(one)?.kind === kind);
+  return id === undefined ? undefined : cells.byId.get(id);
+}
+
+/** Indexed species need quotes in a path. */
+const speciesPath = (name: string) =>
+  /^[\p{L}_][\p{L}\p{N}_]*$/u.test(name) ? `species.${name}` : `species["${name}"]`;
+
+function plotOf(course: CellContent | undefined, resultOf: ResultOf): CellContent['settings'] {
+  if (course === undefined) return {};
+  const { species } = (resultOf(course.id) ?? {}) as Partial<TrajectoryResult>;
+  const lines = Object.entries(species ?? {}).map(([name, values]) => ({ name, values }));
+  const y = tellingLines(lines).map(speciesPath);
+  return { draw: [{ cell: course.name, x: 'times', y }] };
+}
+
+/** The settings of a new cell: it draws on what stands nearest before it where its kind needs something. */
+export function newCellSettings(
+  kind: CellKind,
+  after: string | null,
+  cells: Cells,
+  resultOf: ResultOf,
+): CellContent['settings'] {
+  const settings = cellRegistry[kind].empty.settings;
+  if (kind === 'plot') return { ...settings, ...plotOf(nearest('trajectory', after, cells), resultOf) };
+  if (settings['network'] !== '') return settings;
+  return { ...settings, network: nearest('network', after, cells)?.name ?? '' };
+}
