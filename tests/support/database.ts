@@ -17,12 +17,17 @@ export interface TestDatabase {
   drop(): Promise<void>;
 }
 
+/** Addresses of the maintenance database of a cluster, as owner and as application. */
+export interface Cluster {
+  readonly owner: string;
+  readonly application: string;
+}
+
 /**
  * A fresh, migrated database: a copy of a template that is migrated once for each state of the migrations. One for
- * each test file, so that files never see each other.
+ * each test file, so that files never see each other. Outside the test runner the cluster is given.
  */
-export async function createTestDatabase(): Promise<TestDatabase> {
-  const cluster = inject('cluster');
+export async function createTestDatabase(cluster: Cluster = inject('cluster')): Promise<TestDatabase> {
   const admin = new pg.Client({ connectionString: cluster.owner });
   await admin.connect();
   const name = `test_${randomBytes(6).toString('hex')}`;
@@ -40,10 +45,7 @@ export async function createTestDatabase(): Promise<TestDatabase> {
   };
 }
 
-async function needTemplate(
-  admin: pg.Client,
-  cluster: { readonly owner: string; readonly application: string },
-): Promise<string> {
+async function needTemplate(admin: pg.Client, cluster: Cluster): Promise<string> {
   const template = `template_${hashOfMigrations()}`;
   const known = await admin.query('select 1 from pg_database where datname = $1', [template]);
   if (known.rowCount !== 0) return template;
