@@ -41,10 +41,9 @@ function build() {
 }
 
 function edit(words: string, doc = new Y.Doc()): Uint8Array {
-  let made = new Uint8Array();
-  doc.once('update', (update: Uint8Array<ArrayBuffer>) => (made = update));
+  const before = Y.encodeStateVector(doc);
   doc.getText('t').insert(0, words);
-  return made;
+  return Y.encodeStateAsUpdate(doc, before);
 }
 
 describe('a line', () => {
