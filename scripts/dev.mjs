@@ -12,6 +12,8 @@ import { stopSignal } from './lib/stop-signals.mjs';
 import { Complaint, main, say } from './lib/words.mjs';
 
 const port = process.env.PORT || '7070';
+const pagesPort = process.env.PAGES_PORT || '5173';
+const address = `http://localhost:${pagesPort}`;
 
 await main(async () => {
   needNode();
@@ -28,7 +30,7 @@ await main(async () => {
       DEMO: '1',
       ...serverEnvironment(database.env),
       PORT: port,
-      PUBLIC_URL: 'http://localhost:5173',
+      PUBLIC_URL: address,
     };
     const tsx = [
       'watch',
@@ -38,13 +40,18 @@ await main(async () => {
       'packages/server/src/main.ts',
     ];
     const server = start([bin('tsx/dist/cli.mjs'), ...tsx], env);
-    const pages = start([bin('vite/bin/vite.js'), 'packages/client'], {
+    const pages = start([bin('vite/bin/vite.js'), 'packages/client', '--port', pagesPort, '--strictPort'], {
       ...process.env,
       STILLROOM_SERVER: `http://127.0.0.1:${port}`,
     });
-    say('The pages are at http://localhost:5173; Ctrl-C stops everything.');
-    await signal;
+    say(`The pages are at ${address}; Ctrl-C stops everything.`);
+    const ended = [server, pages].map(
+      (child) => new Promise((resolve) => child.on('close', () => resolve(child))),
+    );
+    const first = await Promise.race([signal, ...ended]);
     await Promise.all([server, pages].map(end));
+    if (typeof first !== 'string')
+      throw new Complaint('One of the two ended by itself; its last words are above.');
   } finally {
     database.stop();
     runningNote.remove();
@@ -63,7 +70,7 @@ function start(args, env) {
 
 function end(child) {
   return new Promise((resolve) => {
-    if (child.exitCode !== null) return resolve();
+    if (child.exitCode !== null || child.signalCode !== null) return resolve();
     child.on('close', resolve);
     child.kill('SIGTERM');
   });

@@ -4,13 +4,8 @@ import * as z from 'zod';
 export const processSchema = z.object({
   /** `all` serves and computes, `server` only serves, `worker` only computes. */
   PROCESS: z.enum(['all', 'server', 'worker']).default('all'),
-  /** Kernel workers kept by this process; by default one for each core but one, at least one. */
+  /** Kernel workers kept by this process; by default as many as cores, two at least. */
   COMPUTE_WORKERS: z.coerce.number().int().min(1).max(64).optional(),
-  /** Account for kernel workers when started by root: user and group id, `1234:1234`. */
-  COMPUTE_ACCOUNT: z
-    .string()
-    .regex(/^\d+:\d+$/u, 'must be two numbers like 1234:1234')
-    .optional(),
   /** Folder with the bundled kernel worker. */
   WORKER_FOLDER: z.string().optional(),
   LOG_LEVEL: z.enum(['error', 'warn', 'info', 'debug']).default('info'),
