@@ -5,7 +5,7 @@ type Cell = Column['values'][number];
 const plain = (value: unknown): Cell =>
   typeof value === 'number' || typeof value === 'string'
     ? value
-    : value == null
+    : value === undefined || value === null
       ? null
       : JSON.stringify(value);
 

@@ -103,8 +103,7 @@ export function openNotebook(id: string): Notebook {
   });
   const cells = useCells(live.room);
   const resultOf = (cell: string): unknown => {
-    const digest = plan.notices.get(cell)?.shown;
-    const kept = digest == null ? undefined : results.byDigest.get(digest);
+    const kept = results.byDigest.get(plan.notices.get(cell)?.shown ?? '');
     return kept?.state === 'here' ? kept.result : undefined;
   };
   const presence = usePresence(live.room, () => session.me);

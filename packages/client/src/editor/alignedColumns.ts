@@ -60,7 +60,7 @@ export function alignment(doc: Text, caretLine: number): readonly Range<Decorati
       });
     for (let i = begin; i < end; i++) {
       const columns = lines[i];
-      if (columns == null) continue;
+      if (columns === undefined || columns === null) continue;
       const line = doc.line(i + 1);
       columns.bars.forEach((bar, c) => {
         const length = columns.lengths[c] ?? 0;

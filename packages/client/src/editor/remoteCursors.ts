@@ -2,7 +2,7 @@ import { type Extension, type Range, StateEffect } from '@codemirror/state';
 import {
   Decoration,
   type DecorationSet,
-  EditorView,
+  type EditorView,
   ViewPlugin,
   type ViewUpdate,
   WidgetType,
@@ -53,9 +53,11 @@ class CaretWidget extends WidgetType {
   }
 }
 
+const isObject = (value: unknown): value is object => typeof value === 'object' && value !== null;
+
 function placeIn(text: Y.Text, cursor: unknown): Place | null {
   const { anchor, head } = (cursor ?? {}) as Partial<TravellingCursor>;
-  if (text.doc === null || anchor == null || head == null) return null;
+  if (text.doc === null || !isObject(anchor) || !isObject(head)) return null;
   const at = (position: unknown): number | null => {
     const found = Y.createAbsolutePositionFromRelativePosition(
       Y.createRelativePositionFromJSON(position),
@@ -124,7 +126,7 @@ export function remoteCursors(text: Y.Text, awareness: Awareness): Extension {
 
       private tell(view: EditorView): void {
         if (!view.hasFocus) {
-          if (awareness.getLocalState()?.['cursor'] != null && this.mine) {
+          if (this.mine) {
             this.mine = false;
             awareness.setLocalStateField('cursor', null);
           }

@@ -38,7 +38,7 @@ function touchedCells(transaction: Y.Transaction, cells: Y.Map<Y.Map<unknown>>):
     while (item !== null && (item.parent as unknown) !== cells) {
       item = (item.parent as Y.AbstractType<unknown> | null)?._item ?? null;
     }
-    if (item?.parentSub != null) touched.add(item.parentSub);
+    if (typeof item?.parentSub === 'string') touched.add(item.parentSub);
   }
   return [...touched];
 }

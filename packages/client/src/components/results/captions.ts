@@ -28,7 +28,7 @@ const named = (setting: unknown, otherwise: string) =>
 function courses(settings: Captioned['settings'], result: unknown): string {
   if (!isObject(result)) return '';
   const { times = [], units } = result as unknown as Partial<TrajectoryResult>;
-  const end = `${numberText(times.at(-1) ?? 0)}${units?.time == null ? '' : ` ${units.time}`}`;
+  const end = `${numberText(times.at(-1) ?? 0)} ${units?.time ?? ''}`.trimEnd();
   return `Courses of ${named(settings['network'], 'the network')} from its rate equations, up to ${end}.`;
 }
 

@@ -32,7 +32,7 @@ export const raise = (exponent: number): string =>
 
 /** A number as plain text: "5.06 × 10⁻⁵". */
 export function numberText(value: number | null | undefined, digits = 4): string {
-  if (value == null) return 'undecided';
+  if (value === undefined || value === null) return 'undecided';
   const { digits: text, exponent } = setNumber(value, digits);
   if (exponent === null) return text;
   return `${text === '1' ? '' : text === '−1' ? '−' : `${text} × `}10${raise(exponent)}`;
@@ -48,7 +48,7 @@ export function tookText(ms: number): string {
 
 /** A unit as printed in the notation ("/uM/s") in the way it is set: "µM⁻¹ s⁻¹". */
 export function unitText(unit: string | null | undefined): string {
-  if (unit == null || unit === '' || unit === '1') return '';
+  if (unit === undefined || unit === null || unit === '' || unit === '1') return '';
   const parts: string[] = [];
   for (const [, sign, word, power] of unit.matchAll(/([/*· ]?)\s*([^\s/*·^\d]+)(?:\^?(-?\d+))?/gu)) {
     if (word === undefined) continue;
