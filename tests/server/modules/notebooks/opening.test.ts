@@ -16,6 +16,18 @@ describe('the opening of a notebook', () => {
     expect(opening()).toBe('');
   });
 
+  test('shows mathematics, links and woven values as they can be read without being set', () => {
+    expect(opening('A site of $n$ beads sends one on at rate $\\theta(n) = 1 + b/n$.')).toBe(
+      'A site of n beads sends one on at rate θ(n) = 1 + b/n.',
+    );
+    expect(opening('With $k_{on} \\le 2$:\n\n$$\n\\dot x = f(x)\n$$\n\nit stays.')).toBe(
+      'With kon ≤ 2: … it stays.',
+    );
+    expect(opening('See [the assay](https://example.org): =[run1.species.P, last] of rest_20.')).toBe(
+      'See the assay: … of rest_20.',
+    );
+  });
+
   test('is cut at a word', () => {
     const cut = opening('word '.repeat(100));
     expect(cut.length).toBeLessThanOrEqual(161);

@@ -2,6 +2,7 @@ import type { ClaimVerdict } from '@stillroom/shared/cells';
 import type { NotebookContent } from '@stillroom/shared/document';
 import type { CellError, CellState } from '@stillroom/shared/protocol';
 import type { Queries } from './document.ts';
+import { openingOf } from './opening.ts';
 
 /** The last known state of a cell, for the Shelf and for whoever opens the notebook next. */
 export interface CellStanding {
@@ -76,28 +77,4 @@ export async function keepFace(queries: Queries, notebook: string, content: Note
      where id = $1 and (title, subject, opening) is distinct from ($2, $3, $4)`,
     [notebook, content.title, content.subject, openingOf(content)],
   );
-}
-
-const openingLength = 160;
-
-/** First words of the first prose cell, without headings and marks of Markdown. */
-export function openingOf({ cells }: NotebookContent): string {
-  for (const { kind, text } of cells) {
-    if (kind !== 'prose') continue;
-    const words = text
-      .split('\n')
-      .filter((line) => !/^\s*(#|>|!\[|\$\$|```)/u.test(line))
-      .join(' ')
-      .replace(/[*_`]/gu, '')
-      .replace(/\s+/gu, ' ')
-      .trim();
-    if (words !== '') return shorten(words);
-  }
-  return '';
-}
-
-function shorten(words: string): string {
-  if (words.length <= openingLength) return words;
-  const cut = words.slice(0, openingLength);
-  return `${cut.slice(0, Math.max(cut.lastIndexOf(' '), openingLength - 20))}…`;
 }

@@ -2,7 +2,8 @@ import { NotebookEntity } from './entities/notebook.ts';
 import { RemarkAnswerEntity, RemarkEntity } from './entities/remark.ts';
 
 export { readAuthors } from './authors.ts';
-export { keepFace, keepStates, openingOf, readGroup, readStates, workingNotebooks } from './cell-states.ts';
+export { openingOf } from './opening.ts';
+export { keepFace, keepStates, readGroup, readStates, workingNotebooks } from './cell-states.ts';
 export type { CellStanding } from './cell-states.ts';
 export { createNotebook } from './commands/create-notebook.ts';
 export { writeRemark } from './commands/remarks.ts';

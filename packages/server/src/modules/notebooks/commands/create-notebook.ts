@@ -2,7 +2,7 @@ import type { NotebookContent } from '@stillroom/shared/document';
 import type { EntityManager } from 'typeorm';
 import { announce } from '../../../events.ts';
 import { recordAudit } from '../../groups/index.ts';
-import { openingOf } from '../cell-states.ts';
+import { openingOf } from '../opening.ts';
 import { writeDocument } from '../document.ts';
 import { NotebookEntity } from '../entities/notebook.ts';
 
