@@ -67,6 +67,8 @@ export interface Constant {
   readonly unit: string | null;
   /** Index of the 1-based line of its value, or of its first use. */
   readonly line: number;
+  /** For a value that is derived from other constants: how, so that it follows trial values of them. */
+  readonly expression?: Expression;
 }
 
 /**

@@ -120,8 +120,10 @@ function readConstants(stage: Elaboration, dimensions: Dimensions): Constant[] {
   for (let i = 0; i < constants.count; i += 1) {
     const name = constants.nameOf(i);
     const quantity = values.of(name);
+    const expression = values.derivation(name);
     const line = values.definition(name)?.line ?? stage.constantLines[i] ?? 0;
-    result.push({ name, quantity, unit: dimensions.printedUnit(name) ?? rateUnits.get(i) ?? null, line });
+    const unit = dimensions.printedUnit(name) ?? rateUnits.get(i) ?? null;
+    result.push({ name, quantity, unit, line, ...(expression === null ? {} : { expression }) });
   }
   return result;
 }

@@ -59,6 +59,12 @@ export class Values {
     return this.quantities.get(name) ?? null;
   }
 
+  /** The expression of a value that is derived from other constants; null for others. To be asked after `of`. */
+  derivation(name: string): Expression | null {
+    const expression = this.resolved.get(name) ?? null;
+    return expression !== null && freeNames(expression).length > 0 ? expression : null;
+  }
+
   /**
    * The value of an expression that stands where a number must: a start, a volume. Throws Failure where it cannot be
    * computed.
