@@ -46,7 +46,10 @@ function judged(hypotheses: readonly Hypothesis[], weight: string | null): Judge
 /** Every reaction takes m units from one site to another: m X_i → m X_j. */
 function sitesOnly(context: TheoremContext): Hypothesis {
   const claim = 'mass moves between sites';
-  const text = 'Every reaction moves a whole number of units from one site to one other.';
+  const text =
+    'Every reaction moves a whole number of units from one site to one other, and nothing else changes a species.';
+  const { interventions } = context.kinetics;
+  if (interventions !== null) return { claim, text: `${text} Here ${interventions}.`, holds: false };
   if (context.huge) return { claim, text: `${text} The network is too large to look at each.`, holds: null };
   const other = context.arrows.findIndex(({ from, to }) => {
     const [source, ...more] = context.terms(from);

@@ -31,28 +31,14 @@ export interface FactorisedRates {
  * the rates of single units, exactly, for every n that can occur.
  */
 export function factorisedRates(context: TheoremContext): FactorisedRates {
-  if (context.kinetics.otherLaw === null) return byForm(context);
+  if (context.kinetics.otherLaw === null && context.kinetics.unlikeInCounts === null) return byForm(context);
   const bound = unitBound(context);
   const sites = siteRates(context, bound ?? CHECKED);
-  if (sites === null)
-    return {
-      hypotheses: [
-        {
-          claim: 'rates factorise',
-          text: `${FACTORISE} Not every law is an exact function of its own site.`,
-          holds: null,
-        },
-      ],
-      weight: null,
-    };
+  if (sites === null) return stated('Not every law is an exact function of its own site.', null);
   const constants = context.arrows.map(() => ONE);
   for (const site of sites) {
     const misfit = fit(site, constants);
-    if (misfit !== null)
-      return {
-        hypotheses: [{ claim: 'rates factorise', text: `${FACTORISE} ${misfit}`, holds: false }],
-        weight: null,
-      };
+    if (misfit !== null) return stated(misfit, false);
   }
   const factorise: Hypothesis = {
     claim: 'rates factorise',
@@ -63,6 +49,10 @@ export function factorisedRates(context: TheoremContext): FactorisedRates {
 }
 
 const FACTORISE = 'The rates factorise: u(m|n) = v(m) w(n − m)/w(n) at every site.';
+
+function stated(reason: string, holds: boolean | null): FactorisedRates {
+  return { hypotheses: [{ claim: 'rates factorise', text: `${FACTORISE} ${reason}`, holds }], weight: null };
+}
 
 function byForm(context: TheoremContext): FactorisedRates {
   const form: Hypothesis = {

@@ -14,7 +14,7 @@ import { polish, relax } from './relax.ts';
 import type { VerifiedStates } from './verified-states.ts';
 import { exactTotals, shortened, verifyStates } from './verified-states.ts';
 
-/** Points of the search times species cubed; counted, so that a search always ends at the same place. */
+/** Points of the search times species squared times arrows; counted, so that a search always ends at the same place. */
 const WORK = 1_500_000;
 /** Points at which a wrong sign is followed up by looking for the other states. */
 const FOLLOWED = 4;

@@ -34,7 +34,7 @@ export function noLargeComplex({ plain, holds, witness }: Evidence): string | nu
 }
 
 /** Reactions between multiples of single species of equal size; or the reaction named is none. */
-export function sitesOnly({ plain, holds, witness }: Evidence): string | null {
+export function sitesOnly({ network, plain, holds, witness }: Evidence): string | null {
   const moves = plain.reactions.map(({ from, to }) => {
     const source = plain.complexes[from]!;
     const target = plain.complexes[to]!;
@@ -45,6 +45,8 @@ export function sitesOnly({ plain, holds, witness }: Evidence): string | null {
       Number.isInteger(sizeOf(source))
     );
   });
+  const untouched = network.events.length === 0 && network.rateRules.size === 0;
+  if (!untouched) return holds ? 'something else changes a species.' : null;
   if (holds) return moves.every(Boolean) ? null : 'some reaction does something else.';
   return witness?.kind === 'arrow' && moves[witness.reaction] === false
     ? null
