@@ -172,6 +172,8 @@ describe('a record', () => {
     expect(shown).toMatchObject({ id, reviews: [], remarks: [] });
     expect(shown.publicLink).toBeUndefined();
     expect(((await asReader.get(`/api/records/${id}`)).body as RecordView).publicLink).toBe(publicLink);
+    const file = await new Visitor(server.url).get(`/api/public-records/${token}/file`);
+    expect(file.body).toMatchObject({ digest: shown.digest, number: shown.number });
     await asLead.put(`/api/records/${id}/public`, { public: false });
     const closed = await new Visitor(server.url).get(`/api/public-records/${token}`);
     expect(closed.status).toBe(410);

@@ -100,6 +100,8 @@ describe('an invitation', () => {
     expect(view.by).toMatchObject({ name: 'Ada Quillane' });
     expect(view.record.abilities).toContain('review.rerun');
     expect(view.record.abilities).not.toContain('notebook.read');
+    const file = await anyone().get(`/api/review/${token}/file`);
+    expect(file.body).toMatchObject({ digest: view.record.digest });
     const { reviews } = (await asAuthor.get(`/api/records/${record}`)).body as RecordView;
     expect(reviews.find(({ id }) => id === summary.id)).toMatchObject({ state: 'opened' });
   });

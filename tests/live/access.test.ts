@@ -1,6 +1,6 @@
 import type { Me } from '@stillroom/shared/contracts';
 import { cellText, origins } from '@stillroom/shared/document';
-import { closeCodes } from '@stillroom/shared/protocol';
+import { closeCodes, limits } from '@stillroom/shared/protocol';
 import { type GroupRole, groupRoles, may } from '@stillroom/shared/roles';
 import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
 import { WebSocket } from 'ws';
@@ -87,6 +87,12 @@ describe('every message of the protocol, for every role', () => {
     const another = await openLive(server, await member('author'), notebook);
     another.sendRaw(frames.update(new Uint8Array([9, 9, 9, 9])));
     expect(await another.end()).toBe(closeCodes.malformed);
+  });
+
+  test('a frame larger than allowed ends the line for good, so that it is not sent again and again', async () => {
+    const author = await openLive(server, await member('author'), notebook);
+    author.sendRaw(frames.update(new Uint8Array(limits.frame + 1)));
+    expect(await author.end()).toBe(closeCodes.tooMuch);
   });
 
   test('an author’s presence cannot bear another name', async () => {

@@ -30,6 +30,11 @@ const address = /^\/live\/([0-9a-f]{8}(?:-[0-9a-f]{4}){3}-[0-9a-f]{12})$/u;
  * client takes half a minute of silence for a lost line, and hears no pings: it is told its count again.
  */
 const heartbeat = 12_000;
+/**
+ * What the socket itself takes at most. Above what the protocol allows: a frame between the two is refused with the
+ * protocol's own reason, where the socket's would have the client send it again and again.
+ */
+const socketFrame = 4 * limits.frame;
 /** A line that has this much unsent, in bytes, is too slow to follow and comes back for the whole. */
 const backlog = 16 * 1024 * 1024;
 
@@ -42,7 +47,7 @@ export class Gateway {
   readonly #server = new WebSocketServer({
     noServer: true,
     perMessageDeflate: false,
-    maxPayload: limits.frame,
+    maxPayload: socketFrame,
   });
   readonly #sessions = new Map<Connection, string>();
   readonly #alive = new WeakSet<WebSocket>();

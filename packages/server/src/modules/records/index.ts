@@ -3,6 +3,7 @@ import { RecordEntity, RecordLinkEntity } from './entities/record.ts';
 export { freezeNotebook, readFreeze } from './commands/freeze.ts';
 export { digestOfText, recordFormat } from './content.ts';
 export type { RecordCell, RecordContent } from './content.ts';
+export { sendRecordFile } from './download.ts';
 export { RecordEntity } from './entities/record.ts';
 export { recordsOfGroup, recordsOfNotebook } from './lists.ts';
 export { loadRecord, publicTokenOf, readContentText, readRecordContent } from './load.ts';

@@ -8,12 +8,12 @@ import { route } from '../../http/route.ts';
 import { token, uuid } from '../../http/validate.ts';
 import type { Services } from '../../services.ts';
 import type { Compute } from '../compute/index.ts';
-import { fileNameOf, loadNotebook } from '../notebooks/index.ts';
+import { loadNotebook } from '../notebooks/index.ts';
 import { freezeNotebook, readFreeze } from './commands/freeze.ts';
 import { publishRecord } from './commands/publish-record.ts';
-import { recordFileText } from './content.ts';
+import { sendRecordFile } from './download.ts';
 import type { RecordEntity } from './entities/record.ts';
-import { loadPublicRecord, loadRecord, publicTokenOf, readContentText } from './load.ts';
+import { loadPublicRecord, loadRecord, publicTokenOf } from './load.ts';
 import { presentRecord, type RecordReviews } from './record.presenter.ts';
 
 const notebookParams = z.object({ notebook: uuid });
@@ -85,9 +85,7 @@ export function recordsRoutes(services: Services, compute: Compute, reviewsOf: R
       params: recordParams,
       async handle({ person, params, manager, response }) {
         const { record } = await loadRecord(manager, person.id, params.record, 'record.export');
-        const text = recordFileText(record.digest, await readContentText(manager, record.id));
-        const name = `${fileNameOf(record.title)}, record ${record.number}.json`;
-        response.attachment(name).type('json').send(text);
+        await sendRecordFile(manager, response, record);
       },
     }),
   );
@@ -114,6 +112,18 @@ export function recordsRoutes(services: Services, compute: Compute, reviewsOf: R
       params: publicParams,
       async handle({ params, manager }) {
         return presentRecord(manager, await loadPublicRecord(manager, params.token), 'public');
+      },
+    }),
+  );
+
+  router.get(
+    '/api/public-records/:token/file',
+    route(services, {
+      limit: 'reading',
+      who: 'anyone',
+      params: publicParams,
+      async handle({ params, manager, response }) {
+        await sendRecordFile(manager, response, await loadPublicRecord(manager, params.token));
       },
     }),
   );

@@ -7,7 +7,7 @@ import { route } from '../../http/route.ts';
 import { token, uuid } from '../../http/validate.ts';
 import type { Services } from '../../services.ts';
 import { presentRemarks, writeRemark } from '../notebooks/index.ts';
-import { loadRecord } from '../records/index.ts';
+import { loadRecord, sendRecordFile } from '../records/index.ts';
 import { beginRerun } from './commands/begin-rerun.ts';
 import { inviteReviewer } from './commands/invite-reviewer.ts';
 import { openForReviewer } from './commands/open-review.ts';
@@ -69,6 +69,20 @@ export function reviewsRoutes(services: Services): Router {
         authorizeReviewer('review.read');
         await openForReviewer(manager, opened);
         return presentReview(manager, opened);
+      },
+    }),
+  );
+
+  router.get(
+    '/api/review/:token/file',
+    route(services, {
+      limit: 'reading',
+      who: 'anyone',
+      params: linkParams,
+      async handle({ params, manager, response }) {
+        const { record } = await openReview(manager, params.token);
+        authorizeReviewer('record.export');
+        await sendRecordFile(manager, response, record);
       },
     }),
   );
