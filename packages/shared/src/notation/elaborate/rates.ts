@@ -1,4 +1,4 @@
-import type { ExpressionSyntax, Span } from '../../expression/syntax.ts';
+import type { ExpressionSyntax, NameSyntax, Span } from '../../expression/syntax.ts';
 import type { ItemSyntax, RowSyntax, SideSyntax } from '../ast.ts';
 import type { Repair } from '../complaint.ts';
 import { Failure } from '../failure.ts';
@@ -6,6 +6,8 @@ import type { ArrowPlace } from './arrow-places.ts';
 import type { Declarations } from './declarations.ts';
 import type { Family } from './families.ts';
 import type { IndexValues, IntegerFunction, IntegerNames } from './integers.ts';
+import { arrowsOfItem, partItems } from './law-items.ts';
+import type { LawConstant } from './law-items.ts';
 import type { NameTable } from './name-table.ts';
 import { memberScope, valueScope } from './scope.ts';
 import { compileTarget, noIndices } from './targets.ts';
@@ -41,6 +43,12 @@ export interface NumberedRow {
   readonly family: Family;
 }
 
+/** The rates of a row's directed arrows, and what takes down the constants of its laws for a member. */
+export interface RowRates {
+  readonly rates: readonly Rate[];
+  readonly lawConstants: readonly IntegerFunction[];
+}
+
 /** Hands the items of the constants column to the arrows of the row. */
 export class RateReader {
   readonly uses: ConstantUse[] = [];
@@ -51,17 +59,20 @@ export class RateReader {
   }
 
   /** The rate of each directed arrow of a row. Throws Failure where items and arrows do not fit. */
-  ratesOf(numbered: NumberedRow): Rate[] {
+  ratesOf(numbered: NumberedRow): RowRates {
     const { row, places } = numbered;
-    if (row.items.length === 0) return places.map((_, p) => this.unnamed(numbered, p, null));
+    if (row.items.length === 0) {
+      return { rates: places.map((_, p) => this.unnamed(numbered, p, null)), lawConstants: [] };
+    }
+    const { ofRates, ofLaws } = partItems(row, places.length);
     const rates: Rate[] = [];
-    for (const item of row.items) {
+    for (const item of ofRates) {
       if (!places[rates.length]) break;
       rates.push(...this.ratesOfItem(numbered, rates.length, item));
     }
-    const given = row.items.reduce((count, item) => count + (item.kind === 'net' ? 2 : 1), 0);
-    if (given !== places.length) throw this.wrongCount(numbered, given);
-    return rates;
+    const given = ofRates.reduce((count, item) => count + arrowsOfItem(item), 0);
+    if (given !== places.length) throw this.wrongCount(numbered, ofRates, given);
+    return { rates, lawConstants: ofLaws.map((item) => this.lawConstant(numbered, item)) };
   }
 
   private ratesOfItem(numbered: NumberedRow, p: number, item: ItemSyntax): Rate[] {
@@ -91,22 +102,43 @@ export class RateReader {
       });
     }
     const intern = compileTarget(constants, name, numbered.family.slots, integers);
-    if (!name.indices) {
-      const constant = intern(noIndices);
-      this.take(constant, numbered, p, value, name, noIndices);
-      return { kind: 'constant', of: () => constant };
-    }
-    const taken = new Set<number>();
     return {
       kind: 'constant',
-      of: (values) => {
-        const constant = intern(values);
-        if (!taken.has(constant)) {
-          taken.add(constant);
-          this.take(constant, numbered, p, value, name, values);
-        }
-        return constant;
-      },
+      of: this.onceFor(name, intern, (constant, values) => {
+        this.take(constant, numbered, p, value, name, values);
+      }),
+    };
+  }
+
+  /** A constant that a law of the row uses: it gets its value here, or is given it elsewhere. */
+  private lawConstant(numbered: NumberedRow, { name, value }: LawConstant): IntegerFunction {
+    const { constants, declarations, integers } = this.parts;
+    if (!value && declarations.kindOf(name.name) === 'output') return () => -1;
+    const intern = compileTarget(constants, name, numbered.family.slots, integers);
+    return this.onceFor(name, intern, (constant, values) => {
+      if (value) this.define(constant, numbered, value, name, values);
+    });
+  }
+
+  /** Numbers a constant for each member of a family, and takes down each once. */
+  private onceFor(
+    name: NameSyntax,
+    intern: IntegerFunction,
+    take: (constant: number, values: IndexValues) => void,
+  ): IntegerFunction {
+    if (!name.indices) {
+      const constant = intern(noIndices);
+      take(constant, noIndices);
+      return () => constant;
+    }
+    const taken = new Set<number>();
+    return (values) => {
+      const constant = intern(values);
+      if (!taken.has(constant)) {
+        taken.add(constant);
+        take(constant, values);
+      }
+      return constant;
     };
   }
 
@@ -131,26 +163,37 @@ export class RateReader {
     return { kind: 'constant', of: () => constant };
   }
 
-  /** Notes the use of a constant and takes down its value where the row gives one. */
+  /** Notes that a constant is the rate constant of an arrow, and takes down its value where the row gives one. */
   private take(
     constant: number,
-    { row, places, family }: NumberedRow,
+    numbered: NumberedRow,
     p: number,
     value: ExpressionSyntax | null,
     at: Span,
     values: IndexValues,
   ): void {
+    const { row, places } = numbered;
     const place = places[p];
     const reactant = place && row.sides[place.from];
     const product = place && row.sides[place.to];
     if (reactant && product) this.uses.push({ constant, reactant, product, at });
-    if (!value) return;
+    if (value) this.define(constant, numbered, value, at, values);
+  }
+
+  /** Takes down the value that a row gives a constant. */
+  private define(
+    constant: number,
+    { row, family }: NumberedRow,
+    value: ExpressionSyntax,
+    at: Span,
+    values: IndexValues,
+  ): void {
     const moving = this.parts.declarations.movingName(value, family.slots);
     if (moving !== null) {
       throw new Failure(
         value.from,
         value.to,
-        `${moving} changes in time and cannot be part of a rate constant.`,
+        `${moving} changes in time and cannot be part of a constant of a row.`,
         {
           hint: 'Write law = … for a rate that is not mass action.',
         },
@@ -160,8 +203,12 @@ export class RateReader {
     this.parts.values.define(this.parts.constants.nameOf(constant), { value, scope, at, line: row.line });
   }
 
-  private wrongCount({ row, places, firstArrow }: NumberedRow, given: number): Failure {
-    const { items, itemsSpan } = row;
+  private wrongCount(
+    { row, places, firstArrow }: NumberedRow,
+    items: readonly ItemSyntax[],
+    given: number,
+  ): Failure {
+    const { itemsSpan } = row;
     const needed = places.length;
     const last = items.at(-1);
     const repairs: Repair[] = [];
@@ -175,7 +222,13 @@ export class RateReader {
       });
     }
     const kept = items[needed - 1];
-    if (given > needed && kept && last && items.every((item) => item.kind !== 'net')) {
+    if (
+      given > needed &&
+      kept &&
+      last &&
+      items.length === row.items.length &&
+      items.every((item) => item.kind !== 'net')
+    ) {
       repairs.push({ label: `Keep the first ${needed}`, from: kept.to, to: last.to, insert: '' });
     }
     const takes = needed === 1 ? 'one constant' : `${needed} constants`;
@@ -185,7 +238,9 @@ export class RateReader {
       last?.to ?? itemsSpan.to,
       `This row takes ${takes}, ${given} ${are} given.`,
       {
-        hint: 'One for -> or <-, two for <=> (left to right, then back), or none at all.',
+        hint: items.some(({ kind }) => kind === 'law' || kind === 'net')
+          ? 'Beside these only constants that its law uses may stand here.'
+          : 'One for -> or <-, two for <=> (left to right, then back), or none at all.',
         repairs,
       },
     );

@@ -114,7 +114,7 @@ export class RowWriter {
 
   private writeMembers(numbered: NumberedRow): void {
     const { row, places, family } = numbered;
-    const rates = this.rates.ratesOf(numbered);
+    const { rates, lawConstants } = this.rates.ratesOf(numbered);
     const sides = row.sides.map((side) => this.compileSide(side, family.slots));
     const complexes = sides.map(() => 0);
     let unchanged = 0;
@@ -128,6 +128,7 @@ export class RowWriter {
         if (from === to) unchanged += 1;
         else this.writeReaction(from, to, rates[p] as Rate, numbered, p, values);
       }
+      for (const take of lawConstants) take(values);
       if (this.count > REACTION_LIMIT) {
         throw new Failure(row.from, row.to, `The text writes more than ${REACTION_LIMIT} reactions.`);
       }
