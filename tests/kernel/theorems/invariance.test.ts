@@ -1,7 +1,8 @@
 import fc from 'fast-check';
 import type { Verdict } from '@stillroom/shared/cells';
-import { checkWitness, judgeAll } from '@stillroom/kernel/theorems';
+import { checkWitness, contextOf, judgeAll } from '@stillroom/kernel/theorems';
 import { expect, test } from 'vitest';
+import { searchPair } from '../../../packages/kernel/src/theorems/steady-states/search-pair.ts';
 import { buildNetwork } from '../../support/network.ts';
 
 /** Rows as lists of [species, coefficient] on both sides. */
@@ -76,5 +77,17 @@ test('what is proven does not contradict itself', () => {
       if (yes('robust-extinction')) expect(yes('deficiency-zero')).toBe(false);
     }),
     { seed: 7, numRuns: 150 },
+  );
+});
+
+test('where a theorem excludes several steady states, no search with verified boxes finds two', () => {
+  fc.assert(
+    fc.property(rows, (list) => {
+      const text = written(list, ['A', 'B', 'C', 'D']);
+      const context = contextOf(buildNetwork(text));
+      if (context.verdict('at-most-one').applies === 'yes')
+        expect([text, searchPair(context)]).toEqual([text, null]);
+    }),
+    { seed: 42, numRuns: 80 },
   );
 });
