@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { readFileSync } from 'node:fs';
 import { may, type Membership, roleAt } from '@stillroom/shared/roles';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
@@ -111,6 +112,15 @@ describe('routes about oneself', () => {
     const path = address.replace(/:\w+/u, 'anything');
     const { status, body } = await new Visitor(server.url).send(method, path);
     expect([status, body]).toMatchObject([401, { error: 'signed-out' }]);
+  });
+});
+
+describe('links', () => {
+  const links = openRoutes.filter((route) => /^GET .*:token/u.test(route));
+  test.each(links)('%s opens nothing with a secret that nobody was given', async (route) => {
+    const path = route.replace('GET ', '').replace(':token', 'x'.repeat(43));
+    const { status, body } = await new Visitor(server.url).get(path.replace(/:\w+/gu, () => randomUUID()));
+    expect([status, body]).toMatchObject([410, { error: 'gone', hint: expect.any(String) as string }]);
   });
 });
 
