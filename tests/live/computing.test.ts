@@ -1,6 +1,7 @@
 import type { Me } from '@stillroom/shared/contracts';
-import { addCell, cellText, deleteCell, holdCell, origins, writeSettings } from '@stillroom/shared/document';
+import { addCell, cellText, deleteCell, holdCell, origins } from '@stillroom/shared/document';
 import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
+import { writeDocument } from '../../packages/server/src/modules/notebooks/document.ts';
 import { buildGroup, buildMember, buildPerson, signIn } from '../support/build.ts';
 import { buildNotebook, cell, closeLive, openLive } from '../support/live.ts';
 import type { LiveClient } from '../support/live-client.ts';
@@ -152,6 +153,27 @@ describe('holding, stopping and bringing up to date', () => {
     await again.cell('wild', ({ state }) => state === 'failed', 'still stopped after coming back');
   });
 
+  test('a course that is stopped leaves what there is of it, and is run again when asked', async () => {
+    const prey = 'X -> 2 X | 1\nX + Y -> 2 Y | 1\nY -> 0 | 1\nstart X = 2, Y = 1';
+    const notebook = await buildNotebook(server, group, ada, [
+      cell('prey', 'network', prey),
+      cell('endless', 'trajectory', '', {
+        settings: { network: 'prey', until: 1e7, points: 2000, rtol: 1e-10, atol: 1e-13 },
+      }),
+    ]);
+    const a = await openLive(server, ada, notebook);
+    const visitor = await signIn(server, ada);
+    await a.cell('endless', ({ since }) => since !== undefined, 'under way');
+    await a.cell('endless', ({ progress }) => (progress ?? 0) > 0, 'further');
+    await visitor.post(`/api/notebooks/${notebook}/cells/endless/stop`);
+    const stopped = await a.cell('endless', ({ state }) => state === 'failed', 'stopped');
+    expect(stopped.result).toMatchObject({ ended: 'stopped' });
+    await visitor.post(`/api/notebooks/${notebook}/cells/endless/run`);
+    await a.cell('endless', ({ state }) => state === 'working', 'under way again');
+    await visitor.post(`/api/notebooks/${notebook}/cells/endless/stop`);
+    await a.cell('endless', ({ state }) => state === 'failed', 'stopped again');
+  });
+
   test('a run that nobody needs any more is ended, so that the newest has its turn', async () => {
     const notebook = await buildNotebook(server, group, ada, [cell('s', 'script', 'while (true);')]);
     const a = await openLive(server, ada, notebook);
@@ -164,15 +186,24 @@ describe('holding, stopping and bringing up to date', () => {
 });
 
 describe('who may run', () => {
-  test('a reader alone sees what is kept and starts nothing', async () => {
+  test('a reader alone sees what is kept and starts nothing; an author who comes in does', async () => {
     const notebook = await buildNotebook(server, group, ada);
-    const a = await openLive(server, ada, notebook);
-    addCell(a.doc, cell('n', 'network', 'P -> Q | 7'), null, origins.author);
-    holdCell(a.doc, 'n', { by: ada.id, at: new Date().toISOString() }, origins.author);
-    writeSettings(a.doc, 'n', {}, origins.author);
-    await a.allKept();
+    // As if the process had ended before anything was computed.
+    const content = {
+      title: 'Asleep',
+      subject: 'none',
+      cells: [cell('n', 'network', 'P -> Q | 7')],
+    } as const;
+    await server.sql('delete from notebook_snapshot where notebook = $1', [notebook]);
+    await writeDocument(server.services.database, notebook, content);
+    const r = await openLive(server, reader, notebook);
+    await r.cell('n', ({ state }) => state === 'stale', 'not computed');
     const visitor = await signIn(server, reader);
     for (const path of ['run', 'cells/n/run', 'cells/n/stop'])
       expect((await visitor.post(`/api/notebooks/${notebook}/${path}`)).status).toBe(403);
+    expect(await server.sql('select 1 from cell_run where notebook = $1', [notebook])).toEqual([]);
+    expect(r.plan.get('n')?.state).toBe('stale');
+    await openLive(server, ada, notebook);
+    await r.cell('n', ({ state }) => state === 'current', 'computed for the author');
   });
 });
