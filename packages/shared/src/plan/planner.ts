@@ -3,6 +3,7 @@ import { mapReferences } from '../cells/references.ts';
 import { cellRegistry } from '../cells/registry.ts';
 import { nearest } from '../notation/nearest.ts';
 import { lineAndColumn } from '../paths/reading.ts';
+import { limits } from '../protocol/limits.ts';
 import type { CellError } from '../protocol/messages.ts';
 import { digestOf } from './digest.ts';
 import { type Draw, findDraws } from './draws.ts';
@@ -50,6 +51,9 @@ function readOwnPart(cell: PlannableCell, before: OwnPart | undefined): OwnPart 
   ) {
     return before;
   }
+  if (cell.text.length > limits.cellText) {
+    return { content: cell, settingsText, text: '', draws: [], complaint: lengthComplaint(cell) };
+  }
   const text = sourceText(cell.kind, cell.text);
   return {
     content: cell,
@@ -59,6 +63,9 @@ function readOwnPart(cell: PlannableCell, before: OwnPart | undefined): OwnPart 
     complaint: settingsComplaint(cell.kind, cell.settings),
   };
 }
+
+const lengthComplaint = ({ kind, text }: PlannableCell): string =>
+  `This ${kind} has ${text.length} characters; a cell takes at most ${limits.cellText}.`;
 
 function missingProblem(draw: Draw, own: OwnPart, names: Iterable<string>): CellError {
   if (draw.name === '') {
