@@ -19,3 +19,13 @@ const notRerun: OutcomeLook = { line: 'unrun', glyph: 'unrun', words: 'not rerun
 /** How a cell of a record shows its rerun; without one it is "not rerun", never blank. */
 export const outcomeOf = (run: RerunView['cells'][string] | null | undefined): OutcomeLook =>
   (run === null || run === undefined ? undefined : looks[run.outcome]) ?? notRerun;
+
+/** "4 match, 1 differs, 2 not rerun": how many of a record's computed cells fared how. */
+export function outcomesInWords(outcomes: readonly OutcomeLook[]): string {
+  const counts = new Map<string, number>();
+  for (const { words } of outcomes) counts.set(words, (counts.get(words) ?? 0) + 1);
+  const plural: Readonly<Record<string, string>> = { matches: 'match', differs: 'differ', waits: 'wait' };
+  return [...counts]
+    .map(([words, count]) => `${count} ${count === 1 ? words : (plural[words] ?? words)}`)
+    .join(', ');
+}
