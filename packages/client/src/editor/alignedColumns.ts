@@ -1,16 +1,85 @@
-import { type Extension, type Range, RangeSetBuilder, type Text } from '@codemirror/state';
+import {
+  EditorState,
+  type Extension,
+  type Range,
+  RangeSetBuilder,
+  type Text,
+  type Transaction,
+} from '@codemirror/state';
 import {
   Decoration,
   type DecorationSet,
-  type EditorView,
+  EditorView,
   ViewPlugin,
   type ViewUpdate,
   WidgetType,
 } from '@codemirror/view';
-import { barsOf, isRow } from './ledgerLines.ts';
+import { alignColumns, type TextChange } from '@stillroom/shared/notation';
 
-/** A longer column pushes its own bar only, as in the canonical print. */
-const widest = 60;
+/** A longer block is aligned within so many lines of what is seen. */
+const longBlock = 400;
+
+/**
+ * An edit that would move more bars than this leaves them where they are in the text, and they are only drawn aligned:
+ * every blank put in or taken out is a change that all co-authors receive.
+ */
+const mostMoved = 64;
+
+const isBlank = (doc: Text, line: number): boolean => doc.line(line).text.trim() === '';
+
+/** The lines from the blank line before `first` to the one after `last`, no more than a long block's worth each way. */
+function blockAround(doc: Text, first: number, last: number): { first: number; last: number } {
+  let from = first;
+  let to = last;
+  while (from > 1 && first - from < longBlock && !isBlank(doc, from) && !isBlank(doc, from - 1)) from -= 1;
+  while (to < doc.lines && to - last < longBlock && !isBlank(doc, to) && !isBlank(doc, to + 1)) to += 1;
+  return { first: from, last: to };
+}
+
+/** The changes that align the bars of the blocks that a stretch of a text touches. */
+export function alignmentAround(doc: Text, from: number, to: number): readonly TextChange[] {
+  const { first, last } = blockAround(doc, doc.lineAt(from).number, doc.lineAt(to).number);
+  const start = doc.line(first).from;
+  return alignColumns(doc.sliceString(start, doc.line(last).to)).map((change) => ({
+    ...change,
+    from: change.from + start,
+    to: change.to + start,
+  }));
+}
+
+/** What a person typed, deleted or pasted here; not what came from co-authors or is being composed. */
+const isOwnEdit = (transaction: Transaction): boolean =>
+  transaction.docChanged &&
+  (transaction.isUserEvent('input') || transaction.isUserEvent('delete')) &&
+  !transaction.isUserEvent('input.type.compose');
+
+/** Aligns the block of one's own edit in the same transaction, so that one undo takes back both. */
+const alignEdits = EditorState.transactionFilter.of((transaction) => {
+  if (!isOwnEdit(transaction)) return transaction;
+  let from = transaction.newDoc.length;
+  let to = 0;
+  transaction.changes.iterChangedRanges((_fromBefore, _toBefore, begin, end) => {
+    from = Math.min(from, begin);
+    to = Math.max(to, end);
+  });
+  if (to - from > longBlock * 100) return transaction;
+  const changes = alignmentAround(transaction.newDoc, from, to);
+  if (changes.length === 0 || changes.length > mostMoved) return transaction;
+  return [transaction, { changes: [...changes], sequential: true }];
+});
+
+/** What was composed is aligned when the composition is over. */
+const alignComposed = EditorView.domEventHandlers({
+  compositionend(_event, view) {
+    setTimeout(() => {
+      if (view.composing || view.state.readOnly) return;
+      const { head } = view.state.selection.main;
+      const changes = alignmentAround(view.state.doc, head, head);
+      if (changes.length > 0 && changes.length <= mostMoved)
+        view.dispatch({ changes: [...changes], userEvent: 'align' });
+    }, 0);
+  },
+});
 
 /** Blank room before a bar, in letters; never part of the text. */
 class Room extends WidgetType {
@@ -30,73 +99,47 @@ class Room extends WidgetType {
   }
 }
 
-interface Columns {
-  readonly bars: readonly number[];
-  /** Letters of each column without the blanks before its bar. */
-  readonly lengths: readonly number[];
-}
-
-function columnsOf(line: string): Columns | null {
-  const bars = barsOf(line);
-  if (bars.length === 0 || !isRow(line)) return null;
-  const lengths = bars.map((bar, i) => line.slice(i === 0 ? 0 : (bars[i - 1] ?? 0), bar).trimEnd().length);
-  return { bars, lengths };
-}
-
 /**
- * Room and collapsed blanks that make the bars of each block of rows stand under one another. The text itself is not
- * changed, so that aligning never meets what a co-author types. `caretLine` keeps its blanks: they are being typed.
+ * Room and collapsed blanks that make bars stand under one another where the text itself is not aligned: as it came from
+ * a file, or while two people change one block. `caretLine` keeps its blanks: they are being typed.
  */
-export function alignment(doc: Text, caretLine: number): readonly Range<Decoration>[] {
-  const lines = [...doc.iterLines()].map(columnsOf);
-  const ranges: Range<Decoration>[] = [];
-  let begin = 0;
-  while (begin < lines.length) {
-    let end = begin;
-    const widths: number[] = [];
-    for (; end < lines.length && doc.line(end + 1).length > 0; end++)
-      lines[end]?.lengths.forEach((length, i) => {
-        if (length <= widest) widths[i] = Math.max(widths[i] ?? 0, length);
-      });
-    for (let i = begin; i < end; i++) {
-      const columns = lines[i];
-      if (columns === undefined || columns === null) continue;
-      const line = doc.line(i + 1);
-      columns.bars.forEach((bar, c) => {
-        const length = columns.lengths[c] ?? 0;
-        const start = c === 0 ? 0 : (columns.bars[c - 1] ?? 0);
-        const blanks = bar - start - length;
-        const room = (widths[c] ?? length) + 1 - length - blanks;
-        if (room > 0)
-          ranges.push(Decoration.widget({ widget: new Room(room), side: 1 }).range(line.from + bar));
-        else if (room < 0 && i + 1 !== caretLine)
-          ranges.push(Decoration.replace({}).range(line.from + bar + room, line.from + bar));
-      });
-    }
-    begin = Math.max(end, begin) + 1;
-  }
-  return ranges;
+export function alignment(doc: Text, from: number, to: number, caretLine: number): Range<Decoration>[] {
+  return alignmentAround(doc, from, to).flatMap((change) => {
+    if (change.from === change.to)
+      return [Decoration.widget({ widget: new Room(change.insert.length), side: 1 }).range(change.from)];
+    if (doc.lineAt(change.from).number === caretLine) return [];
+    return [Decoration.replace({}).range(change.from, change.to)];
+  });
 }
 
 function build(view: EditorView): DecorationSet {
   const builder = new RangeSetBuilder<Decoration>();
-  const caretLine = view.state.doc.lineAt(view.state.selection.main.head).number;
-  for (const { from, to, value } of alignment(view.state.doc, caretLine)) builder.add(from, to, value);
+  const { doc, selection } = view.state;
+  const caretLine = doc.lineAt(selection.main.head).number;
+  const { from, to } = view.viewport;
+  for (const range of alignment(doc, from, to, caretLine)) builder.add(range.from, range.to, range.value);
   return builder.finish();
 }
 
-/** Keeps the bars of a network aligned while it is typed. */
-export const alignedColumns: Extension = ViewPlugin.fromClass(
+const drawAligned = ViewPlugin.fromClass(
   class {
     decorations: DecorationSet;
+    private line = 0;
 
     constructor(view: EditorView) {
       this.decorations = build(view);
     }
 
     update(update: ViewUpdate): void {
-      if (update.docChanged || update.selectionSet) this.decorations = build(update.view);
+      const { doc, selection } = update.state;
+      const line = doc.lineAt(selection.main.head).number;
+      if (update.docChanged || update.viewportChanged || line !== this.line)
+        this.decorations = build(update.view);
+      this.line = line;
     }
   },
   { decorations: (plugin) => plugin.decorations },
 );
+
+/** Keeps the bars of a network aligned while it is typed. */
+export const alignedColumns: Extension = [alignEdits, alignComposed, drawAligned];

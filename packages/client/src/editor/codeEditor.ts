@@ -1,8 +1,8 @@
-import { history } from '@codemirror/commands';
 import { Compartment, EditorState, type Extension, Prec } from '@codemirror/state';
 import { drawSelection, EditorView, keymap } from '@codemirror/view';
 import type { Awareness } from 'y-protocols/awareness';
-import { ySync, YSyncConfig, ySyncFacet } from 'y-codemirror.next';
+import { limits } from '@stillroom/shared/protocol';
+import { ySync, ySyncAnnotation, YSyncConfig, ySyncFacet } from 'y-codemirror.next';
 import type * as Y from 'yjs';
 import { contentNonce } from '../composables/contentNonce.ts';
 import { editorKeys } from './keys.ts';
@@ -19,6 +19,8 @@ export interface EditorPlan {
   /** Accessible name. */
   readonly label: string;
   readonly language: Extension;
+  /** Hears that what was typed or pasted does not fit into a cell any more, and was not taken. */
+  readonly full: () => void;
   /** Leaves the editor, for Escape. */
   readonly leave: () => void;
 }
@@ -56,7 +58,7 @@ export function bindEditor(plan: EditorPlan): BoundEditor {
         ySync,
         remoteCursors(text, awareness),
         undo === null
-          ? history()
+          ? []
           : Prec.high(
               keymap.of([
                 { key: 'Mod-z', run: step('undo'), preventDefault: true },
@@ -64,6 +66,15 @@ export function bindEditor(plan: EditorPlan): BoundEditor {
                 { key: 'Mod-Shift-z', run: step('redo'), preventDefault: true },
               ]),
             ),
+        EditorState.changeFilter.of((transaction) => {
+          // A cell's text has a bound; what co-authors wrote is never filtered.
+          if (transaction.annotation(ySyncAnnotation) !== undefined) return true;
+          const fits =
+            transaction.newDoc.length <= limits.cellText ||
+            transaction.newDoc.length < transaction.startState.doc.length;
+          if (!fits) plan.full();
+          return fits;
+        }),
         plan.language,
         keymap.of([...editorKeys, { key: 'Escape', run: () => (plan.leave(), true) }]),
         drawSelection(),

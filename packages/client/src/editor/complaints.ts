@@ -1,10 +1,17 @@
-import { type EditorState, type Extension, type Range, StateEffect, StateField } from '@codemirror/state';
+import {
+  type EditorState,
+  type Extension,
+  type Range,
+  StateEffect,
+  StateField,
+  type Text,
+} from '@codemirror/state';
 import { Decoration, type DecorationSet, EditorView, ViewPlugin, type ViewUpdate } from '@codemirror/view';
 import type { Complaint } from '@stillroom/shared/notation';
 import { ComplaintWidget } from './complaintWidget.ts';
 
-/** Reads a text and says what is wrong with it. */
-export type Check = (text: string) => readonly Complaint[];
+/** Reads a text and says what is wrong with it, at once or later. */
+export type Check = (text: string) => readonly Complaint[] | Promise<readonly Complaint[]>;
 
 const setComplaints = StateEffect.define<readonly Complaint[]>();
 
@@ -51,39 +58,84 @@ export const complaintField = StateField.define<Marked>({
   provide: (field) => EditorView.decorations.from(field, ({ decorations }) => decorations),
 });
 
-/** Milliseconds of rest before a text is checked: long enough not to scold a word half typed. */
-const rest = 350;
+/** Milliseconds after a change before the text is checked: some frames, so that typing is never held up. */
+export const soon = 60;
+/** Milliseconds more until the line one types in is told what is new there: not to scold a word half typed. */
+export const untilRest = 340;
+
+const nameOf = (complaint: Complaint): string => `${complaint.severity} ${complaint.message}`;
+
+/** What may be shown at once: all but what is new in the line of the caret. */
+export function shownAtOnce(
+  found: readonly Complaint[],
+  shown: readonly Complaint[],
+  caretLine: number,
+): readonly Complaint[] {
+  const before = new Set(shown.map(nameOf));
+  return found.filter((complaint) => complaint.line !== caretLine || before.has(nameOf(complaint)));
+}
 
 /**
- * Shows complaints under their lines, each with its repairs. `told` hears how many errors stand, for the list above
- * the text that a screen reader meets first.
+ * Shows complaints under their lines, each with its repairs. `told` hears of them too, for the list above the text that a
+ * screen reader meets first.
  */
 export function complaints(check: Check, told: (complaints: readonly Complaint[]) => void): Extension {
   const checker = ViewPlugin.fromClass(
     class {
       private timer: ReturnType<typeof setTimeout> | undefined;
       private last: readonly Complaint[] = [];
+      private gone = false;
+      /** The text that is being checked elsewhere. */
+      private asked: Text | null = null;
 
       constructor(private readonly view: EditorView) {
-        this.schedule(0);
+        this.wait(0, () => this.check());
       }
 
       update(update: ViewUpdate): void {
-        if (update.docChanged) this.schedule(rest);
+        if (update.docChanged) this.wait(soon, () => this.check());
       }
 
-      private schedule(wait: number): void {
+      private wait(time: number, then: () => void): void {
         clearTimeout(this.timer);
-        this.timer = setTimeout(() => {
-          const found = check(this.view.state.doc.toString());
-          if (found.length === 0 && this.last.length === 0) return;
-          this.last = found;
-          this.view.dispatch({ effects: setComplaints.of(found) });
-          told(found);
-        }, wait);
+        this.timer = setTimeout(then, time);
+      }
+
+      private check(): void {
+        const { doc } = this.view.state;
+        // One text is read elsewhere at a time; the newest is asked for when the answer comes.
+        if (this.asked !== null) return;
+        const answer = check(doc.toString());
+        if (!('then' in answer)) {
+          this.show(answer);
+          return;
+        }
+        this.asked = doc;
+        void answer.then((found) => {
+          this.asked = null;
+          if (this.gone) return;
+          if (this.view.state.doc === doc) this.show(found);
+          else this.wait(soon, () => this.check());
+        });
+      }
+
+      private show(found: readonly Complaint[]): void {
+        const { state, hasFocus } = this.view;
+        const line = hasFocus ? state.doc.lineAt(state.selection.main.head).number : 0;
+        const now = shownAtOnce(found, this.last, line);
+        this.put(now);
+        if (now.length < found.length) this.wait(untilRest, () => this.put(found));
+      }
+
+      private put(found: readonly Complaint[]): void {
+        if (found.length === 0 && this.last.length === 0) return;
+        this.last = found;
+        this.view.dispatch({ effects: setComplaints.of(found) });
+        told(found);
       }
 
       destroy(): void {
+        this.gone = true;
         clearTimeout(this.timer);
       }
     },

@@ -5,8 +5,9 @@ import type { Complaint } from '@stillroom/shared/notation';
 import { alignedColumns } from './alignedColumns.ts';
 import { complaints } from './complaints.ts';
 import { notationCompletion } from './notationCompletion.ts';
-import { notationLanguage } from './notationLanguage.ts';
+import { notationHighlighting } from './notationHighlighting.ts';
 import { checkNotation } from './notationReading.ts';
+import { pastedReactions } from './pastedReactions.ts';
 import { rowGutter } from './rowGutter.ts';
 import { inkHighlighting, ledgerTheme, markdownHighlighting, proseTheme } from './theme.ts';
 
@@ -20,10 +21,10 @@ function notation(told: (found: readonly Complaint[]) => void): Extension {
   return [
     ledgerTheme,
     EditorView.lineWrapping,
-    notationLanguage,
-    inkHighlighting,
+    notationHighlighting,
     rowGutter,
     alignedColumns,
+    pastedReactions,
     complaints(checkNotation, told),
     // Nothing is chosen until an arrow chooses it: Enter after "10 uM" begins a line, whatever is on offer.
     autocompletion({ override: [notationCompletion], icons: false, selectOnOpen: false }),
