@@ -12,7 +12,7 @@ import {
   writeSettings,
 } from '@stillroom/shared/document';
 import type { Subject } from '@stillroom/shared/document';
-import { ref, type Ref } from 'vue';
+import { ref, type Ref, shallowRef } from 'vue';
 import type * as Y from 'yjs';
 import * as api from '../api/notebooks.ts';
 import { wordsOf } from '../api/client.ts';
@@ -24,6 +24,9 @@ import type { Cells } from './useCells.ts';
 export interface CellActions {
   /** What the last request to the server came to, where it failed. */
   readonly trouble: Ref<string | null>;
+  /** The cell taken out last, until it is put back or the next one goes. */
+  readonly takenOut: Readonly<Ref<CellContent | null>>;
+  putBack(): void;
   /** Sews in a cell after another (null: first) and gives its id. */
   add(
     kind: CellKind,
@@ -71,6 +74,8 @@ export function useCellActions(
   resultOf: ResultOf,
 ): CellActions {
   const trouble = ref<string | null>(null);
+  const takenOut = shallowRef<CellContent | null>(null);
+  let placeBefore: string | null = null;
   const doc = () => room.value?.doc ?? null;
   const names = () => cells.list.value.map(({ name }) => name);
 
@@ -115,7 +120,22 @@ export function useCellActions(
       if (cell === undefined) return null;
       return add(cell.kind, id, { text: cell.text, settings: cell.settings });
     },
-    remove: (id) => change((open) => deleteCell(open, id, origins.author)),
+    takenOut,
+    remove(id) {
+      const cell = cells.byId.get(id);
+      if (cell === undefined) return;
+      const before = cells.order.value[cells.order.value.indexOf(id) - 1] ?? null;
+      change((open) => deleteCell(open, id, origins.author));
+      takenOut.value = cell;
+      placeBefore = before;
+    },
+    putBack() {
+      const cell = takenOut.value;
+      if (cell === null) return;
+      const after = placeBefore !== null && cells.byId.has(placeBefore) ? placeBefore : null;
+      change((open) => addCell(open, cell, after, origins.author));
+      takenOut.value = null;
+    },
     move(id, by) {
       const order = cells.order.value;
       const at = order.indexOf(id);

@@ -42,6 +42,8 @@ export interface Notebook {
   readonly abilities: ReturnType<typeof useAbilities>;
   readonly actions: CellActions;
   readonly undo: Undo;
+  /** Asks the server anew what this notebook is and what one may do in it. */
+  refresh(): Promise<void>;
   readonly selection: Selection;
   /** The result a cell shows, where it is on this page. */
   resultOf(cell: string): unknown;
@@ -122,6 +124,7 @@ export function openNotebook(id: string): Notebook {
     actions: useCellActions(id, live.room, cells, () => session.me?.name ?? '', resultOf),
     resultOf,
     undo: useUndo(live.room),
+    refresh: askAbout,
     selection: useSelection((cell) => presence.moveTo(cell)),
     numbers: computed(() => numberCells(cells.list.value)),
     stateOf: (cell) => plan.notices.get(cell.id)?.state ?? (cell.kind === 'prose' ? 'current' : 'stale'),

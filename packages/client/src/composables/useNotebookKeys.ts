@@ -80,6 +80,18 @@ const acts: Readonly<Record<string, Act>> = {
 
 const mac = /Mac|iPhone|iPad/u.test(navigator.userAgent);
 
+/** Taking back outside of any field: the fields and editors have it themselves. */
+function undoes(event: KeyboardEvent, pressed: string, notebook: Notebook): boolean {
+  const target = event.target;
+  if (target instanceof HTMLElement && target.closest('input, textarea, select, .cm-editor') !== null)
+    return false;
+  if (pressed === 'Ctrl z') notebook.undo.undo();
+  else if (pressed === 'Ctrl y' || pressed === 'Ctrl Shift Z') notebook.undo.redo();
+  else return false;
+  event.preventDefault();
+  return true;
+}
+
 /** The name of a pressed combination: letters and signs by what they write, whatever Shift makes of them. */
 export function combination(event: KeyboardEvent): string {
   const ctrl = mac ? event.metaKey : event.ctrlKey;
@@ -107,8 +119,10 @@ function escape(event: KeyboardEvent, notebook: Notebook): void {
 export function useNotebookKeys(notebook: Notebook, page: PageActs): void {
   function onKey(event: KeyboardEvent): void {
     if (event.key === 'Escape') return escape(event, notebook);
-    const act = acts[combination(event)];
-    if (act === undefined || event.isComposing) return;
+    const pressed = combination(event);
+    if (event.isComposing || undoes(event, pressed, notebook)) return;
+    const act = acts[pressed];
+    if (act === undefined) return;
     event.preventDefault();
     event.stopPropagation();
     act(notebook, page, notebook.selection.selected.value);
