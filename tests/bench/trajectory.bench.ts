@@ -53,7 +53,7 @@ const median = (values: readonly number[]): number => values.toSorted((a, b) => 
 function ours({ network, until }: Problem): Solver {
   const equations = rateEquations(network, resolveValues(network, {}));
   const system = odeSystem(equations);
-  const prepared = prepareSystem(system, ['stiff']);
+  const prepared = prepareSystem(system, { kinds: ['stiff'] });
   const start = Float64Array.from(equations.variables, (species) => network.start.get(species)?.value ?? 0);
   const end = new Float64Array(start.length);
   const run = ({ rtol, atol }: Setting): boolean => {

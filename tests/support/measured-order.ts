@@ -19,7 +19,7 @@ export function fixedStepErrors(
   exact: (t: number) => number,
 ): FixedStepErrors {
   const equations = rateEquations(network, resolveValues(network, {}));
-  const prepared = prepareSystem(odeSystem(equations), [kind]);
+  const prepared = prepareSystem(odeSystem(equations), { kinds: [kind] });
   prepared.setParameters(equations.parameterValues);
   const { state, absoluteTolerance } = prepared.common;
   prepared.vector(absoluteTolerance).fill(1);

@@ -1,4 +1,5 @@
 import { evaluateTrajectory } from '@stillroom/kernel/cells';
+import { PreparationStopped } from '@stillroom/kernel/ode';
 import { describe, expect, test } from 'vitest';
 import { factorizeSymbolically } from '../../../packages/kernel/src/ode/linear/symbolic.ts';
 import { odeSystem, rateEquations, resolveValues } from '@stillroom/kernel/rates';
@@ -71,4 +72,26 @@ test('linear algebra driven by tables gives the same bits for either backend', (
   expect(evaluateTrajectory(network, settings, { backend: 'interpreted' })).toEqual(
     evaluateTrajectory(network, settings, { backend: 'wasm' }),
   );
+});
+
+test('the preparation of a large system can be ended before the course begins', () => {
+  let asked = 0;
+  const settings = { network: 'n', until: 1 } as const;
+  expect(() => evaluateTrajectory(torus(40), settings, { deadline: () => ++asked > 2 })).toThrow(
+    PreparationStopped,
+  );
+  expect(asked).toBe(3);
+});
+
+test('the order of a large factorisation can be ended with the course so far', () => {
+  let asked = 0;
+  let begun = 0;
+  const result = evaluateTrajectory(
+    torus(40),
+    { network: 'n', until: 1, method: 'stiff' },
+    { deadline: () => begun > 0 && ++asked > 1, progress: () => begun++ },
+  );
+  expect(result.ended).toBe('stopped');
+  expect(result.times).toEqual([0]);
+  expect(result.statistics.steps).toBe(0);
 });

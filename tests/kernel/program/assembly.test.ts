@@ -50,7 +50,7 @@ function build(graph: Graph, steps: readonly (readonly [number, number, number, 
 }
 
 function run(backend: Backend, tapes: ReturnType<typeof makeTapes>, values: readonly number[]): bigint[] {
-  const assembly = assemble(100, () => new Map([['all', { kind: 'straight', tapes }]]), backend);
+  const assembly = assemble(100, () => new Map([['all', { kind: 'straight', tapes }]]), { backend });
   assembly.memory.set(values, 20);
   assembly.routine('all')(20, 50);
   const out = assembly.memory.slice(50, 50 + results);
@@ -111,7 +111,7 @@ describe('a program', () => {
             } as const,
           ],
         ]),
-      backend,
+      { backend },
     );
     assembly.memory.set([1, 2, 3], 10);
     assembly.routine('both')();
@@ -128,7 +128,7 @@ describe('a program', () => {
       { node: b, slot: 2, space: spaces.fixed },
       { node: a, slot: 3, space: spaces.fixed },
     ]);
-    const assembly = assemble(8, () => new Map([['swap', { kind: 'straight', tapes: [tape] }]]), backend);
+    const assembly = assemble(8, () => new Map([['swap', { kind: 'straight', tapes: [tape] }]]), { backend });
     assembly.memory.set([5, 6], 2);
     assembly.routine('swap')();
     expect([...assembly.memory.slice(2, 4)]).toEqual([6, 5]);
@@ -140,7 +140,7 @@ describe('a program', () => {
     });
     try {
       expect(assemble(8, () => new Map()).backend).toBe('interpreted');
-      expect(() => assemble(8, () => new Map(), 'wasm')).toThrow('refused');
+      expect(() => assemble(8, () => new Map(), { backend: 'wasm' })).toThrow('refused');
     } finally {
       compile.mockRestore();
     }

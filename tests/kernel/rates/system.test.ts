@@ -1,5 +1,5 @@
 import { prepareSystem } from '@stillroom/kernel/ode';
-import { odeSystem, rateEquations, resolveValues } from '@stillroom/kernel/rates';
+import { odeSystem, planSensitivities, rateEquations, resolveValues } from '@stillroom/kernel/rates';
 import type { Expression } from '@stillroom/shared/expression';
 import { readNetwork } from '@stillroom/shared/notation';
 import fc from 'fast-check';
@@ -9,8 +9,10 @@ import { binary, name, networkOf, num, type PlainNetwork } from '../../support/n
 function systemOf(plain: PlainNetwork, sensitiveTo: readonly number[] = []) {
   const network = networkOf(plain);
   const equations = rateEquations(network, resolveValues(network, {}));
-  const system = odeSystem(equations, [], sensitiveTo);
-  const prepared = prepareSystem(system, []);
+  const system = odeSystem(equations, {
+    sensitivities: planSensitivities(equations, sensitiveTo, new Set(), false),
+  });
+  const prepared = prepareSystem(system, { kinds: [] });
   prepared.setParameters(equations.parameterValues);
   const { state, next, jacobian } = prepared.common;
   return {
@@ -135,7 +137,7 @@ describe('laws', () => {
     const equations = rateEquations(network!, resolveValues(network!, {}));
     const system = odeSystem(equations);
     expect(system.timeDependent).toBe(true);
-    const prepared = prepareSystem(system, []);
+    const prepared = prepareSystem(system, { kinds: [] });
     prepared.setParameters(equations.parameterValues);
     const { state, next } = prepared.common;
     prepared.vector(state).set([2, 6]);

@@ -11,15 +11,19 @@ const mostSpecies = 2000;
 
 /**
  * A basis of the conservation laws of the species that react; empty where there is none or the network is too large.
- * Several compartments: the laws are of amounts, so coefficients are multiplied by volumes.
+ * Several compartments: the laws are of amounts, so coefficients are multiplied by
+ * their `volumes`.
  */
-export function conservationLawsOf(network: Network): Law[] {
+export function conservationLawsOf(
+  network: Network,
+  volumes: readonly number[],
+  checkpoint?: () => void,
+): Law[] {
   if (network.species.length > mostSpecies) return [];
   const structural = structuralNetwork(network);
   const compartmentOf = compartmentOfSpecies(network);
-  const volume = (species: number): number =>
-    network.compartments.length > 1 ? network.compartments[compartmentOf[species]!]!.volume.value : 1;
-  const basis = leftKernel(stoichiometry(structural).matrix)?.basis ?? [];
+  const volume = (species: number): number => (volumes.length > 1 ? volumes[compartmentOf[species]!]! : 1);
+  const basis = leftKernel(stoichiometry(structural).matrix, checkpoint)?.basis ?? [];
   return basis.map(({ indices, values }) => {
     const entries = values.map((value, n) => {
       const species = structural.sourceSpecies[indices[n]!]!;

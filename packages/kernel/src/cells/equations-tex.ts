@@ -21,7 +21,7 @@ export function rateEquationsTex(network: Network): { of: string; tex: string }[
     if (rate === null) continue;
     const touched = [...from, ...to].map(({ species: index }) => index);
     const across = crossesCompartments(compartmentOf, touched);
-    for (const [index, change] of netCoefficients(from, to)) {
+    for (const { species: index, coefficient: change } of netCoefficients(from, to)) {
       if (change === 0) continue;
       const size = Math.abs(change);
       const factor = size === 1 ? '' : `${numberTex(size)} \\, `;

@@ -10,27 +10,9 @@ import { type EngineControl, StopRequested } from '../engine/control.ts';
 import type { Evaluated } from '../engine/evaluated.ts';
 import { CellFailure } from '../engine/failure.ts';
 import { drawnNetwork } from '../engine/networks.ts';
-import { structuralNetwork } from '../network/index.ts';
+import { PreparationStopped } from '../ode/index.ts';
 import { RateError } from '../rates/index.ts';
-import { conservationLaws } from '../structure/index.ts';
-import type { Law } from './conservation.ts';
 import { evaluateTrajectory } from './trajectory.ts';
-
-/** Species up to which the drift of conservation laws is watched: beyond, finding the laws could outlast the course. */
-const mostWatched = 2000;
-
-/** A basis of the conservation laws, those with coefficients that doubles hold. */
-function watchedLaws(network: Network): Law[] {
-  if (network.species.length > mostWatched) return [];
-  const structural = structuralNetwork(network);
-  const laws = conservationLaws(structural)?.basis ?? [];
-  return laws.flatMap(({ indices, values }) => {
-    const numbers = values.map(Number);
-    if (!numbers.every(Number.isSafeInteger)) return [];
-    const names = Array.from(indices, (index) => structural.species[index] ?? '');
-    return [Object.fromEntries(names.map((name, place) => [name, numbers[place] ?? 0]))];
-  });
-}
 
 /** The network with the cell's own events, which are written and read as those of a network text are. */
 function withEvents(
@@ -61,24 +43,32 @@ function withEvents(
 function course(network: Network, settings: TrajectorySettings, control: EngineControl): Evaluated {
   let share = 0;
   let stop: StopRequested | null = null;
-  const result: TrajectoryResult = evaluateTrajectory(network, settings, {
-    laws: watchedLaws(network),
-    progress: (done) => (share = done),
-    deadline: () => {
-      try {
-        control.checkpoint(share);
-        return false;
-      } catch (error) {
-        if (!(error instanceof StopRequested)) throw error;
-        stop = error;
-        return true;
-      }
-    },
-  });
+  const warnings: string[] = [];
+  const deadline = (): boolean => {
+    try {
+      control.checkpoint(share);
+      return false;
+    } catch (error) {
+      if (!(error instanceof StopRequested)) throw error;
+      stop = error;
+      return true;
+    }
+  };
+  let result: TrajectoryResult;
+  try {
+    result = evaluateTrajectory(network, settings, {
+      progress: (done) => (share = done),
+      warn: (words) => warnings.push(words),
+      deadline,
+    });
+  } catch (error) {
+    throw error instanceof PreparationStopped && stop !== null ? stop : error;
+  }
   const ended = stop as StopRequested | null;
   const why = result.why ?? '';
-  if (ended !== null) return { result, ended: { message: `${ended.message} ${why}`.trim() } };
-  return { result, warnings: result.ended === 'complete' ? [] : [why] };
+  if (ended !== null) return { result, warnings, ended: { message: `${ended.message} ${why}`.trim() } };
+  if (result.ended !== 'complete') warnings.push(why);
+  return { result, warnings };
 }
 
 /**

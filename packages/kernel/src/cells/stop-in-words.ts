@@ -21,6 +21,8 @@ export function stopInWords(
         : `${stop.limit} steps only led to ${at}. Ask for a shorter course or a larger tolerance.`;
     case 'event cascade':
       return `Events set each other off without end at ${at}.`;
+    case 'sensitivities end':
+      return `How the time of the event at ${at} moves with the constants cannot be told (its condition is grazed, jumps, or meets another), so that the sensitivities end there.`;
     case 'stopped from outside':
       return `The run was ended at ${at}, before the end of the course.`;
   }

@@ -1,29 +1,37 @@
 import type { TrajectoryResult, TrajectorySettings } from '@stillroom/shared/cells';
 import type { Network } from '@stillroom/shared/network';
-import { type Outcome, prepareSystem, solve } from '../ode/index.ts';
+import { type Outcome, PreparationStopped, type PreparedSystem, prepareSystem, solve } from '../ode/index.ts';
 import type { Backend } from '../program/index.ts';
 import {
   compileEvents,
+  constantsSetByEvents,
   list,
+  noSensitivities,
   odeSystem,
+  parametersSetByEvents,
+  planSensitivities,
   type RateEquations,
   rateEquations,
   RateError,
   resolveValues,
+  type SensitivityPlan,
+  startsFunction,
+  startsOf,
 } from '../rates/index.ts';
-import { conservationLawsOf, ConservationWatch, type Law } from './conservation.ts';
+import { conservationLawsOf, ConservationWatch } from './conservation.ts';
 import { Course } from './course.ts';
+import { droppedInWords } from './dropped-in-words.ts';
 import { resultUnits } from './units.ts';
 import { stopInWords } from './stop-in-words.ts';
 
 /** What an evaluation is given besides network and settings; nothing in it may change a complete result. */
 export interface TrajectoryOptions {
-  /** Asked every few steps; true ends the run with the course so far. */
+  /** Asked every few steps, and while large networks are prepared; true ends the run with the course so far. */
   readonly deadline?: () => boolean;
   /** Told every few steps which share of the time span is done, 0 to 1. */
   readonly progress?: (share: number) => void;
-  /** Conservation laws whose drift is reported, as coefficients by species; found here where they are not given. */
-  readonly laws?: readonly Law[];
+  /** Told in words what the reader of a result should know. */
+  readonly warn?: (words: string) => void;
   /** For tests: the same bits come from either. */
   readonly backend?: Backend;
 }
@@ -34,48 +42,63 @@ const defaultAbsoluteTolerance = 1e-12;
 
 /**
  * Integrates the rate equations of a network. All numbers in the units of the network's text. Throws RateError for
- * settings that do not fit the network (unknown names, missing constants); trouble in the numbers is a stopped course.
+ * settings that do not fit the network (unknown names, missing constants) and PreparationStopped where the deadline comes
+ * before the course begins; trouble in the numbers is a stopped course.
  */
 export function evaluateTrajectory(
   network: Network,
   settings: TrajectorySettings,
   options: TrajectoryOptions = {},
 ): TrajectoryResult {
+  const checkpoint = (): void => {
+    if (options.deadline?.() ?? false) throw new PreparationStopped();
+  };
   const { times, until } = timeGrid(settings);
   const values = resolveValues(network, settings);
-  const equations = rateEquations(network, values);
-  const events = compileEvents(equations, network.events);
   const sensitiveTo = sensitivityParameters(network, settings, values.constants);
-  if (sensitiveTo.length > 0 && events.events.length > 0) {
-    throw new RateError(
-      'Sensitivities are not computed for a course with events.',
-      'Leave out "sensitivities", or the events.',
-    );
-  }
+  const kept = new Set([...sensitiveTo, ...constantsSetByEvents(network, values.derivations).all]);
+  for (const follower of values.derivations.followers(sensitiveTo)) kept.add(follower);
+  const equations = rateEquations(network, values, { kept, checkpoint });
+  if (equations.dropped.length > 0) options.warn?.(droppedInWords(network, equations.dropped));
+  const plan = sensitivityPlan(network, equations, sensitiveTo);
+  const events = compileEvents(network, equations, plan);
   const outputs = network.outputs.map(({ name }) => equations.resolve(name)!);
   equations.requireValues();
-  const system = odeSystem(
-    equations,
-    [{ name: 'outputs', nodes: outputs }, ...events.functions],
-    sensitiveTo,
-  );
+  const system = odeSystem(equations, {
+    functions: [{ name: 'outputs', nodes: outputs }, ...events.functions, ...startsOf(plan)],
+    sensitivities: plan,
+    checkpoint,
+  });
   const method = settings.method ?? 'auto';
-  const prepared = prepareSystem(system, method === 'auto' ? undefined : [method], options.backend);
+  const prepared = prepareSystem(system, {
+    ...(method === 'auto' ? {} : { kinds: [method] }),
+    ...(options.backend === undefined ? {} : { backend: options.backend }),
+    checkpoint,
+  });
   const start = new Float64Array(system.dimension);
   equations.variables.forEach((species, variable) => (start[variable] = values.start[species]!));
 
   const course = new Course(network, equations, prepared, sensitiveTo);
-  const laws = new ConservationWatch(options.laws ?? conservationLawsOf(network), network, equations, start);
+  const laws = new ConservationWatch(
+    conservationLawsOf(network, equations.volumes, checkpoint),
+    network,
+    equations,
+    start,
+  );
   const fired: { time: number; event: number }[] = [];
   const outcome = solve(prepared, {
     start,
     until,
-    parameters: equations.parameterValues,
+    parameters: startParameters(equations, plan, prepared),
     times,
     method,
     relativeTolerance: settings.rtol ?? defaultRelativeTolerance,
     absoluteTolerance: absoluteTolerances(settings, equations, start, sensitiveTo),
     events: events.events,
+    sensitivities:
+      plan.directions.length === 0
+        ? null
+        : { variables: equations.variables.length, directions: plan.directions },
     record: (time, state) => course.record(time, state),
     observe: (_time, state, jumped) => laws.observe(state, jumped),
     fired: (time, event) => fired.push({ time, event }),
@@ -86,6 +109,30 @@ export function evaluateTrajectory(
   });
   if (outcome.stop !== null) course.recordEnd(outcome.time);
   return result(network, equations, course, laws, outcome, fired);
+}
+
+function sensitivityPlan(
+  network: Network,
+  equations: RateEquations,
+  sensitiveTo: readonly number[],
+): SensitivityPlan {
+  if (sensitiveTo.length === 0) return noSensitivities;
+  const settable = parametersSetByEvents(network, equations);
+  return planSensitivities(equations, sensitiveTo, settable, network.events.length > 0);
+}
+
+/** The values of all parameters at the start: those of the equations, then those of the sensitivities. */
+function startParameters(
+  { parameterValues }: RateEquations,
+  plan: SensitivityPlan,
+  prepared: PreparedSystem,
+): Float64Array {
+  if (plan.parameters === 0) return parameterValues;
+  const all = new Float64Array(parameterValues.length + plan.parameters);
+  all.set(parameterValues);
+  prepared.setParameters(all);
+  all.set(prepared.evaluate(startsFunction, 0, prepared.common.state), parameterValues.length);
+  return all;
 }
 
 function result(

@@ -10,6 +10,8 @@ export interface OdeEvent {
   readonly holds: (signs: Int8Array) => boolean;
   /** Name of the system's function that computes the new values. */
   readonly values: string;
+  /** Name of the function that computes how those move with each constant; null without sensitivities. */
+  readonly valueSlopes?: string | null;
   /** Where the new values go: a variable or a parameter, by index. */
   readonly targets: readonly { readonly kind: 'variable' | 'parameter'; readonly index: number }[];
 }
@@ -20,6 +22,8 @@ const parts = 8;
 /** Events that fire at one time. */
 export interface Firing {
   readonly time: number;
+  /** The leaves through which they turned true. */
+  readonly leaves: readonly number[];
   readonly events: readonly OdeEvent[];
 }
 
@@ -88,7 +92,11 @@ export class EventWatch {
       }
       const fired = new Set([...this.turnedTrue(at), ...this.turnedTrue(this.signs)]);
       if (fired.size > 0) {
-        return { time: crossing.time, events: this.events.filter((event) => fired.has(event)) };
+        const events = this.events.filter((event) => fired.has(event));
+        const leaves = crossing.leaves.filter((leaf) =>
+          events.some(({ firstLeaf, leafCount }) => leaf >= firstLeaf && leaf < firstLeaf + leafCount),
+        );
+        return { time: crossing.time, events, leaves };
       }
       left = crossing.time;
     }

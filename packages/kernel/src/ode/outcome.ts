@@ -11,8 +11,18 @@ export type StopReason =
   | { readonly kind: 'too many steps'; readonly limit: number; readonly stiff: boolean }
   /** Events set each other off without end at one time. */
   | { readonly kind: 'event cascade' }
+  /** How the time of an event moves with the constants cannot be told, so that sensitivities end there. */
+  | { readonly kind: 'sensitivities end' }
   /** The caller's checkpoint said so. */
   | { readonly kind: 'stopped from outside' };
+
+/** Thrown by a checkpoint while something is prepared, to end the work. */
+export class PreparationStopped extends Error {
+  constructor() {
+    super('The run was ended before the course began.');
+    this.name = 'PreparationStopped';
+  }
+}
 
 export interface Statistics extends Readonly<Counters> {
   readonly steps: number;

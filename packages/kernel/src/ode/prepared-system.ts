@@ -25,15 +25,23 @@ export interface PreparedSystem {
   evaluate(name: string, time: number, state: number): Float64Array;
 }
 
+/** How a system is prepared. */
+export interface PrepareOptions {
+  /** The methods; all by default. */
+  readonly kinds?: readonly MethodKind[];
+  readonly backend?: Backend;
+  /** Called often while it is prepared, and later where tables are made; throws PreparationStopped to end the work. */
+  readonly checkpoint?: () => void;
+}
+
 /** Assembles the routines of a system for the given methods. The same bits come from either backend. */
-export function prepareSystem(
-  system: OdeSystem,
-  kinds: readonly MethodKind[] = ['nonstiff', 'stiff'],
-  backend?: Backend,
-): PreparedSystem {
+export function prepareSystem(system: OdeSystem, options: PrepareOptions = {}): PreparedSystem {
+  const { kinds = ['nonstiff', 'stiff'], backend, checkpoint = () => undefined } = options;
   const layout = new Layout(system.parameters);
   const common = commonWorkspace(system, layout);
-  const prepared = new Map(kinds.map((kind) => [kind, methods[kind].prepare(system, common, layout)]));
+  const prepared = new Map(
+    kinds.map((kind) => [kind, methods[kind].prepare(system, common, layout, checkpoint)]),
+  );
   const assembly = assemble(
     layout.slots,
     (memory) => {
@@ -48,7 +56,7 @@ export function prepareSystem(
       }
       return routines;
     },
-    backend,
+    { backend, checkpoint },
   );
   const { memory } = assembly;
   const rightHandSide = assembly.routine('rightHandSide');

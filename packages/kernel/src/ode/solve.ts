@@ -1,10 +1,11 @@
 import type { Controller } from './controllers/controller.ts';
-import { EventWatch, type OdeEvent } from './events.ts';
+import { EventWatch, type Firing, type OdeEvent } from './events.ts';
 import { initialStep } from './initial-step.ts';
 import type { Counters, Stepper } from './methods/method.ts';
 import { type MethodKind, methods } from './methods/registry.ts';
-import type { Outcome, StopReason } from './outcome.ts';
+import { type Outcome, PreparationStopped, type StopReason } from './outcome.ts';
 import type { PreparedSystem } from './prepared-system.ts';
+import { SensitivityJump, type SensitivityPlaces } from './sensitivity-jump.ts';
 import { StiffnessWatch } from './stiffness.ts';
 import { slots } from './workspace.ts';
 
@@ -21,6 +22,8 @@ export interface InitialValueProblem {
   /** By component, positive. */
   readonly absoluteTolerance: Float64Array;
   readonly events?: readonly OdeEvent[];
+  /** Where the state holds sensitivities, which events change in their own way. */
+  readonly sensitivities?: SensitivityPlaces | null;
   /** Gets the state (a slot of memory) at each of `times`, after the events of that time. */
   readonly record: (time: number, state: number) => void;
   /** Gets the state after every step, and `jumped` after an event. */
@@ -47,9 +50,18 @@ const eventsAtOneTime = 100;
 /** The name under which a system offers the leaves of all its events, in their order. */
 export const leavesFunction = 'event leaves';
 
-/** Integrates from the start to `until`. Never throws for trouble in the numbers: see Outcome. */
+/**
+ * Integrates from the start to `until`. Never throws for trouble in the numbers, nor where a checkpoint inside a routine
+ * ends the work: see Outcome.
+ */
 export function solve(prepared: PreparedSystem, problem: InitialValueProblem): Outcome {
-  return new Run(prepared, problem).go();
+  const run = new Run(prepared, problem);
+  try {
+    return run.go();
+  } catch (error) {
+    if (!(error instanceof PreparationStopped)) throw error;
+    return run.outcome({ kind: 'stopped from outside' });
+  }
 }
 
 class Run {
@@ -62,6 +74,7 @@ class Run {
   private readonly stiffness = new StiffnessWatch();
   private readonly checkpointSteps: number;
   private readonly watch: EventWatch | null;
+  private readonly sensitivityJump: SensitivityJump | null;
   private steppers = new Map<MethodKind, { stepper: Stepper; controller: Controller }>();
   private kind: MethodKind;
   private time: number;
@@ -88,6 +101,9 @@ class Run {
     const events = problem.events ?? [];
     const leaves = events.reduce((sum, { leafCount }) => sum + leafCount, 0);
     this.watch = events.length === 0 ? null : new EventWatch(events, leaves, (time) => this.leavesAt(time));
+    const places = problem.sensitivities ?? null;
+    this.sensitivityJump =
+      places === null || events.length === 0 ? null : new SensitivityJump(prepared, places);
   }
 
   go(): Outcome {
@@ -159,15 +175,17 @@ class Run {
     this.time = firing?.time ?? reached;
     this.noteSize();
     observe?.(this.time, this.state, false);
-    if (firing !== null) return this.jump(firing.events);
+    if (firing !== null) return this.jump(firing);
     this.considerMethod(stepper, h);
     this.recordHere();
     return null;
   }
 
   /** Applies events that fire now, and those that they set off. */
-  private jump(first: readonly OdeEvent[]): StopReason | null {
-    let fired = first;
+  private jump({ events, leaves }: Firing): StopReason | null {
+    const undefinedThere = this.sensitivityJump?.begin(this.time, leaves) ?? null;
+    if (undefinedThere !== null) return undefinedThere;
+    let fired = events;
     for (let round = 0; fired.length > 0; round++) {
       if (round >= eventsAtOneTime) return { kind: 'event cascade' };
       for (const event of fired) this.apply(event);
@@ -175,6 +193,7 @@ class Run {
       this.toBetween = () => undefined;
       fired = this.watch!.afterJump(this.time);
     }
+    this.sensitivityJump?.end(this.time);
     this.problem.observe?.(this.time, this.state, true);
     for (const { stepper, controller } of this.steppers.values()) {
       stepper.restart();
@@ -190,10 +209,12 @@ class Run {
     const values = Float64Array.from(
       this.prepared.evaluate(event.values, this.time, this.prepared.common.state),
     );
+    const slopes = this.sensitivityJump?.slopes(event, this.time);
     event.targets.forEach(({ kind, index }, n) => {
       if (kind === 'variable') this.state[index] = values[n]!;
       else this.prepared.setParameter(index, values[n]!);
     });
+    if (slopes !== undefined) this.sensitivityJump?.apply(event, slopes);
   }
 
   /** Changes between the methods where "auto" was asked for and it pays. */
@@ -312,7 +333,7 @@ class Run {
     return { size, component };
   }
 
-  private outcome(stop: StopReason | null): Outcome {
+  outcome(stop: StopReason | null): Outcome {
     const { steps, rejected, counters, used } = this;
     return { time: this.time, stop, statistics: { ...counters, steps, rejected, methods: used } };
   }

@@ -38,15 +38,25 @@ export interface Assembly {
  * work on it; routines are named before they are called. Unless a backend is asked for, WebAssembly is taken wherever
  * the host has it and its content policy lets it be compiled. Both backends give the same bits.
  */
-export function assemble(slots: number, makeRoutines: MakeRoutines, backend?: Backend): Assembly {
+export function assemble(
+  slots: number,
+  makeRoutines: MakeRoutines,
+  { backend, checkpoint }: AssembleOptions = {},
+): Assembly {
   const wanted = backend ?? (typeof WebAssembly === 'object' ? 'wasm' : 'interpreted');
   if (wanted === 'interpreted') return assembleInterpreted(slots, makeRoutines);
   try {
-    return assembleModule(slots, makeRoutines);
+    return assembleModule(slots, makeRoutines, checkpoint);
   } catch (error) {
     if (backend !== undefined || !(error instanceof WebAssembly.CompileError)) throw error;
     return assembleInterpreted(slots, makeRoutines);
   }
+}
+
+export interface AssembleOptions {
+  readonly backend?: Backend | undefined;
+  /** Called between routines; may throw to end the work. */
+  readonly checkpoint?: () => void;
 }
 
 type MakeRoutines = (memory: Float64Array) => ReadonlyMap<string, Routine>;
@@ -100,10 +110,16 @@ function interpreted(
   }
 }
 
+/** Before tapes of this size the checkpoint is called. */
+const longTape = 1000;
 const bases = [valueType.i32, valueType.i32];
 const pageBytes = 65536;
 
-function assembleModule(slots: number, makeRoutines: MakeRoutines): Assembly {
+function assembleModule(
+  slots: number,
+  makeRoutines: MakeRoutines,
+  checkpoint: () => void = () => undefined,
+): Assembly {
   const pages = Math.max(1, Math.ceil((slots * 8) / pageBytes));
   const storage = new WebAssembly.Memory({ initial: pages });
   const memory = new Float64Array(storage.buffer, 0, slots);
@@ -123,7 +139,7 @@ function assembleModule(slots: number, makeRoutines: MakeRoutines): Assembly {
   }
   for (const [name, part] of routines) {
     if (part.kind === 'host') continue;
-    indices.set(name, defineRoutine(builder, part, hosts, indices));
+    indices.set(name, defineRoutine(builder, part, hosts, indices, checkpoint));
   }
   for (const [name, index] of indices) builder.export(name, index);
 
@@ -145,10 +161,14 @@ function defineRoutine(
   part: Exclude<Routine, { kind: 'host' }>,
   hosts: readonly FunctionIndex[],
   indices: ReadonlyMap<string, FunctionIndex>,
+  checkpoint: () => void,
 ): FunctionIndex {
   switch (part.kind) {
     case 'straight': {
-      const parts = part.tapes.map((tape) => defineTape(builder, tape, hosts));
+      const parts = part.tapes.map((tape) => {
+        if (tape.size >= longTape) checkpoint();
+        return defineTape(builder, tape, hosts);
+      });
       if (parts.length === 1) return parts[0]!;
       const body = new ByteWriter(parts.length * 8);
       for (const index of parts) {

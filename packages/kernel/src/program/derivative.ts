@@ -1,4 +1,4 @@
-import { type Graph, type Node, operands, operations } from './graph.ts';
+import { type Graph, type Node, operandCounts, operands, operations } from './graph.ts';
 import { hostFunctions, type HostName, hostNumber } from './host-functions.ts';
 
 /**
@@ -27,6 +27,22 @@ export function gradient(graph: Graph, of: Node, isVariable: (node: Node) => boo
     });
   }
   return found;
+}
+
+/** By node: 1 where it depends on `source` or is it. */
+export function nodesAbove(graph: Graph, source: Node): Uint8Array {
+  const above = new Uint8Array(graph.size);
+  above[source] = 1;
+  for (let node = source + 1; node < above.length; node++) {
+    const count = operandCounts[graph.operation[node]!]!;
+    if (
+      (count > 0 && above[graph.left[node]!] === 1) ||
+      (count > 1 && above[graph.right[node]!] === 1) ||
+      (count > 2 && above[graph.third[node]!] === 1)
+    )
+      above[node] = 1;
+  }
+  return above;
 }
 
 /** The nodes under `of`, itself included, that lead to a variable. */

@@ -39,16 +39,20 @@ export type Space = (typeof spaces)[keyof typeof spaces];
 /** Nodes are numbers into the graph that made them. */
 export type Node = number;
 
-const keyRange = 2 ** 23;
+/** More operations than this are refused: programs of that length cannot be compiled in useful time. */
+const mostNodes = 2 ** 23;
+const smallestTable = 128;
 
 export class Graph {
   readonly operation: number[] = [];
+  /** Operands, or for loads the slot and the space; for constants `left` is a place among the numbers. */
   readonly left: number[] = [];
   readonly right: number[] = [];
   readonly third: number[] = [];
+  private readonly numbers: number[] = [];
   private readonly constants = new Map<number, Node>();
-  private readonly pairs = new Map<number, Node>();
-  private readonly triples = new Map<string, Node>();
+  /** Nodes by a hash of what they are, plus 1; open addressing, its length a power of two and at least twice the nodes. */
+  private table = new Int32Array(smallestTable);
 
   /** How many nodes there are. */
   get size(): number {
@@ -58,7 +62,7 @@ export class Graph {
   constant(value: number): Node {
     const known = this.constants.get(value);
     if (known !== undefined) return known;
-    const node = this.append(operations.constant, value, 0, 0);
+    const node = this.append(operations.constant, this.numbers.push(value) - 1, 0, 0);
     this.constants.set(value, node);
     return node;
   }
@@ -153,7 +157,7 @@ export class Graph {
 
   /** The number of a constant node. */
   value(node: Node): number {
-    return this.left[node]!;
+    return this.numbers[this.left[node]!]!;
   }
 
   /** The slot of a node that loads from `space`, else -1. */
@@ -166,7 +170,7 @@ export class Graph {
   }
 
   isConstant(node: Node, value: number): boolean {
-    return this.isConstantNode(node) && this.left[node] === value;
+    return this.isConstantNode(node) && this.value(node) === value;
   }
 
   private bothConstant(a: Node, b: Node): boolean {
@@ -174,32 +178,60 @@ export class Graph {
   }
 
   private pair(operation: number, a: number, b: number): Node {
-    const key = (operation * keyRange + a) * keyRange + b;
-    const known = this.pairs.get(key);
-    if (known !== undefined) return known;
-    const node = this.append(operation, a, b, 0);
-    this.pairs.set(key, node);
+    return this.triple(operation, a, b, 0);
+  }
+
+  /** The node of this description: the known one where there is one. */
+  private triple(operation: number, a: number, b: number, c: number): Node {
+    const { table } = this;
+    const mask = table.length - 1;
+    let place = hash(operation, a, b, c) & mask;
+    for (let entry = table[place]!; entry !== 0; entry = table[place]!) {
+      const node = entry - 1;
+      if (
+        this.left[node] === a &&
+        this.right[node] === b &&
+        this.operation[node] === operation &&
+        this.third[node] === c
+      )
+        return node;
+      place = (place + 1) & mask;
+    }
+    const node = this.append(operation, a, b, c);
+    table[place] = node + 1;
+    if (this.size * 2 > table.length) this.growTable();
     return node;
   }
 
-  private triple(operation: number, a: number, b: number, c: number): Node {
-    const key = `${operation},${a},${b},${c}`;
-    const known = this.triples.get(key);
-    if (known !== undefined) return known;
-    const node = this.append(operation, a, b, c);
-    this.triples.set(key, node);
-    return node;
+  private growTable(): void {
+    const table = new Int32Array(this.table.length * 4);
+    const mask = table.length - 1;
+    for (let node = 0; node < this.size; node++) {
+      const operation = this.operation[node]!;
+      if (operation === operations.constant) continue;
+      let place = hash(operation, this.left[node]!, this.right[node]!, this.third[node]!) & mask;
+      while (table[place] !== 0) place = (place + 1) & mask;
+      table[place] = node + 1;
+    }
+    this.table = table;
   }
 
   private append(operation: number, a: number, b: number, c: number): Node {
     const node = this.operation.length;
-    if (node >= keyRange) throw new RangeError(`The rate equations need more than ${keyRange} operations.`);
+    if (node >= mostNodes) throw new RangeError(`The rate equations need more than ${mostNodes} operations.`);
     this.operation.push(operation);
     this.left.push(a);
     this.right.push(b);
     this.third.push(c);
     return node;
   }
+}
+
+/** A hash of four whole numbers (multiplication by odd constants, high bits mixed into low ones). */
+function hash(operation: number, a: number, b: number, c: number): number {
+  let h = Math.imul(a, 0x9e3779b1) ^ Math.imul(b, 0x85ebca6b);
+  h = Math.imul(h ^ (h >>> 15) ^ c, 0xc2b2ae35) ^ Math.imul(operation, 0x27d4eb2f);
+  return h ^ (h >>> 13);
 }
 
 /** The operand nodes of a node, in order; constants and loads have none. */

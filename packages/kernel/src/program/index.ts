@@ -1,6 +1,6 @@
 export { assemble } from './assembly.ts';
 export type { Assembly, Backend, Call, Routine, RunRoutine } from './assembly.ts';
-export { gradient } from './derivative.ts';
+export { gradient, nodesAbove } from './derivative.ts';
 export { Graph, spaces } from './graph.ts';
 export type { Node, Space } from './graph.ts';
 export { hostNumber } from './host-functions.ts';

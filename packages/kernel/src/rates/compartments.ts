@@ -13,3 +13,10 @@ export function compartmentOfSpecies(network: Network): Int32Array {
 export function crossesCompartments(compartmentOf: Int32Array, species: readonly number[]): boolean {
   return species.some((one) => compartmentOf[one] !== compartmentOf[species[0]!]);
 }
+
+/** The volume of each compartment, with the trial value of a constant of its name where it has one. */
+export function compartmentVolumes(network: Network, constants: readonly (number | null)[]): number[] {
+  if (network.compartments.length === 0) return [];
+  const places = new Map(network.constants.map(({ name }, index) => [name, index]));
+  return network.compartments.map(({ name, volume }) => constants[places.get(name) ?? -1] ?? volume.value);
+}

@@ -1,11 +1,14 @@
+import type { Expression } from '@stillroom/shared/expression';
 import type { Network } from '@stillroom/shared/network';
 import { parameterSlot, timeSlot } from '../ode/problem.ts';
 import { gradient, Graph, type Node, spaces } from '../program/index.ts';
-import { compartmentOfSpecies, crossesCompartments } from './compartments.ts';
+import { compartmentOfSpecies, compartmentVolumes, crossesCompartments } from './compartments.ts';
+import type { Derivations } from './derivations.ts';
 import { RateError } from './error.ts';
 import { expressionNode } from './expression.ts';
 import { massActionRate, massActionSlope, type Member, members, netCoefficients } from './mass-action.ts';
-import { list, type Values } from './values.ts';
+import { NameTable, type Target } from './names.ts';
+import type { Values } from './values.ts';
 
 /** How fast one term moves one variable: its rate times `factor`. */
 export interface Change {
@@ -40,20 +43,47 @@ export interface RateEquations {
   readonly terms: readonly Term[];
   readonly time: Node;
   readonly parameterValues: Float64Array;
+  /** Which constants follow others. */
+  readonly derivations: Derivations;
+  /** The volume of each compartment. */
+  readonly volumes: readonly number[];
+  /** Reactions left out because their constant is 0. */
+  readonly dropped: readonly number[];
   /** The node of a species, constant, output or "t"; null for another name. */
   resolve(name: string): Node | null;
+  /** The node of an expression over its names. */
+  expression(expression: Expression): Node;
   /** Where a named number stands that an event may set: a species or a constant. */
-  target(name: string): { readonly kind: 'variable' | 'parameter'; readonly index: number } | null;
-  /** The node of a variable. */
-  variableNode(variable: number): Node;
+  target(name: string): Target | null;
+  /** The node of a parameter. */
+  parameterNode(parameter: number): Node;
   /** Throws a RateError that names every constant used so far that has no value. */
   requireValues(): void;
 }
 
-/** Builds the rate equations with the given values. Throws RateError for what the network leaves open. */
-export function rateEquations(network: Network, values: Values): RateEquations {
+/** How rate equations are built. */
+export interface EquationOptions {
+  /** Constants whose arrows stay even where they are 0, because they are changed or differentiated by. */
+  readonly kept?: ReadonlySet<number>;
+  /** Called often; may throw to end the work. */
+  readonly checkpoint?: (() => void) | undefined;
+}
+
+/** Reactions between two calls of the checkpoint. */
+const checkpointEvery = 512;
+
+/**
+ * Builds the rate equations with the given values. Arrows whose constant is 0 are left out. Throws RateError for what
+ * the network leaves open.
+ */
+export function rateEquations(
+  network: Network,
+  values: Values,
+  options: EquationOptions = {},
+): RateEquations {
   const graph = new Graph();
   const names = new NameTable(graph, network, values);
+  const dropped: number[] = [];
   const equations: RateEquations = {
     graph,
     variables: names.variables,
@@ -61,18 +91,30 @@ export function rateEquations(network: Network, values: Values): RateEquations {
     terms: [],
     time: graph.load(timeSlot),
     parameterValues: names.parameterValues,
+    derivations: values.derivations,
+    volumes: compartmentVolumes(network, values.constants),
+    dropped,
     resolve: (name) => names.resolve(name),
+    expression: (expression) => expressionNode(graph, expression, (name) => names.resolve(name)),
     target: (name) => names.target(name),
-    variableNode: (variable) => graph.load(variable, spaces.first),
+    parameterNode: (parameter) => graph.load(parameterSlot(parameter)),
     requireValues: () => names.requireValues(),
   };
-  const terms = [...reactionTerms(network, equations, names), ...ruleTerms(network, equations)];
+  const terms = reactionTerms(network, values, equations, names, options, dropped);
+  terms.push(...ruleTerms(network, equations));
   names.requireValues();
   return { ...equations, terms };
 }
 
-function reactionTerms(network: Network, equations: RateEquations, names: NameTable): Term[] {
-  const { graph } = equations;
+function reactionTerms(
+  network: Network,
+  values: Values,
+  equations: RateEquations,
+  names: NameTable,
+  { kept, checkpoint }: EquationOptions,
+  dropped: number[],
+): Term[] {
+  const { graph, variableOf } = equations;
   const { reactions, complexes, laws } = network;
   const compartmentOf = compartmentOfSpecies(network);
   const lawNodes = laws.map<Node | null>(() => null);
@@ -80,25 +122,30 @@ function reactionTerms(network: Network, equations: RateEquations, names: NameTa
   const at = (species: number): Node => names.species(species);
   const terms: Term[] = [];
   for (let r = 0; r < reactions.count; r++) {
+    if (r % checkpointEvery === checkpointEvery - 1) checkpoint?.();
     const from = complexMembers[reactions.from[r]!]!;
     const to = complexMembers[reactions.to[r]!]!;
     const law = reactions.law[r]!;
-    const scale = amountScale(network, compartmentOf, from, to, law, r);
-    const changes = netChanges(from, to, equations.variableOf, scale);
+    const scale = amountScale(network, equations.volumes, compartmentOf, from, to, law, r);
+    const constant = law < 0 ? reactions.constant[r]! : (laws[law]!.massAction ?? -1);
+    if (constant >= 0 && values.constants[constant] === 0 && kept?.has(constant) !== true) {
+      dropped.push(r);
+      continue;
+    }
+    const changes = netChanges(from, to, variableOf, scale);
     if (changes.length === 0) continue;
     if (law >= 0) {
       const rate = (lawNodes[law] ??= expressionNode(graph, laws[law]!.expression, equations.resolve));
       if (!graph.isConstant(rate, 0)) terms.push(lawTerm(equations, rate, changes));
-    } else {
-      const constant = names.constant(reactions.constant[r]!);
-      const slopes = from
-        .filter(({ species }) => equations.variableOf[species]! >= 0)
-        .map(({ species }) => ({
-          variable: equations.variableOf[species]!,
-          node: massActionSlope(graph, constant, from, species, at),
-        }));
-      terms.push({ rate: massActionRate(graph, constant, from, at), changes, slopes });
+      continue;
     }
+    const factor = names.constant(constant);
+    const slopes: Slope[] = [];
+    for (const { species } of from) {
+      const variable = variableOf[species]!;
+      if (variable >= 0) slopes.push({ variable, node: massActionSlope(graph, factor, from, species, at) });
+    }
+    terms.push({ rate: massActionRate(graph, factor, from, at), changes, slopes });
   }
   return terms;
 }
@@ -136,29 +183,33 @@ function netChanges(
   from: readonly Member[],
   to: readonly Member[],
   variableOf: Int32Array,
-  scale: (species: number) => number,
+  scale: ((species: number) => number) | null,
 ): Change[] {
-  return [...netCoefficients(from, to)]
-    .filter(([species, change]) => change !== 0 && variableOf[species]! >= 0)
-    .map(([species, change]) => ({ variable: variableOf[species]!, factor: change / scale(species) }))
-    .sort((a, b) => a.variable - b.variable);
+  const changes: Change[] = [];
+  for (const { species, coefficient } of netCoefficients(from, to)) {
+    const variable = variableOf[species]!;
+    if (coefficient === 0 || variable < 0) continue;
+    changes.push({ variable, factor: scale === null ? coefficient : coefficient / scale(species) });
+  }
+  return changes;
 }
 
 /**
  * What an amount per time is divided by to change the concentration of a species: the volume of its compartment for a
- * law across compartments, else 1 (such laws are concentrations per time).
+ * law across compartments; null where that is 1 (such laws are concentrations per time).
  */
 function amountScale(
   network: Network,
+  volumes: readonly number[],
   compartmentOf: Int32Array,
   from: readonly Member[],
   to: readonly Member[],
   law: number,
   reaction: number,
-): (species: number) => number {
-  if (network.compartments.length < 2) return () => 1;
+): ((species: number) => number) | null {
+  if (volumes.length < 2) return null;
   const touched = [...from, ...to].map(({ species }) => species);
-  if (!crossesCompartments(compartmentOf, touched)) return () => 1;
+  if (!crossesCompartments(compartmentOf, touched)) return null;
   if (law < 0) {
     const line = network.rows[network.reactions.row[reaction]!]?.line;
     throw new RateError(
@@ -166,78 +217,5 @@ function amountScale(
       'Give it a `law` in amount per time.',
     );
   }
-  return (species) => network.compartments[compartmentOf[species]!]!.volume.value;
-}
-
-/** Names of the network as nodes, and which constants without a value were asked for. */
-class NameTable {
-  readonly variables: number[] = [];
-  readonly variableOf: Int32Array;
-  readonly parameterValues: Float64Array;
-  private readonly places = new Map<string, () => Node>();
-  private readonly missing = new Set<number>();
-  private readonly fixedParameter = new Map<number, number>();
-
-  private readonly graph: Graph;
-  private readonly network: Network;
-  private readonly values: Values;
-
-  constructor(graph: Graph, network: Network, values: Values) {
-    this.graph = graph;
-    this.network = network;
-    this.values = values;
-    this.variableOf = new Int32Array(network.species.length).fill(-1);
-    const constants = network.constants.length;
-    this.parameterValues = new Float64Array(constants + network.fixed.size);
-    values.constants.forEach((value, index) => (this.parameterValues[index] = value ?? 0));
-    network.species.forEach((name, species) => {
-      if (network.fixed.has(species)) {
-        const index = constants + this.fixedParameter.size;
-        this.fixedParameter.set(species, index);
-        this.parameterValues[index] = values.start[species]!;
-      } else {
-        this.variableOf[species] = this.variables.push(species) - 1;
-      }
-      this.places.set(name, () => this.species(species));
-    });
-    network.constants.forEach(({ name }, index) => this.places.set(name, () => this.constant(index)));
-    for (const { name, expression } of network.outputs) {
-      this.places.set(name, () => expressionNode(graph, expression, (inner) => this.resolve(inner)));
-    }
-    this.places.set('t', () => graph.load(timeSlot));
-  }
-
-  resolve(name: string): Node | null {
-    return this.places.get(name)?.() ?? null;
-  }
-
-  target(name: string): { kind: 'variable' | 'parameter'; index: number } | null {
-    const constant = this.network.constants.findIndex((entry) => entry.name === name);
-    if (constant >= 0) return { kind: 'parameter', index: constant };
-    const species = this.network.species.indexOf(name);
-    if (species < 0) return null;
-    const variable = this.variableOf[species]!;
-    if (variable >= 0) return { kind: 'variable', index: variable };
-    return { kind: 'parameter', index: this.fixedParameter.get(species)! };
-  }
-
-  species(species: number): Node {
-    const parameter = this.fixedParameter.get(species);
-    if (parameter !== undefined) return this.graph.load(parameterSlot(parameter));
-    return this.graph.load(this.variableOf[species]!, spaces.first);
-  }
-
-  constant(index: number): Node {
-    if (this.values.constants[index] === null) this.missing.add(index);
-    return this.graph.load(parameterSlot(index));
-  }
-
-  requireValues(): void {
-    if (this.missing.size === 0) return;
-    const names = [...this.missing].sort((a, b) => a - b).map((index) => this.network.constants[index]!.name);
-    throw new RateError(
-      `${list(names)} ${names.length === 1 ? 'has' : 'have'} no value.`,
-      `Write one in the network (${names[0]} = …) or under "constants" of this cell.`,
-    );
-  }
+  return (species) => volumes[compartmentOf[species]!]!;
 }

@@ -18,11 +18,19 @@ export function members(complexes: ComplexTable, complex: number): Member[] {
   return list;
 }
 
-/** How much of each species a reaction makes (negative: uses), by species; 0 where it only takes part. */
-export function netCoefficients(from: readonly Member[], to: readonly Member[]): Map<number, number> {
-  const net = new Map<number, number>();
-  for (const { species, coefficient } of from) net.set(species, (net.get(species) ?? 0) - coefficient);
-  for (const { species, coefficient } of to) net.set(species, (net.get(species) ?? 0) + coefficient);
+/**
+ * How much of each species a reaction makes (negative: uses), by ascending species; 0 where it only takes part. Members
+ * of both sides ascend.
+ */
+export function netCoefficients(from: readonly Member[], to: readonly Member[]): Member[] {
+  const net: Member[] = [];
+  let j = 0;
+  for (const { species, coefficient } of from) {
+    for (; j < to.length && to[j]!.species < species; j++) net.push(to[j]!);
+    const made = to[j]?.species === species ? to[j++]!.coefficient : 0;
+    net.push({ species, coefficient: made - coefficient });
+  }
+  for (; j < to.length; j++) net.push(to[j]!);
   return net;
 }
 

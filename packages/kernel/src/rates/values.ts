@@ -1,4 +1,6 @@
-import type { Network } from '@stillroom/shared/network';
+import { evaluate, exactValue, freeNames, printExpression } from '@stillroom/shared/expression';
+import { type Network, rational, type Rational } from '@stillroom/shared/network';
+import { Derivations } from './derivations.ts';
 import { RateError } from './error.ts';
 
 /** Values that replace those of the text, by name. */
@@ -11,10 +13,12 @@ export interface Overrides {
 export interface Values {
   readonly constants: readonly (number | null)[];
   readonly start: Float64Array;
+  /** Which constants follow others; one with a trial value of its own does not. */
+  readonly derivations: Derivations;
 }
 
 /**
- * The network's own values with the overrides put in. A fixed species starts at, and stays at, its fixed value unless
+ * The network's own values with the overrides put in; constants derived from overridden ones follow. A fixed species starts at, and stays at, its fixed value unless
  * `start` names it. Throws RateError for a name that the network does not have or a value that cannot be used.
  */
 export function resolveValues(network: Network, overrides: Overrides): Values {
@@ -22,14 +26,59 @@ export function resolveValues(network: Network, overrides: Overrides): Values {
   const start = new Float64Array(network.species.length);
   for (const [species, { value }] of network.start) start[species] = value;
   for (const [species, { value }] of network.fixed) start[species] = value;
+  const given = new Set<number>();
   const constantNames = network.constants.map(({ name }) => name);
   put('constants', 'constant', overrides.constants ?? {}, constantNames, (index, value) => {
     constants[index] = value;
+    given.add(index);
   });
+  const derivations = new Derivations(network.constants, given);
+  follow(network, derivations, given, constants);
   put('start', 'species', overrides.start ?? {}, network.species, (index, value) => {
     start[index] = value;
   });
-  return { constants, start };
+  return { constants, start, derivations };
+}
+
+/** Computes anew, exactly where that can be and rounded once, what is derived from the `given` constants. */
+function follow(
+  network: Network,
+  derivations: Derivations,
+  given: ReadonlySet<number>,
+  constants: (number | null)[],
+): void {
+  const followers = derivations.followers(given);
+  if (followers.length === 0) return;
+  const places = new Map(network.constants.map(({ name }, index) => [name, index]));
+  const exact = new Map<number, Rational | null>();
+  for (const index of given) exact.set(index, rational.ofDecimal(String(constants[index])));
+  const exactOf = (name: string): Rational | null => {
+    const index = places.get(name) ?? -1;
+    const known = exact.get(index);
+    return known === undefined ? (network.constants[index]?.quantity?.exact ?? null) : known;
+  };
+  for (const index of followers) {
+    const expression = derivations.expression(index)!;
+    const value = exactValue(expression, exactOf);
+    exact.set(index, value);
+    const missing = freeNames(expression).some(
+      (name) => (constants[places.get(name) ?? -1] ?? null) === null,
+    );
+    if (missing) {
+      constants[index] = null;
+      continue;
+    }
+    const number =
+      value === null
+        ? evaluate(expression, (name) => constants[places.get(name)!]!)
+        : rational.toNumber(value);
+    if (!Number.isFinite(number)) {
+      throw new RateError(
+        `With these constants ${network.constants[index]!.name} = ${printExpression(expression)} is not a finite number.`,
+      );
+    }
+    constants[index] = number;
+  }
 }
 
 function put(

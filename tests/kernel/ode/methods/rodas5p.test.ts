@@ -96,7 +96,7 @@ describe('Rodas5P at work', () => {
       ],
     });
     const equations = rateEquations(network, resolveValues(network, {}));
-    const prepared = prepareSystem(odeSystem(equations), ['stiff']);
+    const prepared = prepareSystem(odeSystem(equations), { kinds: ['stiff'] });
     prepared.setParameters(equations.parameterValues);
     const { state, next, absoluteTolerance } = prepared.common;
     prepared.vector(absoluteTolerance).fill(1e-9);

@@ -18,9 +18,10 @@ export interface Elimination {
   readonly symbolic: () => SymbolicFactorization;
 }
 
-export function planElimination(pattern: SparsePattern): Elimination {
+/** `checkpoint` may throw to end the search for an order, now or when it is first needed. */
+export function planElimination(pattern: SparsePattern, checkpoint?: () => void): Elimination {
   let known: SymbolicFactorization | null = null;
-  const symbolic = (): SymbolicFactorization => (known ??= factorizeSymbolically(pattern));
+  const symbolic = (): SymbolicFactorization => (known ??= factorizeSymbolically(pattern, checkpoint));
   const unrolled = pattern.size <= unrolledSize && symbolic().work <= unrolledWork;
   return { pattern, unrolled, factorLength: unrolled ? factorLength(symbolic()) : 0, symbolic };
 }

@@ -15,51 +15,76 @@ export interface SymbolicFactorization {
   readonly work: number;
 }
 
+/** About how many updates lie between two calls of the checkpoint. */
+const checkpointWork = 100_000;
+
 /**
  * Chooses the order of elimination on the diagonal by least (row entries − 1)(column entries − 1), the smallest index
- * on a tie, and follows the fill-in (Markowitz 1957). The diagonal counts as full.
+ * on a tie, and follows the fill-in (Markowitz 1957). The diagonal counts as full. `checkpoint` may throw to end the work.
  */
-export function factorizeSymbolically(pattern: SparsePattern): SymbolicFactorization {
+export function factorizeSymbolically(
+  pattern: SparsePattern,
+  checkpoint: () => void = () => undefined,
+): SymbolicFactorization {
   const { size } = pattern;
-  const rows = Array.from({ length: size }, (_, i) => new Set([i]));
-  const columns = Array.from({ length: size }, (_, i) => new Set([i]));
-  for (let i = 0; i < size; i++) {
-    for (let e = pattern.rowStart[i]!; e < pattern.rowStart[i + 1]!; e++) {
-      const j = pattern.columns[e]!;
-      rows[i]!.add(j);
-      columns[j]!.add(i);
-    }
-  }
-  const cost = (i: number): number => (rows[i]!.size - 1) * (columns[i]!.size - 1);
-  const queue = new CostQueue(size, cost);
+  const { rows, columns } = offDiagonal(pattern);
+  const queue = new CostQueue(size, (i) => rows[i]!.length * columns[i]!.length);
   const order = new Int32Array(size);
   const place = new Int32Array(size);
-  const below: number[][] = [];
-  const right: number[][] = [];
+  const mark = new Int32Array(size);
+  let epoch = 0;
+  /** `list` of index `own` without the pivot and with `others`. */
+  const merge = (list: number[], own: number, pivot: number, others: readonly number[]): void => {
+    epoch++;
+    mark[own] = epoch;
+    for (let n = 0; n < list.length; n++) {
+      if (list[n] === pivot) {
+        list[n] = list.at(-1)!;
+        list.pop();
+      }
+      if (n < list.length) mark[list[n]!] = epoch;
+    }
+    for (const other of others) if (mark[other] !== epoch) list.push(other);
+  };
   let work = 0;
+  let next = checkpointWork;
   for (let q = 0; q < size; q++) {
     const pivot = queue.pop();
     order[q] = pivot;
     place[pivot] = q;
-    const inRow = [...rows[pivot]!].filter((j) => j !== pivot);
-    const inColumn = [...columns[pivot]!].filter((i) => i !== pivot);
-    right.push(inRow);
-    below.push(inColumn);
+    const inRow = rows[pivot]!;
+    const inColumn = columns[pivot]!;
     work += inRow.length * inColumn.length;
-    for (const i of inColumn) {
-      rows[i]!.delete(pivot);
-      for (const j of inRow) {
-        rows[i]!.add(j);
-        columns[j]!.add(i);
-      }
-    }
-    for (const j of inRow) columns[j]!.delete(pivot);
+    for (const i of inColumn) merge(rows[i]!, i, pivot, inRow);
+    for (const j of inRow) merge(columns[j]!, j, pivot, inColumn);
     for (const i of inColumn) queue.update(i);
     for (const j of inRow) queue.update(j);
+    if (work + q >= next) {
+      checkpoint();
+      next = work + q + checkpointWork;
+    }
   }
-  const placed = (lists: number[][]): Int32Array[] =>
-    lists.map((entries) => Int32Array.from(entries, (index) => place[index]!).sort());
-  return { size, order, place, lower: placed(below), upper: placed(right), work };
+  const placed = (lists: readonly number[][]): Int32Array[] =>
+    Array.from(order, (pivot) => Int32Array.from(lists[pivot]!, (index) => place[index]!).sort());
+  return { size, order, place, lower: placed(columns), upper: placed(rows), work };
+}
+
+/** The entries off the diagonal: columns by row and rows by column. */
+function offDiagonal({ size, rowStart, columns: entries }: SparsePattern): {
+  rows: number[][];
+  columns: number[][];
+} {
+  const rows = Array.from({ length: size }, (): number[] => []);
+  const columns = Array.from({ length: size }, (): number[] => []);
+  for (let i = 0; i < size; i++) {
+    for (let e = rowStart[i]!; e < rowStart[i + 1]!; e++) {
+      const j = entries[e]!;
+      if (i === j) continue;
+      rows[i]!.push(j);
+      columns[j]!.push(i);
+    }
+  }
+  return { rows, columns };
 }
 
 /** Indices by cost, the smallest cost first and the smallest index on a tie; a binary heap with lazy deletion. */

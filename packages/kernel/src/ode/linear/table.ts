@@ -13,10 +13,7 @@ export interface TableSolver {
 export function tableSolver(pattern: SparsePattern, symbolic: SymbolicFactorization): TableSolver {
   const { size, order, place } = symbolic;
   const lower = byRows(symbolic.lower);
-  const upper = {
-    start: starts(symbolic.upper),
-    columns: Int32Array.from(symbolic.upper.flatMap((row) => [...row])),
-  };
+  const upper = joined(symbolic.upper);
   const lowerValues = new Float64Array(lower.columns.length);
   const upperValues = new Float64Array(upper.columns.length);
   const inverse = new Float64Array(size);
@@ -71,17 +68,24 @@ export function tableSolver(pattern: SparsePattern, symbolic: SymbolicFactorizat
   return { factor, solve };
 }
 
-function starts(lists: readonly Int32Array[]): Int32Array {
+/** Lists one after the other. */
+function joined(lists: readonly Int32Array[]): { start: Int32Array; columns: Int32Array } {
   const start = new Int32Array(lists.length + 1);
-  lists.forEach((list, index) => (start[index + 1] = start[index]! + list.length));
-  return start;
+  for (let q = 0; q < lists.length; q++) start[q + 1] = start[q]! + lists[q]!.length;
+  const columns = new Int32Array(start[lists.length]!);
+  for (let q = 0; q < lists.length; q++) columns.set(lists[q]!, start[q]);
+  return { start, columns };
 }
 
 /** Columns of L (below the diagonal) turned into its rows, ascending. */
-function byRows(columns: readonly Int32Array[]): { start: Int32Array; columns: Int32Array } {
-  const rows: number[][] = columns.map(() => []);
-  columns.forEach((list, column) => {
-    for (const row of list) rows[row]!.push(column);
+function byRows(lists: readonly Int32Array[]): { start: Int32Array; columns: Int32Array } {
+  const start = new Int32Array(lists.length + 1);
+  for (const rows of lists) for (const row of rows) start[row + 1]!++;
+  for (let q = 0; q < lists.length; q++) start[q + 1]! += start[q]!;
+  const next = start.slice();
+  const columns = new Int32Array(start[lists.length]!);
+  lists.forEach((rows, column) => {
+    for (const row of rows) columns[next[row]!++] = column;
   });
-  return { start: starts(rows.map((row) => Int32Array.from(row))), columns: Int32Array.from(rows.flat()) };
+  return { start, columns };
 }

@@ -35,8 +35,8 @@ export interface Method {
   /** The power of h in the error estimate. */
   readonly errorPower: number;
   controller(): Controller;
-  /** Reserves memory and gives the routines and the stepper that use it. */
-  prepare(system: OdeSystem, common: CommonWorkspace, layout: Layout): PreparedMethod;
+  /** Reserves memory and gives the routines and the stepper that use it. `checkpoint` may throw to end long work. */
+  prepare(system: OdeSystem, common: CommonWorkspace, layout: Layout, checkpoint: () => void): PreparedMethod;
 }
 
 export interface PreparedMethod {

@@ -23,8 +23,8 @@ export const rodas5pMethod: Method = {
   stiff: true,
   errorPower: 5,
   controller: predictive,
-  prepare(system, common, layout) {
-    const elimination = planElimination(system.pattern);
+  prepare(system, common, layout, checkpoint) {
+    const elimination = planElimination(system.pattern, checkpoint);
     const own = rosenbrockWorkspace(system, elimination, layout);
     return {
       routines: (memory) => rosenbrockRoutines(system, common, own, elimination, memory),
