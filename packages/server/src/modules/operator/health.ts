@@ -67,7 +67,7 @@ async function sealLine(manager: EntityManager): Promise<Line> {
 async function mailLine(manager: EntityManager, config: Config): Promise<Line> {
   const { waiting, failed } = await countOutbox(manager);
   if (config.MAIL_URL === undefined) {
-    const words = `no mail server (MAIL_URL); ${waiting} letters wait in the outbox below`;
+    const words = `no mail server (MAIL_URL); ${waiting === 1 ? '1 letter waits' : `${waiting} letters wait`} in the outbox below`;
     return { name: 'Mail', state: 'warning', words };
   }
   const words = `${waiting} waiting, ${failed} given up`;
@@ -91,7 +91,8 @@ async function diskLine(): Promise<Line> {
 
 function memoryLine(): Line {
   const megabytes = Math.round(process.memoryUsage.rss() / 1e6);
-  const hours = process.uptime() / 3600;
-  const words = `${megabytes} MB held by this process, up for ${hours.toFixed(1)} hours`;
+  const minutes = Math.round(process.uptime() / 60);
+  const up = minutes < 120 ? `${minutes} min` : `${(minutes / 60).toFixed(1)} hours`;
+  const words = `${megabytes} MB held by this process, up for ${up}`;
   return { name: 'Process', state: megabytes < 1500 ? 'well' : 'warning', words };
 }

@@ -17,7 +17,7 @@ export function reviewInvitation(asked: ReviewInvitation): Letter {
   const { to, name, by, group, record, message, until, link } = asked;
   return setLetter({
     to,
-    subject: `Will you review ${record}?`,
+    subject: `To review: ${record}`,
     ...(name === '' ? {} : { name }),
     paragraphs: [
       `${by} of ${group} asks you to review ${record}, the frozen working behind a manuscript.`,
