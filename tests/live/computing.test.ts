@@ -174,6 +174,29 @@ describe('holding, stopping and bringing up to date', () => {
     await a.cell('endless', ({ state }) => state === 'failed', 'stopped again');
   });
 
+  test('a claim on a run that was stopped is undecided, and judged once that is run to its end', async () => {
+    const slow = 'let n = 0; for (let i = 0; i < 4000000; i++) n += i; return 1';
+    const notebook = await buildNotebook(server, group, ada, [
+      cell('slow', 'script', slow),
+      cell('one', 'claim', 'slow.value == 1'),
+    ]);
+    const a = await openLive(server, ada, notebook);
+    const visitor = await signIn(server, ada);
+    const verdict = ({ result }: { readonly result?: unknown }) =>
+      (result as { verdict?: string } | undefined)?.verdict;
+    await a.cell('slow', ({ state }) => state === 'working', 'under way');
+    await visitor.post(`/api/notebooks/${notebook}/cells/slow/stop`);
+    await a.cell('slow', ({ state }) => state === 'failed', 'stopped');
+    await a.cell('one', (notice) => verdict(notice) === 'undecided', 'undecided');
+    await visitor.post(`/api/notebooks/${notebook}/cells/slow/run`);
+    await a.cell('slow', ({ state }) => state === 'current', 'run to its end');
+    await a.cell('one', (notice) => verdict(notice) === 'holds', 'judged');
+    const left = await server.sql('select digest from cell_attempt where digest = $1', [
+      a.plan.get('one')?.digest,
+    ]);
+    expect(left).toEqual([]);
+  });
+
   test('a run that nobody needs any more is ended, so that the newest has its turn', async () => {
     const notebook = await buildNotebook(server, group, ada, [cell('s', 'script', 'while (true);')]);
     const a = await openLive(server, ada, notebook);

@@ -10,6 +10,18 @@ export interface Run {
   readonly words: string | null;
 }
 
+/** A cell as it stands, for fair copies and records. */
+export interface StandingCell {
+  readonly content: CellContent;
+  readonly planned: PlannedCell;
+  readonly notice: CellNotice;
+  readonly known: Known | undefined;
+  /** Whether it is queued or being computed. */
+  readonly working: boolean;
+  /** Ids of the cells that must be computed before it can be. */
+  readonly waitsFor: readonly string[];
+}
+
 /** Everything that decides what is said of a cell. */
 export interface CellFacts {
   readonly content: CellContent;

@@ -1,6 +1,6 @@
 import type { CellJob } from '@stillroom/shared/cells';
 import type { Person } from '@stillroom/shared/contracts';
-import { type CellContent, type NotebookContent, readNotebook } from '@stillroom/shared/document';
+import { type NotebookContent, readNotebook } from '@stillroom/shared/document';
 import {
   type KnownOutcome,
   newPlanMemory,
@@ -10,16 +10,15 @@ import {
   type Preparation,
   prepareJob,
 } from '@stillroom/shared/plan';
-import { type CellNotice, limits } from '@stillroom/shared/protocol';
+import { limits } from '@stillroom/shared/protocol';
 import type { Connection, Room, RoomObserver } from '../collaboration/index.ts';
-import type { CellStanding } from '../notebooks/index.ts';
 import { Announcer } from './announcer.ts';
-import { noticeOf, type Run } from './cell-state.ts';
+import { noticeOf, type Run, type StandingCell } from './cell-state.ts';
 import type { Demand } from './demand.ts';
 import type { CellNews } from './notices.ts';
-import type { RunOwner, RunQueue } from './queue.ts';
+import { laneOf, lanes, type RunOwner, type RunQueue } from './queue.ts';
 import type { Known, ResultStore } from './results.ts';
-import { StateKeeper, type NotebookFile } from './state-keeper.ts';
+import { asState, StateKeeper, type NotebookFile } from './state-keeper.ts';
 
 export interface PlannerOptions {
   readonly room: Room;
@@ -30,18 +29,6 @@ export interface PlannerOptions {
   readonly demand: Demand;
   readonly file: NotebookFile;
   readonly failed: (words: string, error: unknown) => void;
-}
-
-/** A cell as it stands, for fair copies and records. */
-export interface StandingCell {
-  readonly content: CellContent;
-  readonly planned: PlannedCell;
-  readonly notice: CellNotice;
-  readonly known: Known | undefined;
-  /** Whether it is queued or being computed. */
-  readonly working: boolean;
-  /** Ids of the cells that must be computed before it can be. */
-  readonly waitsFor: readonly string[];
 }
 
 const nothing: Plan = { cells: [], byId: new Map(), order: [] };
@@ -61,6 +48,8 @@ export class Planner implements RoomObserver {
   readonly #runs = new Map<string, Run>();
   /** Digests that somebody asked to have computed, whatever is held or failed. */
   readonly #asked = new Set<string>();
+  /** Digests of which news came: what is known of them is looked up before anything is run. */
+  readonly #news = new Set<string>();
   #shown = new Map<string, string>();
   /** Whether somebody who may run cells has been here since the room opened. */
   #mayRun = false;
@@ -127,6 +116,7 @@ export class Planner implements RoomObserver {
     this.#known.delete(digest);
     this.#options.demand.settle(digest, this);
     this.#runs.delete(digest);
+    this.#news.add(digest);
     this.replan();
   }
 
@@ -156,11 +146,7 @@ export class Planner implements RoomObserver {
         if (reads === 'result' && !this.#isHeld(input)) ids.add(input);
     const digests = [...ids].flatMap((id) => this.#plan.byId.get(id)?.digest ?? []);
     const again = digests.filter((digest) => this.#known.get(digest)?.kept === false);
-    await this.#options.queue.forgive(again);
-    for (const digest of again) {
-      this.#options.results.doubt(digest);
-      this.#known.delete(digest);
-    }
+    await this.#forgive(again);
     for (const digest of digests) if (!this.#known.has(digest)) this.#asked.add(digest);
     this.replan();
   }
@@ -227,23 +213,51 @@ export class Planner implements RoomObserver {
       this.#runs.delete(digest);
     }
     for (const digest of this.#known.keys()) if (!digests.has(digest)) this.#known.delete(digest);
-    for (const digest of this.#asked) if (!digests.has(digest)) this.#asked.delete(digest);
+    for (const set of [this.#asked, this.#news])
+      for (const digest of set) if (!digests.has(digest)) set.delete(digest);
   }
 
-  /** Finds out what is known under new digests, and where nobody here may run, what is run elsewhere. */
+  /**
+   * Finds out what is known under new digests, and where nobody here may run, what is run elsewhere. What is run at
+   * once is not waited for, since the digest of an edit is nearly always new; should it be known, the run is ended.
+   */
   async #learn(): Promise<void> {
     const { results, queue } = this.#options;
-    const asked = this.#plan.cells.flatMap(({ digest }) => digest ?? []).filter((d) => !this.#known.has(d));
+    const unknown = this.#plan.cells.filter(({ digest }) => digest !== null && !this.#known.has(digest));
+    this.#take(unknown.flatMap(({ digest }) => results.peek(digest ?? '') ?? []));
+    const open = unknown.filter(({ id, digest }) => !this.#knownOf(id) && !this.#runs.has(digest ?? ''));
+    const digestsOf = (cells: readonly PlannedCell[]) => cells.flatMap(({ digest }) => digest ?? []);
+    this.#lookAside(digestsOf(open.filter((cell) => this.#runsAtOnce(cell))));
+    const asked = digestsOf(open.filter((cell) => !this.#runsAtOnce(cell)));
     if (asked.length === 0) return;
-    for (const [digest, known] of await results.find(asked)) {
-      this.#known.set(digest, known);
-      this.#runs.delete(digest);
-      this.#options.demand.settle(digest, this);
-    }
-    const open = asked.filter((digest) => !this.#known.has(digest) && !this.#runs.has(digest));
-    if (open.length === 0 || (this.#mayRun && this.#opened)) return;
-    for (const [digest, since] of await queue.runs(open))
+    this.#take((await results.find(asked)).values());
+    for (const digest of asked) this.#news.delete(digest);
+    if (this.#mayRun && this.#opened) return;
+    for (const [digest, since] of await queue.runs(asked.filter((digest) => !this.#known.has(digest))))
       this.#runs.set(digest, { since, share: null, words: null });
+  }
+
+  #runsAtOnce({ id, kind, digest }: PlannedCell): boolean {
+    const quick = laneOf(kind) === lanes.quick && !this.#news.has(digest ?? '');
+    return quick && this.#opened && this.#mayRun && !this.#isHeld(id);
+  }
+
+  /** Looks up what is being run already; finding it plans anew. */
+  #lookAside(digests: readonly string[]): void {
+    if (digests.length === 0) return;
+    this.#options.results.find(digests).then(
+      (found) => {
+        if (found.size > 0) this.replan();
+      },
+      (error: unknown) => this.#options.failed('Results could not be looked up.', error),
+    );
+  }
+
+  #take(outcomes: Iterable<Known>): void {
+    for (const known of outcomes) {
+      this.#known.set(known.digest, known);
+      if (this.#runs.delete(known.digest)) this.#options.demand.release(known.digest, this);
+    }
   }
 
   /** Queues every cell that can be computed now and is to be. */
@@ -275,8 +289,19 @@ export class Planner implements RoomObserver {
     if (known === undefined) return false;
     if (known.kept || known.status === 'failed') return true;
     const stands = inputs.some(({ id }) => this.#knownOf(id)?.status === 'failed');
-    if (!stands) this.#known.delete(known.digest);
+    if (!stands) void this.#forgive([known.digest]);
     return stands;
+  }
+
+  /** Forgets outcomes that are not kept, so that they are run again. */
+  #forgive(digests: readonly string[]): Promise<void> {
+    for (const digest of digests) {
+      this.#known.delete(digest);
+      this.#options.results.doubt(digest);
+    }
+    return this.#options.queue
+      .forgive(digests)
+      .catch((error: unknown) => this.#options.failed('The end of a run could not be forgotten.', error));
   }
 
   #prepare(id: string): Preparation {
@@ -343,20 +368,3 @@ export class Planner implements RoomObserver {
 
 /** Whether a result rides along in a notice: short ones do, and what a failed run left, since nobody can fetch that. */
 const rides = (known: Known): boolean => !known.kept || (known.json?.length ?? 0) <= limits.inlineResult;
-
-function asState({ content, planned, known, notice }: StandingCell, place: number): CellStanding {
-  const judged = planned.kind === 'claim' && known?.status === 'ok' && known.json !== null;
-  return {
-    cell: content.id,
-    place,
-    kind: planned.kind,
-    name: planned.name,
-    state: notice.state,
-    digest: planned.digest,
-    shown: notice.shown,
-    error: notice.error ?? null,
-    verdict: judged
-      ? ((JSON.parse(known.json) as { verdict?: CellStanding['verdict'] }).verdict ?? null)
-      : null,
-  };
-}

@@ -1,5 +1,6 @@
 import type { NotebookContent } from '@stillroom/shared/document';
 import { type CellStanding, openingOf } from '../notebooks/index.ts';
+import type { StandingCell } from './cell-state.ts';
 
 /** Where the states of a notebook's cells are written down. */
 export interface NotebookFile {
@@ -58,4 +59,22 @@ export class StateKeeper {
       this.#failed('The states of cells could not be written down.', error);
     }
   }
+}
+
+/** A cell as it is written down. */
+export function asState({ content, planned, known, notice }: StandingCell, place: number): CellStanding {
+  const judged = planned.kind === 'claim' && known?.status === 'ok' && known.json !== null;
+  return {
+    cell: content.id,
+    place,
+    kind: planned.kind,
+    name: planned.name,
+    state: notice.state,
+    digest: planned.digest,
+    shown: notice.shown,
+    error: notice.error ?? null,
+    verdict: judged
+      ? ((JSON.parse(known.json) as { verdict?: CellStanding['verdict'] }).verdict ?? null)
+      : null,
+  };
 }
