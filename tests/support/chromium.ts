@@ -47,8 +47,8 @@ export async function openPage(
   const troubles: string[] = [];
   await page.addInitScript(() => {
     addEventListener('securitypolicyviolation', (event) => {
-      console.error(
-        `content policy: ${event.violatedDirective} ${event.blockedURI} ${event.sourceFile ?? ''}`,
+      reportError(
+        new Error(`content policy: ${event.violatedDirective} ${event.blockedURI} ${event.sourceFile ?? ''}`),
       );
     });
   });
@@ -70,6 +70,21 @@ export async function signIn(page: Page, email: string, password: string): Promi
   await page.locator('#password').fill(password);
   await page.getByRole('button', { name: 'Sign in', exact: true }).click();
   await page.waitForURL((url) => url.pathname !== '/sign-in');
+}
+
+/** Makes a context that person's: signed in by a request, without the page. Who was signed in before no longer is. */
+export async function enter(
+  context: BrowserContext,
+  address: string,
+  email: string,
+  password: string,
+): Promise<void> {
+  await context.clearCookies();
+  const answer = await context.request.post('/api/session', {
+    data: { email, password },
+    headers: { origin: address },
+  });
+  if (!answer.ok()) throw new Error(`Signing in as ${email} failed: ${await answer.text()}`);
 }
 
 const pictures = fileURLToPath(new URL('../browser/pictures/', import.meta.url));
