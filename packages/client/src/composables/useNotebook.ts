@@ -62,9 +62,9 @@ const refusals: Readonly<Record<number, { title: string; words: string }>> = {
       'It belongs to a group you are not in, or your part there is limited to other notebooks. A lead of the group can let you in.',
   },
   404: {
-    title: 'There is no such notebook',
+    title: 'No such notebook is open to you',
     words:
-      'It may have been deleted, or the link was cut short. Deleted notebooks rest in their group’s bin for 30 days.',
+      'It belongs to a group you are not in, or it was deleted, or the link was cut short. A lead of the group can let you in; deleted notebooks rest in their group’s bin for 30 days.',
   },
 };
 
