@@ -4,17 +4,18 @@ import type { Complaint, Repair } from '@stillroom/shared/notation';
 /** Id that ties a line's complaint to the text for a screen reader. */
 let numbered = 0;
 
-function repairButton(view: EditorView, repair: Repair, first: boolean): HTMLButtonElement {
+function repairButton(view: EditorView, repair: Repair, replaces: string, first: boolean): HTMLButtonElement {
   const button = document.createElement('button');
   button.type = 'button';
   button.className = first ? 'repair first' : 'quiet';
   button.textContent = repair.label;
   button.addEventListener('click', () => {
-    const length = view.state.doc.length;
-    const from = Math.min(repair.from, length);
+    const { from, to, insert } = repair;
+    // The text may have changed since it was read; the next reading offers the repair at its new place.
+    if (to > view.state.doc.length || view.state.sliceDoc(from, to) !== replaces) return;
     view.dispatch({
-      changes: { from, to: Math.min(repair.to, length), insert: repair.insert },
-      selection: { anchor: from + repair.insert.length },
+      changes: { from, to, insert },
+      selection: { anchor: from + insert.length },
       userEvent: 'input.repair',
     });
     view.focus();
@@ -28,6 +29,8 @@ export class ComplaintWidget extends WidgetType {
     private readonly complaint: Complaint,
     /** Where in the document what it is about begins. */
     private readonly at: number,
+    /** What each repair replaces. */
+    private readonly replaced: readonly string[],
   ) {
     super();
   }
@@ -36,7 +39,8 @@ export class ComplaintWidget extends WidgetType {
     return (
       other.at === this.at &&
       other.complaint.message === this.complaint.message &&
-      JSON.stringify(other.complaint.repairs) === JSON.stringify(this.complaint.repairs)
+      JSON.stringify(other.complaint.repairs) === JSON.stringify(this.complaint.repairs) &&
+      other.replaced.join() === this.replaced.join()
     );
   }
 
@@ -55,7 +59,9 @@ export class ComplaintWidget extends WidgetType {
     if (repairs.length > 0 && !view.state.readOnly) {
       const actions = document.createElement('div');
       actions.className = 'do';
-      actions.append(...repairs.map((repair, i) => repairButton(view, repair, i === 0)));
+      actions.append(
+        ...repairs.map((repair, i) => repairButton(view, repair, this.replaced[i] ?? '', i === 0)),
+      );
       box.append(actions);
     }
     // The room above and below is padding: the editor does not count margins.

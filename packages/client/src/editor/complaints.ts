@@ -7,7 +7,7 @@ import {
   type Text,
 } from '@codemirror/state';
 import { Decoration, type DecorationSet, EditorView, ViewPlugin, type ViewUpdate } from '@codemirror/view';
-import type { Complaint } from '@stillroom/shared/notation';
+import type { Complaint, Repair } from '@stillroom/shared/notation';
 import { ComplaintWidget } from './complaintWidget.ts';
 
 /** Reads a text and says what is wrong with it, at once or later. */
@@ -26,6 +26,7 @@ interface Marked {
 function mark(state: EditorState, complaints: readonly Complaint[]): DecorationSet {
   const ranges: Range<Decoration>[] = [];
   const end = state.doc.length;
+  const replaces = (repair: Repair): string => state.sliceDoc(repair.from, repair.to);
   for (const complaint of complaints.slice(0, shownAtMost)) {
     const from = Math.min(complaint.from, end);
     const to = Math.min(Math.max(complaint.to, from), end);
@@ -35,7 +36,7 @@ function mark(state: EditorState, complaints: readonly Complaint[]): DecorationS
     if (from < to) ranges.push(Decoration.mark({ class: wrong ? 'wavy' : 'wavy doubt' }).range(from, to));
     ranges.push(
       Decoration.widget({
-        widget: new ComplaintWidget(complaint, from),
+        widget: new ComplaintWidget(complaint, from, complaint.repairs.map(replaces)),
         block: true,
         side: 1,
       }).range(line.to),

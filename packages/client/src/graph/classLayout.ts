@@ -53,10 +53,13 @@ export async function layOutClass(of: ComplexClass, sizes: Sizes): Promise<Place
   const chain = chainOf(of);
   if (chain !== null) return layOutChain(of, chain, sizes);
   let graph = await layOut(graphOf(of, sizes));
+  // Shorter arrows before folding.
+  const tight = { ...sizes, arrow: Math.round(sizes.arrow * 0.62) };
+  if ((graph.width ?? 0) > sizes.width) graph = await layOut(graphOf(of, tight));
   for (const aspect of aspects) {
     if ((graph.width ?? 0) <= sizes.width) break;
     graph = await layOut(
-      graphOf(of, sizes, {
+      graphOf(of, tight, {
         'elk.aspectRatio': aspect,
         'elk.layered.wrapping.strategy': 'SINGLE_EDGE',
         'elk.layered.wrapping.additionalEdgeSpacing': '10',

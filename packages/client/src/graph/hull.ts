@@ -23,6 +23,9 @@ const overlaps = (box: Box, node: PlacedNode) =>
   node.y < box.y + box.height &&
   node.y + node.height > box.y;
 
+/** A larger terminal class is ringed complex by complex: one ground for all of it would say nothing. */
+const together = 6;
+
 /** Grounds of the terminal strong classes: one for the whole where nothing else stands in it, else one a complex. */
 export function terminalGrounds({ of, nodes }: PlacedClass): readonly Box[] {
   return of.terminal.flatMap((members) => {
@@ -30,6 +33,6 @@ export function terminalGrounds({ of, nodes }: PlacedClass): readonly Box[] {
     if (inside.length === 0) return [];
     const whole = around(inside);
     const alone = nodes.every((node) => members.includes(node.index) || !overlaps(whole, node));
-    return alone ? [whole] : inside.map((node) => around([node]));
+    return alone && inside.length <= together ? [whole] : inside.map((node) => around([node]));
   });
 }
