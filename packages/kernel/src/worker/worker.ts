@@ -5,6 +5,7 @@ import type { MendableScriptEngine } from '../script/index.ts';
 import { NetworkMemory } from './network-memory.ts';
 import { loadScripts } from './script-files.ts';
 import { StopWatch } from './stop-watch.ts';
+import { warmUp } from './warm-up.ts';
 
 /** Milliseconds between two reports of progress. */
 const reportEvery = 150;
@@ -58,8 +59,13 @@ async function run(number: number, job: CellJob): Promise<void> {
 }
 
 process.on('message', (message: EngineRequest) => {
-  if (message.type === 'warm') void readyScripts();
-  else void run(message.run, message.job);
+  if (message.type === 'warm') {
+    void readyScripts();
+  } else {
+    endWarmUp();
+    void run(message.run, message.job);
+  }
 });
 process.on('disconnect', () => process.exit(0));
+const endWarmUp = warmUp();
 report({ type: 'ready' });
