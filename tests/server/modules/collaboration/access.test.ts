@@ -1,65 +1,69 @@
 import { describe, expect, test } from 'vitest';
-import { Access, type RoleNow } from '../../../../packages/server/src/modules/collaboration/access.ts';
+import {
+  Access,
+  type Place,
+  type RoleNow,
+} from '../../../../packages/server/src/modules/collaboration/access.ts';
 
-/** An access whose answers can be set, with a clock that stands still unless it is moved. */
+/** An access whose reads are answered by hand. */
 function build() {
-  const state = { role: 'author' as RoleNow, reads: 0, now: 0 };
+  const reads: {
+    places: readonly Place[];
+    answer: (...roles: RoleNow[]) => void;
+    fail: (error: Error) => void;
+  }[] = [];
   const access = new Access(
-    async () => {
-      state.reads += 1;
-      return state.role;
-    },
-    () => state.now,
+    (places) =>
+      new Promise((resolve, reject) =>
+        reads.push({ places, answer: (...roles) => resolve(roles), fail: reject }),
+      ),
   );
-  return { access, state };
+  return { access, reads };
 }
+const turn = () => new Promise<void>((resolve) => setImmediate(resolve));
 
 describe('roles as they are now', () => {
-  test('are read once while nothing changes', async () => {
-    const { access, state } = build();
-    for (let turn = 0; turn < 5; turn += 1) expect(await access.roleAt('ada', 'n')).toBe('author');
-    expect(state.reads).toBe(1);
+  test('are read for everybody who asks at once in one statement', async () => {
+    const { access, reads } = build();
+    const asked = [access.roleAt('ada', 'n'), access.roleAt('ben', 'n'), access.roleAt('ada', 'n')];
+    await turn();
+    expect(reads.map(({ places }) => places.map(({ person }) => person))).toEqual([['ada', 'ben']]);
+    reads[0]?.answer('lead', 'reader');
+    expect(await Promise.all(asked)).toEqual(['lead', 'reader', 'lead']);
   });
 
-  test('are read anew after news of a change', async () => {
-    const { access, state } = build();
-    await access.roleAt('ada', 'n');
-    state.role = 'reader';
-    access.forget({ person: 'ada' });
-    expect(await access.roleAt('ada', 'n')).toBe('reader');
-  });
-
-  test('are read anew after a second, should news not come', async () => {
-    const { access, state } = build();
-    await access.roleAt('ada', 'n');
-    state.role = null;
-    state.now = 999;
-    expect(await access.roleAt('ada', 'n')).toBe('author');
-    state.now = 1000;
-    expect(await access.roleAt('ada', 'n')).toBeNull();
-  });
-
-  test('of others are not touched by news of one', async () => {
-    const { access, state } = build();
-    await access.roleAt('ada', 'n');
-    await access.roleAt('ben', 'n');
-    access.forget({ person: 'ada' });
-    await access.roleAt('ben', 'n');
-    expect(state.reads).toBe(2);
-    access.forget({ notebook: 'n' });
-    await access.roleAt('ben', 'n');
-    expect(state.reads).toBe(3);
-  });
-
-  test('read before a change and answered after it are not remembered', async () => {
-    const answers: ((role: RoleNow) => void)[] = [];
-    const access = new Access(() => new Promise((resolve) => answers.push(resolve)));
+  test('never come from a read that began before they were asked for', async () => {
+    const { access, reads } = build();
     const before = access.roleAt('ada', 'n');
-    access.forget({ person: 'ada' });
-    answers[0]?.('author');
-    await before;
+    await turn();
     const after = access.roleAt('ada', 'n');
-    answers[1]?.('reader');
+    reads[0]?.answer('author');
+    expect(await before).toBe('author');
+    await turn();
+    reads[1]?.answer('reader');
     expect(await after).toBe('reader');
+  });
+
+  test('are remembered by nobody', async () => {
+    const { access, reads } = build();
+    for (const role of ['author', 'reader', null] as const) {
+      const asked = access.roleAt('ada', 'n');
+      await turn();
+      reads.at(-1)?.answer(role);
+      expect(await asked).toBe(role);
+    }
+    expect(reads).toHaveLength(3);
+  });
+
+  test('that cannot be read fail whoever asked, and the next may ask again', async () => {
+    const { access, reads } = build();
+    const asked = access.roleAt('ada', 'n');
+    await turn();
+    reads[0]?.fail(new Error('no database'));
+    await expect(asked).rejects.toThrow('no database');
+    const again = access.roleAt('ada', 'n');
+    await turn();
+    reads[1]?.answer('author');
+    expect(await again).toBe('author');
   });
 });

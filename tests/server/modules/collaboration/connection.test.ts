@@ -21,7 +21,7 @@ function build() {
   const broken: Room[] = [];
   const queries = { query: () => new Promise<unknown>((resolve) => held.push(() => resolve([]))) };
   const room = new Room('n', new UpdateLog(queries, 'here'), (lost) => broken.push(lost));
-  const access = new Access(async (id) => roles.get(id) ?? null);
+  const access = new Access(async (places) => places.map((place) => roles.get(place.person) ?? null));
   const join = (id: string, role: RoleNow = 'author') => {
     roles.set(id, role);
     const line = new MemoryLine();
@@ -33,10 +33,7 @@ function build() {
     for (const release of held.splice(0)) release();
     await turns();
   };
-  const change = (id: string, role: RoleNow) => {
-    roles.set(id, role);
-    access.forget({ person: id });
-  };
+  const change = (id: string, role: RoleNow) => void roles.set(id, role);
   return { room, join, commit, change, broken };
 }
 
@@ -138,7 +135,12 @@ describe('a line', () => {
     const log = new UpdateLog({ query: () => Promise.reject(new Error('disk full')) }, 'here');
     const room = new Room('n', log, (lost) => broken.push(lost));
     const line = new MemoryLine();
-    const ada = new Connection(person('ada'), room, line, new Access(async () => 'author'));
+    const ada = new Connection(
+      person('ada'),
+      room,
+      line,
+      new Access(async (places) => places.map(() => 'author')),
+    );
     ada.join(true);
     ada.receive(frames.update(edit('lost')));
     await turns();

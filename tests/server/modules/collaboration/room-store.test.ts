@@ -38,7 +38,12 @@ function build(rest: Partial<RoomStoreOptions> = {}) {
   const join = (room: Room) => {
     const line = new MemoryLine();
     const person = { id: 'ada', name: 'Ada', initials: 'A', hue: 0 };
-    const connection = new Connection(person, room, line, new Access(async () => 'author'));
+    const connection = new Connection(
+      person,
+      room,
+      line,
+      new Access(async (places) => places.map(() => 'author')),
+    );
     connection.join(true);
     return { connection, line };
   };

@@ -2,59 +2,73 @@ import type { GroupRole } from '@stillroom/shared/roles';
 
 /** The role that counts for a person at a notebook now; null is none, 'gone' a notebook that is not there. */
 export type RoleNow = GroupRole | 'gone' | null;
-export type ReadRole = (person: string, notebook: string) => Promise<RoleNow>;
 
-/** What changed: of one person or everybody, at one notebook or everywhere. */
-export interface AccessChange {
-  readonly person?: string;
-  readonly notebook?: string;
+/** Someone at some notebook. */
+export interface Place {
+  readonly person: string;
+  readonly notebook: string;
+}
+/** Reads the roles that count at these places, in their order. */
+export type ReadRoles = (places: readonly Place[]) => Promise<readonly RoleNow[]>;
+
+interface Asked {
+  readonly place: Place;
+  readonly role: Promise<RoleNow>;
+  readonly answer: (role: RoleNow) => void;
+  readonly fail: (error: unknown) => void;
 }
 
 /**
- * How long a role that was read may be used when no news of a change comes, in milliseconds. News, from this process or
- * another, ends it at once; this bounds what a lost line for news can cost.
+ * Roles as they are now. Nothing is remembered: every answer comes from a read that began after it was asked for, so
+ * whatever was committed before a message came counts for it, in whichever process. What is asked while a read is
+ * under way gathers and becomes the next one, one statement for everybody.
  */
-const longest = 1000;
-
-interface Remembered {
-  readonly person: string;
-  readonly notebook: string;
-  readonly role: RoleNow;
-  readonly until: number;
-}
-
-/** Roles as they are now: read from the database, and used again only until news of a change, for a second at most. */
 export class Access {
-  readonly #read: ReadRole;
-  readonly #clock: () => number;
-  readonly #remembered = new Map<string, Remembered>();
-  /** Counts changes, so that what was asked before a change is not remembered after it. */
-  #changes = 0;
+  readonly #read: ReadRoles;
+  #asked = new Map<string, Asked>();
+  #reading = false;
 
-  constructor(read: ReadRole, clock: () => number = Date.now) {
+  constructor(read: ReadRoles) {
     this.#read = read;
-    this.#clock = clock;
   }
 
   /** The role that counts now. */
-  async roleAt(person: string, notebook: string): Promise<RoleNow> {
+  roleAt(person: string, notebook: string): Promise<RoleNow> {
     const key = `${person} ${notebook}`;
-    const remembered = this.#remembered.get(key);
-    if (remembered !== undefined && this.#clock() < remembered.until) return remembered.role;
-    const before = this.#changes;
-    const until = this.#clock() + longest;
-    const role = await this.#read(person, notebook);
-    if (before === this.#changes) this.#remembered.set(key, { person, notebook, role, until });
-    return role;
+    let asked = this.#asked.get(key);
+    if (asked === undefined) {
+      asked = newQuestion({ person, notebook });
+      this.#asked.set(key, asked);
+    }
+    if (!this.#reading) {
+      this.#reading = true;
+      // Not at once: several frames of one packet share one read.
+      queueMicrotask(() => void this.#readAll());
+    }
+    return asked.role;
   }
 
-  /** Forgets what a change may have made wrong; without a name, everything. */
-  forget(change: AccessChange = {}): void {
-    this.#changes += 1;
-    for (const [key, known] of this.#remembered) {
-      if (change.person !== undefined && change.person !== known.person) continue;
-      if (change.notebook !== undefined && change.notebook !== known.notebook) continue;
-      this.#remembered.delete(key);
+  async #readAll(): Promise<void> {
+    while (this.#asked.size > 0) {
+      const batch = [...this.#asked.values()];
+      this.#asked = new Map();
+      try {
+        const roles = await this.#read(batch.map(({ place }) => place));
+        batch.forEach(({ answer }, index) => answer(roles[index] ?? null));
+      } catch (error) {
+        for (const { fail } of batch) fail(error);
+      }
     }
+    this.#reading = false;
   }
+}
+
+function newQuestion(place: Place): Asked {
+  let answer: Asked['answer'] = () => undefined;
+  let fail: Asked['fail'] = () => undefined;
+  const role = new Promise<RoleNow>((resolve, reject) => {
+    answer = resolve;
+    fail = reject;
+  });
+  return { place, role, answer, fail };
 }

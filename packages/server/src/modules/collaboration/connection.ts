@@ -1,7 +1,7 @@
 import type { Person } from '@stillroom/shared/contracts';
 import { type CloseCode, closeCodes, limits } from '@stillroom/shared/protocol';
 import { type Ability, may } from '@stillroom/shared/roles';
-import type { Access } from './access.ts';
+import type { Access, RoleNow } from './access.ts';
 import { type Incoming, isEmptyUpdate, keptFrame, noticeFrame, readFrame } from './frames.ts';
 import type { Room } from './room.ts';
 
@@ -84,7 +84,10 @@ export class Connection {
       return this.end(closeCodes.tooMuch, 'More was sent than one connection may send.');
     const frame = readFrame(bytes);
     if (frame === null) return this.end(closeCodes.malformed, 'A message was not understood.');
-    this.#turn = this.#turn.then(() => this.#handle(frame));
+    // Asked for when the frame comes, so that a burst shares a read; the frame is handled in its turn.
+    const role = this.#access.roleAt(this.person.id, this.room.notebook);
+    role.catch(() => undefined);
+    this.#turn = this.#turn.then(() => this.#handle(frame, role));
   }
 
   /** Ends the line from this side. What is still in turn is dropped. */
@@ -115,14 +118,14 @@ export class Connection {
     this.send(noticeFrame({ topic: 'access' }));
   }
 
-  async #handle(frame: Incoming): Promise<void> {
+  async #handle(frame: Incoming, asked: Promise<RoleNow>): Promise<void> {
     if (!this.#open) return;
     try {
       const writes = frame.kind === 'step2' || frame.kind === 'update';
       if (writes) this.#received += 1;
       // An answer without content is what a reader's client gives when asked; it changes nothing.
       if (writes && isEmptyUpdate(frame.update)) return this.#keepAfter(this.room.settled());
-      const role = await this.#access.roleAt(this.person.id, this.room.notebook);
+      const role = await asked;
       if (!this.#open) return;
       if (role === 'gone') return this.end(closeCodes.gone, 'The notebook is in the bin.');
       if (!may(role, messageAbilities[frame.kind])) return this.end(closeCodes.refused, refusals[frame.kind]);

@@ -5,7 +5,7 @@ import { openConnections } from '../../database/connections.ts';
 import { isSameOrigin } from '../../http/origin.ts';
 import { describeError } from '../../logger.ts';
 import type { ServerModule, Services } from '../../services.ts';
-import { readRole } from '../notebooks/index.ts';
+import { readRoles } from '../notebooks/index.ts';
 import { Access } from './access.ts';
 import { takeInAll, takeInKept } from './elsewhere.ts';
 import { noticeFrame } from './frames.ts';
@@ -37,13 +37,13 @@ export function createCollaboration(services: Services, options: CollaborationOp
   const { config, database, events, log } = services;
   const origin = randomUUID();
   const failed = (words: string, error: unknown) => log.error(words, describeError(error));
-  const access = new Access((person, notebook) => readRole(database, person, notebook));
-  // One INSERT runs at a time: one connection, and one in reserve while a broken one is being replaced.
+  // One INSERT and one read of roles run at a time; one more stands by while a broken one is being replaced.
   const connections = openConnections(config.DATABASE_URL, log, {
     name: 'stillroom log',
-    most: 2,
+    most: 3,
     durable: true,
   });
+  const access = new Access((places) => readRoles(connections, places));
   const rooms = new RoomStore({
     database,
     log: new UpdateLog(connections, origin),
@@ -69,12 +69,10 @@ export function createCollaboration(services: Services, options: CollaborationOp
 
   const listeners = [
     events.on('access.changed', ({ person }) => {
-      access.forget({ person });
       judge(gateway.connections(person));
     }),
     events.on('session.ended', ({ person, session, except }) => gateway.endSessions(person, session, except)),
     events.on('notebook.changed', ({ notebook }) => {
-      access.forget({ notebook });
       void rooms.peek(notebook).then((room) => judge(room?.connections ?? []));
       void tell(notebook, 'notebook');
     }),
@@ -88,7 +86,6 @@ export function createCollaboration(services: Services, options: CollaborationOp
         .catch((error: unknown) => failed('Updates of another process could not be read.', error));
     }),
     events.onGap(() => {
-      access.forget();
       judge(gateway.connections());
       void rooms
         .rooms()

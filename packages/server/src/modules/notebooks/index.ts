@@ -20,5 +20,5 @@ export { createNotebooks } from './module.ts';
 export type { RecordsOf } from './notebook.presenter.ts';
 export { presentRemarks } from './remark.presenter.ts';
 export { remarksOf } from './remarks.routes.ts';
-export { readRole } from './roles.ts';
+export { readRoles } from './roles.ts';
 export const notebookEntities = [NotebookEntity, RemarkEntity, RemarkAnswerEntity];
