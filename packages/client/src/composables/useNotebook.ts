@@ -42,6 +42,8 @@ export interface Notebook {
   readonly abilities: ReturnType<typeof useAbilities>;
   readonly actions: CellActions;
   readonly undo: Undo;
+  /** Settled once the server has said what one may do here, or could not. */
+  readonly known: Promise<void>;
   /** Asks the server anew what this notebook is and what one may do in it. */
   refresh(): Promise<void>;
   readonly selection: Selection;
@@ -92,6 +94,7 @@ export function openNotebook(id: string): Notebook {
     }
   }
 
+  const known = askAbout();
   const live = useLiveDocument(id, session.me?.id ?? 'nobody', {
     plan(notice) {
       results.take(notice);
@@ -124,12 +127,12 @@ export function openNotebook(id: string): Notebook {
     actions: useCellActions(id, live.room, cells, () => session.me?.name ?? '', resultOf),
     resultOf,
     undo: useUndo(live.room),
+    known,
     refresh: askAbout,
     selection: useSelection((cell) => presence.moveTo(cell)),
     numbers: computed(() => numberCells(cells.list.value)),
     stateOf: (cell) => plan.notices.get(cell.id)?.state ?? (cell.kind === 'prose' ? 'current' : 'stale'),
   };
-  void askAbout();
   void remarks.refresh();
   provide(key, notebook);
   return notebook;

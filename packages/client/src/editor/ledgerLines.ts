@@ -1,41 +1,34 @@
-const arrow = /<=>|->|<-|[→←⇌]/u;
-const statement = /^\s*(?:start|let|fix|volume|in|weight|event|rate)\b/u;
+import { highlightLine, tableOf } from '@stillroom/shared/notation';
 
-/** The part of a line before its comment. */
-export const withoutComment = (line: string): string => {
-  const at = line.indexOf('#');
-  return at < 0 ? line : line.slice(0, at);
-};
+/** Lines are read again and again while one types; so many are remembered. */
+const remembered = 10_000;
+const known = new Map<string, boolean>();
 
-/** Whether a line of a network writes reactions. */
+/** Whether a line of a network writes a row, sound or not; statements, comments and blank lines write none. */
 export function isRow(line: string): boolean {
-  const code = withoutComment(line);
-  return !statement.test(code) && arrow.test(code.split('|')[0] ?? '');
+  const before = known.get(line);
+  if (before !== undefined) return before;
+  if (known.size >= remembered) known.clear();
+  const first = highlightLine(line)[0]?.style;
+  const found = first !== undefined && first !== 'keyword' && first !== 'comment';
+  known.set(line, found);
+  return found;
 }
+
+/** Whether a line ends in `\` and so goes on in the next; in a comment it does not. */
+export const goesOn = (line: string): boolean => /\\\s*$/u.test(line) && !line.includes('#');
 
 /** Number of the row that each line of a text writes, 1-based; 0 where it writes none. */
 export function rowNumbers(lines: Iterable<string>): readonly number[] {
   const numbers: number[] = [];
   let count = 0;
-  let goesOn = false;
+  let joined = false;
   for (const line of lines) {
-    numbers.push(!goesOn && isRow(line) ? ++count : 0);
-    goesOn = line.endsWith('\\');
+    numbers.push(!joined && isRow(line) ? ++count : 0);
+    joined = goesOn(line);
   }
   return numbers;
 }
 
-/** Where the first two bars of a line stand, outside its comment. */
-export function barsOf(line: string): readonly number[] {
-  const code = withoutComment(line);
-  const first = code.indexOf('|');
-  if (first < 0) return [];
-  const second = code.indexOf('|', first + 1);
-  return second < 0 ? [first] : [first, second];
-}
-
 /** The notes of a network's rows, in order: what stands after the second bar. */
-export function rowNotes(text: string): readonly string[] {
-  const lines = text.replaceAll(/\\\n/gu, ' ').split('\n');
-  return lines.filter(isRow).map((line) => withoutComment(line).split('|')[2]?.trim() ?? '');
-}
+export const rowNotes = (text: string): readonly string[] => tableOf(text).map(({ note }) => note);

@@ -1,6 +1,7 @@
 import { type Extension, RangeSetBuilder, type Text } from '@codemirror/state';
 import { Decoration, type DecorationSet, EditorView, ViewPlugin, type ViewUpdate } from '@codemirror/view';
 import { type Highlight, highlightLine, type HighlightStyle } from '@stillroom/shared/notation';
+import { goesOn } from './ledgerLines.ts';
 
 /** Species, arrows and names are in ink like the rest and need no mark of their own. */
 const classes: Partial<Record<HighlightStyle, string>> = {
@@ -43,8 +44,6 @@ export function coloursOf(line: string, column: number): readonly Highlight[] {
   known.set(key, found);
   return found;
 }
-
-const goesOn = (line: string): boolean => /\\\s*$/.test(line) && !line.includes('#');
 
 /** How many bars came before a line, in the lines that a `\` joins to it. */
 export function columnOf(doc: Text, number: number): number {
