@@ -106,7 +106,8 @@ function checkDemand(stage: Elaboration, { of, value, dimension, wanted }: Deman
     ? `${printUse(of)} is of order ${rational.print(orderOf(of.reactant))}`
     : `amounts of this text are in ${wantedText ?? 'no unit'}`;
   const need = wantedText ? `needs ${wantedText}` : 'needs a unit that this text has no amount for';
-  stage.complaints.error(value, `${subject} is in ${given}, but ${reason} and ${need}.`, null, repairs);
+  const hint = wantedText ? null : 'Give it a unit with an amount in it, such as /uM/s for order 2.';
+  stage.complaints.error(value, `${subject} is in ${given}, but ${reason} and ${need}.`, hint, repairs);
 }
 
 function unitOfValue(value: ExpressionSyntax): Unit | null {
