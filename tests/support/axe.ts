@@ -9,21 +9,29 @@ const options: RunOptions = {
   resultTypes: ['violations'],
 };
 
-/** Each violation of WCAG 2.2 A and AA that axe finds on a page as it stands: rule, place and what is wrong. */
-export async function violationsOn(page: Page): Promise<string[]> {
+/**
+ * Each violation of WCAG 2.2 A and AA that axe finds on a page as it stands, or within one part of it: rule, place and
+ * what is wrong.
+ */
+export async function violationsOn(page: Page, within = 'html'): Promise<string[]> {
   // Evaluated from outside: the content policy forbids the page itself a script that is not ours.
   if (!(await page.evaluate(() => 'axe' in window))) await page.evaluate(source);
-  const { violations } = await page.evaluate(async (asked) => {
-    const { axe } = window as unknown as { axe: { run(asked: RunOptions): Promise<AxeResults> } };
-    return axe.run(asked);
-  }, options);
+  const { violations } = await page.evaluate(
+    async ([part, asked]) => {
+      const { axe } = window as unknown as {
+        axe: { run(part: string, asked: RunOptions): Promise<AxeResults> };
+      };
+      return axe.run(part, asked);
+    },
+    [within, options] as const,
+  );
   return violations.flatMap(({ id, nodes }) =>
     nodes.map(({ target, failureSummary }) => `${id} ${target.join(' ')}: ${failureSummary ?? ''}`),
   );
 }
 
 /** The same in both themes, which follow the machine's own while nobody chose one. */
-export async function violationsInBothThemes(page: Page): Promise<string[]> {
+export async function violationsInBothThemes(page: Page, within?: string): Promise<string[]> {
   const found: string[] = [];
   for (const colorScheme of ['dark', 'light'] as const) {
     await page.emulateMedia({ colorScheme, reducedMotion: 'reduce' });
@@ -35,7 +43,7 @@ export async function violationsInBothThemes(page: Page): Promise<string[]> {
     await page.waitForFunction(() =>
       document.getAnimations().every(({ playState }) => playState !== 'running'),
     );
-    found.push(...(await violationsOn(page)).map((violation) => `${colorScheme}: ${violation}`));
+    found.push(...(await violationsOn(page, within)).map((violation) => `${colorScheme}: ${violation}`));
   }
   return found;
 }
