@@ -6,5 +6,7 @@ export type NetworkView = 'text' | 'table';
 /** What the reader chose for each network, for as long as the page is open. */
 const chosen = reactive(new Map<string, NetworkView>());
 
-export const networkViewOf = (cell: string): NetworkView => chosen.get(cell) ?? 'text';
+/** On a phone a network is written row by row unless its text is asked for. */
+export const networkViewOf = (cell: string, onPhone: boolean): NetworkView =>
+  chosen.get(cell) ?? (onPhone ? 'table' : 'text');
 export const chooseNetworkView = (cell: string, view: NetworkView): void => void chosen.set(cell, view);
