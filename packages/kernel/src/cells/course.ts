@@ -40,13 +40,16 @@ export class Course {
   record(time: number, state: number): void {
     const vector = this.prepared.vector(state);
     this.times.push(time);
-    this.places.forEach(({ kind, index }, species) => {
-      const value = kind === 'variable' ? vector[index]! : this.prepared.parameters[index]!;
-      this.speciesLists[species]!.push(value);
-      this.sensitivityLists.forEach((lists, k) => {
-        lists[species]!.push(kind === 'variable' ? vector[index + this.variables * (1 + k)]! : 0);
-      });
-    });
+    const { places, speciesLists, sensitivityLists, variables } = this;
+    const { parameters } = this.prepared;
+    for (let species = 0; species < places.length; species++) {
+      const { kind, index } = places[species]!;
+      const moves = kind === 'variable';
+      speciesLists[species]!.push(moves ? vector[index]! : parameters[index]!);
+      for (let k = 0; k < sensitivityLists.length; k++) {
+        sensitivityLists[k]![species]!.push(moves ? vector[index + variables * (1 + k)]! : 0);
+      }
+    }
     if (this.derivedLists.length === 0) return;
     const outputs = this.prepared.evaluate('outputs', time, state);
     this.derivedLists.forEach((list, index) => {

@@ -125,15 +125,14 @@ function chooseLocals(tape: Tape): Uint8Array {
   const uses = new Uint32Array(size);
   const depth = new Uint32Array(size);
   const keep = new Uint8Array(size);
-  const overwritten = new Set<number>();
-  for (const { slot, space } of outputs) overwritten.add(slot * 4 + space);
+  const overwritten = overwrittenSlots(tape);
   const use = (part: number): number => {
     uses[part]!++;
     return keep[part] === 0 ? depth[part]! : 0;
   };
   for (let node = 0; node < size; node++) {
     const kind = operation[node]!;
-    if (kind === operations.load && overwritten.has(left[node]! * 4 + right[node]!)) keep[node] = 1;
+    if (kind === operations.load && overwritten?.has(left[node]! * 4 + right[node]!) === true) keep[node] = 1;
     const count = operandCounts[kind]!;
     if (count === 0) continue;
     let deepest = use(left[node]!);
@@ -147,4 +146,15 @@ function chooseLocals(tape: Tape): Uint8Array {
     if (uses[node]! > 1 && operation[node] !== operations.constant) keep[node] = 1;
   }
   return keep;
+}
+
+/** Slots that the outputs overwrite, as 4 · slot + space; null where no load is from a space with outputs. */
+function overwrittenSlots({ size, operation, right, outputs }: Tape): Set<number> | null {
+  const written = [false, false, false];
+  for (const { space } of outputs) written[space] = true;
+  for (let node = 0; node < size; node++) {
+    if (operation[node] !== operations.load || written[right[node]!] !== true) continue;
+    return new Set(outputs.map(({ slot, space }) => slot * 4 + space));
+  }
+  return null;
 }

@@ -73,27 +73,36 @@ export class Graph {
   }
 
   add(a: Node, b: Node): Node {
-    if (this.isConstant(a, 0)) return b;
-    if (this.isConstant(b, 0)) return a;
-    if (this.bothConstant(a, b)) return this.constant(this.value(a) + this.value(b));
-    return a < b ? this.pair(operations.add, a, b) : this.pair(operations.add, b, a);
+    const { operation } = this;
+    if (operation[a] === operations.constant || operation[b] === operations.constant) {
+      if (this.isConstant(a, 0)) return b;
+      if (this.isConstant(b, 0)) return a;
+      if (this.bothConstant(a, b)) return this.constant(this.value(a) + this.value(b));
+    }
+    return a < b ? this.triple(operations.add, a, b, 0) : this.triple(operations.add, b, a, 0);
   }
 
   subtract(a: Node, b: Node): Node {
-    if (this.isConstant(b, 0)) return a;
-    if (this.isConstant(a, 0)) return this.negate(b);
-    if (this.bothConstant(a, b)) return this.constant(this.value(a) - this.value(b));
-    return this.pair(operations.subtract, a, b);
+    const { operation } = this;
+    if (operation[a] === operations.constant || operation[b] === operations.constant) {
+      if (this.isConstant(b, 0)) return a;
+      if (this.isConstant(a, 0)) return this.negate(b);
+      if (this.bothConstant(a, b)) return this.constant(this.value(a) - this.value(b));
+    }
+    return this.triple(operations.subtract, a, b, 0);
   }
 
   multiply(a: Node, b: Node): Node {
-    if (this.isConstant(a, 0) || this.isConstant(b, 0)) return this.constant(0);
-    if (this.isConstant(a, 1)) return b;
-    if (this.isConstant(b, 1)) return a;
-    if (this.isConstant(a, -1)) return this.negate(b);
-    if (this.isConstant(b, -1)) return this.negate(a);
-    if (this.bothConstant(a, b)) return this.constant(this.value(a) * this.value(b));
-    return a < b ? this.pair(operations.multiply, a, b) : this.pair(operations.multiply, b, a);
+    const { operation } = this;
+    if (operation[a] === operations.constant || operation[b] === operations.constant) {
+      if (this.isConstant(a, 0) || this.isConstant(b, 0)) return this.constant(0);
+      if (this.isConstant(a, 1)) return b;
+      if (this.isConstant(b, 1)) return a;
+      if (this.isConstant(a, -1)) return this.negate(b);
+      if (this.isConstant(b, -1)) return this.negate(a);
+      if (this.bothConstant(a, b)) return this.constant(this.value(a) * this.value(b));
+    }
+    return a < b ? this.triple(operations.multiply, a, b, 0) : this.triple(operations.multiply, b, a, 0);
   }
 
   divide(a: Node, b: Node): Node {

@@ -24,7 +24,9 @@ export interface Tape {
 
 /** The tape that computes `outputs`. */
 export function makeTape(graph: Graph, outputs: readonly Output[]): Tape {
-  const nodes = reachable(graph, outputs, new Uint32Array(graph.size), 1);
+  const mark = new Uint32Array(graph.size);
+  const nodes: Node[] = [];
+  for (const { node } of outputs) gather(graph, node, mark, 1, nodes);
   return renumber(graph, outputs, nodes, new Int32Array(graph.size));
 }
 
@@ -40,14 +42,15 @@ export function makeTapes(graph: Graph, outputs: readonly Output[], limit: numbe
   let nodes: Node[] = [];
   let epoch = 1;
   for (const output of outputs) {
-    const added = reachable(graph, [output], mark, epoch);
-    if (group.length > 0 && nodes.length + added.length > limit) {
+    const before = nodes.length;
+    gather(graph, output.node, mark, epoch, nodes);
+    if (group.length > 0 && nodes.length > limit) {
+      nodes.length = before;
       tapes.push(renumber(graph, group, nodes, place));
       epoch++;
       group = [];
-      nodes = reachable(graph, [output], mark, epoch);
-    } else {
-      for (const node of added) nodes.push(node);
+      nodes = [];
+      gather(graph, output.node, mark, epoch, nodes);
     }
     group.push(output);
   }
@@ -63,26 +66,35 @@ export function readsSlot(tape: Tape, slot: number): boolean {
   );
 }
 
-/** The nodes that `outputs` need and that do not yet bear the mark `epoch`, which they get. */
-function reachable(graph: Graph, outputs: readonly Output[], mark: Uint32Array, epoch: number): Node[] {
-  const found: Node[] = [];
-  const stack: Node[] = [];
-  const visit = (node: Node): void => {
-    if (mark[node] === epoch) return;
-    mark[node] = epoch;
-    found.push(node);
-    stack.push(node);
-  };
-  for (const output of outputs) {
-    visit(output.node);
-    for (let node = stack.pop(); node !== undefined; node = stack.pop()) {
-      const count = operandCounts[graph.operation[node]!]!;
-      if (count > 0) visit(graph.left[node]!);
-      if (count > 1) visit(graph.right[node]!);
-      if (count > 2) visit(graph.third[node]!);
+/** Appends the nodes that `root` needs and that do not yet bear the mark `epoch`, which they get. */
+function gather(graph: Graph, root: Node, mark: Uint32Array, epoch: number, found: Node[]): void {
+  if (mark[root] === epoch) return;
+  const { operation, left, right, third } = graph;
+  mark[root] = epoch;
+  // Nodes whose operands are still to be looked at are those of `found` from `next` on.
+  let next = found.push(root) - 1;
+  for (; next < found.length; next++) {
+    const node = found[next]!;
+    const count = operandCounts[operation[node]!]!;
+    if (count === 0) continue;
+    const a = left[node]!;
+    if (mark[a] !== epoch) {
+      mark[a] = epoch;
+      found.push(a);
+    }
+    if (count === 1) continue;
+    const b = right[node]!;
+    if (mark[b] !== epoch) {
+      mark[b] = epoch;
+      found.push(b);
+    }
+    if (count === 2) continue;
+    const c = third[node]!;
+    if (mark[c] !== epoch) {
+      mark[c] = epoch;
+      found.push(c);
     }
   }
-  return found;
 }
 
 /** `place` is scratch space of the graph's size, for where each node goes. */

@@ -126,7 +126,10 @@ function reactionTerms(
     const from = complexMembers[reactions.from[r]!]!;
     const to = complexMembers[reactions.to[r]!]!;
     const law = reactions.law[r]!;
-    const scale = amountScale(network, equations.volumes, compartmentOf, from, to, law, r);
+    const scale =
+      equations.volumes.length < 2
+        ? null
+        : amountScale(network, equations.volumes, compartmentOf, from, to, law, r);
     const constant = law < 0 ? reactions.constant[r]! : (laws[law]!.massAction ?? -1);
     if (constant >= 0 && values.constants[constant] === 0 && kept?.has(constant) !== true) {
       dropped.push(r);
@@ -207,7 +210,6 @@ function amountScale(
   law: number,
   reaction: number,
 ): ((species: number) => number) | null {
-  if (volumes.length < 2) return null;
   const touched = [...from, ...to].map(({ species }) => species);
   if (!crossesCompartments(compartmentOf, touched)) return null;
   if (law < 0) {

@@ -41,15 +41,16 @@ export function massActionRate(
   reactants: readonly Member[],
   at: (species: number) => Node,
 ): Node {
-  return reactants.reduce(
-    (product, { species, coefficient }) =>
-      graph.multiply(product, speciesPower(graph, at(species), coefficient)),
-    constant,
-  );
+  let product = constant;
+  for (const { species, coefficient } of reactants) {
+    product = graph.multiply(product, speciesPower(graph, at(species), coefficient));
+  }
+  return product;
 }
 
 /** x^n; for n that is not whole a negative x (round-off around 0) counts as 0. */
 function speciesPower(graph: Graph, x: Node, n: number): Node {
+  if (n === 1) return x;
   if (Number.isInteger(n)) return integerPower(graph, x, n);
   const zero = graph.constant(0);
   return graph.select(graph.less(zero, x), graph.call(hostNumber('pow'), x, graph.constant(n)), zero);
@@ -63,9 +64,12 @@ export function massActionSlope(
   by: number,
   at: (species: number) => Node,
 ): Node {
-  const lowered = reactants.map(({ species, coefficient }) =>
-    species === by ? { species, coefficient: coefficient - 1 } : { species, coefficient },
-  );
-  const order = reactants.find(({ species }) => species === by)?.coefficient ?? 0;
-  return massActionRate(graph, graph.multiply(graph.constant(order), constant), lowered, at);
+  let order = 0;
+  for (const { species, coefficient } of reactants) if (species === by) order = coefficient;
+  let product = graph.multiply(graph.constant(order), constant);
+  for (const { species, coefficient } of reactants) {
+    const exponent = species === by ? coefficient - 1 : coefficient;
+    product = graph.multiply(product, speciesPower(graph, at(species), exponent));
+  }
+  return product;
 }
