@@ -1,4 +1,4 @@
-import { ref, watchEffect } from 'vue';
+import { computed, ref, watchEffect } from 'vue';
 
 export type Theme = 'system' | 'light' | 'dark';
 
@@ -9,12 +9,14 @@ const system = matchMedia('(prefers-color-scheme: dark)');
 const systemDark = ref(system.matches);
 system.addEventListener('change', (event) => (systemDark.value = event.matches));
 
+/** Whether the pages are dark now. */
+const dark = computed(() => theme.value === 'dark' || (theme.value === 'system' && systemDark.value));
+
 watchEffect(() => {
-  const dark = theme.value === 'dark' || (theme.value === 'system' && systemDark.value);
-  document.documentElement.classList.toggle('dark', dark);
+  document.documentElement.classList.toggle('dark', dark.value);
   if (theme.value === 'system') localStorage.removeItem(key);
   else localStorage.setItem(key, theme.value);
 });
 
 /** The theme chosen on this machine; `system` follows the machine's own. */
-export const useTheme = () => ({ theme });
+export const useTheme = () => ({ theme, dark });
