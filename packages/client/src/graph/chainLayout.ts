@@ -9,6 +9,9 @@ export interface PlacedNode extends ComplexNode {
 }
 
 export interface PlacedEdge {
+  /** Indices of the complexes it runs between; its points run the same way. */
+  readonly from: number;
+  readonly to: number;
   readonly points: readonly Point[];
   readonly both: boolean;
   readonly label: string;
@@ -91,6 +94,8 @@ export function layOutChain(of: ComplexClass, chain: readonly number[], sizes: S
         : [a, b];
       if (edge !== undefined)
         edges.push({
+          from: edge.from,
+          to: edge.to,
           points: edge.from === index ? [...points].reverse() : points,
           both: edge.both,
           label: edge.label,

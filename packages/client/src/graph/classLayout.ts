@@ -1,7 +1,7 @@
 import type { ElkNode } from 'elkjs/lib/elk-api.js';
 import { chainOf, layOutChain, type PlacedClass, type Sizes } from './chainLayout.ts';
 import type { ComplexClass } from './complexClasses.ts';
-import { layOut } from './elk.ts';
+import { layOut as layOutAside } from './elk.ts';
 
 const flowing: Readonly<Record<string, string>> = {
   'elk.algorithm': 'layered',
@@ -16,6 +16,9 @@ const flowing: Readonly<Record<string, string>> = {
 
 /** Wrapping a wide class like a line of text: the flattest form that fits the page wins. */
 const aspects = ['9', '7', '5', '4', '3', '2', '1'];
+
+/** The layout library, wherever it runs. */
+export type LayOut = (graph: ElkNode) => Promise<ElkNode>;
 
 function graphOf(of: ComplexClass, sizes: Sizes, extra: Readonly<Record<string, string>> = {}): ElkNode {
   return {
@@ -38,10 +41,11 @@ function placed(of: ComplexClass, sizes: Sizes, graph: ElkNode): PlacedClass {
       const { x = 0, y = 0 } = at.get(String(node.index)) ?? {};
       return { ...node, x, y, height: sizes.node };
     }),
-    edges: of.edges.flatMap(({ both, label }, i) => {
+    edges: of.edges.flatMap(({ from, to, both, label }, i) => {
       const section = graph.edges?.[i]?.sections?.[0];
       if (section === undefined) return [];
-      return { points: [section.startPoint, ...(section.bendPoints ?? []), section.endPoint], both, label };
+      const points = [section.startPoint, ...(section.bendPoints ?? []), section.endPoint];
+      return { from, to, points, both, label };
     }),
     width: graph.width ?? 0,
     height: graph.height ?? 0,
@@ -49,7 +53,11 @@ function placed(of: ComplexClass, sizes: Sizes, graph: ElkNode): PlacedClass {
 }
 
 /** Places one linkage class: chains at once, everything else by the layout library, layered to the right. */
-export async function layOutClass(of: ComplexClass, sizes: Sizes): Promise<PlacedClass> {
+export async function layOutClass(
+  of: ComplexClass,
+  sizes: Sizes,
+  layOut: LayOut = layOutAside,
+): Promise<PlacedClass> {
   const chain = chainOf(of);
   if (chain !== null) return layOutChain(of, chain, sizes);
   let graph = await layOut(graphOf(of, sizes));

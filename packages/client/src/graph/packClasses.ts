@@ -12,8 +12,8 @@ export interface PackedGraph {
   readonly height: number;
 }
 
-const apart = 30;
-const betweenLines = 20;
+const apart = 14;
+const betweenLines = 22;
 const headHeight = 18;
 
 /** Packs classes in lines like words, largest first; each has room for its name above. */

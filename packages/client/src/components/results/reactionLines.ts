@@ -13,6 +13,8 @@ export interface ReactionLine {
   readonly key: string;
   /** 0-based row; null where the line above is of the same row. */
   readonly row: number | null;
+  /** 0-based row it is of. */
+  readonly ofRow: number;
   readonly from: Sides;
   readonly to: Sides;
   readonly forward: ShownRate;
@@ -55,6 +57,7 @@ export function reactionLines(result: NetworkResult, notes: readonly string[]): 
     lines.push({
       key: `${i}`,
       row: reaction.row === above ? null : reaction.row,
+      ofRow: reaction.row,
       from: reaction.from,
       to: reaction.to,
       forward: shown(reaction.rate, reaction.from),

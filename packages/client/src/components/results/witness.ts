@@ -57,11 +57,12 @@ export function witnessText(hypothesis: Hypothesis, structure: StructureResult |
   }
 }
 
-/** "Feinberg 1987, Chem. Eng. Sci. 42, 2229". */
-export const citationText = ({
-  citation,
-}: Pick<Verdict, 'citation'>): readonly { text: string; doi?: string }[] =>
-  citation.map(({ authors, year, title, doi }) => ({
-    text: `${authors} ${year}, ${title}`,
-    ...(doi === undefined ? {} : { doi }),
-  }));
+/** "Feinberg 1987, 1989; Horn, Jackson 1972": who proved it, works of the same authors together. */
+export function citationText(citation: Verdict['citation']): string {
+  const years = new Map<string, number[]>();
+  for (const { authors, year } of citation) {
+    const known = years.get(authors) ?? [];
+    if (!known.includes(year)) years.set(authors, [...known, year]);
+  }
+  return [...years].map(([authors, of]) => `${authors} ${of.join(', ')}`).join('; ');
+}
