@@ -45,17 +45,14 @@ export function emitTape(tape: Tape, hosts: readonly FunctionIndex[], body: Byte
 
   const address = (space: number): void => {
     if (space === spaces.fixed) {
-      body.byte(instruction.i32Const);
-      body.signed(0);
+      body.instruction(instruction.i32Const, 0);
     } else {
-      body.byte(instruction.localGet);
-      body.unsigned(space - spaces.first);
+      body.instruction(instruction.localGet, space - spaces.first);
     }
   };
   const use = (node: number): void => {
     if (local[node]! < 0) return write(node);
-    body.byte(instruction.localGet);
-    body.unsigned(firstNumberLocal + local[node]!);
+    body.instruction(instruction.localGet, firstNumberLocal + local[node]!);
   };
   const test = (node: number): void => {
     const code = comparison[operation[node]!];
@@ -72,14 +69,15 @@ export function emitTape(tape: Tape, hosts: readonly FunctionIndex[], body: Byte
   };
   const write = (node: number): void => {
     const kind = operation[node]!;
-    const [a, b, c] = [left[node]!, right[node]!, third[node]!];
+    const a = left[node]!;
+    const b = right[node]!;
+    const c = third[node]!;
     if (kind === operations.constant) {
       body.byte(instruction.f64Const);
       body.float64(constants[node]!);
     } else if (kind === operations.load) {
       address(b);
-      body.byte(instruction.f64Load);
-      body.unsigned(3);
+      body.instruction(instruction.f64Load, 3);
       body.unsigned(a * bytesPerSlot);
     } else if (kind === operations.select) {
       use(b);
@@ -89,8 +87,7 @@ export function emitTape(tape: Tape, hosts: readonly FunctionIndex[], body: Byte
     } else if (kind === operations.call) {
       use(a);
       if (hostFunctions[c]!.arity === 2) use(b);
-      body.byte(instruction.call);
-      body.unsigned(hosts[c]!);
+      body.instruction(instruction.call, hosts[c]!);
     } else if (comparison[kind] !== undefined) {
       test(node);
       body.byte(instruction.f64ConvertUnsigned);
@@ -105,15 +102,13 @@ export function emitTape(tape: Tape, hosts: readonly FunctionIndex[], body: Byte
   for (let node = 0; node < tape.size; node++) {
     if (keep[node] === 0) continue;
     write(node);
-    body.byte(instruction.localSet);
-    body.unsigned(firstNumberLocal + locals);
+    body.instruction(instruction.localSet, firstNumberLocal + locals);
     local[node] = locals++;
   }
   for (const { node, slot, space } of tape.outputs) {
     address(space);
     use(node);
-    body.byte(instruction.f64Store);
-    body.unsigned(3);
+    body.instruction(instruction.f64Store, 3);
     body.unsigned(slot * bytesPerSlot);
   }
   return locals;

@@ -25,6 +25,18 @@ export class ByteWriter {
     this.byte(rest);
   }
 
+  /** An instruction with one unsigned operand: most of what is written, hence without further calls where it is short. */
+  instruction(code: number, operand: number): void {
+    if (operand >= 128 || this.used + 2 > this.bytes.length) {
+      this.byte(code);
+      this.unsigned(operand);
+      return;
+    }
+    this.bytes[this.used] = code;
+    this.bytes[this.used + 1] = operand;
+    this.used += 2;
+  }
+
   /** A signed 32-bit integer. */
   signed(value: number): void {
     let rest = value | 0;

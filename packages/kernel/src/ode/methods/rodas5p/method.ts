@@ -44,7 +44,7 @@ function stepper(
   const linearise = assembly.routine('rodas5p.linearise');
   const attempt = assembly.routine('rodas5p.attempt');
   const attemptPivoting = assembly.routine('rodas5p.attemptPivoting');
-  const interpolant = rosenbrockInterpolant(memory, common, own);
+  const interpolant = rosenbrockInterpolant(assembly, common, own);
   let linear = false;
   let pivoting = 0;
 

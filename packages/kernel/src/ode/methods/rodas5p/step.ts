@@ -8,7 +8,8 @@ import type { RosenbrockWorkspace } from './workspace.ts';
 
 /**
  * The routines of one step. "rodas5p.linearise" fills Jacobian and ∂f/∂t at the state; "rodas5p.attempt" factorises and
- * runs the stages with a fixed order of pivots, "rodas5p.attemptPivoting" with pivots chosen by size.
+ * runs the stages with a fixed order of pivots, "rodas5p.attemptPivoting" with pivots chosen by size; "rodas5p.dense" fills
+ * what the dense output of the step needs.
  */
 export function rosenbrockRoutines(
   system: OdeSystem,
@@ -28,6 +29,7 @@ export function rosenbrockRoutines(
     routines.set(`rodas5p.prepare${stage}`, forEachComponent(common.dimension, prepare));
   }
   routines.set('rodas5p.finish', forEachComponent(common.dimension, finish(common, own)));
+  routines.set('rodas5p.dense', forEachComponent(common.dimension, dense(own)));
   const linearise: Call[] = [
     { routine: 'rodas5p.time0' },
     { routine: 'jacobian', first: common.state, second: common.jacobian },
@@ -95,5 +97,14 @@ function finish(common: CommonWorkspace, own: RosenbrockWorkspace): (component: 
     );
     component.write(common.next, next);
     component.accumulate(slots.error, graph.multiply(error, error));
+  };
+}
+
+/** The vectors D_r of the dense output. */
+function dense(own: RosenbrockWorkspace): (component: Component) => void {
+  return (component) => {
+    rodas5p.dense.forEach((weights, r) => {
+      component.write(own.dense[r]!, component.combination(weights, own.stages));
+    });
   };
 }

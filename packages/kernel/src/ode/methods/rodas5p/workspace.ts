@@ -13,6 +13,8 @@ export interface RosenbrockWorkspace {
   readonly past: number;
   /** K_1 to K_8. */
   readonly stages: readonly number[];
+  /** D_1 to D_3 of the dense output. */
+  readonly dense: readonly number[];
 }
 
 export function rosenbrockWorkspace(
@@ -26,5 +28,6 @@ export function rosenbrockWorkspace(
     slope: layout.region(system.dimension),
     past: layout.region(system.dimension),
     stages: Array.from({ length: rodas5p.stages }, () => layout.region(system.dimension)),
+    dense: rodas5p.dense.map(() => layout.region(system.dimension)),
   };
 }
