@@ -291,8 +291,12 @@ describe('a person with a notebook of their own', { timeout: 120_000 }, () => {
 
 describe('links from letters, and the operator', { timeout: 180_000 }, () => {
   test('an invitation', async () => {
+    await as('ilse');
+    const { id } = await groupNamed('Brewhouse Kinetics');
+    const invitation = { email: 'other@example.org', role: 'author', notebooks: null, message: 'Join us.' };
+    await send(`/api/groups/${id}/invitations`, 'post', invitation);
     await context.clearCookies();
-    await look(await letterLink('invitation', 'guest@example.org'), 'Brewhouse Kinetics');
+    await look(await letterLink('invitation', 'other@example.org'), 'Brewhouse Kinetics');
   });
   test('the review desk, before and after a rerun', async () => {
     const link = await letterLink('review', 'tobias@quenell.example');
