@@ -1,5 +1,6 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
+import { violationsInBothThemes } from '../support/axe.ts';
 import { buildGroup, buildPerson, usualPassword } from '../support/build.ts';
 import { launchChromium, openPage, pictureOnFailure, signIn, type WatchedPage } from '../support/chromium.ts';
 import { startTestServer, type TestServer } from '../support/server.ts';
@@ -151,7 +152,8 @@ describe('the ledger of a network', { timeout: 90_000 }, () => {
     const row = cell(page)
       .getByRole('row')
       .filter({ has: page.getByLabel('R2, constants') });
-    await page.screenshot({ path: '/tmp/error.png' });
+    await row.getByRole('button', { name: 'Make it 25 /s' }).waitFor();
+    expect(await violationsInBothThemes(page)).toEqual([]);
     await row.getByRole('button', { name: 'Make it 25 /s' }).click();
     await expect.poll(() => field(page, 'R2', 'constants').inputValue()).toBe('q = 25 /s');
   });
@@ -166,13 +168,11 @@ describe('the ledger of a network', { timeout: 90_000 }, () => {
     await expect.poll(() => field(page, 'R2', 'reaction').inputValue()).toBe('C -> A');
   });
 
-  test('on a phone the table is whole, and what one writes there is seen here', async () => {
+  test('a phone shows the table, whole, and what one writes there is seen here', async () => {
     await other.getByRole('button', { name: 'Workings', exact: true }).first().click();
-    await show(other, 'Table');
     await field(other, 'R2', 'note').fill('from afar');
     await expect.poll(() => field(page, 'R2', 'note').inputValue()).toBe('from afar');
-    await other.screenshot({ path: '/tmp/phone.png', fullPage: true });
-    await page.screenshot({ path: '/tmp/wide.png' });
+    expect(await violationsInBothThemes(other)).toEqual([]);
     expect(await other.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(390);
     for (const { troubles } of people.values()) expect(troubles).toEqual([]);
   });
