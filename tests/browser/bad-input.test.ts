@@ -254,7 +254,7 @@ describe('the line', { timeout: 180_000 }, () => {
     await context.setOffline(false);
     await words(page, /^Kept /u);
     await page.getByText(/The line to the server is down/u).waitFor({ ...patience, state: 'detached' });
-    expect(await keptText(draft, 'ledger')).toContain('B -> C | 3 /s');
+    expect(await keptText(draft, 'ledger')).toMatch(/B -> C +\| 3 \/s/u);
     await context.close();
   });
 
@@ -276,7 +276,7 @@ describe('the line', { timeout: 180_000 }, () => {
     await expect
       .poll(() => region(again, 'ledger').locator('.cm-content').first().innerText(), patience)
       .toMatch(/C\s*->\s*D/u);
-    await expect.poll(() => keptText(draft, 'ledger'), patience).toContain('C -> D | 4 /s');
+    await expect.poll(() => keptText(draft, 'ledger'), patience).toMatch(/C -> D +\| 4 \/s/u);
     await context.close();
   });
 
@@ -297,7 +297,7 @@ describe('the line', { timeout: 180_000 }, () => {
       await page.keyboard.type(' # still writing');
       other = await startServerProcess({ ...settings, PORT: port });
       await words(page, /^Kept /u);
-      expect(await keptText(draft, 'ledger')).toMatch(/D -> E \| 5 \/s, note = 1 # still writing/u);
+      expect(await keptText(draft, 'ledger')).toMatch(/D -> E +\| 5 \/s, note = 1 +# still writing/u);
       await context.close();
     } finally {
       await other.kill();
