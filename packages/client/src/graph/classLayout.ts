@@ -64,15 +64,20 @@ export async function layOutClass(
   // Shorter arrows before folding.
   const tight = { ...sizes, arrow: Math.round(sizes.arrow * 0.62) };
   if ((graph.width ?? 0) > sizes.width) graph = await layOut(graphOf(of, tight));
-  for (const aspect of aspects) {
-    if ((graph.width ?? 0) <= sizes.width) break;
-    graph = await layOut(
-      graphOf(of, tight, {
-        'elk.aspectRatio': aspect,
-        'elk.layered.wrapping.strategy': 'SINGLE_EDGE',
-        'elk.layered.wrapping.additionalEdgeSpacing': '10',
-      }),
-    );
+  // A class whose arrows come back, a ring above all, cannot be cut at one arrow: several are then led to the next line.
+  for (const strategy of ['SINGLE_EDGE', 'MULTI_EDGE']) {
+    for (const aspect of aspects) {
+      if ((graph.width ?? 0) <= sizes.width) break;
+      const folded = await layOut(
+        graphOf(of, tight, {
+          'elk.aspectRatio': aspect,
+          'elk.layered.wrapping.strategy': strategy,
+          'elk.layered.wrapping.additionalEdgeSpacing': '10',
+        }),
+      );
+      if (strategy === 'SINGLE_EDGE' && folded.width === graph.width) break;
+      if ((folded.width ?? 0) < (graph.width ?? 0)) graph = folded;
+    }
   }
   return placed(of, sizes, graph);
 }
