@@ -31,8 +31,7 @@ test('a stop while a large network is prepared ends the run in the words of the 
 
 test('the drift of conservation laws counts amounts where a law goes across compartments', () => {
   // n_A = V_c A + V_d B is kept, A + B is not.
-  const text =
-    'volume cell = 1 L\nvolume drop = 0.001 L\nin drop: B\nA -> B | law = 0.5*A\nstart A = 1 M\n';
+  const text = 'volume cell = 1 L\nvolume drop = 0.001 L\nin drop: B\nA -> B | law = 0.5*A\nstart A = 1 M\n';
   const outcome = evaluateCell(jobOn(text), { checkpoint: () => undefined });
   if (outcome.status === 'failed') throw new Error(outcome.error.message);
   const { conservationDrift, species } = outcome.result as {

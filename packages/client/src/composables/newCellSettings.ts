@@ -1,5 +1,6 @@
 import { type CellKind, cellRegistry, type TrajectoryResult } from '@stillroom/shared/cells';
 import type { CellContent } from '@stillroom/shared/document';
+import { readNetwork } from '@stillroom/shared/notation';
 import { tellingLines } from '../chart/chosenSeries.ts';
 import type { Cells } from './useCells.ts';
 
@@ -18,11 +19,23 @@ function nearest(kind: CellKind, after: string | null, cells: Cells): CellConten
 const speciesPath = (name: string) =>
   /^[\p{L}_][\p{L}\p{N}_]*$/u.test(name) ? `species.${name}` : `species["${name}"]`;
 
-function plotOf(course: CellContent | undefined, resultOf: ResultOf): CellContent['settings'] {
+/** Lines drawn at first where a course has no result yet to choose by. */
+const firstLines = 6;
+
+/** The lines worth drawing: by what they do where the course is known, else the first that its network names. */
+function linesOf(course: CellContent, cells: Cells, resultOf: ResultOf): readonly string[] {
+  const result = resultOf(course.id) as Partial<TrajectoryResult> | undefined;
+  if (result?.species !== undefined)
+    return tellingLines(Object.entries(result.species).map(([name, values]) => ({ name, values })));
+  const network = [...cells.byId.values()].find(
+    ({ kind, name }) => kind === 'network' && name === course.settings['network'],
+  );
+  return readNetwork(network?.text ?? '').network?.species.slice(0, firstLines) ?? [];
+}
+
+function plotOf(course: CellContent | undefined, cells: Cells, resultOf: ResultOf): CellContent['settings'] {
   if (course === undefined) return {};
-  const { species } = (resultOf(course.id) ?? {}) as Partial<TrajectoryResult>;
-  const lines = Object.entries(species ?? {}).map(([name, values]) => ({ name, values }));
-  const y = tellingLines(lines).map(speciesPath);
+  const y = linesOf(course, cells, resultOf).map(speciesPath);
   return { draw: [{ cell: course.name, x: 'times', y }] };
 }
 
@@ -34,7 +47,8 @@ export function newCellSettings(
   resultOf: ResultOf,
 ): CellContent['settings'] {
   const settings = cellRegistry[kind].empty.settings;
-  if (kind === 'plot') return { ...settings, ...plotOf(nearest('trajectory', after, cells), resultOf) };
+  if (kind === 'plot')
+    return { ...settings, ...plotOf(nearest('trajectory', after, cells), cells, resultOf) };
   if (settings['network'] !== '') return settings;
   return { ...settings, network: nearest('network', after, cells)?.name ?? '' };
 }
