@@ -79,9 +79,17 @@ describe('what a witness lights', () => {
 test('a citation names authors once, with all their years', () => {
   expect(
     citationText([
-      { authors: 'Feinberg', year: 1987, title: 'Chemical reaction network structure' },
-      { authors: 'Horn, Jackson', year: 1972, title: 'General mass action kinetics' },
-      { authors: 'Feinberg', year: 1995, title: 'The existence and uniqueness of steady states' },
+      { authors: 'M. Feinberg', year: 1987, title: 'Chemical reaction network structure' },
+      { authors: 'F. Horn, R. Jackson', year: 1972, title: 'General mass action kinetics' },
+      { authors: 'M. Feinberg', year: 1995, title: 'The existence and uniqueness of steady states' },
     ]),
   ).toBe('Feinberg 1987, 1995; Horn, Jackson 1972');
+});
+
+test('many authors are cut after three, and a family name of two words stays whole', () => {
+  const cite = (authors: string) => citationText([{ authors, year: 2007, title: 'On persistence' }]);
+  expect(cite('D. Angeli, P. De Leenheer, E. D. Sontag')).toBe('Angeli, De Leenheer, Sontag 2007');
+  expect(cite('S. Müller, E. Feliu, G. Regensburger, C. Conradi, A. Shiu')).toBe(
+    'Müller, Feliu, Regensburger and others 2007',
+  );
 });

@@ -57,12 +57,19 @@ export function witnessText(hypothesis: Hypothesis, structure: StructureResult |
   }
 }
 
-/** "Feinberg 1987, 1989; Horn, Jackson 1972": who proved it, works of the same authors together. */
+/** "D. F. Anderson, T. G. Kurtz" as "Anderson, Kurtz"; of more than four, the first three "and others". */
+function familyNames(authors: string): string {
+  const names = authors.split(', ').map((name) => name.replace(/^(?:\p{Lu}\.[\s-]*)+/u, ''));
+  return names.length > 4 ? `${names.slice(0, 3).join(', ')} and others` : names.join(', ');
+}
+
+/** "Feinberg 1987, 1995; Horn, Jackson 1972": who proved it, works of the same authors together. */
 export function citationText(citation: Verdict['citation']): string {
   const years = new Map<string, number[]>();
   for (const { authors, year } of citation) {
-    const known = years.get(authors) ?? [];
-    if (!known.includes(year)) years.set(authors, [...known, year]);
+    const names = familyNames(authors);
+    const known = years.get(names) ?? [];
+    if (!known.includes(year)) years.set(names, [...known, year]);
   }
-  return [...years].map(([authors, of]) => `${authors} ${of.join(', ')}`).join('; ');
+  return [...years].map(([names, of]) => `${names} ${of.join(', ')}`).join('; ');
 }
