@@ -35,18 +35,18 @@ export function halfArrow(points: readonly Point[], distance: number): string {
   return `${pathOf(moved)}l${dx.toFixed(1)} ${dy.toFixed(1)}`;
 }
 
-/** The point half way along a polyline. */
-export function middle(points: readonly Point[]): Point {
+/** The point half way along a polyline, or at another share of its length. */
+export function middle(points: readonly Point[], share = 0.5): Point {
   const total = points.slice(1).reduce((sum, point, i) => sum + between(points[i] ?? point, point), 0);
-  let left = total / 2;
+  let left = total * share;
   for (let i = 1; i < points.length; i++) {
     const a = points[i - 1];
     const b = points[i];
     if (a === undefined || b === undefined) continue;
     const length = between(a, b);
     if (left <= length) {
-      const share = left / length;
-      return { x: a.x + (b.x - a.x) * share, y: a.y + (b.y - a.y) * share };
+      const part = left / length;
+      return { x: a.x + (b.x - a.x) * part, y: a.y + (b.y - a.y) * part };
     }
     left -= length;
   }

@@ -99,7 +99,7 @@ export async function layOutSpecies(
     graph.nodes.map(({ id, label, species }) => [
       id,
       species === undefined
-        ? { width: 12 + 7.5 * label.length, height: 20 }
+        ? { width: 12 + 7.5 * label.length, height: 24 }
         : { width: Math.ceil(widthOf(label)) + 14, height: 24 },
     ]),
   );
@@ -111,6 +111,7 @@ export async function layOutSpecies(
       'elk.edgeRouting': 'POLYLINE',
       'elk.spacing.nodeNode': '14',
       'elk.spacing.edgeNode': '10',
+      'elk.spacing.edgeEdge': '14',
       'elk.spacing.componentComponent': '22',
       'elk.layered.spacing.nodeNodeBetweenLayers': '30',
       'elk.layered.thoroughness': '20',

@@ -44,7 +44,11 @@ export function witnessText(hypothesis: Hypothesis, structure: StructureResult |
       const count = Object.keys(witness.entries).length;
       if (witness.of === 'fluxes' && count > 4) return `a flux on ${count} arrows`;
       const terms = Object.entries(witness.entries).map(([key, value]) =>
-        String(value) === '1' ? named(key) : `${String(value).replace('-', '−')} ${named(key)}`,
+        String(value) === '1'
+          ? named(key)
+          : String(value) === '-1'
+            ? `−${named(key)}`
+            : `${String(value).replace('-', '−')} ${named(key)}`,
       );
       return terms.length > 8
         ? `${terms.slice(0, 8).join(', ')} and ${terms.length - 8} more`
