@@ -76,7 +76,9 @@ export async function layOutClass(
         }),
       );
       if (strategy === 'SINGLE_EDGE' && folded.width === graph.width) break;
-      if ((folded.width ?? 0) < (graph.width ?? 0)) graph = folded;
+      // Many arrows led back are hard to read: taken only where the class then fits.
+      const most = strategy === 'SINGLE_EDGE' ? (graph.width ?? 0) : sizes.width;
+      if ((folded.width ?? 0) <= most) graph = folded;
     }
   }
   return placed(of, sizes, graph);
