@@ -5,7 +5,7 @@ import type { AddressInfo } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
-import { afterAll, beforeAll, describe, expect, test, vi } from 'vitest';
+import { afterAll, afterEach, beforeAll, describe, expect, test, vi } from 'vitest';
 
 /** `npm start` as people meet it: from a fresh data folder, beside itself, after a crash. */
 const script = fileURLToPath(new URL('../../scripts/start.mjs', import.meta.url));
@@ -20,6 +20,9 @@ interface Run {
   readonly ended: Promise<number | null>;
 }
 
+/** Runs of the present test; one that fails must not leave its own running for the next. */
+const running = new Set<Run>();
+
 function start(): Run {
   const env = { ...process.env, DATA_FOLDER: data, PORT: String(port), COMPUTE_WORKERS: '1' };
   const child = spawn(process.execPath, [script], { env, stdio: ['ignore', 'pipe', 'pipe'] });
@@ -27,11 +30,13 @@ function start(): Run {
   child.stdout.on('data', (chunk: Buffer) => (words += chunk.toString()));
   child.stderr.on('data', (chunk: Buffer) => (words += chunk.toString()));
   const ended = new Promise<number | null>((resolve) => child.on('close', resolve));
-  return { child, said: () => words, ended };
+  const run = { child, said: () => words, ended };
+  running.add(run);
+  return run;
 }
 
 const ready = (run: Run) =>
-  vi.waitFor(() => expect(run.said()).toContain('Stillroom is ready at'), { timeout: 100_000, interval: 50 });
+  vi.waitFor(() => expect(run.said()).toContain('Stillroom is ready at'), { timeout: 150_000, interval: 50 });
 
 async function stop(run: Run): Promise<void> {
   run.child.kill('SIGINT');
@@ -49,6 +54,13 @@ beforeAll(async () => {
   await new Promise((resolve) => probe.once('listening', resolve));
   port = (probe.address() as AddressInfo).port;
   await new Promise((resolve) => probe.close(resolve));
+});
+afterEach(async () => {
+  for (const { child, ended } of running) {
+    if (child.exitCode === null && child.signalCode === null) child.kill('SIGINT');
+    await ended;
+  }
+  running.clear();
 });
 afterAll(() => rmSync(data, { recursive: true, force: true }));
 

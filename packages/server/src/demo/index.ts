@@ -14,7 +14,7 @@ export interface Demo {
 }
 
 /** How long the start waits for the record under review; on a slow machine it is frozen later. */
-const patience = 30_000;
+const patience = 90_000;
 
 /** Fills an empty demo installation before the first request. To be started last: it uses everything. */
 export function createDemo(services: Services, compute: Compute): ServerModule {
