@@ -64,6 +64,15 @@ function readOwnPart(cell: PlannableCell, before: OwnPart | undefined): OwnPart 
   };
 }
 
+/** A cell beyond what a notebook holds: it is not read. Its settings as text are none, so that no later plan takes this up. */
+const excessPart = (cell: PlannableCell): OwnPart => ({
+  content: cell,
+  settingsText: '',
+  text: '',
+  draws: [],
+  complaint: `A notebook takes at most ${limits.cells} cells; take some out, or begin another notebook.`,
+});
+
 const lengthComplaint = ({ kind, text }: PlannableCell): string =>
   `This ${kind} has ${text.length} characters; a cell takes at most ${limits.cellText}.`;
 
@@ -139,7 +148,11 @@ class Planning {
     this.cells = cells;
     this.memory = memory;
     this.bearers = bearersOf(cells);
-    for (const cell of cells) this.own.set(cell.id, readOwnPart(cell, memory.own.get(cell.id)));
+    for (const [place, cell] of cells.entries())
+      this.own.set(
+        cell.id,
+        place < limits.cells ? readOwnPart(cell, memory.own.get(cell.id)) : excessPart(cell),
+      );
   }
 
   plan(): Plan {

@@ -2,7 +2,8 @@ import type { CellKind } from '../cells/kind.ts';
 import { canonicalText } from '../notation/print.ts';
 
 const loneSurrogates = /\p{Surrogate}/gu;
-const trailingBlanks = /[^\S\n]+$/gmu;
+// Begun only where no blank stands before: from every blank of a long run on, it would cost the square of the run.
+const trailingBlanks = /(?<![^\S\n])[^\S\n]+$/gmu;
 
 /** A text as every digest sees it: NFC, lines ended by LF, no blanks at the ends of lines. */
 export function plainText(text: string): string {

@@ -33,4 +33,8 @@ describe('the opening of a notebook', () => {
     expect(cut.length).toBeLessThanOrEqual(161);
     expect(cut).toMatch(/word…$/u);
   });
+
+  test('is found in one go in a long text of brackets that nothing closes', () => {
+    expect(opening(`Words ${'=['.repeat(1_000_000)}`)).toMatch(/^Words =\[=\[/u);
+  });
 });

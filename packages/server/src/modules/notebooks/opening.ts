@@ -1,12 +1,14 @@
 import type { NotebookContent } from '@stillroom/shared/document';
 
 const length = 160;
+/** How much of a cell is looked at, in UTF-16 units: unclosed brackets cost the square of it. */
+const lookedAt = 8000;
 
 /** First words of the first prose cell, as plain text: without headings, marks of Markdown and TeX. */
 export function openingOf({ cells }: Pick<NotebookContent, 'cells'>): string {
   for (const { kind, text } of cells) {
     if (kind !== 'prose') continue;
-    const words = plainWords(text);
+    const words = plainWords(text.slice(0, lookedAt));
     if (words !== '') return shorten(words);
   }
   return '';
