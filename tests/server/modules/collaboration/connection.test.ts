@@ -43,6 +43,20 @@ function edit(words: string, doc = new Y.Doc()): Uint8Array {
   return Y.encodeStateAsUpdate(doc, before);
 }
 
+describe('a presence', () => {
+  test('is that of a few windows, however many a line names', async () => {
+    const { join, room } = build();
+    const ada = join('ada');
+    for (let client = 1; client <= 100; client += 1)
+      ada.connection.receive(frames.awareness(client, { user: { id: 'ada' } }));
+    await turns();
+    const shown = join('ben').line.ofType(messageTypes.awareness).at(0);
+    expect(shown?.length).toBeGreaterThan(20);
+    expect(shown?.length).toBeLessThan(500);
+    expect(room.inhabited).toBe(true);
+  });
+});
+
 describe('a line', () => {
   test('asks somebody who may write for what the server lacks, and a reader for nothing', () => {
     const { join } = build();

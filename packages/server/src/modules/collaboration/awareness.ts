@@ -13,6 +13,9 @@ import { awarenessFrame } from './frames.ts';
 /** A cursor and a name need far less. */
 const stateLength = 8192;
 
+/** A page shows itself once; a few more may stand for what it showed before it came back. */
+const statesOfOne = 8;
+
 interface Change {
   readonly added: readonly number[];
   readonly updated: readonly number[];
@@ -50,8 +53,12 @@ export class Presences<Owner extends { readonly person: Person }> {
     if (entries === null) return false;
     const own = entries.filter((entry) => this.#isOwn(entry, from));
     if (own.length === 0) return true;
-    for (const { client } of own) this.#owners.set(client, from);
-    applyAwarenessUpdate(this.#awareness, writeEntries(own), from);
+    const known = new Set([...this.#owners].filter(([, owner]) => owner === from).map(([client]) => client));
+    const taken = own.filter(
+      ({ client }) => known.has(client) || (known.size < statesOfOne && known.add(client)),
+    );
+    for (const { client } of taken) this.#owners.set(client, from);
+    applyAwarenessUpdate(this.#awareness, writeEntries(taken), from);
     return true;
   }
 

@@ -35,6 +35,8 @@ const heartbeat = 12_000;
  * protocol's own reason, where the socket's would have the client send it again and again.
  */
 const socketFrame = 4 * limits.frame;
+/** What may be sent before the visitor has been let in, in bytes. */
+const earlyBytes = 2 * limits.frame;
 /** A line that has this much unsent, in bytes, is too slow to follow and comes back for the whole. */
 const backlog = 16 * 1024 * 1024;
 
@@ -95,13 +97,19 @@ export class Gateway {
   /** Listens at once, so that nothing sent while the visitor is being judged is lost. */
   #welcome(line: WebSocket, request: IncomingMessage, notebook: string | null): void {
     const early: Uint8Array[] = [];
+    let waiting = 0;
     let connection: Connection | null = null;
     this.#alive.add(line);
     line.on('pong', () => this.#alive.add(line));
     line.on('error', () => line.terminate());
     line.on('message', (data: Buffer) => {
-      if (connection !== null) connection.receive(data);
-      else if (early.push(data) > 100) line.close(closeCodes.tooMuch, 'Too much was sent before the answer.');
+      if (connection !== null) return connection.receive(data);
+      // What still comes in while a line is closing is not kept.
+      if (line.readyState !== line.OPEN) return;
+      waiting += data.length;
+      if (early.push(data) <= 100 && waiting <= earlyBytes) return;
+      early.length = 0;
+      line.close(closeCodes.tooMuch, 'Too much was sent before the answer.');
     });
     const refuse = (code: CloseCode, why: string) => line.close(code, why);
     this.#judge(request, notebook, refuse)
