@@ -13,6 +13,21 @@ beforeAll(async () => {
 afterAll(() => server.stop());
 
 describe('signing in', () => {
+  test('works for more people at once than the database has connections', async () => {
+    const small = await startTestServer({ DATABASE_POOL: '4' });
+    try {
+      const { email } = await buildPerson(small);
+      const answers = await Promise.all(
+        Array.from({ length: 12 }, () =>
+          new Visitor(small.url).post('/api/session', { email, password: usualPassword }),
+        ),
+      );
+      expect(answers.map(({ status }) => status)).toEqual(answers.map(() => 200));
+    } finally {
+      await small.stop();
+    }
+  });
+
   test('the right password opens a session, in capitals and blanks too', async () => {
     const visitor = new Visitor(server.url);
     const answer = await visitor.post('/api/session', {

@@ -4,7 +4,7 @@ import { describeError } from '../logger.ts';
 import { readSettings, writeSetting } from '../modules/auth/index.ts';
 import type { Compute } from '../modules/compute/index.ts';
 import { NotebookEntity } from '../modules/notebooks/index.ts';
-import { freezeNotebook, readFreeze } from '../modules/records/index.ts';
+import { awaitStanding, freezeNotebook, readFreeze } from '../modules/records/index.ts';
 import { inviteReviewer } from '../modules/reviews/index.ts';
 import type { Services } from '../services.ts';
 import { readDemoNotebook } from './notebook-files.ts';
@@ -47,10 +47,15 @@ async function isComputed(
   return false;
 }
 
-function freezeAndInvite(services: Services, compute: Compute, notebook: NotebookEntity): Promise<void> {
-  return services.database.transaction(async (manager) => {
+async function freezeAndInvite(
+  services: Services,
+  compute: Compute,
+  notebook: NotebookEntity,
+): Promise<void> {
+  const standing = await awaitStanding(compute, notebook.id);
+  await services.database.transaction(async (manager) => {
     const { reasons, reviewer, days } = demoReview;
-    const record = await freezeNotebook(manager, compute, notebook, notebook.createdBy, reasons);
+    const record = await freezeNotebook(manager, compute, notebook, standing, notebook.createdBy, reasons);
     const until = new Date(Date.now() + days * dayLength).toISOString().slice(0, 10);
     const address = publicAddress(services.config);
     const invitation = { ...reviewer, until };

@@ -16,7 +16,7 @@ interface Context<W extends Who, P, Q, B> {
   readonly params: Output<P>;
   readonly query: Output<Q>;
   readonly body: Output<B>;
-  /** Of this request's transaction, where it changes anything. */
+  /** Of this request's transaction, where it changes anything and has one. */
   readonly manager: EntityManager;
   readonly request: Request;
   readonly response: Response;
@@ -32,6 +32,11 @@ interface Sentence<W extends Who, P, Q, B> {
   readonly most?: number;
   /** Status of a good answer; 204 follows by itself where nothing is answered. */
   readonly status?: 200 | 201 | 202;
+  /**
+   * Of a changing request whose handler waits, or asks the database by other ways than its manager: no transaction is
+   * held open meanwhile. Requests that each hold one connection and wait for another could starve each other.
+   */
+  readonly transaction?: false;
   /** Load, authorize, command, present. What it returns is the answer. */
   handle(context: Context<W, P, Q, B>): Promise<unknown>;
 }
@@ -51,9 +56,12 @@ export function route<
     const params = read(sentence.params, request.params) as Output<P>;
     const query = read(sentence.query, request.query) as Output<Q>;
     const body = read(sentence.body, request.body) as Output<B>;
-    const result = await inTransaction(services.database, request, (manager) =>
-      sentence.handle({ person, params, query, body, manager, request, response }),
-    );
+    const handle = (manager: EntityManager) =>
+      sentence.handle({ person, params, query, body, manager, request, response });
+    const result =
+      sentence.transaction === false
+        ? await handle(services.database.manager)
+        : await inTransaction(services.database, request, handle);
     if (response.headersSent) return;
     // A handler whose answers differ in status has set it by itself.
     const chosen = response.statusCode === 200 ? sentence.status : response.statusCode;

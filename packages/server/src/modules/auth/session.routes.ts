@@ -31,6 +31,7 @@ export function sessionRoutes(services: Services, authenticator: passport.Authen
       limit: 'guesses',
       who: 'anyone',
       body: signInRequest,
+      transaction: false,
       async handle({ body, request }) {
         request.body = body;
         const person = await checkCredentials(authenticator, request);

@@ -90,6 +90,7 @@ export function computeRoutes(services: Services, { results, withPlanner }: Comp
       who: 'person',
       params: cellParams,
       status: 202,
+      transaction: false,
       async handle({ person, params: { notebook, cell }, manager }) {
         await loadNotebook(manager, person.id, notebook, 'notebook.run');
         await withPlanner(notebook, (planner) => planner.bringUpToDate([cell]));
@@ -104,6 +105,7 @@ export function computeRoutes(services: Services, { results, withPlanner }: Comp
       who: 'person',
       params: notebookParams,
       status: 202,
+      transaction: false,
       async handle({ person, params: { notebook }, manager }) {
         await loadNotebook(manager, person.id, notebook, 'notebook.run');
         await withPlanner(notebook, (planner) => planner.bringUpToDate(null));
@@ -118,6 +120,7 @@ export function computeRoutes(services: Services, { results, withPlanner }: Comp
       who: 'person',
       params: cellParams,
       status: 202,
+      transaction: false,
       async handle({ person, params: { notebook, cell }, manager }) {
         await loadNotebook(manager, person.id, notebook, 'notebook.run');
         await withPlanner(notebook, (planner) => planner.stop(cell));

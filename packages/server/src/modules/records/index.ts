@@ -1,6 +1,6 @@
 import { RecordEntity, RecordLinkEntity } from './entities/record.ts';
 
-export { freezeNotebook, readFreeze } from './commands/freeze.ts';
+export { awaitStanding, freezeNotebook, readFreeze } from './commands/freeze.ts';
 export { digestOfText, recordFormat } from './content.ts';
 export type { RecordCell, RecordContent } from './content.ts';
 export { sendRecordFile } from './download.ts';

@@ -9,7 +9,7 @@ import { token, uuid } from '../../http/validate.ts';
 import type { Services } from '../../services.ts';
 import type { Compute } from '../compute/index.ts';
 import { loadNotebook } from '../notebooks/index.ts';
-import { freezeNotebook, readFreeze } from './commands/freeze.ts';
+import { awaitStanding, freezeNotebook, readFreeze } from './commands/freeze.ts';
 import { publishRecord } from './commands/publish-record.ts';
 import { sendRecordFile } from './download.ts';
 import type { RecordEntity } from './entities/record.ts';
@@ -54,10 +54,17 @@ export function recordsRoutes(services: Services, compute: Compute, reviewsOf: R
       params: notebookParams,
       body: freezeRequest,
       status: 201,
+      transaction: false,
       async handle({ person, params, body, manager }) {
-        const { notebook } = await loadNotebook(manager, person.id, params.notebook, 'notebook.freeze');
-        const { id, number } = await freezeNotebook(manager, compute, notebook, person.id, body.reasons);
-        return { id, number };
+        await loadNotebook(manager, person.id, params.notebook, 'notebook.freeze');
+        const standing = await awaitStanding(compute, params.notebook);
+        return services.database.transaction(async (sealing) => {
+          // What the person may do is asked anew: waiting takes up to a minute and a half.
+          const { notebook } = await loadNotebook(sealing, person.id, params.notebook, 'notebook.freeze');
+          const { reasons } = body;
+          const frozen = await freezeNotebook(sealing, compute, notebook, standing, person.id, reasons);
+          return { id: frozen.id, number: frozen.number };
+        });
       },
     }),
   );

@@ -30,17 +30,17 @@ export async function readFreeze(
 }
 
 /**
- * Freezes a notebook as the group's next record, in the manager's transaction. Waits for working cells.
- * @throws conflict where cells are stale, failed or do not come to an end; invalid where a reason is missing.
+ * Freezes a notebook, as its cells stood, as the group's next record, in the manager's transaction.
+ * @throws conflict where cells are stale or failed; invalid where a reason is missing.
  */
 export async function freezeNotebook(
   manager: EntityManager,
   compute: Compute,
   notebook: NotebookEntity,
+  standing: Standing,
   by: string,
   reasons: Readonly<Record<string, string>>,
 ): Promise<RecordEntity> {
-  const standing = await awaitStanding(compute, notebook.id);
   const remarks = await openRemarks(manager, notebook.id);
   const given = acceptReasons(freezeView(standing.cells, remarks, 0), reasons);
   const group = await lockGroup(manager, notebook.group);
@@ -82,8 +82,11 @@ export async function freezeNotebook(
   return record;
 }
 
-/** The cells once none is working any more. */
-async function awaitStanding(compute: Compute, notebook: string): Promise<Standing> {
+/**
+ * The cells once none is working any more. To be asked before a transaction begins: none may stay open so long.
+ * @throws conflict where they do not come to an end.
+ */
+export async function awaitStanding(compute: Compute, notebook: string): Promise<Standing> {
   const until = Date.now() + patience;
   return compute.withPlanner(notebook, async (planner) => {
     for (;;) {
