@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { readFileSync } from 'node:fs';
+import type { GroupView } from '@stillroom/shared/contracts';
 import { may, type Membership, roleAt } from '@stillroom/shared/roles';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { buildPerson, signIn } from '../../support/build.ts';
@@ -76,6 +77,17 @@ describe('a role limited to other notebooks does not count at this one or its re
     for (const caller of callers) {
       const answer = await ask(route, fixture, caller);
       expect(doorOf(answer, route.door), caller).toBe(expectedDoor(route, caller, memberOf(elsewhere)));
+    }
+  });
+
+  test('and its records are not told of in the group', async () => {
+    for (const [chosen, count] of [
+      [() => elsewhere, 0],
+      [(notebook: string) => [notebook], 1],
+    ] as const) {
+      const { group } = await buildFixture(server, crowd, (notebook) => [...chosen(notebook)]);
+      const { body } = await crowd.visitors.reader.get(`/api/groups/${group}`);
+      expect((body as GroupView).records).toHaveLength(count);
     }
   });
 

@@ -7,6 +7,10 @@ import type { EntityManager } from 'typeorm';
 export interface GroupContents {
   /** Notebooks of a group, those in the bin too, by title. */
   notebooks(manager: EntityManager, group: string): Promise<GroupView['notebooks']>;
-  /** Records of a group, newest first. */
-  records(manager: EntityManager, group: string): Promise<GroupView['records']>;
+  /** Records of a group, newest first; only those of the chosen notebooks, where not all (null) count. */
+  records(
+    manager: EntityManager,
+    group: string,
+    chosen: readonly string[] | null,
+  ): Promise<GroupView['records']>;
 }

@@ -9,7 +9,7 @@ import { MembershipEntity } from './entities/membership.ts';
 
 const rank: Readonly<Record<Membership['role'], number>> = { lead: 0, author: 1, remarker: 2, reader: 3 };
 
-/** A group as one of its members may see it: notebooks outside the chosen ones stay out. */
+/** A group as one of its members may see it: notebooks outside the chosen ones, and their records, stay out. */
 export async function presentGroup(
   manager: EntityManager,
   contents: GroupContents,
@@ -29,7 +29,7 @@ export async function presentGroup(
     members: await presentMembers(manager, id),
     invitations: may(membership.role, 'group.invite') ? await presentInvitations(manager, id) : [],
     notebooks: notebooks.filter((notebook) => sees(notebook.id)),
-    records: await contents.records(manager, id),
+    records: await contents.records(manager, id, membership.notebooks),
   };
 }
 

@@ -1,10 +1,15 @@
 import type { GroupView, NotebookView } from '@stillroom/shared/contracts';
-import type { EntityManager } from 'typeorm';
+import { type EntityManager, In } from 'typeorm';
 import { RecordEntity } from './entities/record.ts';
 
-/** Records of a group, newest first. */
-export async function recordsOfGroup(manager: EntityManager, group: string): Promise<GroupView['records']> {
-  const records = await manager.find(RecordEntity, { where: { group }, order: { number: 'DESC' } });
+/** Records of a group, newest first; only those of the chosen notebooks, where not all (null) count. */
+export async function recordsOfGroup(
+  manager: EntityManager,
+  group: string,
+  chosen: readonly string[] | null,
+): Promise<GroupView['records']> {
+  const where = chosen === null ? { group } : { group, notebook: In([...chosen]) };
+  const records = await manager.find(RecordEntity, { where, order: { number: 'DESC' } });
   return records.map(({ id, number, title, frozenAt }) => ({
     id,
     number,
