@@ -5,9 +5,10 @@ import {
   writeNotebookFile,
 } from '@stillroom/shared/notebook-file';
 import { limits } from '@stillroom/shared/protocol';
-import { Router } from 'express';
+import { type RequestHandler, Router } from 'express';
 import * as z from 'zod/mini';
 import { invalid } from '../../errors.ts';
+import { authenticate } from '../../http/authenticate.ts';
 import { route } from '../../http/route.ts';
 import { uuid } from '../../http/validate.ts';
 import type { Services } from '../../services.ts';
@@ -69,6 +70,7 @@ export function filesRoutes(services: Services): Router {
 
   router.post(
     '/api/notebooks/:notebook/pictures',
+    refuseStrangers,
     receivePicture,
     route(services, {
       limit: 'heavy',
@@ -99,6 +101,12 @@ export function filesRoutes(services: Services): Router {
 
   return router;
 }
+
+/** Nobody's bytes are taken into memory before it is known whose they are. */
+const refuseStrangers: RequestHandler = (request, _response, next) => {
+  authenticate(request, 'person');
+  next();
+};
 
 /** A title as the name of a file on any system. */
 export const fileNameOf = (title: string): string =>
