@@ -94,7 +94,7 @@ test('sensitivities through events agree with differences of courses', () => {
   ].join('\n');
   const names = ['dose', 'low', 'k1', 'k2', 'k3'] as const;
   const values = { dose: 3, low: 0.6, k1: 2.3, k2: 0.4, k3: 1.9 };
-  const settings = { times: [1, 3, 6, 9], method: 'auto' } as const;
+  const settings = { times: [1, 3, 6, 9], method: 'auto' as const };
   const { sensitivities, fired } = run(text, { ...settings, sensitivities: [...names] });
   expect(fired!.length).toBeGreaterThan(2);
   fc.assert(

@@ -47,7 +47,7 @@ describe('one process', () => {
     const engine = await start();
     const progress: number[] = [];
     const outcome = await engine.run(endless, {
-      deadline: 1.2,
+      deadline: 4,
       onProgress: ({ share }) => progress.push(share ?? -1),
     });
     expect(outcome).toMatchObject({

@@ -4,8 +4,6 @@ import { cell } from '../../../support/cells.ts';
 
 const opening = (...texts: string[]) =>
   openingOf({
-    title: '',
-    subject: 'none',
     cells: texts.map((text, place) => cell(`c${place}`, 'prose', text)),
   });
 
