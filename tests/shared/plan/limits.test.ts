@@ -31,3 +31,14 @@ test('a long run of blanks that does not end its line is read in one go', () => 
   expect(plainText(text)).toBe(text);
   expect(plainText(`a${' '.repeat(1000)}\nb \t\n`)).toBe('a\nb\n');
 });
+
+test('a claim or a plot too deep to be read says so; other cells go on', () => {
+  const cells = [
+    { ...prose('claim', `${'a.b + '.repeat(300_000)}1 > 0`), kind: 'claim' as const, name: 'deep' },
+    { ...prose('plot', '['.repeat(900_000) + ']'.repeat(900_000)), kind: 'plot' as const, name: 'deeper' },
+    prose('short', 'Words'),
+  ];
+  const { byId } = planNotebook(cells);
+  for (const id of ['claim', 'plot']) expect(byId.get(id)?.problem?.message).toContain('too deep to be read');
+  expect(byId.get('short')?.digest).toMatch(/^sha256:/u);
+});

@@ -30,6 +30,9 @@ function claimDraws(text: string): TextDraw[] {
   return claim.ok ? claimPaths(claim.value).map(({ head, from }) => ({ name: head, at: from })) : [];
 }
 
+/** So many names of a specification are looked up in its text: each costs a search of the whole. */
+const mostPlaced = 200;
+
 /** Names of the data of a Vega-Lite specification, wherever they stand in it. */
 function specificationDraws(text: string): TextDraw[] {
   let specification: unknown;
@@ -50,7 +53,8 @@ function specificationDraws(text: string): TextDraw[] {
       const data = key === 'data' && typeof inner === 'object' && inner !== null ? inner : null;
       const name = data !== null && 'name' in data && !('values' in data) ? data.name : null;
       if (typeof name === 'string' && !found.has(name)) {
-        found.set(name, { name: name.normalize('NFC'), at: Math.max(0, text.indexOf(JSON.stringify(name))) });
+        const at = found.size < mostPlaced ? text.indexOf(JSON.stringify(name)) : 0;
+        found.set(name, { name: name.normalize('NFC'), at: Math.max(0, at) });
       }
       walk(inner);
     }

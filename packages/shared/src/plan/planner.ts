@@ -54,15 +54,25 @@ function readOwnPart(cell: PlannableCell, before: OwnPart | undefined): OwnPart 
   if (cell.text.length > limits.cellText) {
     return { content: cell, settingsText, text: '', draws: [], complaint: lengthComplaint(cell) };
   }
-  const text = sourceText(cell.kind, cell.text);
-  return {
-    content: cell,
-    settingsText,
-    text,
-    draws: findDraws(cell.kind, text, cell.settings),
-    complaint: settingsComplaint(cell.kind, cell.settings),
-  };
+  try {
+    const text = sourceText(cell.kind, cell.text);
+    const draws = findDraws(cell.kind, text, cell.settings);
+    return {
+      content: cell,
+      settingsText,
+      text,
+      draws,
+      complaint: settingsComplaint(cell.kind, cell.settings),
+    };
+  } catch (error) {
+    // The stack is what gives way first; the other cells go on.
+    if (!(error instanceof RangeError)) throw error;
+    return { content: cell, settingsText, text: '', draws: [], complaint: depthComplaint(cell) };
+  }
 }
+
+const depthComplaint = ({ kind }: PlannableCell): string =>
+  `This ${kind} is nested too deep to be read; take it apart into several cells.`;
 
 /** A cell beyond what a notebook holds: it is not read. Its settings as text are none, so that no later plan takes this up. */
 const excessPart = (cell: PlannableCell): OwnPart => ({
