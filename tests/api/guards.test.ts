@@ -53,6 +53,12 @@ describe('requests from elsewhere', () => {
 });
 
 describe('what cannot be read', () => {
+  test('a character that cannot be kept is refused in words', async () => {
+    const visitor = await signIn(server, await buildPerson(server));
+    const answer = await visitor.post('/api/groups', { name: 'a\u0000b' });
+    expect([answer.status, answer.body]).toMatchObject([400, { error: 'invalid' }]);
+  });
+
   test('broken JSON, a wrong type and too much of it are refused in words', async () => {
     const visitor = await signIn(server, await buildPerson(server));
     const json = { 'content-type': 'application/json' };

@@ -44,5 +44,8 @@ function asDomainError(error: unknown): DomainError | null {
   if (type === 'encoding.unsupported' || type === 'charset.unsupported' || error instanceof URIError) {
     return invalid('What was sent cannot be read.');
   }
+  // PostgreSQL: a character that no text column, or no JSON column, holds.
+  if (code === '22021' || code === '22P05')
+    return invalid('There is a character in it that cannot be kept.', { hint: 'Type the words anew.' });
   return code?.startsWith('LIMIT_') ? invalid('The upload is not as expected: one file, no more.') : null;
 }

@@ -2,6 +2,7 @@ import type { CellJob, CellKind, CellOutcome } from '@stillroom/shared/cells';
 import { engineVersion } from '@stillroom/shared/plan';
 import type { Queries } from '../notebooks/index.ts';
 import { eventChannel } from '../../events.ts';
+import { storableJson } from '../../database/storable.ts';
 
 /** Whose run it is and how it is called, for fair shares and for the operator. */
 export interface RunOwner {
@@ -206,8 +207,8 @@ function columns(job: Ran, outcome: CellOutcome, json: string | null, took: numb
     job.kind,
     json,
     ok ? outcome.resultDigest : null,
-    ok ? null : JSON.stringify(outcome.error),
-    JSON.stringify(outcome.warnings),
+    ok ? null : storableJson(outcome.error),
+    storableJson(outcome.warnings),
     took,
   ];
 }

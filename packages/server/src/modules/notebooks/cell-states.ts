@@ -3,6 +3,7 @@ import type { NotebookContent } from '@stillroom/shared/document';
 import type { CellError, CellState } from '@stillroom/shared/protocol';
 import type { Queries } from './document.ts';
 import { openingOf } from './opening.ts';
+import { storableJson, storableText } from '../../database/storable.ts';
 
 /** The last known state of a cell, for the Shelf and for whoever opens the notebook next. */
 export interface CellStanding {
@@ -66,7 +67,7 @@ export async function keepStates(
      on conflict (notebook, cell) do update set place = excluded.place, kind = excluded.kind, name = excluded.name,
        state = excluded.state, digest = excluded.digest, shown = excluded.shown, error = excluded.error,
        verdict = excluded.verdict`,
-    [notebook, JSON.stringify(states)],
+    [notebook, storableJson(states)],
   );
 }
 
@@ -75,6 +76,6 @@ export async function keepFace(queries: Queries, notebook: string, content: Note
   await queries.query(
     `update notebook set title = $2, subject = $3, opening = $4
      where id = $1 and (title, subject, opening) is distinct from ($2, $3, $4)`,
-    [notebook, content.title, content.subject, openingOf(content)],
+    [notebook, storableText(content.title), content.subject, storableText(openingOf(content))],
   );
 }

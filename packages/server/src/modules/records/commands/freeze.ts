@@ -11,6 +11,7 @@ import { type NotebookEntity, readAuthors, remarksOf } from '../../notebooks/ind
 import { freezeView, type OpenRemark } from '../checks.ts';
 import { type RecordCell, type RecordContent, recordFormat, sealContent } from '../content.ts';
 import { RecordEntity } from '../entities/record.ts';
+import { storableText } from '../../../database/storable.ts';
 
 /** How long freezing waits for working cells, in milliseconds, and how often it looks. */
 const patience = 90_000;
@@ -61,7 +62,7 @@ export async function freezeNotebook(
     cells: await Promise.all(standing.cells.map((cell) => freezeCell(compute, cell))),
   };
   const { text, digest } = sealContent(content);
-  const { title } = content;
+  const title = storableText(content.title);
   const record = await manager.save(
     manager.create(RecordEntity, {
       group: group.id,
