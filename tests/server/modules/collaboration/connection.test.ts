@@ -43,6 +43,22 @@ function edit(words: string, doc = new Y.Doc()): Uint8Array {
   return Y.encodeStateAsUpdate(doc, before);
 }
 
+describe('an update that breaks off', () => {
+  test('ends its line, and the room where a part of it was taken in', async () => {
+    const { join, broken, room } = build();
+    const ada = join('ada');
+    ada.connection.receive(frames.update(new Uint8Array([9, 9])));
+    await turns();
+    expect(ada.line.closed?.code).toBe(closeCodes.malformed);
+    expect(broken).toEqual([]);
+    const ben = join('ben');
+    ben.connection.receive(frames.update(edit('hello').slice(0, -1)));
+    await turns();
+    expect(ben.line.closed?.code).toBe(closeCodes.malformed);
+    expect(broken).toEqual([room]);
+  });
+});
+
 describe('a presence', () => {
   test('is that of a few windows, however many a line names', async () => {
     const { join, room } = build();

@@ -100,7 +100,7 @@ export class Room {
    * @throws where the bytes are no update.
    */
   write(update: Uint8Array, by: Connection): Promise<void> {
-    const news = this.#apply(update, by);
+    const news = this.#applyOrAbandon(update, by);
     // What waits for an update that has not come is not announced, and must be kept all the same.
     const waits = this.doc.store.pendingStructs !== null || this.doc.store.pendingDs !== null;
     if (news === null && !waits) return this.#log.committed();
@@ -158,6 +158,17 @@ export class Room {
     for (const observer of this.#observers) observer.closed?.();
     this.#presences.destroy();
     this.doc.destroy();
+  }
+
+  /** Of an update whose end cannot be read, Yjs has taken in the beginning: the document is then not what is kept. */
+  #applyOrAbandon(update: Uint8Array, by: Connection): Uint8Array | null {
+    try {
+      return this.#apply(update, by);
+    } catch (error) {
+      // The sender hears first what was wrong.
+      if (this.#announced !== null) queueMicrotask(() => this.abandon());
+      throw error;
+    }
   }
 
   #apply(update: Uint8Array, origin: unknown): Uint8Array | null {
