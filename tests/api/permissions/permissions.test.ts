@@ -80,6 +80,15 @@ describe('a role limited to other notebooks does not count at this one or its re
     }
   });
 
+  test('and begins no notebook, which would lie outside them', async () => {
+    const { group } = await buildFixture(server, crowd, () => elsewhere);
+    const answer = await crowd.visitors.author.post(`/api/groups/${group}/notebooks`, { title: 'New' });
+    expect(answer).toMatchObject({
+      status: 403,
+      body: { message: expect.stringContaining('chosen') as string },
+    });
+  });
+
   test('and its records are not told of in the group', async () => {
     for (const [chosen, count] of [
       [() => elsewhere, 0],

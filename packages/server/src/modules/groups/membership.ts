@@ -58,5 +58,11 @@ export async function loadGroup(
   authorize(membership?.role ?? null, ability, 'group');
   const group = await manager.findOneBy(GroupEntity, { id });
   if (group === null || membership === null) throw notFound('group');
+  // Who made a notebook outside the chosen ones could not open it.
+  if (ability === 'notebook.create' && membership.notebooks !== null) {
+    throw forbidden('Your role counts at chosen notebooks of the group only; you may not begin new ones.', {
+      hint: 'Ask a lead of the group to begin it, or to let your role count in the whole group.',
+    });
+  }
   return { group, membership };
 }
