@@ -289,3 +289,17 @@ describe('a reviewer’s remark', () => {
     expect(view.record.remarks).toEqual([]);
   });
 });
+
+describe('a record whose notebook is gone for good', () => {
+  test('is still read and judged; a remark is refused in words', async () => {
+    const { token } = await invite();
+    await server.sql('delete from notebook where id = $1', [notebook]);
+    expect((await anyone().get(`/api/review/${token}`)).status).toBe(200);
+    const words = { cell: 'run', quote: '', text: 'Where to?' };
+    const answer = await anyone().post(`/api/review/${token}/remarks`, words);
+    expect(answer).toMatchObject({
+      status: 409,
+      body: { hint: expect.stringContaining('verdict') as string },
+    });
+  });
+});

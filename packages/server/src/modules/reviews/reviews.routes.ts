@@ -2,11 +2,11 @@ import { rerunRequest, reviewInvitation, reviewRemark, verdictRequest } from '@s
 import { Router } from 'express';
 import * as z from 'zod/mini';
 import { publicAddress } from '../../config/index.ts';
-import { notFound } from '../../errors.ts';
+import { conflict, notFound } from '../../errors.ts';
 import { route } from '../../http/route.ts';
 import { token, uuid } from '../../http/validate.ts';
 import type { Services } from '../../services.ts';
-import { presentRemarks, writeRemark } from '../notebooks/index.ts';
+import { NotebookEntity, presentRemarks, writeRemark } from '../notebooks/index.ts';
 import { loadRecord, sendRecordFile } from '../records/index.ts';
 import { beginRerun } from './commands/begin-rerun.ts';
 import { inviteReviewer } from './commands/invite-reviewer.ts';
@@ -130,6 +130,11 @@ export function reviewsRoutes(services: Services): Router {
       async handle({ params, body, manager }) {
         const { review, record } = await openUnreturnedReview(manager, params.token);
         authorizeReviewer('review.remark');
+        if (!(await manager.existsBy(NotebookEntity, { id: record.notebook }))) {
+          throw conflict('The notebook of this record is gone for good, and remarks with it.', {
+            hint: 'Write it to the authors in your verdict: the record and its reviews stay.',
+          });
+        }
         const remark = await writeRemark(manager, record.notebook, body, {
           review: review.id,
           reviewer: shownName(review),
