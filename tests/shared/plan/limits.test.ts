@@ -42,3 +42,7 @@ test('a claim or a plot too deep to be read says so; other cells go on', () => {
   for (const id of ['claim', 'plot']) expect(byId.get(id)?.problem?.message).toContain('too deep to be read');
   expect(byId.get('short')?.digest).toMatch(/^sha256:/u);
 });
+
+test('characters that cannot be kept everywhere are read as the sign for what could not be read', () => {
+  expect(plainText('a\0b\uD800c')).toBe('a\uFFFDb\uFFFDc');
+});

@@ -1,7 +1,8 @@
 import type { CellKind } from '../cells/kind.ts';
 import { canonicalText } from '../notation/print.ts';
 
-const loneSurrogates = /\p{Surrogate}/gu;
+/** What no database and no JSON reader takes everywhere. */
+const unreadable = /[\p{Surrogate}\0]/gu;
 // Begun only where no blank stands before: from every blank of a long run on, it would cost the square of the run.
 const trailingBlanks = /(?<![^\S\n])[^\S\n]+$/gmu;
 
@@ -10,7 +11,7 @@ export function plainText(text: string): string {
   return text
     .replace(/\r\n?/gu, '\n')
     .replace(trailingBlanks, '')
-    .replace(loneSurrogates, '\uFFFD')
+    .replace(unreadable, '\uFFFD')
     .normalize('NFC');
 }
 

@@ -63,7 +63,7 @@ export class RunQueue {
         job.kind,
         owner.name,
         laneOf(job.kind),
-        JSON.stringify(queuedJob(job, owner.group)),
+        storableJson(queuedJob(job, owner.group)),
       ],
     );
   }
