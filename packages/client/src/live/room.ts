@@ -24,6 +24,9 @@ export interface RoomEvents {
   wrote(cells: readonly string[]): void;
 }
 
+/** Where y-indexeddb keeps the updates of a document. */
+const updatesOfCopy = 'updates';
+
 const unsentKey = (store: string) => `${store}.unsent`;
 
 /** The cell ids that a transaction changed, or put in or took out. */
@@ -111,9 +114,23 @@ export class LiveRoom {
   private readonly onUpdate = (_update: Uint8Array, origin: unknown): void => {
     if (!this.isLocal(origin)) return;
     this.count.changed();
+    // While the line is down, a change is told as kept here once it is on this machine's disk.
+    if (!this.provider.wsconnected) void this.stored().then(() => this.counted());
     // The provider's own listener sends the frame right after this one; tell of both together.
-    queueMicrotask(() => this.counted());
+    else queueMicrotask(() => this.counted());
   };
+
+  /** Resolves once all that was handed to the copy on this machine is stored: a transaction waits for earlier ones. */
+  private stored(): Promise<void> {
+    const { db } = this.copy;
+    if (db === null) return this.copy.whenSynced.then(() => undefined);
+    return new Promise((resolve) => {
+      const look = db.transaction(updatesOfCopy, 'readonly');
+      look.objectStore(updatesOfCopy).count();
+      look.oncomplete = () => resolve();
+      look.onabort = () => resolve();
+    });
+  }
 
   private readonly onFrame = (): void => this.count.sent();
 
