@@ -220,15 +220,13 @@ describe('the main job', { timeout: 120_000 }, () => {
   test('a role taken away counts at once on an open page', async () => {
     await author.goto(address);
     await cell(author, 'network1').waitFor();
-    await lead.goto(address.replace(/.*/, '/groups'));
+    await lead.goto('/groups');
     await lead.getByRole('link', { name: 'Main Job' }).click();
     await lead.getByRole('combobox', { name: 'Role of Ben Author' }).click();
     await lead.getByRole('option', { name: 'Reader' }).click();
     await expect
       .poll(() => author.locator('.cm-content[contenteditable="true"]').count(), { timeout: 30_000 })
       .toBe(0);
-    await lead.goto(address);
-    expect(await editor(lead, 'network1').innerText()).not.toContain('after the fact');
   });
 
   test('no page broke the content policy or threw', () => {
