@@ -1,15 +1,12 @@
 import type { GroupView, ReviewSummary } from '@stillroom/shared/contracts';
-import type { Browser, Page } from 'playwright-core';
-import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
-import { buildGroup, buildMember, buildPerson, signIn, usualPassword } from '../support/build.ts';
-import { enter, launchChromium, openPage, pictureOnFailure, type WatchedPage } from '../support/chromium.ts';
+import type { Page } from 'playwright-core';
+import { beforeAll, describe, expect, test } from 'vitest';
+import { cellNamed, patience, useBrowsing, words } from '../support/browsing.ts';
+import { buildGroup, buildMember, buildPerson, signIn } from '../support/build.ts';
 import { buildNotebook, cell } from '../support/live.ts';
-import { startTestServer, type TestServer } from '../support/server.ts';
 import { Visitor } from '../support/visitor.ts';
 
 /** What goes wrong in daily use, as people see it: each trouble has its own words, and nothing typed is lost. */
-let server: TestServer;
-let browser: Browser;
 let asLead: Visitor;
 let group: { readonly id: string };
 let lead: { readonly id: string };
@@ -17,17 +14,15 @@ let lead: { readonly id: string };
 let trouble: string;
 /** A notebook to write in. */
 let draft: string;
-const people = new Map<string, WatchedPage>();
 const address = (key: string) => `${key}@bad-input.example`;
 
-beforeAll(async () => {
-  server = await startTestServer();
-  const [ada, ben, cyd, dee] = [
+const browsing = useBrowsing(async (server) => {
+  const [ada, ben, cyd] = [
     await buildPerson(server, { email: address('ada'), name: 'Ada Lead' }),
     await buildPerson(server, { email: address('ben'), name: 'Ben Author' }),
     await buildPerson(server, { email: address('cyd'), name: 'Cyd Reader' }),
-    await buildPerson(server, { email: address('dee'), name: 'Dee Outsider' }),
   ];
+  await buildPerson(server, { email: address('dee'), name: 'Dee Outsider' });
   lead = ada;
   group = await buildGroup(server, ada, 'Bad Input');
   await buildMember(server, group, ben, 'author');
@@ -44,32 +39,11 @@ beforeAll(async () => {
     cell('run', 'trajectory', '', { settings: { network: 'burst', until: 1 } }),
   ]);
   draft = await buildNotebook(server, group, ada, [cell('ledger', 'network', 'A <=> B | 2 /s, 1 /s')]);
-  browser = await launchChromium();
-  void dee;
 });
-beforeEach((running) => pictureOnFailure(running, people));
-afterAll(async () => {
-  await browser.close();
-  await server.stop();
-});
-
-const patience = { timeout: 60_000 };
-
-/** A fresh browser, signed in as that person where one is named. */
-async function arrive(key: string | null, at = server.url): Promise<WatchedPage> {
-  const watched = await openPage(browser, at);
-  people.set(`${key ?? 'anyone'} ${people.size}`, watched);
-  if (key !== null) await enter(watched.context, at, address(key), usualPassword);
-  return watched;
-}
-
-const region = (page: Page, name: string) =>
-  page.getByRole('region', { name: new RegExp(`\\b${name}, `, 'u') });
-const words = (page: Page, text: string | RegExp) => page.getByText(text).first().waitFor(patience);
 
 describe('ways in that are closed', { timeout: 120_000 }, () => {
   test('a wrong password keeps what was typed and says what to do', async () => {
-    const { page, context } = await arrive(null);
+    const { page, context } = await browsing.open('a visitor');
     await page.goto('/sign-in');
     await page.getByLabel('Email').fill(address('ada'));
     await page.locator('#password').fill('not the password');
@@ -81,7 +55,7 @@ describe('ways in that are closed', { timeout: 120_000 }, () => {
   });
 
   test('an address where nothing stands, a notebook that is not open to one, a page that one may not use', async () => {
-    const outsider = await arrive('dee');
+    const outsider = await browsing.enter(address('dee'));
     await outsider.page.goto('/no/such/page');
     await words(outsider.page, 'Nothing stands at this address');
     await outsider.page.goto(`/notebooks/${draft}`);
@@ -89,7 +63,7 @@ describe('ways in that are closed', { timeout: 120_000 }, () => {
     await outsider.page.getByRole('link', { name: 'To the Shelf' }).waitFor(patience);
     await outsider.context.close();
 
-    const reader = await arrive('cyd');
+    const reader = await browsing.enter(address('cyd'));
     await reader.page.goto(`/notebooks/${draft}/freeze`);
     await reader.page.getByRole('alert').first().waitFor(patience);
     expect(await reader.page.getByRole('alert').first().innerText()).toMatch(/reader|author|lead/iu);
@@ -104,10 +78,11 @@ describe('ways in that are closed', { timeout: 120_000 }, () => {
       notebooks: null,
       message: '',
     });
-    const [letter] = await server.sql<{ text: string }>('select text from mail where recipient = $1', [
-      address('eve'),
-    ]);
-    const { page, context } = await arrive('dee');
+    const [letter] = await browsing.server.sql<{ text: string }>(
+      'select text from mail where recipient = $1',
+      [address('eve')],
+    );
+    const { page, context } = await browsing.enter(address('dee'));
     await page.goto(/\/invitation\/[\w-]+/u.exec(letter?.text ?? '')?.[0] ?? 'no letter');
     await words(page, `You are signed in as ${address('dee')}.`);
     await words(page, `The letter went to ${address('eve')}.`);
@@ -117,7 +92,7 @@ describe('ways in that are closed', { timeout: 120_000 }, () => {
   });
 
   test('a review link that is wrong, used, at its end or taken back', async () => {
-    const paper = await buildNotebook(server, group, lead, [cell('sum', 'claim', '1 < 2')], {
+    const paper = await buildNotebook(browsing.server, group, lead, [cell('sum', 'claim', '1 < 2')], {
       title: 'Paper',
     });
     await expect
@@ -132,21 +107,22 @@ describe('ways in that are closed', { timeout: 120_000 }, () => {
       const until = new Date(Date.now() + 20 * 86_400_000).toISOString().slice(0, 10);
       const invitation = { email: address(name), name, masked: false, until, message: '' };
       const { body } = await asLead.post(`/api/records/${record}/reviews`, invitation);
-      const [letter] = await server.sql<{ text: string }>('select text from mail where recipient = $1', [
-        address(name),
-      ]);
+      const [letter] = await browsing.server.sql<{ text: string }>(
+        'select text from mail where recipient = $1',
+        [address(name)],
+      );
       return {
         id: (body as ReviewSummary).id,
         link: /\/review\/[\w-]+/u.exec(letter?.text ?? '')?.[0] ?? '',
       };
     };
     const [used, ended, taken] = [await invite('used'), await invite('ended'), await invite('taken')];
-    const { page, context } = await arrive(null);
+    const { page, context } = await browsing.open('a visitor');
 
     await page.goto('/review/AAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAAA');
     await words(page, 'This link does not open a review.');
 
-    await server.sql(`update review set until = '2020-01-01' where id = $1`, [ended.id]);
+    await browsing.server.sql(`update review set until = '2020-01-01' where id = $1`, [ended.id]);
     await page.goto(ended.link);
     await words(page, /This link worked until 1 January 2020\./u);
 
@@ -154,7 +130,7 @@ describe('ways in that are closed', { timeout: 120_000 }, () => {
     await page.goto(taken.link);
     await words(page, /This invitation was withdrawn on /u);
 
-    await new Visitor(server.url).put(`/api${used.link}/verdict`, {
+    await new Visitor(browsing.server.url).put(`/api${used.link}/verdict`, {
       recommendation: 'take',
       toAuthors: 'Good.',
       toEditor: '',
@@ -170,13 +146,13 @@ describe('ways in that are closed', { timeout: 120_000 }, () => {
 describe('cells in trouble, beside cells that go on', { timeout: 180_000 }, () => {
   let page: Page;
   beforeAll(async () => {
-    ({ page } = await arrive('ben'));
+    ({ page } = await browsing.enter(address('ben')));
     await page.goto(`/notebooks/${trouble}`);
-    await region(page, 'broken').waitFor(patience);
+    await cellNamed(page, 'broken').waitFor(patience);
   }, 120_000);
 
   test('an error of notation: line, column, cause and remedy, in the editor and in the result', async () => {
-    const place = region(page, 'broken');
+    const place = cellNamed(page, 'broken');
     await place.scrollIntoViewIfNeeded();
     const inEditor = place.getByRole('note', { name: 'Error in line 2' });
     await inEditor.waitFor(patience);
@@ -189,14 +165,14 @@ describe('cells in trouble, beside cells that go on', { timeout: 180_000 }, () =
   });
 
   test('the others go on', async () => {
-    await region(page, 'shape').scrollIntoViewIfNeeded();
+    await cellNamed(page, 'shape').scrollIntoViewIfNeeded();
     await page.getByRole('region', { name: /shape, current/u }).waitFor(patience);
     // A <=> B: two complexes in one class of rank 1.
-    expect(await region(page, 'shape').locator('.eq .d b').innerText()).toBe('0');
+    expect(await cellNamed(page, 'shape').locator('.eq .d b').innerText()).toBe('0');
   });
 
   test('two cells of one name', async () => {
-    const twins = region(page, 'twin');
+    const twins = cellNamed(page, 'twin');
     await expect.poll(() => twins.count(), patience).toBe(2);
     for (const twin of await twins.all()) {
       await twin.scrollIntoViewIfNeeded();
@@ -206,7 +182,7 @@ describe('cells in trouble, beside cells that go on', { timeout: 180_000 }, () =
   });
 
   test('a course that blows up ends with its cause, and what there was of it is drawn', async () => {
-    const run = region(page, 'run');
+    const run = cellNamed(page, 'run');
     await run.scrollIntoViewIfNeeded();
     // dA/dt = 1000 A^2 from 1: the exact course leaves every bound at t = 1/1000.
     await run.getByText(/The course ends early, at 0\.00(1|0999)/u).waitFor(patience);
@@ -218,7 +194,7 @@ describe('cells in trouble, beside cells that go on', { timeout: 180_000 }, () =
   });
 
   test('a script without end is stopped at its deadline, and only its cell fails', async () => {
-    const endless = region(page, 'endless');
+    const endless = cellNamed(page, 'endless');
     await endless.scrollIntoViewIfNeeded();
     await endless.getByText(/The time allowed.* is over\./u).waitFor({ timeout: 150_000 });
     await page.getByRole('region', { name: /endless, failed/u }).waitFor(patience);
@@ -228,7 +204,7 @@ describe('cells in trouble, beside cells that go on', { timeout: 180_000 }, () =
 
 describe('files', { timeout: 120_000 }, () => {
   test('a notebook file edited by hand is refused in words', async () => {
-    const { page, context } = await arrive('ben');
+    const { page, context } = await browsing.enter(address('ben'));
     const file = (text: string) => ({
       name: 'edited.stillroom.json',
       mimeType: 'application/json',

@@ -1,19 +1,13 @@
-import type { Browser, Page } from 'playwright-core';
-import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
+import type { Page } from 'playwright-core';
+import { beforeAll, describe, expect, test } from 'vitest';
+import { cellNamed, patience, useBrowsing } from '../support/browsing.ts';
 import { buildGroup, buildPerson, usualPassword } from '../support/build.ts';
-import { launchChromium, openPage, pictureOnFailure, type WatchedPage } from '../support/chromium.ts';
 import { focusOn, pressUntil } from '../support/focus.ts';
 import { buildNotebook, cell as cellOf } from '../support/live.ts';
-import { startTestServer, type TestServer } from '../support/server.ts';
 
 /** The main job by keyboard alone: the pointer is never used, and the focus can be seen at every stop. */
-let server: TestServer;
-let browser: Browser;
 let page: Page;
-const people = new Map<string, WatchedPage>();
-
-beforeAll(async () => {
-  server = await startTestServer();
+const browsing = useBrowsing(async (server) => {
   const lead = await buildPerson(server, { email: 'kay@keyboard.example', name: 'Kay Lead' });
   const group = await buildGroup(server, lead, 'Keys alone');
   await buildNotebook(
@@ -23,19 +17,12 @@ beforeAll(async () => {
     [cellOf('intro', 'prose', '# What is asked'), cellOf('yeast', 'network', 'A <=> B | 2 /s, 1 /s')],
     { title: 'By hand' },
   );
-  browser = await launchChromium();
-  const watched = await openPage(browser, server.url);
-  people.set('Kay', watched);
-  page = watched.page;
 });
-beforeEach((running) => pictureOnFailure(running, people));
-afterAll(async () => {
-  await browser.close();
-  await server.stop();
+beforeAll(async () => {
+  ({ page } = await browsing.open('Kay'));
 });
 
-const patience = { timeout: 60_000 };
-const cell = (name: string) => page.getByRole('region', { name: new RegExp(`\\b${name}, `, 'u') });
+const cell = (name: string) => cellNamed(page, name);
 const focus = () => expect.poll(async () => (await focusOn(page)).what, patience);
 /** Whether the focus is within the Workings of a cell. */
 const inWorkingsOf = (name: string) =>

@@ -1,51 +1,26 @@
 import type { NotebookFile } from '@stillroom/shared/notebook-file';
-import type { Browser, Page } from 'playwright-core';
-import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
-import { buildGroup, buildMember, buildPerson, signIn, usualPassword } from '../support/build.ts';
-import { enter, launchChromium, openPage, pictureOnFailure, type WatchedPage } from '../support/chromium.ts';
+import type { Page } from 'playwright-core';
+import { describe, expect, test } from 'vitest';
+import { cellNamed, patience, useBrowsing, words } from '../support/browsing.ts';
+import { buildGroup, buildMember, buildPerson, signIn } from '../support/build.ts';
 import { buildNotebook, cell } from '../support/live.ts';
 import { startServerProcess } from '../support/server-process.ts';
-import { startTestServer, type TestServer } from '../support/server.ts';
 import type { Visitor } from '../support/visitor.ts';
 
 /** The line to the server, lost in mid-edit: the page tells the truth about it, and nothing typed is lost. */
-let server: TestServer;
-let browser: Browser;
 let asLead: Visitor;
 /** A notebook to write in. */
 let draft: string;
-const people = new Map<string, WatchedPage>();
 const address = (key: string) => `${key}@lost-line.example`;
 
-beforeAll(async () => {
-  server = await startTestServer();
+const browsing = useBrowsing(async (server) => {
   const ada = await buildPerson(server, { email: address('ada'), name: 'Ada Lead' });
   const ben = await buildPerson(server, { email: address('ben'), name: 'Ben Author' });
   const group = await buildGroup(server, ada, 'Lost Line');
   await buildMember(server, group, ben, 'author');
   asLead = await signIn(server, ada);
   draft = await buildNotebook(server, group, ada, [cell('ledger', 'network', 'A <=> B | 2 /s, 1 /s')]);
-  browser = await launchChromium();
 });
-beforeEach((running) => pictureOnFailure(running, people));
-afterAll(async () => {
-  await browser.close();
-  await server.stop();
-});
-
-const patience = { timeout: 60_000 };
-
-/** A fresh browser, signed in as that person where one is named. */
-async function arrive(key: string | null, at = server.url): Promise<WatchedPage> {
-  const watched = await openPage(browser, at);
-  people.set(`${key ?? 'anyone'} ${people.size}`, watched);
-  if (key !== null) await enter(watched.context, at, address(key), usualPassword);
-  return watched;
-}
-
-const region = (page: Page, name: string) =>
-  page.getByRole('region', { name: new RegExp(`\\b${name}, `, 'u') });
-const words = (page: Page, text: string | RegExp) => page.getByText(text).first().waitFor(patience);
 
 /** The text of a cell as the server keeps it. */
 async function keptText(notebook: string, name: string): Promise<string> {
@@ -54,7 +29,7 @@ async function keptText(notebook: string, name: string): Promise<string> {
 }
 
 async function typeInto(page: Page, name: string, text: string): Promise<void> {
-  await region(page, name).locator('.cm-content').first().click(patience);
+  await cellNamed(page, name).locator('.cm-content').first().click(patience);
   await page.keyboard.press('Control+End');
   await page.keyboard.type(text);
 }
@@ -77,9 +52,9 @@ const storedHere = (page: Page) =>
 
 describe('the line', { timeout: 180_000 }, () => {
   test('when it is lost, the page says so, and what was typed arrives when it is back', async () => {
-    const { page, context } = await arrive('ben');
+    const { page, context } = await browsing.enter(address('ben'));
     await page.goto(`/notebooks/${draft}`);
-    await region(page, 'ledger').waitFor(patience);
+    await cellNamed(page, 'ledger').waitFor(patience);
     await words(page, /^Kept /u);
     await context.setOffline(true);
     await words(page, /The line to the server is down since/u);
@@ -94,16 +69,16 @@ describe('the line', { timeout: 180_000 }, () => {
   });
 
   test('what was written offline survives closing the tab', async () => {
-    const { page, context } = await arrive('ben');
+    const { page, context } = await browsing.enter(address('ben'));
     await page.goto(`/notebooks/${draft}`);
-    await region(page, 'ledger').waitFor(patience);
+    await cellNamed(page, 'ledger').waitFor(patience);
     await words(page, /^Kept /u);
     await context.setOffline(true);
     await words(page, /The line to the server is down since/u);
     await typeInto(page, 'ledger', '\nC -> D | 4 /s');
     await words(page, /changes? kept here only/u);
     await expect
-      .poll(() => region(page, 'ledger').locator('.cm-content').first().innerText(), patience)
+      .poll(() => cellNamed(page, 'ledger').locator('.cm-content').first().innerText(), patience)
       .toMatch(/C\s*->\s*D\s*\|\s*4 \/s/u);
     await storedHere(page);
     await page.close();
@@ -113,20 +88,20 @@ describe('the line', { timeout: 180_000 }, () => {
     const again = await context.newPage();
     await again.goto(`/notebooks/${draft}`);
     await expect
-      .poll(() => region(again, 'ledger').locator('.cm-content').first().innerText(), patience)
+      .poll(() => cellNamed(again, 'ledger').locator('.cm-content').first().innerText(), patience)
       .toMatch(/C\s*->\s*D/u);
     await expect.poll(() => keptText(draft, 'ledger'), patience).toMatch(/C -> D +\| 4 \/s/u);
     await context.close();
   });
 
   test('a server that ends and comes back in mid-edit loses nothing typed', async () => {
-    const settings = { DATABASE_URL: server.database.url, PROCESS: 'server' };
+    const settings = { DATABASE_URL: browsing.server.database.url, PROCESS: 'server' };
     let other = await startServerProcess({ ...settings, PORT: '0' });
     const port = String(other.port);
     try {
-      const { page, context } = await arrive('ben', `http://127.0.0.1:${port}`);
+      const { page, context } = await browsing.enter(address('ben'), { at: `http://127.0.0.1:${port}` });
       await page.goto(`/notebooks/${draft}`);
-      await region(page, 'ledger').waitFor(patience);
+      await cellNamed(page, 'ledger').waitFor(patience);
       await words(page, /^Kept /u);
       await typeInto(page, 'ledger', '\nD -> E | 5 /s');
       await other.kill();

@@ -1,38 +1,23 @@
-import type { Browser, Page } from 'playwright-core';
-import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
+import type { Page } from 'playwright-core';
+import { describe, expect, test } from 'vitest';
+import { useBrowsing } from '../support/browsing.ts';
 import { buildGroup, buildPerson, usualPassword } from '../support/build.ts';
-import { launchChromium, openPage, pictureOnFailure, signIn, type WatchedPage } from '../support/chromium.ts';
-import { startTestServer, type TestServer } from '../support/server.ts';
+import { signIn } from '../support/chromium.ts';
 
 /**
  * The whole main job in real browsers, as its people do it: the lead invites, two authors write one network at once, a
  * plot and a claim rest on it, the notebook is frozen, a reviewer reruns the record, and a role taken away counts at once.
  */
-let server: TestServer;
-let browser: Browser;
-const people = new Map<string, WatchedPage>();
-
-beforeAll(async () => {
-  server = await startTestServer();
-  browser = await launchChromium();
+const browsing = useBrowsing(async (server) => {
   const lead = await buildPerson(server, { email: 'ada@main-job.example', name: 'Ada Lead' });
   await buildGroup(server, lead, 'Main Job');
 });
-beforeEach((context) => pictureOnFailure(context, people));
-afterAll(async () => {
-  await browser.close();
-  await server.stop();
-});
 
-async function arrive(name: string): Promise<Page> {
-  const watched = await openPage(browser, server.url);
-  people.set(name, watched);
-  return watched.page;
-}
+const arrive = async (name: string): Promise<Page> => (await browsing.open(name)).page;
 
 /** The newest letter to somebody, and the path its link leads to. */
 async function linkTo(email: string, path: 'invitation' | 'review'): Promise<string> {
-  const [letter] = await server.sql<{ text: string }>(
+  const [letter] = await browsing.server.sql<{ text: string }>(
     'select text from mail where recipient = $1 order by at desc limit 1',
     [email],
   );
@@ -230,6 +215,6 @@ describe('the main job', { timeout: 120_000 }, () => {
   });
 
   test('no page broke the content policy or threw', () => {
-    expect([...people.values()].flatMap(({ troubles }) => troubles)).toEqual([]);
+    expect([...browsing.people.values()].flatMap(({ troubles }) => troubles)).toEqual([]);
   });
 });

@@ -1,28 +1,17 @@
-import type { Browser, Page } from 'playwright-core';
-import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
+import type { Page } from 'playwright-core';
+import { describe, expect, test } from 'vitest';
 import { violationsInBothThemes } from '../support/axe.ts';
+import { cellNamed, useBrowsing } from '../support/browsing.ts';
 import { buildGroup, buildPerson, usualPassword } from '../support/build.ts';
-import { launchChromium, openPage, pictureOnFailure, signIn, type WatchedPage } from '../support/chromium.ts';
-import { startTestServer, type TestServer } from '../support/server.ts';
+import { signIn } from '../support/chromium.ts';
 
 /** The ledger of a network as one types in it, as text and as a table. */
-let server: TestServer;
-let browser: Browser;
-const people = new Map<string, WatchedPage>();
-
-beforeAll(async () => {
-  server = await startTestServer();
-  browser = await launchChromium();
+const browsing = useBrowsing(async (server) => {
   const person = await buildPerson(server, { email: 'eva@ledger.example', name: 'Eva Editor' });
   await buildGroup(server, person, 'Ledgers');
 });
-beforeEach((context) => pictureOnFailure(context, people));
-afterAll(async () => {
-  await browser.close();
-  await server.stop();
-});
 
-const cell = (page: Page) => page.getByRole('region', { name: /\bnetwork1, / });
+const cell = (page: Page) => cellNamed(page, 'network1');
 const editor = (page: Page) => cell(page).locator('.cm-content').first();
 const field = (page: Page, row: string, name: string) => cell(page).getByLabel(`${row}, ${name}`);
 
@@ -50,9 +39,7 @@ describe('the ledger of a network', { timeout: 90_000 }, () => {
   let address: string;
 
   test('a notebook with a network', async () => {
-    const watched = await openPage(browser, server.url);
-    people.set('Eva', watched);
-    page = watched.page;
+    ({ page } = await browsing.open('Eva'));
     await signIn(page, 'eva@ledger.example', usualPassword);
     await page.getByRole('link', { name: 'Shelf' }).click();
     await page.getByRole('button', { name: 'New notebook' }).click();
@@ -130,8 +117,7 @@ describe('the ledger of a network', { timeout: 90_000 }, () => {
 
   test('the table edits the same text, also for whoever else has it open', async () => {
     await write(page, 'A -> B | k = 1\nB -> C | q = 2\nstart A = 1');
-    const watched = await openPage(browser, server.url, { width: 390, height: 800 });
-    people.set('Eva on a phone', watched);
+    const watched = await browsing.open('Eva on a phone', { width: 390, height: 800 });
     other = watched.page;
     await signIn(other, 'eva@ledger.example', usualPassword);
     await other.goto(address);
@@ -174,6 +160,6 @@ describe('the ledger of a network', { timeout: 90_000 }, () => {
     await expect.poll(() => field(page, 'R2', 'note').inputValue()).toBe('from afar');
     expect(await violationsInBothThemes(other)).toEqual([]);
     expect(await other.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(390);
-    for (const { troubles } of people.values()) expect(troubles).toEqual([]);
+    for (const { troubles } of browsing.people.values()) expect(troubles).toEqual([]);
   });
 });
