@@ -153,6 +153,19 @@ describe('holding, stopping and bringing up to date', () => {
     await again.cell('wild', ({ state }) => state === 'failed', 'still stopped after coming back');
   });
 
+  test('a script that fails keeps what it printed, for whoever comes later too', async () => {
+    const notebook = await buildNotebook(server, group, ada, [
+      cell('tells', 'script', 'print("so far")\nthrow new Error("on purpose")'),
+    ]);
+    const a = await openLive(server, ada, notebook);
+    const failed = await a.cell('tells', ({ state }) => state === 'failed', 'failed');
+    expect(failed).toMatchObject({ error: { line: 2 }, result: { printed: ['so far'] }, shown: null });
+    a.close();
+    const again = await openLive(server, ada, notebook);
+    const later = await again.cell('tells', ({ state }) => state === 'failed', 'failed still');
+    expect(later.result).toEqual({ printed: ['so far'], value: null });
+  });
+
   test('a course that is stopped leaves what there is of it, and is run again when asked', async () => {
     const prey = 'X -> 2 X | 1\nX + Y -> 2 Y | 1\nY -> 0 | 1\nstart X = 2, Y = 1';
     const notebook = await buildNotebook(server, group, ada, [

@@ -82,7 +82,7 @@ test('cells that fail give status 1 and reasons; the others go on, a claim is un
       cell('trajectory', 'run1', '', { network: 'broken', until: 2 }),
       cell('claim', 'claim1', 'last(run1.species.A) > 1'),
       cell('structure', 'lost', '', { network: 'nowhere' }),
-      cell('script', 'endless', 'throw new Error("on purpose")'),
+      cell('script', 'endless', 'print("so far"); throw new Error("on purpose")'),
       cell('network', 'sound', 'A -> B'),
     ]),
   );
@@ -95,7 +95,10 @@ test('cells that fail give status 1 and reasons; the others go on, a claim is un
     digest: null,
     error: { message: 'There is no cell called nowhere.' },
   });
-  expect(cells['endless']).toMatchObject({ error: { message: 'on purpose', line: 1 } });
+  expect(cells['endless']).toMatchObject({
+    error: { message: 'on purpose', line: 1 },
+    result: { printed: ['so far'], value: null },
+  });
   expect(cells['sound']?.status).toBe('ok');
 });
 

@@ -23,7 +23,8 @@ export function useResults(notebook: string): Results {
 
   function take(notice: PlanNotice): void {
     for (const cell of notice.cells) {
-      const digest = cell.shown ?? cell.digest;
+      // What a failed run left is not the last good result, which `shown` names.
+      const digest = cell.state === 'failed' ? null : (cell.shown ?? cell.digest);
       if (digest === null || cell.result === undefined) continue;
       byDigest.set(digest, { state: 'here', result: cell.result, warnings: cell.warnings ?? [] });
     }

@@ -32,7 +32,9 @@ function runScript(
  * Runs a script over the results of the cells it draws on, in the sandbox of `control`. `random()` begins with the digest
  * of the cell, so that the same script over the same results gives the same value.
  *
- * @throws CellFailure where the script throws, with its place in the text
+ * A script that throws has failed with its place in the text; what it printed before is its result still.
+ *
+ * @throws CellFailure where scripts cannot be run, or a cell it draws on failed
  */
 export function evaluateScript(job: CellJob, control: EngineControl): Evaluated {
   const { scripts } = control;
@@ -63,9 +65,13 @@ export function evaluateScript(job: CellJob, control: EngineControl): Evaluated 
         },
       };
     case 'threw':
-      throw new CellFailure(run.message, {
-        ...(run.line === undefined ? {} : { line: run.line }),
-        ...(run.column === undefined ? {} : { column: run.column }),
-      });
+      return {
+        result: printed(null),
+        failed: {
+          message: run.message,
+          ...(run.line === undefined ? {} : { line: run.line }),
+          ...(run.column === undefined ? {} : { column: run.column }),
+        },
+      };
   }
 }

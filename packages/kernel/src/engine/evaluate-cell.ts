@@ -36,10 +36,11 @@ const failed = (error: CellError, keep: boolean): CellOutcome => ({
   keep,
 });
 
-function complete(job: CellJob, { result, warnings = [], ended }: Evaluated): CellOutcome {
+function complete(job: CellJob, { result, warnings = [], ended, failed: why }: Evaluated): CellOutcome {
   if (ended !== undefined) {
     return { status: 'failed', error: ended, result, partial: true, warnings, keep: false };
   }
+  if (why !== undefined) return { ...failed(why, !restsOnFailure(job)), result, warnings };
   return { status: 'ok', result, resultDigest: digestOf(result), warnings, keep: !restsOnFailure(job) };
 }
 

@@ -36,7 +36,10 @@ export interface CellNotice {
   readonly heldBy?: string;
   /** How long the shown result took, in milliseconds. */
   readonly took?: number;
-  /** Small results ride along, so that a co-author sees them without another request. */
+  /**
+   * Small results ride along, so that a co-author sees them without another request. With a failed cell: what the
+   * failed run left, such as what a script had printed; never the result under `shown`.
+   */
   readonly result?: unknown;
   readonly warnings?: readonly string[];
 }

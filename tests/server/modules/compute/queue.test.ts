@@ -106,4 +106,14 @@ describe('the queue', () => {
       { result: '1' },
     ]);
   });
+
+  test('keeps with a failure what the cell left before it failed', async () => {
+    await submit('f', one);
+    const outcome = { status: 'failed', error: { message: 'no' }, warnings: [], keep: true } as const;
+    const left = '{"printed":["one"],"value":null}';
+    await queue.finish(job('f'), { ...outcome, result: JSON.parse(left) as unknown }, left, 10);
+    expect(
+      await server.sql(`select result, result_digest from cell_result where digest = 'sha256:f'`),
+    ).toEqual([{ result: left, result_digest: null }]);
+  });
 });

@@ -1,5 +1,6 @@
 import type { MigrationInterface } from 'typeorm';
 import { Compute1796083203000 } from './2026-12-01-compute.ts';
+import { FailedResults1796083205000 } from './2026-12-01-failed-results.ts';
 import { Groups1796083201000 } from './2026-12-01-groups.ts';
 import { Notebooks1796083202000 } from './2026-12-01-notebooks.ts';
 import { People1796083200000 } from './2026-12-01-people.ts';
@@ -12,4 +13,5 @@ export const migrations: readonly (new () => MigrationInterface)[] = [
   Notebooks1796083202000,
   Compute1796083203000,
   Records1796083204000,
+  FailedResults1796083205000,
 ];

@@ -367,4 +367,5 @@ export class Planner implements RoomObserver {
 }
 
 /** Whether a result rides along in a notice: short ones do, and what a failed run left, since nobody can fetch that. */
-const rides = (known: Known): boolean => !known.kept || (known.json?.length ?? 0) <= limits.inlineResult;
+const rides = (known: Known): boolean =>
+  !known.kept || known.status === 'failed' || (known.json?.length ?? 0) <= limits.inlineResult;

@@ -144,7 +144,7 @@ export class RunQueue {
        )
        select pg_notify($10, $11)`,
       [
-        ...columns(job, kept ?? nothing, kept?.status === 'ok' ? json : null, took),
+        ...columns(job, kept ?? nothing, kept === null ? null : json, took),
         engineVersion,
         kept !== null,
         eventChannel,

@@ -35,7 +35,7 @@ interface Row extends KnownBase {
   readonly error: CellError | null;
 }
 
-/** Part of a result that a failed run left is fetched by nobody, so more of it rides along. */
+/** What a failed run left is fetched by nobody, so more of it rides along. */
 const partialResult = 1_000_000;
 /** Characters of results kept in memory at most, and how many outcomes are remembered. */
 const textCapacity = 64_000_000;
@@ -68,8 +68,8 @@ export class ResultStore {
     }
     if (missing.length === 0) return found;
     const rows = (await this.#queries.query(
-      `select digest, kind, case when length(result) <= $2 then result end as json, result_digest, error, warnings,
-         took, true as kept
+      `select digest, kind, case when length(result) <= case when error is null then $2::int else $3::int end
+         then result end as json, result_digest, error, warnings, took, true as kept
        from cell_result where digest = any($1)
        union all
        select digest, kind, case when length(result) <= $3 then result end, result_digest, error, warnings, took, false
@@ -108,11 +108,13 @@ export class ResultStore {
   ): void {
     const { digest, kind } = job;
     const { warnings, keep: kept } = outcome;
-    const short = json !== null && json.length <= (kept ? limits.inlineResult : partialResult) ? json : null;
+    const fetched = kept && outcome.status === 'ok';
+    const short =
+      json !== null && json.length <= (fetched ? limits.inlineResult : partialResult) ? json : null;
     const base = { digest, kind, warnings, took, kept, json: short };
     if (outcome.status === 'failed') this.#remember({ ...base, status: 'failed', error: outcome.error });
     else this.#remember({ ...base, status: 'ok', resultDigest: outcome.resultDigest });
-    if (kept && json !== null) this.#rememberText(digest, json);
+    if (fetched && json !== null) this.#rememberText(digest, json);
   }
 
   /** Forgets an outcome that is not kept and may have been overcome. */
