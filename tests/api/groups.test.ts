@@ -8,6 +8,7 @@ import type {
 } from '@stillroom/shared/contracts';
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
 import { buildGroup, buildMember, buildPerson, signIn, usualPassword } from '../support/build.ts';
+import { buildNotebook } from '../support/live.ts';
 import { startTestServer, type TestServer } from '../support/server.ts';
 import { Visitor } from '../support/visitor.ts';
 
@@ -206,6 +207,20 @@ describe('a group', () => {
     expect([status, body]).toMatchObject([201, { name: 'Ring and Chain', role: 'lead', members: 1 }]);
     const groups = (await visitor.get('/api/groups')).body as GroupSummary[];
     expect(groups.map(({ name }) => name)).toEqual(['Ring and Chain']);
+  });
+
+  test('names a notebook in the bin only to those who can take it out', async () => {
+    const reader = await buildPerson(server);
+    await buildMember(server, group, reader, 'reader');
+    const author = await buildPerson(server);
+    await buildMember(server, group, author, 'author');
+    const notebook = await buildNotebook(server, group, lead, [], { title: 'Thrown away' });
+    await leading.delete(`/api/notebooks/${notebook}`);
+    const titles = async (visitor: Visitor) =>
+      ((await visitor.get(at())).body as GroupView).notebooks.map(({ title }) => title);
+    expect(await titles(leading)).toEqual(['Thrown away']);
+    expect(await titles(await signIn(server, author))).toEqual([]);
+    expect(await titles(await signIn(server, reader))).toEqual([]);
   });
 
   test('shows open invitations to those who may invite, and to nobody else', async () => {

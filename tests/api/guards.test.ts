@@ -1,3 +1,4 @@
+import { limits } from '@stillroom/shared/protocol';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { buildPerson, signIn } from '../support/build.ts';
 import { startTestServer, type TestServer } from '../support/server.ts';
@@ -79,6 +80,32 @@ describe('what cannot be read', () => {
     expect(blank.body).toMatchObject({ message: 'A title is needed.' });
     const large = await send(JSON.stringify({ name: 'x'.repeat(2_000_000) }));
     expect([large.status, await large.json()]).toMatchObject([413, { error: 'too-large' }]);
+  });
+
+  test('of somebody who is not signed in, nothing is read where an account is needed, and little elsewhere', async () => {
+    const send = (method: string, path: string, body: string) =>
+      fetch(`${server.url}${path}`, {
+        method,
+        headers: { 'content-type': 'application/json', origin: server.url },
+        body,
+      });
+    const needsAccount = await send('POST', '/api/groups', '{"name": not even JSON');
+    expect([needsAccount.status, await needsAccount.json()]).toMatchObject([401, { error: 'signed-out' }]);
+    const long = JSON.stringify({ email: 'a@example.org', password: 'x'.repeat(limits.strangersBody) });
+    const large = await send('POST', '/api/session', long);
+    expect([large.status, await large.json()]).toMatchObject([
+      413,
+      { error: 'too-large', hint: expect.any(String) as string },
+    ]);
+    // The longest verdict that the form takes still comes through the door of a link: only the link is unknown.
+    const verdict = {
+      recommendation: 'take',
+      toAuthors: 'ü'.repeat(20_000),
+      toEditor: '水'.repeat(20_000),
+      claims: {},
+    };
+    const judged = await send('PUT', `/api/review/${'x'.repeat(43)}/verdict`, JSON.stringify(verdict));
+    expect(judged.status).toBe(410);
   });
 
   test('an address that is no id is refused before the database sees it', async () => {

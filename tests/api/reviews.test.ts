@@ -7,6 +7,7 @@ import type {
   ReviewView,
 } from '@stillroom/shared/contracts';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { emptyBin } from '../../packages/server/src/modules/notebooks/commands/bin.ts';
 import { buildGroup, buildMember, buildPerson, signIn } from '../support/build.ts';
 import { buildNotebook, cell } from '../support/live.ts';
 import { startTestServer, type TestServer } from '../support/server.ts';
@@ -291,15 +292,35 @@ describe('a reviewer’s remark', () => {
 });
 
 describe('a record whose notebook is gone for good', () => {
-  test('is still read and judged; a remark is refused in words', async () => {
+  test('keeps the remarks of its reviewers, and can still be read, remarked on and judged', async () => {
     const { token } = await invite();
-    await server.sql('delete from notebook where id = $1', [notebook]);
-    expect((await anyone().get(`/api/review/${token}`)).status).toBe(200);
-    const words = { cell: 'run', quote: '', text: 'Where to?' };
-    const answer = await anyone().post(`/api/review/${token}/remarks`, words);
-    expect(answer).toMatchObject({
-      status: 409,
-      body: { hint: expect.stringContaining('verdict') as string },
-    });
+    const words = { cell: 'run', quote: '', text: 'Before it went.' };
+    expect((await anyone().post(`/api/review/${token}/remarks`, words)).status).toBe(201);
+    await asAuthor.post(`/api/notebooks/${notebook}/remarks`, { ...words, text: 'Among ourselves.' });
+    await server.sql(`update notebook set deleted_at = now() - interval '31 days' where id = $1`, [notebook]);
+    await emptyBin(server.services.database.manager);
+    expect(await server.sql('select id from notebook where id = $1', [notebook])).toEqual([]);
+    const later = { ...words, text: 'After it went.' };
+    expect((await anyone().post(`/api/review/${token}/remarks`, later)).status).toBe(201);
+    const { remarks } = (await anyone().get(`/api/review/${token}`)).body as ReviewView;
+    expect(remarks.map(({ text }) => text)).toEqual(['Before it went.', 'After it went.']);
+    const seen = (await asAuthor.get(`/api/records/${record}`)).body as RecordView;
+    expect(seen.remarks.map(({ text }) => text)).toEqual(
+      expect.arrayContaining(['Before it went.', 'After it went.']),
+    );
+    const members = await server.sql('select id from remark where notebook = $1 and review is null', [
+      notebook,
+    ]);
+    expect(members).toEqual([]);
+  });
+
+  test('what a reviewer wrote cannot be altered or taken away, not even by the owner of the database', async () => {
+    for (const statement of [
+      'delete from remark where review is not null',
+      `update remark set text = 'All is well.' where review is not null`,
+      'update remark set notebook = gen_random_uuid() where review is not null',
+      'truncate remark cascade',
+    ])
+      await expect(server.sql(statement), statement).rejects.toThrow('never altered');
   });
 });

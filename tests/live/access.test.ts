@@ -126,6 +126,32 @@ describe('who may open a line', () => {
     expect((await openLimited(limited, other)).closed).toBeNull();
   });
 
+  test('more lines than one person may have: the one too many is told so, the others stay', async () => {
+    const visitor = await signIn(server, await member('reader'));
+    const address = liveAddress(server, visitor, notebook);
+    const lines = Array.from(
+      { length: limits.linesOfOne },
+      () => new WebSocket(`${address.url}/${address.notebook}`, { headers: address.headers }),
+    );
+    // The first frame says that a line was let in.
+    await Promise.all(lines.map((line) => new Promise((resolve) => line.once('message', resolve))));
+    expect(await closing(address)).toBe(closeCodes.crowded);
+    expect(lines.every((line) => line.readyState === WebSocket.OPEN)).toBe(true);
+    lines[0]?.close();
+    await expect
+      .poll(async () => {
+        const line = new WebSocket(`${address.url}/${address.notebook}`, { headers: address.headers });
+        const came = await new Promise((resolve) => {
+          line.once('message', () => resolve('let in'));
+          line.once('close', resolve);
+        });
+        line.close();
+        return came;
+      })
+      .toBe('let in');
+    for (const line of lines) line.terminate();
+  });
+
   const openLimited = async (visitor: Visitor, id: string) => {
     const client = connectLive(server, visitor, id);
     await client.synced();

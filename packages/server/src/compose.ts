@@ -55,6 +55,7 @@ export function createModules(services: Services): ServerModule[] {
   });
   const collaboration: Collaboration = createCollaboration(services, {
     readPerson: auth.readPerson,
+    sessionStands: auth.sessionStands,
     opened: compute.opened,
   });
   const records = createRecords(services, compute, reviewsOfRecord);

@@ -32,6 +32,12 @@ const endings: Readonly<Record<number, ConnectionStatus['ended']>> = {
     words: 'It was deleted. It rests in its group’s bin for 30 days, where a lead can bring it back.',
     to: 'shelf',
   },
+  [closeCodes.crowded]: {
+    title: 'Too many notebooks are open at once',
+    words:
+      'You have more pages of notebooks open than one person may have. Close some of them and load this page again; what you typed is kept on this machine.',
+    to: 'shelf',
+  },
 };
 
 const otherEnding: ConnectionStatus['ended'] = {

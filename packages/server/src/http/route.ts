@@ -1,3 +1,4 @@
+import { limits } from '@stillroom/shared/protocol';
 import { json, type Request, type RequestHandler, type Response } from 'express';
 import type { EntityManager } from 'typeorm';
 import type * as z from 'zod/mini';
@@ -28,7 +29,10 @@ interface Sentence<W extends Who, P, Q, B> {
   readonly params?: P;
   readonly query?: Q;
   readonly body?: B;
-  /** Most bytes of a JSON body, where the usual megabyte will not do. */
+  /**
+   * Most bytes of a JSON body, where the usual bound will not do: a megabyte of somebody who is signed in, far less of
+   * anybody else.
+   */
   readonly most?: number;
   /** Status of a good answer; 204 follows by itself where nothing is answered. */
   readonly status?: 200 | 201 | 202;
@@ -51,6 +55,13 @@ export function route<
   Q extends Schema | undefined = undefined,
   B extends Schema | undefined = undefined,
 >(services: Services, sentence: Sentence<W, P, Q, B>): RequestHandler[] {
+  const known = json({ limit: sentence.most ?? usualBody });
+  const stranger = json({ limit: sentence.most ?? limits.strangersBody });
+  // Nothing is read of somebody who may not come here at all, and little of somebody who is not known.
+  const readBody: RequestHandler = (request, response, next) => {
+    const reader = authenticate(request, sentence.who) === null ? stranger : known;
+    reader(request, response, next);
+  };
   const answer: RequestHandler = async (request, response) => {
     const person = authenticate(request, sentence.who) as Context<W, P, Q, B>['person'];
     const params = read(sentence.params, request.params) as Output<P>;
@@ -68,7 +79,7 @@ export function route<
     if (result === undefined) response.status(chosen ?? 204).end();
     else response.status(chosen ?? 200).json(result);
   };
-  return [services.limits[sentence.limit], json({ limit: sentence.most ?? usualBody }), answer];
+  return [services.limits[sentence.limit], readBody, answer];
 }
 
 const read = (schema: Schema | undefined, value: unknown): unknown =>

@@ -12,6 +12,8 @@ export const closeCodes = {
   malformed: 4422,
   /** More than a connection may send. */
   tooMuch: 4429,
+  /** One person has as many lines open as one may have. */
+  crowded: 4430,
   /** The server is stopping or has lost its database; come back by yourself. */
   later: 4503,
 } as const;

@@ -2,6 +2,10 @@
 export const limits = {
   /** One live frame. */
   frame: 4 * 1024 * 1024,
+  /** Live lines that one person may have open to one server process. */
+  linesOfOne: 60,
+  /** A JSON body of somebody who is not signed in. */
+  strangersBody: 64 * 1024,
   /** One cell's text, in UTF-16 units. */
   cellText: 2_000_000,
   /** Cells in a notebook. */

@@ -4,6 +4,7 @@ import { FailedResults1796083205000 } from './2026-12-01-failed-results.ts';
 import { Groups1796083201000 } from './2026-12-01-groups.ts';
 import { Notebooks1796083202000 } from './2026-12-01-notebooks.ts';
 import { People1796083200000 } from './2026-12-01-people.ts';
+import { RemarksOfReviews1796083206000 } from './2026-12-01-remarks-of-reviews.ts';
 import { Records1796083204000 } from './2026-12-01-records.ts';
 
 /** All migrations in the order they run (by the number at the end of each name); what was released never changes. */
@@ -14,4 +15,5 @@ export const migrations: readonly (new () => MigrationInterface)[] = [
   Compute1796083203000,
   Records1796083204000,
   FailedResults1796083205000,
+  RemarksOfReviews1796083206000,
 ];

@@ -4,6 +4,7 @@ import type { SignedIn } from '../../http/authenticate.ts';
 import type { ServerModule, Services } from '../../services.ts';
 import { accountRoutes } from './account.routes.ts';
 import { accountsRoutes } from './accounts.routes.ts';
+import { sessionsOf } from './commands/end-sessions.ts';
 import type { InvitedAddress } from './commands/sign-up.ts';
 import { createPassport, findSignedIn } from './passport.ts';
 import { createSessions, sessionName } from './session.ts';
@@ -20,6 +21,8 @@ export interface AuthModule extends ServerModule {
   readonly routes: Router;
   /** The person whose session a request bears, read now; also for WebSocket upgrades. Null where nobody is signed in. */
   readPerson(request: IncomingMessage): Promise<Caller | null>;
+  /** Whether a session, by its name, still stands. */
+  sessionStands(person: string, session: string): Promise<boolean>;
 }
 
 /** Accounts and sessions. Its routes also read the session for every module mounted after it. */
@@ -34,6 +37,10 @@ export function createAuth(services: Services, invitedAddress: InvitedAddress): 
   return {
     routes,
     stop: () => sessions.stop(),
+    async sessionStands(person, session) {
+      const standing = await sessionsOf(services.database.manager, person);
+      return standing.some(({ sid }) => sessionName(sid) === session);
+    },
     async readPerson(request) {
       const session = await sessions.read(request);
       const id = session.data.passport?.user;

@@ -19,8 +19,16 @@ export interface GatewayOptions {
   readonly access: Access;
   /** The person signed in by the session of this request; null where nobody is. */
   readonly identify: (request: IncomingMessage) => Promise<Visitor | null>;
+  /** Whether the session by which somebody came still stands. */
+  readonly stands: (visitor: Visitor) => Promise<boolean>;
   readonly isSameOrigin: (request: IncomingMessage) => boolean;
   readonly failed: (words: string, error: unknown) => void;
+}
+
+/** A visitor who may come in. */
+interface Admitted {
+  readonly visitor: Visitor;
+  readonly notebook: string;
 }
 
 const address = /^\/live\/([0-9a-f]{8}(?:-[0-9a-f]{4}){3}-[0-9a-f]{12})$/u;
@@ -39,6 +47,7 @@ const socketFrame = 4 * limits.frame;
 const earlyBytes = 2 * limits.frame;
 /** A line that has this much unsent, in bytes, is too slow to follow and comes back for the whole. */
 const backlog = 16 * 1024 * 1024;
+const crowdedWords = `You have ${limits.linesOfOne} pages of notebooks open; close some and come back.`;
 
 /**
  * The door of live editing. Every upgrade is accepted and only then judged: a browser learns the reason from a close
@@ -113,10 +122,12 @@ export class Gateway {
     });
     const refuse = (code: CloseCode, why: string) => line.close(code, why);
     this.#judge(request, notebook, refuse)
-      .then(async (admitted) => {
+      .then((admitted) => {
         if (admitted === null || line.readyState !== line.OPEN) return;
-        connection = await this.#let(line, admitted);
-        for (const frame of early.splice(0)) connection.receive(frame);
+        return this.#let(line, admitted, (admittedLine) => {
+          connection = admittedLine;
+          for (const frame of early.splice(0)) connection.receive(frame);
+        });
       })
       .catch((error: unknown) => {
         this.#options.failed('A live line could not be opened.', error);
@@ -129,7 +140,7 @@ export class Gateway {
     request: IncomingMessage,
     notebook: string | null,
     refuse: (code: CloseCode, why: string) => void,
-  ): Promise<{ visitor: Visitor; notebook: string; edits: boolean } | null> {
+  ): Promise<Admitted | null> {
     const { access, identify, isSameOrigin } = this.#options;
     const refused = (code: CloseCode, why: string) => {
       refuse(code, why);
@@ -143,16 +154,23 @@ export class Gateway {
     const role = await access.roleAt(visitor.person.id, notebook);
     if (role === 'gone') return refused(closeCodes.gone, 'There is no such notebook (any more).');
     if (!may(role, 'notebook.read')) return refused(closeCodes.refused, 'You may not read this notebook.');
-    return { visitor, notebook, edits: may(role, 'notebook.edit') };
+    return { visitor, notebook };
   }
 
-  /** Opens the room and lets the connection in. */
+  /**
+   * Opens the room and lets the connection in. It is on the list before session and role are looked at once more: what
+   * ended while the visitor was being judged is seen then, what ends later is told to the list. `admitted` gets it before
+   * it joins.
+   */
   #let(
     line: WebSocket,
-    { visitor, notebook, edits }: { visitor: Visitor; notebook: string; edits: boolean },
-  ): Promise<Connection> {
-    const { rooms, access } = this.#options;
-    return rooms.use(notebook, (room) => {
+    { visitor, notebook }: Admitted,
+    admitted: (connection: Connection) => void,
+  ): Promise<void> {
+    const { rooms, access, stands } = this.#options;
+    return rooms.use(notebook, async (room) => {
+      if (this.connections(visitor.person.id).length >= limits.linesOfOne)
+        return line.close(closeCodes.crowded, crowdedWords);
       const connection = new Connection(visitor.person, room, outlet(line), access);
       this.#sessions.set(connection, visitor.session);
       const left = () => {
@@ -161,9 +179,16 @@ export class Gateway {
         rooms.left(room);
       };
       line.on('close', left);
-      connection.join(edits);
-      if (line.readyState !== line.OPEN) left();
-      return connection;
+      const [standing, role] = await Promise.all([
+        stands(visitor),
+        access.roleAt(visitor.person.id, notebook),
+      ]);
+      if (!standing) connection.end(closeCodes.signedOut, 'Your session has ended; sign in again.');
+      else if (!may(role === 'gone' ? null : role, 'notebook.read'))
+        connection.end(closeCodes.refused, 'You may not read this notebook.');
+      if (line.readyState !== line.OPEN) return left();
+      connection.join(role !== 'gone' && may(role, 'notebook.edit'));
+      admitted(connection);
     });
   }
 

@@ -28,6 +28,8 @@ export interface Collaboration extends ServerModule {
 export interface CollaborationOptions {
   /** The person signed in by the session of an upgrade request; null where nobody is. */
   readonly readPerson: (request: IncomingMessage) => Promise<Visitor | null>;
+  /** Whether a session, by its name, still stands. */
+  readonly sessionStands: (person: string, session: string) => Promise<boolean>;
   /** Called with each room that opens, before anybody is let in: the planner's place. */
   readonly opened?: (room: Room) => void;
 }
@@ -54,6 +56,7 @@ export function createCollaboration(services: Services, options: CollaborationOp
     rooms,
     access,
     identify: async (request) => asVisitor(await options.readPerson(request)),
+    stands: ({ person, session }) => options.sessionStands(person.id, session),
     isSameOrigin: (request) => isSameOrigin(request, config),
     failed,
   });

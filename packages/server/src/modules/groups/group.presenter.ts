@@ -19,6 +19,8 @@ export async function presentGroup(
   const { id, name, hue } = group;
   const sees = (notebook: string): boolean =>
     membership.notebooks === null || membership.notebooks.includes(notebook);
+  // What is in the bin is shown to those who can take it out.
+  const restores = may(membership.role, 'notebook.restore');
   const notebooks = await contents.notebooks(manager, id);
   return {
     id,
@@ -28,7 +30,9 @@ export async function presentGroup(
     abilities: abilitiesOf(membership.role),
     members: await presentMembers(manager, id),
     invitations: may(membership.role, 'group.invite') ? await presentInvitations(manager, id) : [],
-    notebooks: notebooks.filter((notebook) => sees(notebook.id)),
+    notebooks: notebooks.filter(
+      ({ id: notebook, deletedAt }) => sees(notebook) && (deletedAt === null || restores),
+    ),
     records: await contents.records(manager, id, membership.notebooks),
   };
 }

@@ -2,11 +2,11 @@ import { rerunRequest, reviewInvitation, reviewRemark, verdictRequest } from '@s
 import { Router } from 'express';
 import * as z from 'zod/mini';
 import { publicAddress } from '../../config/index.ts';
-import { conflict, notFound } from '../../errors.ts';
+import { notFound } from '../../errors.ts';
 import { route } from '../../http/route.ts';
 import { token, uuid } from '../../http/validate.ts';
 import type { Services } from '../../services.ts';
-import { NotebookEntity, presentRemarks, writeRemark } from '../notebooks/index.ts';
+import { presentRemarks, writeRemark } from '../notebooks/index.ts';
 import { loadRecord, sendRecordFile } from '../records/index.ts';
 import { beginRerun } from './commands/begin-rerun.ts';
 import { inviteReviewer } from './commands/invite-reviewer.ts';
@@ -22,6 +22,9 @@ import { shownName } from './state.ts';
 const recordParams = z.object({ record: uuid });
 const reviewParams = z.object({ record: uuid, review: uuid });
 const linkParams = z.object({ token });
+/** Two texts of 20,000 characters and a judgement of each claim, in bytes. */
+const verdictBody = 256 * 1024;
+
 const rerunParams = z.object({ token, rerun: uuid });
 
 /** Invitations to review, and the reviewer's side behind the link. */
@@ -130,11 +133,6 @@ export function reviewsRoutes(services: Services): Router {
       async handle({ params, body, manager }) {
         const { review, record } = await openUnreturnedReview(manager, params.token);
         authorizeReviewer('review.remark');
-        if (!(await manager.existsBy(NotebookEntity, { id: record.notebook }))) {
-          throw conflict('The notebook of this record is gone for good, and remarks with it.', {
-            hint: 'Write it to the authors in your verdict: the record and its reviews stay.',
-          });
-        }
         const remark = await writeRemark(manager, record.notebook, body, {
           review: review.id,
           reviewer: shownName(review),
@@ -153,6 +151,7 @@ export function reviewsRoutes(services: Services): Router {
       who: 'anyone',
       params: linkParams,
       body: verdictRequest,
+      most: verdictBody,
       async handle({ params, body, manager }) {
         const opened = await openUnreturnedReview(manager, params.token);
         authorizeReviewer('review.verdict');

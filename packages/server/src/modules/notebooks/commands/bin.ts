@@ -1,4 +1,4 @@
-import { type EntityManager, LessThan } from 'typeorm';
+import type { EntityManager } from 'typeorm';
 import { announce } from '../../../events.ts';
 import { conflict } from '../../../errors.ts';
 import { recordAudit } from '../../groups/index.ts';
@@ -37,8 +37,15 @@ export async function restoreNotebook(
   await announce(manager, 'notebook.changed', { notebook: id });
 }
 
-/** Takes away for good what has been in the bin for its time. */
+/**
+ * Takes away for good what has been in the bin for its time, with the members' remarks on it. What reviewers remarked on
+ * its records stays, as the records do.
+ */
 export async function emptyBin(manager: EntityManager, now = new Date()): Promise<void> {
   const before = new Date(now.getTime() - binDays * 24 * 3600 * 1000);
-  await manager.delete(NotebookEntity, { deletedAt: LessThan(before) });
+  await manager.query(
+    `with gone as (delete from notebook where deleted_at < $1 returning id)
+     delete from remark where review is null and notebook in (select id from gone)`,
+    [before],
+  );
 }
