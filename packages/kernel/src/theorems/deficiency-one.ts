@@ -1,4 +1,4 @@
-import type { Hypothesis } from '@stillroom/shared/cells';
+import type { Applies, Hypothesis } from '@stillroom/shared/cells';
 import type { TheoremContext } from './context.ts';
 import { massAction } from './hypotheses.ts';
 import { sources } from './sources.ts';
@@ -10,7 +10,7 @@ export const deficiencyOne: Theorem = {
   id: 'deficiency-one',
   title: 'Deficiency one theorem',
   statement:
-    'With mass action, if no linkage class has a deficiency above 1, the deficiencies of the linkage classes add up to that of the network, and each has one terminal strong class, then for each choice of constants either no positive class has a positive steady state or each has exactly one.',
+    'With mass action, if no linkage class has a deficiency above 1, the deficiencies of the linkage classes add up to that of the network, and each has one terminal strong class, then for each choice of constants either no positive class has a positive steady state or each has exactly one; a weakly reversible network has one for all constants.',
   citation: [sources.feinberg1987, sources.feinberg1995existence, sources.boros2012, sources.boros2013],
   kinetics: 'mass action',
   judge(context) {
@@ -27,14 +27,15 @@ export const deficiencyOne: Theorem = {
       ...(applies === 'yes' ? { case: weakly ? 'weakly reversible' : 'not weakly reversible' } : {}),
       scope: 'all constants',
       hypotheses,
-      conclusion: conclusion(applies === 'yes', weakly),
+      conclusion: conclusion(applies, weakly),
       silentOn: 'The stability of a steady state and the existence of periodic solutions.',
     };
   },
 };
 
-function conclusion(holds: boolean, weaklyReversible: boolean): string {
-  if (!holds) {
+function conclusion(applies: Applies, weaklyReversible: boolean): string {
+  if (applies === 'undecided') return 'Undecided; the hypotheses that are open are marked.';
+  if (applies === 'no') {
     return 'The theorem does not apply: nothing follows from it about the existence or the number of positive steady states.';
   }
   return weaklyReversible

@@ -15,7 +15,7 @@ export const deficiencyZero: Theorem = {
   id: 'deficiency-zero',
   title: 'Deficiency zero theorem',
   statement:
-    'A network of deficiency 0 that is not weakly reversible has no positive steady state, whatever the kinetics; a weakly reversible one with mass action has exactly one in every positive class, for all constants, asymptotically stable relative to its class.',
+    'A network of deficiency 0 that is not weakly reversible has no positive steady state, whatever its rates, so long as they are continuous and positive exactly when all reactants are present; a weakly reversible one with mass action has exactly one in every positive class, for all constants, complex balanced and asymptotically stable relative to its class.',
   citation: [sources.hornJackson1972, sources.horn1972, sources.feinberg1972, sources.feinberg1987],
   kinetics: 'general',
   judge(context) {
@@ -29,8 +29,11 @@ export const deficiencyZero: Theorem = {
       applies,
       case: reversibility.holds ? 'weakly reversible' : 'not weakly reversible',
       scope: 'all constants',
+      kinetics: reversibility.holds ? 'mass action' : 'general',
       hypotheses,
-      conclusion: reversibility.holds ? withReversal(applies) : withoutReversal(applies),
+      conclusion: reversibility.holds
+        ? withReversal(applies)
+        : withoutReversal(applies, deficiency.holds === true),
       silentOn: reversibility.holds
         ? 'Whether every positive start tends to the steady state, what happens where a species is at zero, and the behaviour of counts.'
         : 'Steady states with a species at zero, and the behaviour of counts.',
@@ -39,16 +42,21 @@ export const deficiencyZero: Theorem = {
 };
 
 function withReversal(applies: Applies): string {
-  return applies === 'yes'
-    ? 'For all constants every positive class has exactly one positive steady state; it is complex balanced and asymptotically stable relative to its class, and no non-constant periodic solution passes through a positive state.'
-    : 'The theorem does not apply: nothing follows from it about the number or the stability of steady states.';
+  return {
+    yes: 'For all constants every positive class has exactly one positive steady state; it is complex balanced and asymptotically stable relative to its class, and no non-constant periodic solution passes through a positive state.',
+    no: 'The theorem does not apply: nothing follows from it about the number or the stability of steady states.',
+    undecided: 'Undecided; the hypotheses that are open are marked.',
+  }[applies];
 }
 
-function withoutReversal(applies: Applies): string {
+function withoutReversal(applies: Applies, zero: boolean): string {
   if (applies === 'yes') {
-    return 'Whatever the kinetics and the constants, there is no positive steady state and no non-constant periodic solution through a positive state.';
+    return 'For all constants, and for all other rates that are continuous and positive exactly when all reactants are present, there is no positive steady state and no non-constant periodic solution through a positive state.';
   }
-  return applies === 'no'
-    ? 'The theorem does not apply: nothing follows from it about the existence or the number of positive steady states.'
+  if (applies === 'no') {
+    return 'The theorem does not apply: nothing follows from it about the existence or the number of positive steady states.';
+  }
+  return !zero
+    ? 'Undecided; the hypotheses that are open are marked.'
     : 'If every rate is continuous and positive exactly when all its reactants are present, there is no positive steady state and no non-constant periodic solution through a positive state; the laws as written leave this open.';
 }

@@ -8,7 +8,7 @@ export const noPositiveSteadyState: Theorem = {
   id: 'no-positive-steady-state',
   title: 'No positive steady state',
   statement:
-    'A network that is not consistent has no positive steady state and no periodic solution through a positive state, whatever the kinetics.',
+    'A network that is not consistent has no positive steady state and no periodic solution through a positive state, whatever its rates, so long as they are continuous and positive exactly when all reactants are present.',
   citation: [sources.feinberg1987],
   kinetics: 'general',
   judge(context) {
@@ -19,7 +19,7 @@ export const noPositiveSteadyState: Theorem = {
       scope: 'all constants',
       hypotheses,
       conclusion: {
-        yes: 'Whatever the kinetics and the constants, there is no positive steady state and no non-constant periodic solution through a positive state: the weighted sum of species shown rises strictly at every positive state.',
+        yes: `For all constants, and for all other rates that are continuous and positive exactly when all reactants are present, there is no positive steady state and no non-constant periodic solution through a positive state${hypotheses[0]?.witness === undefined ? '' : ': the weighted sum of species shown rises strictly at every positive state'}.`,
         no: 'The theorem does not apply: nothing follows from it, neither that a positive steady state exists nor that it does not.',
         undecided: 'Undecided; the hypotheses that are open are marked.',
       }[applies],

@@ -15,6 +15,8 @@ export interface Judgement {
   /** Which part of the theorem applies, where it has several. */
   readonly case?: string;
   readonly scope: VerdictScope;
+  /** The rate laws this case speaks about, where they differ from those of the theorem. */
+  readonly kinetics?: VerdictKinetics;
   readonly hypotheses: readonly Hypothesis[];
   /** States what is proven and no more; for "no" and "undecided" it says that nothing follows. */
   readonly conclusion: string;
@@ -46,7 +48,7 @@ export function verdictOf(theorem: Theorem, context: TheoremContext): Verdict {
     applies,
     ...(optional.case === undefined ? {} : { case: optional.case }),
     scope,
-    kinetics: theorem.kinetics,
+    kinetics: optional.kinetics ?? theorem.kinetics,
     hypotheses,
     conclusion,
     ...(optional.silentOn === undefined ? {} : { silentOn: optional.silentOn }),
