@@ -1,5 +1,15 @@
+import type { VerdictId } from '@stillroom/shared/cells';
 import { describe, expect, test } from 'vitest';
-import { expectSilence, judge } from '../../support/verdicts.ts';
+import { buildNetwork } from '../../support/network.ts';
+import { expectSilence, judge, verdictOn } from '../../support/verdicts.ts';
+
+/** The verdict on a network whose first arrow has a constant rate in place of mass action. */
+function judgeOtherLaw(id: VerdictId, text: string) {
+  const plain = buildNetwork(text, { constants: [1, 1] });
+  const law = { expression: { kind: 'number', value: 1 }, net: false, massAction: null } as const;
+  const laws = Int32Array.from({ length: plain.reactions.count }, (_, i) => (i === 0 ? 0 : -1));
+  return verdictOn({ ...plain, laws: [law], reactions: { ...plain.reactions, law: laws } }, id);
+}
 
 describe('complex balance', () => {
   const id = 'complex-balance';
@@ -19,6 +29,10 @@ describe('complex balance', () => {
 
   test('deficiency zero needs no values', () => {
     expect(judge(id, 'A <=> B')).toMatchObject({ applies: 'yes', scope: 'all constants' });
+  });
+
+  test('a law that is not mass action: the constants are not said to be out of balance', () => {
+    expectSilence(judgeOtherLaw(id, 'A <=> B'), /not complex balanced/);
   });
 
   test('undecided while values are missing, and it names one', () => {
@@ -47,6 +61,10 @@ describe('detailed balance', () => {
     const constants = [2, 1, 2, 1, 2, 1];
     expect(judge(id, text, { constants }).applies).toBe('no');
     expect(judge('complex-balance', text, { constants }).applies).toBe('yes');
+  });
+
+  test('a law that is not mass action: the constants are not said to be out of balance', () => {
+    expectSilence(judgeOtherLaw(id, 'A <=> B'), /not detailed balanced/);
   });
 
   test('an arrow without reverse: "no" for all constants', () => {

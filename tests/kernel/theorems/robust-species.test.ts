@@ -18,7 +18,7 @@ describe('robust concentrations', () => {
 
   test('the value for given constants: A + B -> 2 B, B -> A gives A = k2/k1', () => {
     const verdict = judge(id, 'A + B -> 2 B; B -> A', { constants: [3, '7/2'] });
-    expect(verdict.conclusion).toContain('For the constants given: A = 7/6.');
+    expect(verdict.conclusion).toContain('For the constants given: A = 7/6, in every positive steady state');
   });
 
   test('a pair that differs by two molecules has a root as its value: 0 -> A, 2 A -> 0, 2 k2 A^2 = k1', () => {

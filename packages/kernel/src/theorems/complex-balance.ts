@@ -16,7 +16,8 @@ export const complexBalance: Theorem = {
   kinetics: 'mass action',
   judge(context) {
     const structural = context.deficiency === 0;
-    const hypotheses = [massAction(context), weaklyReversible(context), ...conditions(context)];
+    const rates = massAction(context);
+    const hypotheses = [rates, weaklyReversible(context), ...conditions(context)];
     const applies = appliesWhenAllHold(hypotheses);
     const needsValues = applies === 'undecided' && context.exactConstants === null;
     return {
@@ -25,9 +26,11 @@ export const complexBalance: Theorem = {
       hypotheses,
       conclusion: {
         yes: `${structural ? 'For all constants' : 'For these constants'} every positive steady state is complex balanced; each positive class has exactly one, asymptotically stable relative to its class, and no non-constant periodic solution passes through a positive state.`,
-        no: context.weaklyReversible
-          ? 'These constants are not complex balanced. It says nothing about the number or the stability of positive steady states.'
-          : 'No constants are complex balanced, because the network is not weakly reversible. It says nothing about the number or the stability of positive steady states.',
+        no: !context.weaklyReversible
+          ? 'No constants are complex balanced, because the network is not weakly reversible. It says nothing about the number or the stability of positive steady states.'
+          : rates.holds === false
+            ? 'The theorem does not apply, because not all rates are mass action: nothing follows from it.'
+            : 'These constants are not complex balanced. It says nothing about the number or the stability of positive steady states.',
         undecided: needsValues
           ? `Needs values: ${context.constants.why}.`
           : 'Undecided; the network is too large for the exact conditions.',

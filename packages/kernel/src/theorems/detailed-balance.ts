@@ -11,24 +11,27 @@ export const detailedBalance: Theorem = {
   id: 'detailed-balance',
   title: 'Detailed balance',
   statement:
-    'A reversible mass-action network is detailed balanced exactly when its constants close every circuit of complexes and satisfy δ conditions on a spanning forest.',
+    'A reversible mass-action network is detailed balanced exactly when its constants close every circuit of complexes and satisfy δ conditions on a spanning forest; then it is complex balanced as well.',
   citation: [sources.wegscheider1901, sources.feinberg1989, sources.schuster1989],
   kinetics: 'mass action',
   judge(context) {
     const conditions = detailedConditions(context);
     const free = conditions?.length === 0;
-    const hypotheses = [massAction(context), reversible(context), ...conditionHypotheses(context)];
+    const rates = massAction(context);
+    const hypotheses = [rates, reversible(context), ...conditionHypotheses(context)];
     const applies = appliesWhenAllHold(hypotheses);
-    const structural = free || context.arrowWithoutReverse !== null;
+    const irreversible = context.arrowWithoutReverse !== null;
     return {
       applies,
-      scope: structural ? 'all constants' : 'these constants',
+      scope: free || irreversible ? 'all constants' : 'these constants',
       hypotheses,
       conclusion: {
-        yes: `${free ? 'For all constants' : 'For these constants'} every positive steady state is detailed balanced: each reaction runs as fast forwards as backwards. The network is therefore complex balanced as well.`,
-        no: structural
+        yes: `${free ? 'For all constants' : 'For these constants'} every positive steady state is detailed balanced: each arrow runs as fast as its reverse, equal rows taken together. The network is therefore complex balanced as well.`,
+        no: irreversible
           ? 'No constants are detailed balanced, because some arrow has no reverse. It says nothing about the number or the stability of positive steady states.'
-          : 'These constants are not detailed balanced. It says nothing about the number or the stability of positive steady states; they may still be complex balanced.',
+          : rates.holds === false
+            ? 'The theorem does not apply, because not all rates are mass action: nothing follows from it.'
+            : 'These constants are not detailed balanced. It says nothing about the number or the stability of positive steady states; they may still be complex balanced.',
         undecided:
           context.exactConstants === null
             ? `Needs values: ${context.constants.why}.`

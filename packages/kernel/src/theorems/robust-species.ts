@@ -59,7 +59,7 @@ function conclusion(context: TheoremContext): string {
     names.length === 1
       ? `${names[0]} has the same concentration in all of them`
       : `each of ${names.slice(0, -1).join(', ')} and ${names.at(-1)} has the same concentration in all of them`;
-  return `For each choice of constants that admits a positive steady state, ${each}, in every class; the value depends on the constants.${values(context)}`;
+  return `For each choice of constants that admits positive steady states, ${each}, whatever their class; the value depends on the constants.${values(context)}`;
 }
 
 /** The values for the constants of the text, where all are given. */
@@ -74,5 +74,7 @@ function values(context: TheoremContext): string {
     if (value === 'none') return ' The constants given admit no positive steady state.';
     found.push(`${context.species[pair.species]} = ${value}`);
   }
-  return found.length === 0 ? '' : ` For the constants given: ${found.join(', ')}.`;
+  return found.length === 0
+    ? ''
+    : ` For the constants given: ${found.join(', ')}, in every positive steady state they admit.`;
 }
