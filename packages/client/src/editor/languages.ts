@@ -4,6 +4,7 @@ import { EditorView, keymap } from '@codemirror/view';
 import type { Complaint } from '@stillroom/shared/notation';
 import { alignedColumns } from './alignedColumns.ts';
 import { complaints } from './complaints.ts';
+import { litLines } from './litLines.ts';
 import { notationCompletion } from './notationCompletion.ts';
 import { notationHighlighting } from './notationHighlighting.ts';
 import { checkNotation } from './notationReading.ts';
@@ -23,6 +24,7 @@ function notation(told: (found: readonly Complaint[]) => void): Extension {
     EditorView.lineWrapping,
     notationHighlighting,
     rowGutter,
+    litLines,
     alignedColumns,
     pastedReactions,
     complaints(checkNotation, told),
