@@ -14,11 +14,13 @@ import { RequestError, wordsOf } from '../api/client.ts';
 import { fetchNotebook } from '../api/notebooks.ts';
 import { numberCells } from '../components/notebook/numbering.ts';
 import { useSession } from '../stores/session.ts';
+import { standBesideWorkings } from './besideWorkings.ts';
 import { useAbilities } from './useAbilities.ts';
 import { type CellActions, useCellActions } from './useCellActions.ts';
 import { type Cells, useCells } from './useCells.ts';
 import { type ConnectionStatus, useConnectionStatus } from './useConnectionStatus.ts';
 import { type LiveDocument, useLiveDocument } from './useLiveDocument.ts';
+import { usePace } from './usePace.ts';
 import { type Plan, usePlan } from './usePlan.ts';
 import { type PresenceHere, usePresence } from './usePresence.ts';
 import { type Remarks, useRemarks } from './useRemarks.ts';
@@ -78,6 +80,7 @@ export function openNotebook(id: string): Notebook {
   const plan = usePlan();
   const results = useResults(id);
   const remarks = useRemarks(id);
+  const pace = usePace();
 
   async function askAbout(): Promise<void> {
     try {
@@ -97,8 +100,10 @@ export function openNotebook(id: string): Notebook {
   const known = askAbout();
   const live = useLiveDocument(id, session.me?.id ?? 'nobody', {
     plan(notice) {
-      results.take(notice);
-      plan.apply(notice);
+      pace.take(() => {
+        results.take(notice);
+        plan.apply(notice);
+      });
     },
     notice({ topic }) {
       if (topic === 'remarks') void remarks.refresh();
@@ -135,6 +140,7 @@ export function openNotebook(id: string): Notebook {
   };
   void remarks.refresh();
   provide(key, notebook);
+  standBesideWorkings();
   return notebook;
 }
 

@@ -30,5 +30,20 @@ export function rowNumbers(lines: Iterable<string>): readonly number[] {
   return numbers;
 }
 
-/** The notes of a network's rows, in order: what stands after the second bar. */
-export const rowNotes = (text: string): readonly string[] => tableOf(text).map(({ note }) => note);
+/** The note of each line that was read; null where it writes no row. */
+const knownNotes = new Map<string, string | null>();
+
+function noteOf(line: string): string | null {
+  const before = knownNotes.get(line);
+  if (before !== undefined) return before;
+  if (knownNotes.size >= remembered) knownNotes.clear();
+  const found = tableOf(line)[0]?.note ?? null;
+  knownNotes.set(line, found);
+  return found;
+}
+
+/** The notes of a network's rows, in order: what stands after the second bar. Lines that were read before are not read anew. */
+export function rowNotes(text: string): readonly string[] {
+  if (text.includes('\\') || text.includes('\r')) return tableOf(text).map(({ note }) => note);
+  return text.split('\n').flatMap((line) => noteOf(line) ?? []);
+}

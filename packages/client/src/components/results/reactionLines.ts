@@ -22,17 +22,22 @@ export interface ReactionLine {
   readonly note: string;
 }
 
-const same = (a: Sides, b: Sides) =>
-  JSON.stringify(Object.entries(a).sort()) === JSON.stringify(Object.entries(b).sort());
+function same(a: Sides, b: Sides): boolean {
+  const names = Object.keys(a);
+  return names.length === Object.keys(b).length && names.every((name) => a[name] === b[name]);
+}
 
 const isBackOf = (next: NetworkReaction | undefined, first: NetworkReaction) =>
   next !== undefined && next.row === first.row && same(next.from, first.to) && same(next.to, first.from);
 
 /** The constant of a mass action rate "kf*E*S": what stands before the powers of its reactants; "" for other laws. */
 function leadingConstant(rate: string, from: Sides): string {
-  const [name = '', ...factors] = rate.split('*').map((factor) => factor.trim());
-  const species = new Set(Object.keys(from));
-  return factors.every((factor) => species.has(factor.replace(/\^.*$/u, ''))) ? name : '';
+  const [name = '', ...factors] = rate.split('*');
+  const isReactant = (factor: string) => {
+    const power = factor.indexOf('^');
+    return Object.hasOwn(from, (power < 0 ? factor : factor.slice(0, power)).trim());
+  };
+  return factors.every(isReactant) ? name.trim() : '';
 }
 
 /**
@@ -48,14 +53,19 @@ export function reactionLines(result: NetworkResult, notes: readonly string[]): 
       : { name: constant.name, value: constant.value, unit: constant.unit, law: null };
   };
   const lines: ReactionLine[] = [];
+  const written = new Map<string, number>();
   let above = -1;
   for (let i = 0; i < result.reactions.length; i++) {
     const reaction = result.reactions[i];
     if (reaction === undefined) continue;
     const next = result.reactions[i + 1];
     const back = isBackOf(next, reaction) ? next : undefined;
+    // By what it says and not by where it stands: a row put in between leaves those below as they are.
+    const says = JSON.stringify([reaction.from, reaction.to, reaction.rate]);
+    const again = written.get(says) ?? 0;
+    written.set(says, again + 1);
     lines.push({
-      key: `${i}`,
+      key: `${says}${again}`,
       row: reaction.row === above ? null : reaction.row,
       ofRow: reaction.row,
       from: reaction.from,
