@@ -1,7 +1,13 @@
 import type { Expression } from '@stillroom/shared/expression';
+import type { Network, Rational } from '@stillroom/shared/network';
+import { rational, toDouble } from '@stillroom/kernel/exact';
 import { describe, expect, test } from 'vitest';
 import { buildNetwork } from '../../support/network.ts';
 import { expectSilence, judge, verdictOn } from '../../support/verdicts.ts';
+
+const name = (text: string): Expression => ({ kind: 'name', name: text });
+const count = name('n');
+const three: Expression = { kind: 'number', value: 3 };
 
 describe('stationary law of product form', () => {
   const id = 'product-form';
@@ -64,6 +70,52 @@ describe('stationary law of product form', () => {
       ).applies;
     };
     expect([applies(2), applies(4), applies(3)]).toEqual(['yes', 'no', 'no']);
+  });
+
+  test('the volume counts: min(n, 3) with c = 2 and V = 2 has C = 4 and no stationary law', () => {
+    const applies = (volume: Network['compartments'], amount: string | null): string => {
+      const plain = buildNetwork('0 <=> X', { constants: [2, 1] });
+      const servers: Expression = { kind: 'call', name: 'min', arguments: [count, three] };
+      const network = {
+        ...plain,
+        compartments: volume,
+        units: { ...plain.units, amount },
+        weights: new Map([[0, servers]]),
+      };
+      return verdictOn(network, id).applies;
+    };
+    const of = (value: Rational, unit: string | null): Network['compartments'] => [
+      { name: 'V', volume: { value: toDouble(value), exact: value }, unit, species: [] },
+    ];
+    expect(applies(of(rational(1n), null), null)).toBe('yes');
+    expect(applies(of(rational(2n), null), null)).toBe('no');
+    // 2 nM in 1 fL are 1.2 molecules; 2 uM in 1 fL are 1204.
+    expect(applies(of(rational(1n), 'fL'), 'nM')).toBe('yes');
+    expect(applies(of(rational(1n), 'fL'), 'uM')).toBe('no');
+    // Molar amounts without a volume make no counts.
+    expect(applies([], 'uM')).toBe('undecided');
+  });
+
+  test('a weight is positive for every n or the verdict is open', () => {
+    const op = (operator: '+' | '-' | '*' | '/', left: Expression, right: Expression): Expression => ({
+      kind: 'binary',
+      operator,
+      left,
+      right,
+    });
+    const on = (weight: Expression): string =>
+      verdictOn({ ...buildNetwork('X <=> Y', { constants: [1, 1] }), weights: new Map([[0, weight]]) }, id)
+        .applies;
+    const whole = (value: number): Expression => ({ kind: 'number', value });
+    const half = op('/', whole(1), whole(2));
+    expect(on(op('+', whole(1), op('/', three, count)))).toBe('yes');
+    expect(on(op('-', count, half))).toBe('yes');
+    expect(on(op('-', count, whole(1)))).toBe('no');
+    // Zero at n = 300, beyond what is evaluated.
+    expect(on(op('*', count, op('-', whole(300), count)))).toBe('undecided');
+    // A constant without a value is not held against it.
+    const missing = { ...buildNetwork('X <=> Y'), weights: new Map([[0, op('*', name('k1'), count)]]) };
+    expect(verdictOn(missing, id).applies).toBe('undecided');
   });
 
   test('a weight whose growth cannot be read is left open', () => {

@@ -11,7 +11,7 @@ export const productForm: Theorem = {
   id: 'product-form',
   title: 'Stationary law of product form',
   statement:
-    'In counts, a mass-action network that is complex balanced at c has on every closed irreducible set the stationary law proportional to ∏ C_i^{x_i}/x_i!, C = V c; with weights θ_i in place of counts, x_i! becomes ∏ θ_i(j), provided the law can be normalised.',
+    'In counts, a mass-action network that is complex balanced at c has on every closed irreducible set the stationary law proportional to ∏ C_i^{x_i}/x_i!, C = V c molecules; with weights θ_i in place of counts, x_i! becomes ∏ θ_i(j), provided the law can be normalised.',
   citation: [
     sources.andersonCraciunKurtz2010,
     sources.cappellettiWiuf2016,
@@ -90,7 +90,7 @@ function conclusion(
   const factor = weighted
     ? '∏ C_i^{x_i}/∏_{j≤x_i} θ_i(j), θ_i(j) = j for species without a weight'
     : '∏ C_i^{x_i}/x_i!';
-  const law = `On every closed irreducible set Γ of counts the law proportional to ${factor}, C = V c at a complex-balanced state c, is the unique stationary one, and the process does not explode.`;
+  const law = `On every closed irreducible set Γ of counts the law proportional to ${factor}, C = V c molecules at a complex-balanced state c, is the unique stationary one, and the process does not explode.`;
   if (finite) {
     return `${law} Γ is finite here, because the network is conservative: the law is that product conditioned on Γ, so counts are in general neither independent nor of mean C.`;
   }

@@ -3,18 +3,19 @@ import { exactBalancedState } from '../../balance/exact-state.ts';
 import type { Rational } from '../../exact/index.ts';
 import { add, divide, equals, isZero, multiply, ONE, rational, ZERO } from '../../exact/index.ts';
 import type { TheoremContext } from '../context.ts';
+import { moleculesPerUnit } from './count-scale.ts';
 
 /** Single-site weights f(0) … f(upTo). */
 export type SiteWeights = readonly Rational[];
 
 /**
- * f(n) = C^n / ∏_{j≤n} θ(j) for a species, exactly, with C = V c at the complex-balanced state of `exactBalancedState` and
+ * f(n) = C^n / ∏_{j≤n} θ(j) for a species, exactly, with C = V c molecules at the complex-balanced state of `exactBalancedState` and
  * θ(j) = j where no weight is given. Null where C or a weight has no exact value, or a weight is not positive.
  */
 export function siteWeights(context: TheoremContext, species: number, upTo: number): SiteWeights | null {
   const state = exactBalancedState(context);
-  const volume = context.network.compartments[0]?.volume.exact ?? ONE;
-  if (state === null) return null;
+  const volume = moleculesPerUnit(context.network, context.structure.sourceSpecies[species]!);
+  if (state === null || volume === null) return null;
   const parameter = multiply(volume, state[species]!);
   const weight = context.network.weights.get(context.structure.sourceSpecies[species]!);
   const constant = (name: string): Rational | null =>

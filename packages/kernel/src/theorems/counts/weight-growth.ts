@@ -68,7 +68,8 @@ export function isSummable(
   return compare(divide(growth.slope, growth.limit), ONE) > 0;
 }
 
-function fractionOf(expression: Expression, names: ExactNames): Fraction | null {
+/** The quotient that an expression equals for all large n; null where it is none. */
+export function fractionOf(expression: Expression, names: ExactNames): Fraction | null {
   const constant = exactValue(expression, (name) => (name === 'n' ? null : names(name)));
   if (constant !== null) return { above: polynomial(constant), below: polynomial(ONE) };
   switch (expression.kind) {

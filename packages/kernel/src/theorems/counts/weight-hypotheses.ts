@@ -4,9 +4,12 @@ import { elementary, evaluate } from '@stillroom/shared/expression';
 import { balancedLogarithms } from '../../balance/balanced-state.ts';
 import { exactBalancedState } from '../../balance/exact-state.ts';
 import type { Rational } from '../../exact/index.ts';
+import { multiply, toDouble } from '../../exact/index.ts';
 import type { TheoremContext } from '../context.ts';
 import { massAction, NOT_FALLING } from '../hypotheses.ts';
+import { moleculesPerUnit } from './count-scale.ts';
 import { isSummable, weightGrowth } from './weight-growth.ts';
+import { positiveBeyond } from './weight-positive.ts';
 
 /** In counts: mass action with whole numbers of molecules, weights allowed. */
 export function countRates(context: TheoremContext): Hypothesis {
@@ -28,7 +31,7 @@ export function countRates(context: TheoremContext): Hypothesis {
   return { claim, text, holds: rates.holds, ...(witness === undefined ? {} : { witness }) };
 }
 
-/** Values of n for which a weight is checked to be positive. */
+/** Values of n for which a weight is evaluated; beyond, it has to be positive by its form. */
 const CHECKED = 200;
 
 /** One hypothesis for each weighted species: positive, and summable where its count is not bounded by a law. */
@@ -36,29 +39,29 @@ export function weightsSummable(context: TheoremContext): Hypothesis[] {
   return [...context.network.weights].flatMap(([written, weight]): Hypothesis[] => {
     const species = context.structure.sourceSpecies.indexOf(written);
     if (species < 0) return [];
-    const positive = firstNotPositive(context, weight);
-    const name = context.species[species]!;
-    if (positive !== null) {
-      return [
-        {
-          claim: 'weight summable',
-          text: `The weight of ${name} is positive for every n ≥ 1; at n = ${positive} it is not.`,
-          holds: false,
-        },
-      ];
-    }
-    return [summability(context, species, weight)];
+    const doubt = positivityDoubt(context, context.species[species]!, weight);
+    return [doubt ?? summability(context, species, weight)];
   });
 }
 
-function firstNotPositive(context: TheoremContext, weight: Expression): number | null {
+/** Null where the weight is positive for every n ≥ 1. */
+function positivityDoubt(context: TheoremContext, name: string, weight: Expression): Hypothesis | null {
+  const claim = 'weight summable';
+  const text = `The weight of ${name} is positive for every n ≥ 1`;
   for (let n = 1; n <= CHECKED; n++) {
-    const value = evaluate(weight, (name) =>
-      name === 'n' ? n : (constantNamed(context, name)?.value ?? NaN),
-    );
-    if (!(value > 0)) return n;
+    const missing: string[] = [];
+    const value = evaluate(weight, (constant) => {
+      const known = constant === 'n' ? n : constantNamed(context, constant)?.value;
+      if (known === undefined) missing.push(constant);
+      return known ?? NaN;
+    });
+    if (missing.length > 0) return { claim, text: `${text}; ${missing[0]} has no value.`, holds: null };
+    if (!(value > 0)) return { claim, text: `${text}; at n = ${n} it is not.`, holds: false };
   }
-  return null;
+  const exact = (constant: string): Rational | null => constantNamed(context, constant)?.exact ?? null;
+  return positiveBeyond(weight, exact, CHECKED)
+    ? null
+    : { claim, text: `${text}; this was seen up to n = ${CHECKED} only.`, holds: null };
 }
 
 function constantNamed(context: TheoremContext, name: string) {
@@ -93,16 +96,18 @@ function summability(context: TheoremContext, species: number, weight: Expressio
   return { claim, text, holds: isSummable(growth, c) };
 }
 
-/** c of a species that no conservation law touches: the same in every complex-balanced state. */
+/** C = V c of a species that no conservation law touches: the same in every complex-balanced state. */
 function parameterOf(
   context: TheoremContext,
   species: number,
 ): { exact: Rational | null; near: number } | null {
   const constants = context.exactConstants;
   const logarithms = constants && balancedLogarithms(context, constants);
-  if (logarithms === null) return null;
+  const scale = moleculesPerUnit(context.network, context.structure.sourceSpecies[species]!);
+  if (logarithms === null || scale === null) return null;
+  const exact = exactBalancedState(context)?.[species];
   return {
-    exact: exactBalancedState(context)?.[species] ?? null,
-    near: elementary.exp(logarithms[species]!),
+    exact: exact === undefined ? null : multiply(scale, exact),
+    near: toDouble(scale) * elementary.exp(logarithms[species]!),
   };
 }
