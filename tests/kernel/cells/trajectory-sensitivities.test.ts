@@ -124,3 +124,66 @@ test('sensitivities through events have the same bits by either backend', () => 
     evaluateTrajectory(network!, settings, { backend: 'wasm' }),
   );
 });
+
+describe('sensitivities of a start that follows constants', () => {
+  test('begin with its slope: A = 2b e^(−kt) with b = a²', () => {
+    const text = 'let a = 3, b = a^2\nA -> 0 | k = 0.7\nstart A = (2*b)\n';
+    const { times, sensitivities } = run(text, { until: 3, points: 7, sensitivities: true });
+    times.forEach((t, i) => {
+      const decay = Math.exp(-0.7 * t);
+      expect(sensitivities!['a']!['A']![i]).toBeCloseTo(4 * 3 * decay, 7);
+      expect(sensitivities!['b']!['A']![i]).toBeCloseTo(2 * decay, 7);
+      expect(sensitivities!['k']!['A']![i]).toBeCloseTo(-t * 18 * decay, 7);
+    });
+  });
+
+  test('of a value held constant too: A = e^(−Ct) with C = 2a', () => {
+    const text = 'let a = 0.4\nA + C -> C | 1\nstart A = 1\nfix C = (2*a)\n';
+    const { times, sensitivities } = run(text, { until: 3, points: 7, sensitivities: ['a'] });
+    times.forEach((t, i) => {
+      expect(sensitivities!['a']!['A']![i]).toBeCloseTo(-2 * t * Math.exp(-0.8 * t), 7);
+      expect(sensitivities!['a']!['C']![i]).toBe(2);
+    });
+  });
+
+  test('are 0 at the start where it has a value of its own', () => {
+    const text = 'let a = 3\nA -> 0 | 0.7\nstart A = (2*a)\n';
+    const { sensitivities } = run(text, { until: 1, points: 2, sensitivities: ['a'], start: { A: 6 } });
+    expect(sensitivities!['a']!['A']).toEqual([0, 0]);
+  });
+});
+
+describe('a law that jumps', () => {
+  const warningsOf = (text: string, sensitivities: true | string[] | false = true): string[] => {
+    const warnings: string[] = [];
+    const { network } = readNetwork(text);
+    evaluateTrajectory(
+      network!,
+      { network: 'n', until: 1, points: 2, sensitivities },
+      { warn: (words) => void warnings.push(words) },
+    );
+    return warnings;
+  };
+
+  test('where the state is, is told with its line and condition', () => {
+    const text = '# a switch\nS -> P | law = k*if(S > c, 1, 0.5)\nlet k = 0.3, c = 1\nstart S = 2\n';
+    expect(warningsOf(text)).toEqual([expect.stringContaining('the law of line 2 (S > c)') as string]);
+    expect(warningsOf(text, false)).toEqual([]);
+  });
+
+  test('by rounding, by a remainder, by an output, or in a rate of its own', () => {
+    const told = (law: string) =>
+      warningsOf(`S -> P | law = k*${law}\nlet k = 0.3, twice = 2*S\nstart S = 2\n`);
+    for (const law of ['floor(S)', '(S % 2)', 'if(twice > 1, 1, 2)']) expect(told(law)).toHaveLength(1);
+    for (const law of ['min(S, 1)', 'max(S, 1)', 'abs(S)', 'hill(S, 1, 2)', 'if(t < 1, 1, 2)'])
+      expect(told(law)).toEqual([]);
+    const own = 'rate X = if(X > 1, a, 0)\nA -> 0 | k = 1\nlet a = 1\n';
+    expect(warningsOf(own)[0]).toContain('the rate of X (X > 1)');
+  });
+
+  test('at a time that a constant sets counts for that constant alone', () => {
+    const text = 'A -> 0 | law = k*if(t < tau, 1, 2)*A\nlet k = 1, tau = 0.5\nstart A = 1\n';
+    expect(warningsOf(text, ['k'])).toEqual([]);
+    expect(warningsOf(text, ['tau'])).toHaveLength(1);
+  });
+});

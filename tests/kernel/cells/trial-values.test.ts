@@ -109,3 +109,32 @@ describe('an arrow whose constant is 0', () => {
     expect(warnings).toEqual(['Left out, because their constants are 0: B -> A (q = 0) and B -> C (r = 0).']);
   });
 });
+
+describe('a start that draws on constants', () => {
+  const text = (a: string) =>
+    `let a = ${a}, b = a/3\nA + C -> B + C | 0.3\nstart A = (2*b), B = 1\nfix C = (a^2)\n`;
+  const settings = { until: 2, points: 5 };
+
+  test('and a fixed value follow a trial value to the same bits as the text would give', () => {
+    const tried = run(text('1'), { ...settings, constants: { a: 0.1 } });
+    expect(tried).toEqual(run(text('0.1'), settings));
+    expect(species(tried)['A']![0]).toBe(2 * (0.1 / 3));
+    expect(species(tried)['C']![4]).toBe(0.01);
+  });
+
+  test('has its own trial value where it is given one', () => {
+    const tried = run(text('1'), { ...settings, constants: { a: 0.1 }, start: { A: 9 } });
+    expect(species(tried)['A']![0]).toBe(9);
+    expect(species(tried)['C']![0]).toBe(0.01);
+  });
+
+  test('that becomes negative or no finite number is refused by name', () => {
+    const negative = 'let a = 3\nA -> 0 | 1\nstart A = (a - 2)\n';
+    expect(() => run(negative, { until: 1, constants: { a: 1 } })).toThrow(
+      'With these constants the value of A, a - 2, is negative.',
+    );
+    expect(() => run('let a = 3\nA -> 0 | 1\nstart A = (1/a)\n', { until: 1, constants: { a: 0 } })).toThrow(
+      'With these constants the value of A, 1/a, is not a finite number.',
+    );
+  });
+});

@@ -14,6 +14,7 @@ import {
   rateEquations,
   RateError,
   resolveValues,
+  sensitivityJumps,
   type SensitivityPlan,
   startsFunction,
   startsOf,
@@ -61,6 +62,8 @@ export function evaluateTrajectory(
   const equations = rateEquations(network, values, { kept, checkpoint });
   if (equations.dropped.length > 0) options.warn?.(droppedInWords(network, equations.dropped));
   const plan = sensitivityPlan(network, equations, sensitiveTo);
+  if (sensitiveTo.length > 0)
+    warnOfJumps(network, [...sensitiveTo, ...values.derivations.followers(sensitiveTo)], options);
   const events = compileEvents(network, equations, plan);
   const outputs = network.outputs.map(({ name }) => equations.resolve(name)!);
   equations.requireValues();
@@ -77,8 +80,9 @@ export function evaluateTrajectory(
   });
   const start = new Float64Array(system.dimension);
   equations.variables.forEach((species, variable) => (start[variable] = values.start[species]!));
+  const parameters = startParameters(equations, plan, prepared, start);
 
-  const course = new Course(network, equations, prepared, sensitiveTo);
+  const course = new Course(network, equations, prepared, plan);
   const laws = new ConservationWatch(
     conservationLawsOf(network, equations.volumes, checkpoint),
     network,
@@ -89,7 +93,7 @@ export function evaluateTrajectory(
   const outcome = solve(prepared, {
     start,
     until,
-    parameters: startParameters(equations, plan, prepared),
+    parameters,
     times,
     method,
     relativeTolerance: settings.rtol ?? defaultRelativeTolerance,
@@ -121,18 +125,36 @@ function sensitivityPlan(
   return planSensitivities(equations, sensitiveTo, settable, network.events.length > 0);
 }
 
-/** The values of all parameters at the start: those of the equations, then those of the sensitivities. */
+/**
+ * The values of all parameters at the start: those of the equations, then those of the sensitivities. Puts what
+ * sensitivities begin with into `start`.
+ */
 function startParameters(
   { parameterValues }: RateEquations,
   plan: SensitivityPlan,
   prepared: PreparedSystem,
+  start: Float64Array,
 ): Float64Array {
-  if (plan.parameters === 0) return parameterValues;
+  if (plan.starts.length === 0) return parameterValues;
   const all = new Float64Array(parameterValues.length + plan.parameters);
   all.set(parameterValues);
   prepared.setParameters(all);
-  all.set(prepared.evaluate(startsFunction, 0, prepared.common.state), parameterValues.length);
+  const values = prepared.evaluate(startsFunction, 0, prepared.common.state);
+  all.set(values.subarray(0, plan.parameters), parameterValues.length);
+  plan.startPlaces.forEach((place, index) => (start[place] = values[plan.parameters + index]!));
   return all;
+}
+
+/** Tells what sensitivities leave out where a rate jumps. */
+function warnOfJumps(network: Network, by: readonly number[], { warn }: TrajectoryOptions): void {
+  const jumps = sensitivityJumps(network, new Set(by));
+  if (jumps.length === 0) return;
+  const shown = jumps.slice(0, 3).map(({ where, what }) => `${where} (${what})`);
+  const more = jumps.length > shown.length ? ` and ${jumps.length - shown.length} more` : '';
+  warn?.(
+    `Sensitivities leave out what a jump adds: ${shown.join(', ')}${more} may jump at a moment that the constants move. ` +
+      'They hold until then, and where both sides meet. Write the jump as an `event` to have it counted.',
+  );
 }
 
 function result(

@@ -45,6 +45,8 @@ export interface RateEquations {
   readonly parameterValues: Float64Array;
   /** Which constants follow others. */
   readonly derivations: Derivations;
+  /** How starts and fixed values of species follow constants. */
+  readonly startFrom: ReadonlyMap<number, Expression>;
   /** The volume of each compartment. */
   readonly volumes: readonly number[];
   /** Reactions left out because their constant is 0. */
@@ -55,6 +57,8 @@ export interface RateEquations {
   expression(expression: Expression): Node;
   /** Where a named number stands that an event may set: a species or a constant. */
   target(name: string): Target | null;
+  /** The parameter that holds a species which is held constant. */
+  fixedParameter(species: number): number;
   /** The node of a parameter. */
   parameterNode(parameter: number): Node;
   /** Throws a RateError that names every constant used so far that has no value. */
@@ -92,11 +96,13 @@ export function rateEquations(
     time: graph.load(timeSlot),
     parameterValues: names.parameterValues,
     derivations: values.derivations,
+    startFrom: values.startFrom,
     volumes: compartmentVolumes(network, values.constants),
     dropped,
     resolve: (name) => names.resolve(name),
     expression: (expression) => expressionNode(graph, expression, (name) => names.resolve(name)),
     target: (name) => names.target(name),
+    fixedParameter: (species) => names.parameterOfFixed(species),
     parameterNode: (parameter) => graph.load(parameterSlot(parameter)),
     requireValues: () => names.requireValues(),
   };

@@ -7,9 +7,10 @@ import type { Derivations } from './derivations.ts';
 import { type RateEquations, slopesOf } from './equations.ts';
 import { RateError } from './error.ts';
 import { expressionNode } from './expression.ts';
+import type { NamedNodes } from './named-nodes.ts';
 import type { Target } from './names.ts';
 import { along, type Direction, noSensitivities, type SensitivityPlan } from './sensitivities.ts';
-import { flow, type NamedNodes } from './system.ts';
+import { flow } from './system.ts';
 
 /** Events as the solver wants them, and the functions that they need of the system. */
 export interface CompiledEvents {

@@ -6,11 +6,14 @@ export { compileEvents, constantsSetByEvents, parametersSetByEvents } from './ev
 export type { CompiledEvents } from './events.ts';
 export { expressionNode } from './expression.ts';
 export { compartmentOfSpecies, crossesCompartments } from './compartments.ts';
+export type { RateJump } from './jumps.ts';
+export { sensitivityJumps } from './jumps.ts';
 export { members, netCoefficients } from './mass-action.ts';
 export type { Member } from './mass-action.ts';
+export type { NamedNodes } from './named-nodes.ts';
 export { noSensitivities, planSensitivities, startsFunction, startsOf } from './sensitivities.ts';
 export type { Direction, SensitivityPlan } from './sensitivities.ts';
 export { odeSystem } from './system.ts';
-export type { NamedNodes, SystemOptions } from './system.ts';
+export type { SystemOptions } from './system.ts';
 export { list, resolveValues } from './values.ts';
 export type { Overrides, Values } from './values.ts';

@@ -68,6 +68,11 @@ export class NameTable {
     return { kind: 'parameter', index: this.fixedParameter.get(species)! };
   }
 
+  /** The parameter of a species that is held constant. */
+  parameterOfFixed(species: number): number {
+    return this.fixedParameter.get(species)!;
+  }
+
   species(species: number): Node {
     const parameter = this.fixedParameter.get(species);
     if (parameter !== undefined) return this.graph.load(parameterSlot(parameter));

@@ -1,7 +1,7 @@
 import { parameterSlot } from '../ode/problem.ts';
 import { gradient, type Node, spaces } from '../program/index.ts';
 import { type RateEquations, type Slope, slopesOf } from './equations.ts';
-import type { NamedNodes } from './system.ts';
+import type { NamedNodes } from './named-nodes.ts';
 
 /** How everything that a constant moves moves with it. */
 export interface Direction {
@@ -20,11 +20,18 @@ export interface SensitivityPlan {
   readonly directions: readonly Direction[];
   /** Parameters that it needs besides those of the equations, which they follow. */
   readonly parameters: number;
-  /** The start values of those parameters, in order. */
+  /** The start values of those parameters, in order, then those of `startPlaces`. */
   readonly starts: readonly Node[];
+  /** Places of the state whose start is not 0: derivatives of starts that follow constants. */
+  readonly startPlaces: readonly number[];
 }
 
-export const noSensitivities: SensitivityPlan = { directions: [], parameters: 0, starts: [] };
+export const noSensitivities: SensitivityPlan = {
+  directions: [],
+  parameters: 0,
+  starts: [],
+  startPlaces: [],
+};
 
 /** The name under which a system offers the start values of a plan's parameters. */
 export const startsFunction = 'sensitivity starts';
@@ -57,20 +64,49 @@ export function planSensitivities(
     const timeShift = hasEvents ? first + starts.push(graph.constant(0)) - 1 : -1;
     return { by: parameter, moved, rateOf, timeShift };
   });
-  return { directions, parameters: starts.length, starts };
+  const parameters = starts.length;
+  const startPlaces = by.flatMap((parameter, k) =>
+    [...startSlopes(equations, parameter)].map(([variable, slope]) => {
+      starts.push(slope);
+      return equations.variables.length * (1 + k) + variable;
+    }),
+  );
+  return { directions, parameters, starts, startPlaces };
 }
 
-/** ∂q/∂p at the start for every constant q that moves with p. */
+/** ∂x/∂p at the start for every variable whose start follows the constant. */
+function startSlopes(equations: RateEquations, parameter: number): Map<number, Node> {
+  const rates = startRates(equations, parameter);
+  const slopes = new Map<number, Node>();
+  for (const [species, expression] of equations.startFrom) {
+    const variable = equations.variableOf[species]!;
+    const slope = variable < 0 ? null : rateAlong(equations, equations.expression(expression), rates);
+    if (slope !== null) slopes.set(variable, slope);
+  }
+  return slopes;
+}
+
+/** The derivative of a node by what moves, null where it reads none of it. */
+function rateAlong(equations: RateEquations, node: Node, rates: ReadonlyMap<number, Node>): Node | null {
+  const { graph } = equations;
+  let rate: Node | null = null;
+  for (const [source, slope] of parameterSlopes(equations, node, new Set(rates.keys())))
+    rate = graph.add(rate ?? graph.constant(0), graph.multiply(slope, rates.get(source)!));
+  return rate;
+}
+
+/** ∂q/∂p at the start for every constant, and every species held constant, q that moves with p. */
 function startRates(equations: RateEquations, parameter: number): Map<number, Node> {
   const { graph, derivations } = equations;
   const rates = new Map<number, Node>([[parameter, graph.constant(1)]]);
   for (const follower of derivations.followers([parameter])) {
     const node = equations.expression(derivations.expression(follower)!);
-    let rate = graph.constant(0);
-    for (const [source, slope] of parameterSlopes(equations, node, new Set(rates.keys()))) {
-      rate = graph.add(rate, graph.multiply(slope, rates.get(source)!));
-    }
-    rates.set(follower, rate);
+    rates.set(follower, rateAlong(equations, node, rates) ?? graph.constant(0));
+  }
+  for (const [species, expression] of equations.startFrom) {
+    if (equations.variableOf[species]! >= 0) continue;
+    const rate = rateAlong(equations, equations.expression(expression), rates);
+    if (rate !== null) rates.set(equations.fixedParameter(species), rate);
   }
   return rates;
 }

@@ -10,6 +10,7 @@ import {
   spaces,
 } from '../program/index.ts';
 import { type Change, type RateEquations, slopesOf, type Term } from './equations.ts';
+import type { NamedNodes } from './named-nodes.ts';
 import { along, noSensitivities, type SensitivityPlan } from './sensitivities.ts';
 
 /** About how many operations one routine holds; longer ones are slow to compile. */
@@ -17,12 +18,6 @@ const tapeLimit = 3000;
 
 /** Systems of fewer terms are built at once. */
 const manyTerms = 1000;
-
-/** A further function of state and time: one node for each number. */
-export interface NamedNodes {
-  readonly name: string;
-  readonly nodes: readonly Node[];
-}
 
 /** How a system is built from equations. */
 export interface SystemOptions {

@@ -1,4 +1,10 @@
-import { evaluate, exactValue, freeNames, printExpression } from '@stillroom/shared/expression';
+import {
+  evaluate,
+  exactValue,
+  type Expression,
+  freeNames,
+  printExpression,
+} from '@stillroom/shared/expression';
 import { type Network, rational, type Rational } from '@stillroom/shared/network';
 import { Derivations } from './derivations.ts';
 import { RateError } from './error.ts';
@@ -15,6 +21,8 @@ export interface Values {
   readonly start: Float64Array;
   /** Which constants follow others; one with a trial value of its own does not. */
   readonly derivations: Derivations;
+  /** How starts and fixed values of species follow constants; one with a trial value of its own does not. */
+  readonly startFrom: ReadonlyMap<number, Expression>;
 }
 
 /**
@@ -33,22 +41,47 @@ export function resolveValues(network: Network, overrides: Overrides): Values {
     given.add(index);
   });
   const derivations = new Derivations(network.constants, given);
-  follow(network, derivations, given, constants);
+  const compute = follow(network, derivations, given, constants);
+  const startFrom = new Map<number, Expression>();
+  for (const [species, { expression }] of [...network.start, ...network.fixed]) {
+    if (expression !== undefined) startFrom.set(species, expression);
+  }
   put('start', 'species', overrides.start ?? {}, network.species, (index, value) => {
     start[index] = value;
+    startFrom.delete(index);
   });
-  return { constants, start, derivations };
+  if (given.size > 0) {
+    for (const [species, expression] of startFrom)
+      start[species] = startValue(network.species[species]!, expression, compute);
+  }
+  return { constants, start, derivations, startFrom };
 }
 
-/** Computes anew, exactly where that can be and rounded once, what is derived from the `given` constants. */
+/** The value of a species at the start that follows constants. */
+function startValue(name: string, expression: Expression, compute: Compute): number {
+  const { number } = compute(expression) ?? { number: NaN };
+  if (number >= 0 && Number.isFinite(number)) return number;
+  const what = Number.isFinite(number) ? 'negative' : 'not a finite number';
+  throw new RateError(
+    `With these constants the value of ${name}, ${printExpression(expression)}, is ${what}.`,
+  );
+}
+
+/** The value of an expression with the present constants, null where one of them has none. */
+type Compute = (
+  expression: Expression,
+) => { readonly exact: Rational | null; readonly number: number } | null;
+
+/**
+ * Computes anew, exactly where that can be and rounded once, what is derived from the `given` constants; returns how
+ * anything else that follows constants is computed.
+ */
 function follow(
   network: Network,
   derivations: Derivations,
   given: ReadonlySet<number>,
   constants: (number | null)[],
-): void {
-  const followers = derivations.followers(given);
-  if (followers.length === 0) return;
+): Compute {
   const places = new Map(network.constants.map(({ name }, index) => [name, index]));
   const exact = new Map<number, Rational | null>();
   for (const index of given) exact.set(index, rational.ofDecimal(String(constants[index])));
@@ -57,28 +90,29 @@ function follow(
     const known = exact.get(index);
     return known === undefined ? (network.constants[index]?.quantity?.exact ?? null) : known;
   };
-  for (const index of followers) {
-    const expression = derivations.expression(index)!;
-    const value = exactValue(expression, exactOf);
-    exact.set(index, value);
+  const compute: Compute = (expression) => {
     const missing = freeNames(expression).some(
       (name) => (constants[places.get(name) ?? -1] ?? null) === null,
     );
-    if (missing) {
-      constants[index] = null;
-      continue;
-    }
+    if (missing) return null;
+    const value = exactValue(expression, exactOf);
     const number =
       value === null
         ? evaluate(expression, (name) => constants[places.get(name)!]!)
         : rational.toNumber(value);
-    if (!Number.isFinite(number)) {
-      throw new RateError(
-        `With these constants ${network.constants[index]!.name} = ${printExpression(expression)} is not a finite number.`,
-      );
-    }
-    constants[index] = number;
+    return { exact: value, number };
+  };
+  for (const index of derivations.followers(given)) {
+    const expression = derivations.expression(index)!;
+    const value = compute(expression);
+    exact.set(index, value?.exact ?? null);
+    constants[index] = value?.number ?? null;
+    if (value === null || Number.isFinite(value.number)) continue;
+    throw new RateError(
+      `With these constants ${network.constants[index]!.name} = ${printExpression(expression)} is not a finite number.`,
+    );
   }
+  return compute;
 }
 
 function put(

@@ -7,6 +7,7 @@ export type {
   NetworkRow,
   NetworkUnits,
   Quantity,
+  StartQuantity,
   RateLaw,
   Rational,
   ReactionTable,

@@ -16,6 +16,11 @@ export interface Quantity {
   readonly exact: Rational | null;
 }
 
+/** The value of a species; `expression` where it is derived from constants, so that it follows trial values of them. */
+export interface StartQuantity extends Quantity {
+  readonly expression?: Expression;
+}
+
 /**
  * Complexes in order of first appearance, as compressed rows: complex i holds the species
  * `species[offsets[i] .. offsets[i+1]-1]` (ascending within a complex) with coefficient
@@ -115,9 +120,9 @@ export interface Network {
   readonly constants: readonly Constant[];
   readonly laws: readonly RateLaw[];
   /** Start values by species index; absent means 0. */
-  readonly start: ReadonlyMap<number, Quantity>;
+  readonly start: ReadonlyMap<number, StartQuantity>;
   /** Species held constant by `fix`, by species index. */
-  readonly fixed: ReadonlyMap<number, Quantity>;
+  readonly fixed: ReadonlyMap<number, StartQuantity>;
   /** `let` of species or `t`: outputs in order of writing. */
   readonly outputs: readonly { readonly name: string; readonly expression: Expression }[];
   /** Weight of a species as an expression in `n`, by species index; absent means mass action. */

@@ -26,3 +26,19 @@ test('a value derived from one that the text leaves open has its expression and 
   expect(q.quantity).toBeNull();
   expect(printExpression(q.expression!)).toBe('2*k');
 });
+
+test('a start or a fixed value that draws on constants has its expression, a plain one has none', () => {
+  const { network } = readNetwork(
+    'let a = 3, b = 2*a\nA + B + C -> 0 | k = 1\nstart A = (2*b), B = 4\nfix C = (a + 1)\n',
+  );
+  const shown = [...network!.start, ...network!.fixed].map(([species, { value, expression }]) => [
+    network!.species[species],
+    value,
+    expression === undefined ? null : printExpression(expression),
+  ]);
+  expect(shown).toEqual([
+    ['A', 12, '2*b'],
+    ['B', 4, null],
+    ['C', 4, 'a + 1'],
+  ]);
+});

@@ -32,6 +32,22 @@ describe('units', () => {
     expect(networkOf('A + B -> C | k = 1 L/mol/s\nstart A = 1 M').units.amount).toBe('mol/L');
   });
 
+  test('a flow in a law is no amount: a bare volume counts only where an amount must stand', () => {
+    const text = 'volume cell = 2 L, sea = 9 L\nin sea: B\nA -> B | law = (0.5 L/s)*A\nstart A = 3 mM\n';
+    const network = networkOf(text);
+    expect(network.units).toEqual({ time: 's', amount: 'mM', volume: 'L' });
+    expect([...network.start.values()].map(({ value }) => value)).toEqual([3]);
+    expect(networkOf('A -> 0 | law = (2 mL/h)*A/(3 L)\nA -> B | k = 1 /h\nstart A = 5 uM').units).toEqual({
+      time: 'h',
+      amount: 'uM',
+      volume: null,
+    });
+    // Numbers per volume, where an amount must stand.
+    expect(networkOf('A + B -> C | k = 1 L/s\nstart A = 4 /L').units.amount).toBe('/L');
+    // A mass in a law tells an amount, as ever.
+    expect(networkOf('0 -> A | law = (2 g/L/h)').units.amount).toBe('g/L');
+  });
+
   test('M and mol/L are the same; prefixes and µ in any spelling too', () => {
     const network = networkOf(
       '0 -> A | a = 1 uM/s\n0 -> A | b = 1 µM/s\n0 -> A | c = 1 μM/s\n0 -> A | d = 1 umol/L/s',

@@ -1,11 +1,12 @@
 import { rational } from '../../network/index.ts';
 import type { NetworkUnits, Rational } from '../../network/network.ts';
 import { walkSyntax } from '../../expression/names.ts';
+import type { ExpressionSyntax } from '../../expression/syntax.ts';
 import { dimensionNames } from '../../units/table.ts';
 import { dimensionOf, printUnit, scaleOf, unitOf, unitPower, unitProduct } from '../../units/unit.ts';
 import type { Dimension } from '../../units/table.ts';
 import type { Unit } from '../../units/unit.ts';
-import type { NetworkTree } from '../ast.ts';
+import type { LineSyntax, NetworkTree } from '../ast.ts';
 import { valuesOf } from './line-values.ts';
 
 const TIME = dimensionNames.indexOf('time');
@@ -43,12 +44,12 @@ export class ResultUnits {
     let volume: Unit | null = null;
     for (const line of tree.lines) {
       if (time && amount && line.kind !== 'volume') continue;
-      for (const value of valuesOf(line)) {
+      for (const { value, keys } of placesOf(line)) {
         walkSyntax(value, (part) => {
           if (part.kind !== 'measured') return;
           time ??= timeIn(part.unit);
           if (line.kind === 'volume') volume ??= part.unit;
-          else amount ??= amountIn(part.unit, line.kind !== 'let');
+          else amount ??= amountIn(part.unit, keys);
         });
       }
     }
@@ -135,15 +136,34 @@ function keyDimension(unit: Unit): number {
   return [...AMOUNTS, MASS, LENGTH].find((i) => powers[i] !== 0) ?? LENGTH;
 }
 
+/** The values of a line, each with the dimensions that tell an amount there. */
+function placesOf(line: LineSyntax): { value: ExpressionSyntax; keys: readonly number[] }[] {
+  if (line.kind === 'row') {
+    return line.items.flatMap(({ kind, value }) =>
+      value ? [{ value, keys: kind === 'law' || kind === 'net' ? inLaws : anywhere }] : [],
+    );
+  }
+  const keys =
+    line.kind === 'let' ? AMOUNTS : line.kind === 'start' || line.kind === 'fix' ? anywhere : inLaws;
+  return valuesOf(line).map((value) => ({ value, keys }));
+}
+
+/**
+ * What tells an amount: where one must stand (rate constants, starts, fixed values) also a bare volume, "/L" being a number
+ * per volume; in laws, rates and events, where "L/s" is a flow, only a mass besides; in a `let` neither.
+ */
+const inLaws = [...AMOUNTS, MASS];
+const anywhere = [...inLaws, LENGTH];
+
 /**
  * The amount unit that a unit holds: what is left without time, to the power that makes it an amount. From "/uM/s" that is
- * uM, from "mL/cells/d" cells/mL. Masses and bare volumes count only where an amount must stand (`strictly`).
+ * uM, from "mL/cells/d" cells/mL. Null where its key is none of `keys`.
  */
-function amountIn(unit: Unit, strictly: boolean): Unit | null {
+function amountIn(unit: Unit, keys: readonly number[]): Unit | null {
   const rest = unit.filter(({ symbol }) => dimensionOf([{ symbol, power: 1 }])[TIME] === 0);
   const powers = dimensionOf(rest);
   const key = keyDimension(rest);
-  if (!strictly && !AMOUNTS.includes(key)) return null;
+  if (!keys.includes(key)) return null;
   const power = key === LENGTH ? -(powers[key] ?? 0) / 3 : (powers[key] ?? 0);
   const factors = rest.map((factor) => ({ symbol: factor.symbol, power: factor.power / power }));
   const sound = rest.length > 0 && factors.every((factor) => Number.isInteger(factor.power));

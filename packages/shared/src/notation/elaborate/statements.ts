@@ -1,5 +1,5 @@
 import type { Expression } from '../../expression/expression.ts';
-import type { Compartment, Network, NetworkEvent, Quantity } from '../../network/network.ts';
+import type { Compartment, Network, NetworkEvent, StartQuantity } from '../../network/network.ts';
 import type { AssignmentSyntax, EventSyntax, LineSyntax, PlaceSyntax } from '../ast.ts';
 import { nameOfTarget } from '../parse-names.ts';
 import { Failure } from '../failure.ts';
@@ -38,8 +38,8 @@ export function elaborateStatements(
 }
 
 class StatementReader {
-  readonly start = new Map<number, Quantity>();
-  readonly fixed = new Map<number, Quantity>();
+  readonly start = new Map<number, StartQuantity>();
+  readonly fixed = new Map<number, StartQuantity>();
   readonly weights = new Map<number, Expression>();
   readonly rateRules = new Map<number, Expression>();
   readonly events: NetworkEvent[] = [];
@@ -91,7 +91,7 @@ class StatementReader {
   private readAmounts(kind: 'start' | 'fix', items: readonly AssignmentSyntax[]): void {
     const own = kind === 'start' ? this.start : this.fixed;
     // A family whose value is one decimal reads it once.
-    let last: { item: AssignmentSyntax; quantity: Quantity } | null = null;
+    let last: { item: AssignmentSyntax; quantity: StartQuantity } | null = null;
     this.forEachSpecies(items, (species, item, outer) => {
       if (
         this.taken(this.start, species, item, 'start') ||
@@ -102,7 +102,7 @@ class StatementReader {
       let quantity = last?.item === item ? last.quantity : null;
       if (!quantity) {
         this.amounts.push({ species: this.stage.species.nameOf(species), value: item.value, scope });
-        quantity = this.stage.values.quantity(item.value, scope);
+        quantity = this.stage.values.derivedQuantity(item.value, scope);
         if (item.value.kind === 'number' || item.value.kind === 'measured') {
           last = item.value.kind === 'number' || item.value.of.kind === 'number' ? { item, quantity } : null;
         }

@@ -3,7 +3,7 @@ import { exactValue } from '../../expression/exact.ts';
 import type { Expression } from '../../expression/expression.ts';
 import { freeNames } from '../../expression/names.ts';
 import type { ExpressionSyntax, Span } from '../../expression/syntax.ts';
-import type { Quantity } from '../../network/network.ts';
+import type { Quantity, StartQuantity } from '../../network/network.ts';
 import { rational } from '../../network/index.ts';
 import type { Complaints } from '../complaints.ts';
 import { Failure } from '../failure.ts';
@@ -78,6 +78,14 @@ export class Values {
         throw new Failure(syntax.from, syntax.to, `${name} has no value, which is needed here.`);
     }
     return this.compute(expression, syntax);
+  }
+
+  /** The same with how it is derived, where it is. Throws Failure where it cannot be computed. */
+  derivedQuantity(syntax: ExpressionSyntax, scope: Scope): StartQuantity {
+    const quantity = this.quantity(syntax, scope);
+    if (syntax.kind === 'number') return quantity;
+    const expression = this.resolver.resolve(syntax, scope);
+    return freeNames(expression).length === 0 ? quantity : { ...quantity, expression };
   }
 
   /** Decimals with or without unit, by far the most values, without a tree. */
