@@ -35,7 +35,7 @@ function judged(hypotheses: readonly Hypothesis[], weight: string | null): Judge
     hypotheses,
     conclusion: {
       yes: `The weight ∏ w_i(n_i) z_i^{n_i} is stationary in continuous time${weight === null ? '' : `, with ${weight}`}. Where the sum of the weights over the counts that can be reached is finite, it gives the stationary law there.`,
-      no: 'The theorem does not apply. It does not follow that no product is stationary; only on the homogeneous one-way ring is the condition necessary.',
+      no: 'The theorem does not apply. It does not follow that no product is stationary: on a general graph the condition is sufficient, not necessary. For the homogeneous one-way ring Evans, Majumdar, Zia 2004 show that it is necessary as well.',
       undecided: 'Undecided; the hypotheses that are open are marked.',
     }[applies],
     silentOn:
