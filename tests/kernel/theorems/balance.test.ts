@@ -35,6 +35,18 @@ describe('complex balance', () => {
     expectSilence(judgeOtherLaw(id, 'A <=> B'), /not complex balanced/);
   });
 
+  test('a law that leads to another compartment is an amount per time, so the constants are not compared', () => {
+    const plain = buildNetwork(triangle, { constants: [1, 2, 4] });
+    const volume = { value: 1, exact: { numerator: 1n, denominator: 1n } };
+    const compartments = [
+      { name: 'V', volume, unit: null, species: [] },
+      { name: 'W', volume, unit: null, species: [1] },
+    ];
+    const verdict = verdictOn({ ...plain, compartments }, id);
+    expect(verdict.applies).toBe('undecided');
+    expect(verdict.conclusion).toContain('from one compartment to another');
+  });
+
   test('undecided while values are missing, and it names one', () => {
     const verdict = judge(id, triangle, { constants: [1, 2] });
     expect(verdict.applies).toBe('undecided');

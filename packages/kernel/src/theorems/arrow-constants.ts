@@ -1,6 +1,7 @@
-import type { Quantity, Rational } from '@stillroom/shared/network';
+import type { Network, Quantity, Rational } from '@stillroom/shared/network';
 import { add, equals, isZero, multiply, ONE, power, sign, ZERO } from '../exact/index.ts';
 import type { StructuralNetwork } from '../network/index.ts';
+import { compartmentOfSpecies, crossesCompartments } from '../rates/compartments.ts';
 
 /** The mass-action constant of every arrow: equal rows added, the powers of fixed species multiplied in. */
 export interface ArrowConstants {
@@ -35,9 +36,15 @@ export function arrowConstants(structure: StructuralNetwork): ArrowConstants {
   const labels: string[][] = values.map(() => []);
   const parts: { name: string; arrow: number; value: Rational | null }[] = [];
   let why: string | null = null;
+  const { source } = structure;
+  const places = source.compartments.length > 1 ? compartmentOfSpecies(source) : null;
   for (let reaction = 0; reaction < structure.reactions.count; reaction++) {
     const arrow = structure.reactions.arrow[reaction]!;
-    const { name, label, value, problem } = constantOf(structure, structure.reactions.source[reaction]!);
+    const { name, label, value, problem } = constantOf(
+      structure,
+      structure.reactions.source[reaction]!,
+      places,
+    );
     labels[arrow]!.push(label);
     parts.push({ name, arrow, value });
     why ??= problem;
@@ -60,7 +67,11 @@ interface NamedConstant {
   readonly problem: string | null;
 }
 
-function constantOf({ source }: StructuralNetwork, reaction: number): NamedConstant {
+function constantOf(
+  { source }: StructuralNetwork,
+  reaction: number,
+  places: Int32Array | null,
+): NamedConstant {
   const law = source.reactions.law[reaction]!;
   const index = law < 0 ? source.reactions.constant[reaction]! : (source.laws[law]?.massAction ?? -1);
   const constant = source.constants[index];
@@ -75,6 +86,12 @@ function constantOf({ source }: StructuralNetwork, reaction: number): NamedConst
     };
   }
   const { name } = constant;
+  if (places !== null && crossesCompartments(places, speciesOf(source, reaction))) {
+    // Its constant goes with concentrations of one volume and changes those of another.
+    const line = source.rows[source.reactions.row[reaction]!]?.line;
+    const problem = `line ${line} leads from one compartment to another, where a law gives an amount per time`;
+    return { name, label: name, value: null, problem };
+  }
   let label = name;
   let { value, problem } = valueOf(constant.quantity, name);
   const { complexes } = source;
@@ -92,6 +109,12 @@ function constantOf({ source }: StructuralNetwork, reaction: number): NamedConst
     if (value === null) problem ??= `${heldName} enters with a power that is not a whole number`;
   }
   return { name, label, value, problem };
+}
+
+function speciesOf({ complexes, reactions }: Network, reaction: number): number[] {
+  return [reactions.from[reaction]!, reactions.to[reaction]!].flatMap((complex) =>
+    Array.from(complexes.species.subarray(complexes.offsets[complex], complexes.offsets[complex + 1])),
+  );
 }
 
 function raise(value: Rational, base: Rational, exponent: number): Rational | null {

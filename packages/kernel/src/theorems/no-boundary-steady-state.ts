@@ -10,7 +10,8 @@ import { appliesWhenAllHold } from './theorem.ts';
 export const noBoundarySteadyState: Theorem = {
   id: 'no-boundary-steady-state',
   title: 'No steady state on the boundary',
-  statement: 'Without critical siphon no positive class has a steady state in which a species is at zero.',
+  statement:
+    'Without critical siphon, and with rates that are positive exactly when all reactants are present, no positive class has a steady state in which a species is at zero.',
   citation: [sources.angeliDeLeenheerSontag2007],
   kinetics: 'general',
   judge(context) {

@@ -8,7 +8,7 @@ export const persistence: Theorem = {
   id: 'persistence',
   title: 'Persistence',
   statement:
-    'In a conservative network without critical siphon no species tends to zero, not even along a sequence of times, from a positive start.',
+    'In a conservative network without critical siphon, whose rates are positive exactly when all reactants are present and do not fall when one is added, no species tends to zero from a positive start, not even along a sequence of times.',
   citation: [sources.angeliDeLeenheerSontag2007],
   kinetics: 'general',
   judge(context) {
