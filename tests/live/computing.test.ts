@@ -136,6 +136,27 @@ describe('holding, stopping and bringing up to date', () => {
     await a.cell('ends', ({ state }) => state === 'current', 'the claim after it');
   });
 
+  test('short cells of the long kinds do not wait behind runaway scripts of the same group', async () => {
+    const wild = (n: number) => cell(`wild${n}`, 'script', `let n = ${n}; while (true) n++; return n`);
+    const notebook = await buildNotebook(server, group, ada, [wild(1), wild(2)]);
+    const a = await openLive(server, ada, notebook);
+    for (const id of ['wild1', 'wild2'])
+      await a.cell(id, ({ state, since }) => state === 'working' && since !== undefined, 'under way');
+    const other = await buildNotebook(server, group, ada, [
+      ...chain(),
+      cell('sum', 'script', 'return 20 + 22'),
+    ]);
+    const b = await openLive(server, ben, other);
+    for (const id of ['run', 'ends', 'sum'])
+      await b.cell(id, ({ state }) => state === 'current', 'computed meanwhile');
+    expect(['wild1', 'wild2'].map((id) => a.plan.get(id)?.state)).toEqual(['working', 'working']);
+    const visitor = await signIn(server, ada);
+    for (const id of ['wild1', 'wild2']) {
+      await visitor.post(`/api/notebooks/${notebook}/cells/${id}/stop`);
+      await a.cell(id, ({ state }) => state === 'failed', 'stopped');
+    }
+  });
+
   test('a runaway script is stopped by a person, only it fails, and says so', async () => {
     const notebook = await buildNotebook(server, group, ada, [
       cell('wild', 'script', 'let n = 0; while (true) n++; return n'),

@@ -117,3 +117,21 @@ describe('the queue', () => {
     ).toEqual([{ result: left, result_digest: null }]);
   });
 });
+
+test('a run’s words are told as far as news may hold them, whatever they are', async () => {
+  const heard: (string | null)[] = [];
+  const unlisten = server.services.events.on('run.moved', ({ words }) => heard.push(words));
+  const since = new Date().toISOString();
+  await queue.move('sha256:m', since, 0.5, 'half way');
+  for (const sign of ['x', '水', '\u0001', '😀'])
+    await queue.move('sha256:m', since, null, sign.repeat(9000));
+  await queue.move('sha256:m', since, 1, null);
+  await expect.poll(() => heard.length).toBe(6);
+  unlisten();
+  expect([heard[0], heard[5]]).toEqual(['half way', null]);
+  for (const words of heard.slice(1, 5)) {
+    expect(words).toMatch(/…$/u);
+    // No sign is cut in two.
+    expect(words?.isWellFormed()).toBe(true);
+  }
+});

@@ -3,6 +3,7 @@ import { engineVersion } from '@stillroom/shared/plan';
 import type { Queries } from '../notebooks/index.ts';
 import { eventChannel } from '../../events.ts';
 import { storableJson } from '../../database/storable.ts';
+import { isLong } from './pool/index.ts';
 
 /** Whose run it is and how it is called, for fair shares and for the operator. */
 export interface RunOwner {
@@ -24,8 +25,7 @@ export interface QueuedJob {
  * the second's runs, not the other way round.
  */
 export const lanes = { quick: 'cell-quick', long: 'cell-long' } as const;
-const longKinds: ReadonlySet<CellKind> = new Set(['balance', 'trajectory', 'script']);
-export const laneOf = (kind: CellKind): string => (longKinds.has(kind) ? lanes.long : lanes.quick);
+export const laneOf = (kind: CellKind): string => (isLong(kind) ? lanes.long : lanes.quick);
 
 /**
  * Runs that wait or are under way: a row in `cell_run` each, and a job of the queue that holds what to compute. One
@@ -153,9 +153,9 @@ export class RunQueue {
     );
   }
 
-  /** Tells everybody that a run has begun or come further. */
+  /** Tells everybody that a run has begun or come further; of long words only as many as news may hold. */
   async move(digest: string, since: string, share: number | null, words: string | null): Promise<void> {
-    await this.#announce('run.moved', { digest, since, share, words });
+    await this.#announce('run.moved', { digest, since, share, words: words && shortened(words) });
   }
 
   /**
@@ -193,6 +193,12 @@ export class RunQueue {
     await this.#queries.query('select pg_notify($1, $2)', [eventChannel, JSON.stringify({ name, payload })]);
   }
 }
+
+/** Characters of a run's words at most: PostgreSQL refuses news of 8,000 bytes, and a control character takes six. */
+const mostWords = 400;
+
+const shortened = (words: string): string =>
+  words.length <= mostWords ? words : `${Array.from(words.slice(0, mostWords)).slice(0, -1).join('')}…`;
 
 type Ran = Pick<CellJob, 'digest' | 'kind'>;
 

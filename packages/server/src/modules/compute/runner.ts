@@ -9,6 +9,8 @@ import type { ResultStore } from './results.ts';
 
 /** Runs that end sooner than this, in milliseconds, are not announced as begun. */
 const worthSaying = 120;
+/** Runs of the long kinds that a process has in hand, for each of its workers. */
+const inHand = 8;
 /** How often runs of processes that are no more are looked for, in milliseconds. */
 const sweeping = 15_000;
 
@@ -49,8 +51,8 @@ export class Runner {
       const queued = payload as QueuedJob;
       return this.#compute(queued, queue.begin(queued.job.digest, this.#options.host));
     };
-    // One worker always stays free of long runs, so that what is answered at once has its turn.
-    const long = Math.max(1, size - 1);
+    // More than begin at once: the pool decides which of them does, and takes no place for one that waits.
+    const long = inHand * size;
     this.#runners = [
       await this.#serve({ [lanes.long]: compute }, long),
       await this.#serve({ [lanes.quick]: compute }, size + 1),
@@ -114,9 +116,12 @@ export class Runner {
     const { job } = queued;
     const controller = new AbortController();
     this.#running.set(job.digest, controller);
-    const start = performance.now();
+    let start = performance.now();
+    const taken = () => {
+      start = performance.now();
+    };
     const [outcome, wanted] = await Promise.all([
-      this.#run(queued, controller.signal).catch((error: unknown) => this.#broken(error)),
+      this.#run(queued, controller.signal, taken).catch((error: unknown) => this.#broken(error)),
       begun.then((still) => {
         if (!still) controller.abort('unwanted');
         return still;
@@ -133,21 +138,28 @@ export class Runner {
     await queue.finish(job, outcome, json, took);
   }
 
-  async #run(queued: QueuedJob, signal: AbortSignal): Promise<CellOutcome> {
+  /** `taken` is called when a worker takes the run up: until then it waits for its turn. */
+  async #run(queued: QueuedJob, signal: AbortSignal, taken: () => void): Promise<CellOutcome> {
     const { pool } = this.#options;
     const job = await this.#withResults(queued);
     if (job === null) return missing;
-    const since = new Date();
+    let since = new Date();
+    let begun: NodeJS.Timeout | undefined;
     const say = (share: number | null, words: string | null) =>
       void this.#options.queue
         .move(job.digest, since.toISOString(), share, words)
         .catch((error: unknown) => this.#complain('Progress could not be told.', error));
-    const begun = setTimeout(() => say(null, null), worthSaying);
+    const onBegin = () => {
+      taken();
+      since = new Date();
+      begun = setTimeout(() => say(null, null), worthSaying);
+    };
     try {
       return await pool.run(job, {
         deadline: limits.deadlineUsual,
         owner: queued.group,
         signal,
+        onBegin,
         onProgress: ({ share, words }) => say(share ?? null, words ?? null),
       });
     } finally {

@@ -72,6 +72,49 @@ describe('a pool', () => {
       .toBe(3);
   });
 
+  test('a short run does not wait behind endless ones, however many there are', async () => {
+    const stop = new AbortController();
+    let ended = 0;
+    const wild = (owner: string) =>
+      pool.run(endless, { deadline: 100, owner, signal: stop.signal }).finally(() => (ended += 1));
+    const runaways = ['a', 'a', 'a', 'a', 'a'].map(wild);
+    const short = jobOf('script', 'return 6 * 7');
+    for (const owner of ['a', 'b', 'c']) {
+      expect((await pool.run(claim(7), { deadline: 20, owner })).status).toBe('ok');
+      expect(await pool.run(short, { deadline: 20, owner })).toMatchObject({ status: 'ok' });
+    }
+    runaways.push(wild('b'));
+    // One owner never has all the slow places.
+    await expect.poll(() => pool.workers().map(({ owner }) => owner), { timeout: 10_000 }).toContain('b');
+    expect(await pool.run(short, { deadline: 20, owner: 'a' })).toMatchObject({ status: 'ok' });
+    expect(ended).toBe(0);
+    stop.abort();
+    for (const outcome of await Promise.all(runaways))
+      expect(outcome).toMatchObject({ status: 'failed', error: { message: 'The run was stopped.' } });
+    await expect
+      .poll(() => pool.workers().map(({ state }) => state), { timeout: 5000 })
+      .toEqual(['idle', 'idle', 'idle']);
+  });
+
+  test('a run that was broken off for others begins anew and comes to its end', async () => {
+    const small = createPool({ size: 1, promptly: 50 });
+    const stop = new AbortController();
+    const begun: string[] = [];
+    const wild = (owner: string) => small.run(endless, { deadline: 100, owner, signal: stop.signal });
+    const runaways = ['a', 'b'].map(wild);
+    const slow = jobOf('script', 'let n = 0; for (let i = 0; i < 3000000; i++) n += i % 7; return n');
+    const expected = await pool.run(slow, { deadline: 60 });
+    const run = small.run(slow, { deadline: 60, owner: 'c', onBegin: () => void begun.push('c') });
+    await expect.poll(() => begun.length, { timeout: 20_000 }).toBe(1);
+    // Somebody waits: both slow places are taken, so it makes room.
+    expect((await small.run(claim(1), { deadline: 60, owner: 'd' })).status).toBe('ok');
+    stop.abort();
+    expect(await run).toEqual(expected);
+    expect(begun).toEqual(['c', 'c']);
+    await Promise.all(runaways);
+    await small.close();
+  });
+
   test('a worker that is killed is replaced', async () => {
     const [victim] = pool.workers();
     process.kill(Number(victim?.id), 'SIGKILL');

@@ -5,7 +5,7 @@ export interface Waiting {
 
 /**
  * A queue in which owners take turns: next is the first in the line of the owner with the fewest things under way, among
- * equals of the one who was served longest ago. Within a line the order of arrival holds.
+ * equals of the one who was served longest ago. Within a line the order of arrival holds among those who may go on.
  */
 export class Turns<T extends Waiting> {
   private readonly lines = new Map<string, T[]>();
@@ -29,17 +29,20 @@ export class Turns<T extends Waiting> {
     return true;
   }
 
-  /** The next item, which counts as under way until `done`. */
-  next(): T | undefined {
-    const [owner] = [...this.lines.keys()].sort(
+  /** The next item that may go on, which counts as under way until `done`. */
+  next(may: (item: T) => boolean = () => true): T | undefined {
+    const owners = [...this.lines.keys()].sort(
       (a, b) => this.running(a) - this.running(b) || (this.served.get(a) ?? 0) - (this.served.get(b) ?? 0),
     );
-    const item = owner === undefined ? undefined : this.lines.get(owner)?.[0];
-    if (owner === undefined || item === undefined) return undefined;
-    this.remove(item);
-    this.served.set(owner, ++this.turn);
-    this.under.set(owner, this.running(owner) + 1);
-    return item;
+    for (const owner of owners) {
+      const item = this.lines.get(owner)?.find(may);
+      if (item === undefined) continue;
+      this.remove(item);
+      this.served.set(owner, ++this.turn);
+      this.under.set(owner, this.running(owner) + 1);
+      return item;
+    }
+    return undefined;
   }
 
   done(item: T): void {
@@ -47,6 +50,11 @@ export class Turns<T extends Waiting> {
     if (left > 0) this.under.set(item.owner, left);
     else this.under.delete(item.owner);
     if (left <= 0 && !this.lines.has(item.owner)) this.served.delete(item.owner);
+  }
+
+  /** How many wait. */
+  get size(): number {
+    return [...this.lines.values()].reduce((sum, line) => sum + line.length, 0);
   }
 
   /** How many wait, by owner. */

@@ -40,8 +40,13 @@ export interface Pool {
 }
 
 export interface PoolOptions {
-  /** Workers that compute at the same time; one more stands ready to take the place of one that is ended. */
+  /**
+   * Places for runs that have just begun; one more worker stands ready to take the place of one that is ended. Runs that
+   * take longer go on in places of their own, see `places.ts`.
+   */
   readonly size: number;
+  /** Milliseconds after which a run gives up its place to those that wait. */
+  readonly promptly?: number;
   /** Folder of the bundled engine; by default where the build leaves it. */
   readonly engineFolder?: string;
   /** Where a copy of the engine may be put for an account that cannot read `engineFolder`. */
