@@ -49,7 +49,7 @@ test('renaming species and permuting rows changes no verdict, and every witness 
       for (const verdict of verdicts)
         expect([verdict.id, checkWitness(network, verdict)]).toEqual([
           verdict.id,
-          { ok: true, why: expect.any(String) as string },
+          { ok: true, confirmed: true, why: expect.any(String) as string },
         ]);
       const permuted = [...list.slice(turn % list.length), ...list.slice(0, turn % list.length)].reverse();
       const renamed = judgeAll(buildNetwork(written(permuted, ['Q', 'M', 'Z', 'B'])));

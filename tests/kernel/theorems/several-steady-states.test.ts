@@ -3,7 +3,8 @@ import type { Verdict } from '@stillroom/shared/cells';
 import { deficiencyOneAlgorithm } from '../../../packages/kernel/src/theorems/deficiency-one-algorithm/decide.ts';
 import { contextOf } from '@stillroom/kernel/theorems';
 import { buildNetwork } from '../../support/network.ts';
-import { judge } from '../../support/verdicts.ts';
+import { referenceNetwork, referenceNetworks } from '../../support/reference-networks.ts';
+import { judge, verdictOn } from '../../support/verdicts.ts';
 
 const id = 'several-steady-states';
 
@@ -73,7 +74,7 @@ describe('several positive steady states', () => {
       id,
       'S0+E<=>ES0;ES0->S1+E;S1+F<=>FS1;FS1->S0+F;S1+E<=>ES1;ES1->S2+E;S2+F<=>FS2;FS2->S1+F',
     );
-    expect(verdict).toMatchObject({ applies: 'yes', scope: 'all constants' });
+    expect(verdict).toMatchObject({ applies: 'yes', scope: 'some constants' });
     expect(values(verdict, 'S0').length).toBeGreaterThanOrEqual(2);
   });
 
@@ -89,10 +90,27 @@ describe('several positive steady states', () => {
     );
   });
 
-  test('a search that meets nothing is undecided, not "no": the Oregonator', () => {
+  test('the Oregonator has one for all constants: permanent (Gopalkrishnan, Miller, Shiu 2014), and of one sign (Conradi et al. 2017)', () => {
+    // By hand: eliminating Z and Y leaves 3 k1 k3 − (k2 k3 + 2 k1 k4) x − 2 k2 k4 x² = 0, with one positive root.
     const verdict = judge(id, 'Y->X; X+Y->0; X->2X+2Z; 2X->0; Z->Y');
+    expect(verdict).toMatchObject({ applies: 'no', case: 'degree criterion', scope: 'all constants' });
+  });
+
+  test('the shuttle model of the Wnt pathway has several (MacLean, Rosen, Byrne, Harrington 2015)', () => {
+    const entry = referenceNetworks.find((network) => network.id === 'wnt_shuttle')!;
+    const verdict = verdictOn(referenceNetwork(entry), id);
+    expect(verdict).toMatchObject({ applies: 'yes', scope: 'some constants' });
+  });
+
+  test('a continuum of degenerate states is undecided, with the reason: X -> 2 X, X -> 0 at equal constants', () => {
+    const verdict = judge(id, 'X -> 2 X; X -> 0');
     expect(verdict.applies).toBe('undecided');
-    expect(verdict.conclusion).toContain('proves nothing');
+    expect(verdict.conclusion).toContain('degenerate');
+  });
+
+  test('a search that meets nothing is undecided, not "no"', () => {
+    const verdict = judge(id, 'A + B -> 2 B; B -> A; A + C -> 2 C; C -> A; B + C -> 2 A');
+    expect(verdict.applies).toBe('undecided');
   });
 });
 

@@ -1,6 +1,8 @@
-import type { Hypothesis, VerdictId } from '@stillroom/shared/cells';
+import type { Hypothesis, Verdict, VerdictId } from '@stillroom/shared/cells';
 import type { TheoremContext } from './context.ts';
+import { degreeCriterion } from './degree-criterion.ts';
 import { deficiencyOneAlgorithm } from './deficiency-one-algorithm/decide.ts';
+import { massAction } from './hypotheses.ts';
 import { sources } from './sources.ts';
 import type { Theorem } from './theorem.ts';
 
@@ -16,6 +18,8 @@ export const atMostOne: Theorem = {
     sources.feinberg1995multiple,
     sources.mueller2016,
     sources.shinarFeinberg2012,
+    sources.conradiFeliuMinchevaWiuf2017,
+    sources.hofbauer1990,
   ],
   kinetics: 'general',
   judge(context) {
@@ -31,6 +35,7 @@ export const atMostOne: Theorem = {
             text: `Two positive steady states of one class are excluded: ${proof.reason}.`,
             holds: true,
           },
+          ...proof.hypotheses,
         ],
         conclusion: 'For all constants no positive class has two positive steady states.',
         silentOn: 'Whether a positive steady state exists, its stability, and counts.',
@@ -39,8 +44,8 @@ export const atMostOne: Theorem = {
     const several = context.verdict('several-steady-states');
     const hypothesis: Hypothesis = {
       claim: 'at most one by theorem',
-      text: 'One of these proves it: deficiency zero, deficiency one, the deficiency one algorithm, the determinant criterion, concordance.',
-      holds: several.applies === 'yes' ? false : null,
+      text: 'One of these proves it: deficiency zero, deficiency one, the deficiency one algorithm, the determinant criterion, concordance, the degree criterion.',
+      ...(several.applies === 'yes' ? { holds: false, ...statesOf(several) } : { holds: null }),
     };
     return {
       applies: several.applies === 'yes' ? 'no' : 'undecided',
@@ -54,11 +59,19 @@ export const atMostOne: Theorem = {
   },
 };
 
+/** The two verified states, which refute it. */
+function statesOf({ hypotheses }: Verdict): Pick<Hypothesis, 'witness'> {
+  const witness = hypotheses.find(({ claim }) => claim === 'several states verified')?.witness;
+  return witness === undefined ? {} : { witness };
+}
+
 /** A proof that no class has two positive steady states, and the theorem it comes from. */
 export interface UniquenessProof {
   readonly by: string;
   /** The end of a sentence: "the deficiency one theorem applies". */
   readonly reason: string;
+  /** The hypotheses of that theorem with their evidence; all hold. */
+  readonly hypotheses: readonly Hypothesis[];
 }
 
 /** The first proof there is, cheap ones first; null where none is known. */
@@ -71,13 +84,33 @@ export function uniquenessProof(context: TheoremContext): UniquenessProof | null
       ['injective', 'the rate function is one-to-one on each positive class'],
       ['concordant', 'the network is concordant'],
     ];
-    for (const [id, reason] of routes) if (context.verdict(id).applies === 'yes') return { by: id, reason };
-    const algorithm = deficiencyOneAlgorithm(context);
-    return algorithm.kind === 'at most one'
-      ? {
-          by: 'deficiency one algorithm',
-          reason: `the network is regular of deficiency one, and each of the ${algorithm.cases} cases of the deficiency one algorithm is impossible`,
-        }
-      : null;
+    for (const [id, reason] of routes) {
+      const { applies, hypotheses } = context.verdict(id);
+      if (applies === 'yes') return { by: id, reason, hypotheses };
+    }
+    return byAlgorithm(context) ?? byDegree(context);
   });
+}
+
+function byAlgorithm(context: TheoremContext): UniquenessProof | null {
+  const algorithm = deficiencyOneAlgorithm(context);
+  if (algorithm.kind !== 'at most one') return null;
+  const reason = `the network is regular of deficiency one, and each of the ${algorithm.cases} cases of the deficiency one algorithm is impossible`;
+  const regular: Hypothesis = {
+    claim: 'regular of deficiency one',
+    text: `The network is regular of deficiency one, and each of the ${algorithm.cases} cases of the algorithm is impossible: no change of the species within a class has the signs that it asks for.`,
+    holds: true,
+  };
+  return { by: 'deficiency one algorithm', reason, hypotheses: [massAction(context), regular] };
+}
+
+function byDegree(context: TheoremContext): UniquenessProof | null {
+  const hypotheses = degreeCriterion(context);
+  return (
+    hypotheses && {
+      by: 'degree criterion',
+      reason: 'by the degree criterion, every positive class has exactly one',
+      hypotheses,
+    }
+  );
 }

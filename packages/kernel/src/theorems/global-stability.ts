@@ -1,6 +1,7 @@
 import type { Hypothesis } from '@stillroom/shared/cells';
 import type { TheoremContext } from './context.ts';
-import { noCriticalSiphon } from './hypotheses.ts';
+import { endotacticity } from './endotactic/strongly-endotactic.ts';
+import { noCriticalSiphon, STRONGLY_ENDOTACTIC } from './hypotheses.ts';
 import { sources } from './sources.ts';
 import type { Judgement, Theorem } from './theorem.ts';
 import { appliesWhenAllHold } from './theorem.ts';
@@ -10,13 +11,14 @@ export const globalStability: Theorem = {
   id: 'global-stability',
   title: 'Global stability of complex-balanced states',
   statement:
-    'In a complex-balanced network every positive start tends to the positive steady state of its class; proven for one linkage class, for rank at most 3, and without critical siphon.',
+    'In a complex-balanced network every positive start tends to the positive steady state of its class; proven for one linkage class, for rank at most 3, without critical siphon, and for strongly endotactic networks.',
   citation: [
     sources.anderson2011,
     sources.pantea2012,
     sources.craciunNazarovPantea2013,
     sources.angeliDeLeenheerSontag2007,
     sources.anderson2008,
+    sources.gopalkrishnanMillerShiu2014,
   ],
   kinetics: 'mass action',
   judge(context): Judgement {
@@ -86,14 +88,40 @@ function provenRoute(context: TheoremContext): Route {
   const siphons = noCriticalSiphon(context);
   if (siphons.every(({ holds }) => holds === true))
     return { name: 'no critical siphon', hypotheses: siphons };
+  const endotactic = endotacticity(context);
+  if (endotactic.kind === 'yes') {
+    return {
+      name: 'strongly endotactic',
+      hypotheses: [{ claim: 'strongly endotactic', text: STRONGLY_ENDOTACTIC, holds: true }],
+    };
+  }
+  const reason =
+    endotactic.kind === 'no'
+      ? ` It is not strongly endotactic: see the direction ${directionText(context, endotactic.direction)}.`
+      : ' Whether it is strongly endotactic is too large to be decided.';
   return {
     name: 'open',
     hypotheses: [
       {
         claim,
-        text: 'There is one linkage class, or the rank is at most 3, or no siphon is critical. None of these holds here, or it could not be decided.',
+        text: `There is one linkage class, or the rank is at most 3, or no siphon is critical, or the network is strongly endotactic. None of these holds here, or it could not be decided.${reason}`,
         holds: null,
       },
     ],
   };
 }
+
+/** "2 A − B": a linear function of the species; long ones are cut. */
+function directionText(context: TheoremContext, direction: readonly bigint[]): string {
+  const terms = direction.flatMap((weight, i) =>
+    weight === 0n ? [] : [{ weight, name: context.species[i]! }],
+  );
+  const shown = terms.slice(0, SHOWN_TERMS).map(({ weight, name }, k) => {
+    const size = weight < 0n ? -weight : weight;
+    const sign = weight < 0n ? (k === 0 ? '−' : ' − ') : k === 0 ? '' : ' + ';
+    return `${sign}${size === 1n ? '' : `${size} `}${name}`;
+  });
+  return `${shown.join('')}${terms.length > SHOWN_TERMS ? ' …' : ''}`;
+}
+
+const SHOWN_TERMS = 12;

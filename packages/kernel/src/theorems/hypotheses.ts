@@ -234,6 +234,10 @@ function setText(context: TheoremContext, species: Int32Array): string {
     : `{${shown.join(', ')}, …} of ${species.length} species`;
 }
 
+/** What strongly endotactic means. */
+export const STRONGLY_ENDOTACTIC =
+  'The network is strongly endotactic: in every direction that is not orthogonal to all reactions, no reaction leads outwards from the reactant complexes that lie farthest out, and one leads inwards (Gopalkrishnan, Miller, Shiu 2014).';
+
 /** Why a written law is not mass action in counts. */
 export const NOT_FALLING = 'A written law with a power of a count is no falling factorial.';
 

@@ -1,13 +1,16 @@
 import type { Hypothesis } from '@stillroom/shared/cells';
 import { fromDouble } from '../exact/index.ts';
 import { uniquenessProof } from './at-most-one.ts';
+import type { UniquenessProof } from './at-most-one.ts';
 import type { TheoremContext } from './context.ts';
+import { criticalSigns } from './degree-criterion.ts';
 import { constructPair } from './deficiency-one-algorithm/construct.ts';
 import { deficiencyOneAlgorithm } from './deficiency-one-algorithm/decide.ts';
 import { massAction } from './hypotheses.ts';
 import { sources } from './sources.ts';
 import { massActionSystem } from './steady-states/mass-action-system.ts';
-import { pairForConstants, searchPair } from './steady-states/search-pair.ts';
+import { pairForConstants } from './steady-states/pair-for-constants.ts';
+import { searchPair } from './steady-states/search-pair.ts';
 import type { VerifiedStates } from './steady-states/verified-states.ts';
 import { shortened, statesWitness, verifyStates } from './steady-states/verified-states.ts';
 import type { Judgement, Theorem } from './theorem.ts';
@@ -18,11 +21,17 @@ export const severalSteadyStates: Theorem = {
   title: 'Several positive steady states',
   statement:
     'For some positive constants some class has at least two positive steady states: shown by exact constants and totals with disjoint boxes, each proven to hold exactly one.',
-  citation: [sources.krawczyk1969, sources.feinberg1988, sources.feinberg1995multiple],
+  citation: [
+    sources.krawczyk1969,
+    sources.feinberg1988,
+    sources.feinberg1995multiple,
+    sources.conradiFeliuMinchevaWiuf2017,
+    sources.hofbauer1990,
+  ],
   kinetics: 'mass action',
   judge(context): Judgement {
     const proof = uniquenessProof(context);
-    if (proof !== null) return excluded(proof.reason);
+    if (proof !== null) return excluded(proof);
     const rates = massAction(context);
     if (rates.holds !== true) {
       return open(
@@ -32,10 +41,13 @@ export const severalSteadyStates: Theorem = {
     }
     const given = forGivenConstants(context);
     if (given !== null) return shown(context, rates, given, 'these constants and start');
-    const found = constructed(context) ?? (context.dense ? searchPair(context) : null);
+    const signs = criticalSigns(context).kind;
+    if (signs === 'zero') return open([rates, notFound], DEGENERATE);
+    const found =
+      constructed(context) ?? (context.dense && signs !== 'one sign' ? searchPair(context) : null);
     return found === null
       ? open([rates, notFound], tried(context))
-      : shown(context, rates, found, 'all constants');
+      : shown(context, rates, found, 'some constants');
   },
 };
 
@@ -45,9 +57,10 @@ const notFound: Hypothesis = {
   holds: null,
 };
 
-function excluded(reason: string): Judgement {
+function excluded({ by, reason, hypotheses }: UniquenessProof): Judgement {
   return {
     applies: 'no',
+    case: by,
     scope: 'all constants',
     hypotheses: [
       {
@@ -55,6 +68,7 @@ function excluded(reason: string): Judgement {
         text: `Some constants give a class two positive steady states. This is excluded: ${reason}.`,
         holds: false,
       },
+      ...hypotheses,
     ],
     conclusion: 'No constants give a class two positive steady states.',
     silentOn: 'Whether a positive steady state exists, its stability, and counts.',
@@ -85,7 +99,7 @@ function shown(
       },
     ],
     conclusion:
-      scope === 'all constants'
+      scope === 'some constants'
         ? `For some constants some class has at least ${count} positive steady states; the constants shown are an example. For other constants there may be fewer.`
         : `With the constants and the start given, the class has at least ${count} positive steady states.`,
     silentOn: 'Which of them are stable, whether there are more, and counts.',
@@ -121,6 +135,10 @@ function constructed(context: TheoremContext): VerifiedStates | null {
   return null;
 }
 
+/** Said where no two isolated states can be proven, because there are none. */
+const DEGENERATE =
+  'Undecided. Every positive steady state is degenerate, because the determinant of the Jacobian on its class is zero at all of them: no box can be proven to hold exactly one. For some constants a class may have a whole continuum of positive steady states, for others none.';
+
 function tried(context: TheoremContext): string {
   const algorithm = deficiencyOneAlgorithm(context);
   const first = {
@@ -130,5 +148,9 @@ function tried(context: TheoremContext): string {
     open: 'The deficiency one algorithm has too many cases here.',
     inapplicable: `The deficiency one algorithm does not apply. ${algorithm.kind === 'inapplicable' ? algorithm.why : ''}`,
   }[algorithm.kind];
-  return `Undecided. No theorem excludes several positive steady states, and a search met none, which proves nothing. ${first}`;
+  const search =
+    criticalSigns(context).kind === 'one sign'
+      ? 'At every positive steady state the Jacobian has the determinant of a stable one, but the degree criterion needs besides that solutions stay away from infinity and from the boundary, which is not known here.'
+      : 'A search through constants for states whose Jacobian has the opposite sign verified no pair, which proves nothing.';
+  return `Undecided. Neither the determinant criterion, nor concordance, nor the degree criterion excludes several positive steady states. ${search} ${first}`.trimEnd();
 }

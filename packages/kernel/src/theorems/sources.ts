@@ -63,6 +63,7 @@ export const sources = {
     year: 1993,
     title: 'Stability of Markovian processes III: Foster–Lyapunov criteria for continuous-time processes',
   },
+  hofbauer1990: { authors: 'J. Hofbauer', year: 1990, title: 'An index theorem for dissipative semiflows' },
   feinberg1995existence: {
     authors: 'M. Feinberg',
     year: 1995,
@@ -206,6 +207,11 @@ export const sources = {
     title:
       'Sign conditions for injectivity of generalized polynomial maps with applications to chemical reaction networks and real algebraic geometry',
     doi: '10.1007/s10208-014-9239-3',
+  },
+  conradiFeliuMinchevaWiuf2017: {
+    authors: 'C. Conradi, E. Feliu, M. Mincheva, C. Wiuf',
+    year: 2017,
+    title: 'Identifying parameter regions for multistationarity',
   },
   joshiShiu2017: {
     authors: 'B. Joshi, A. Shiu',

@@ -1,8 +1,12 @@
 /** Whether the hypotheses of a theorem hold. "no" never states the opposite of the conclusion. */
 export type Applies = 'yes' | 'no' | 'undecided';
 
-/** What a verdict speaks about: every choice of positive constants, the constants of the text, or those and the start. */
-export type VerdictScope = 'all constants' | 'these constants' | 'these constants and start';
+/**
+ * What a verdict speaks about: every choice of positive constants, some choice (given as witness), the constants of the
+ * text, or those and the start.
+ */
+export type VerdictScope =
+  'all constants' | 'some constants' | 'these constants' | 'these constants and start';
 
 export type VerdictKinetics = 'mass action' | 'general';
 
@@ -110,6 +114,9 @@ export const hypothesisClaims = [
   'detailed balance condition',
   'complex balanced',
   'attraction is proven',
+  'strongly endotactic',
+  'critical polynomial of one sign',
+  'regular of deficiency one',
   'several states verified',
   'several are excluded',
   'at most one by theorem',

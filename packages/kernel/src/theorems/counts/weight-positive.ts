@@ -3,8 +3,8 @@ import type { Expression } from '@stillroom/shared/expression';
 import { rational } from '../../exact/index.ts';
 import { multiply, signAtInfinity } from '../polynomials/polynomial.ts';
 import { zerosBetween } from '../polynomials/sturm.ts';
-import type { ExactNames } from './weight-growth.ts';
-import { fractionOf } from './weight-growth.ts';
+import type { ExactNames } from './fraction.ts';
+import { fractionOf } from './fraction.ts';
 
 /**
  * Whether a weight is proven positive for every n > from: it is built of positive parts, or it is a quotient of
@@ -14,7 +14,7 @@ export function positiveBeyond(weight: Expression, names: ExactNames, from: numb
   if (builtOfPositives(weight, names)) return true;
   // With `min` or `max` the quotient that is read off holds for large n only.
   if (callsFunction(weight)) return false;
-  const fraction = fractionOf(weight, names);
+  const fraction = fractionOf(weight, 'n', names);
   if (fraction === null || fraction.above.length === 0) return false;
   const both = multiply(fraction.above, fraction.below);
   return signAtInfinity(both, 1) > 0 && zerosBetween(both, rational(BigInt(from)), null) === 0;

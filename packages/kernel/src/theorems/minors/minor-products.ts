@@ -25,16 +25,40 @@ const MOST_SPECIES = 30;
  * would take more than `steps` partial choices of reactions or of species for them.
  */
 export function minorProducts(context: TheoremContext, steps: number): MinorProducts | null {
+  let positive = 0;
+  let negative = 0;
+  const examples = new Map<number, MinorPair>();
+  const complete = visitMinorProducts(context, independentArrows(context), steps, (indices, product) => {
+    const sign = product > 0n ? 1 : -1;
+    if (sign > 0) positive++;
+    else negative++;
+    if (!examples.has(sign)) examples.set(sign, minorPair(context, indices));
+    return true;
+  });
+  return complete ? { positive, negative, examples: [...examples.values()] } : null;
+}
+
+/** Called with a pair (I, J) and its product, which is not 0; false ends the list. */
+export type ProductVisitor = (indices: MinorIndices, product: bigint) => boolean;
+
+/**
+ * Lists the pairs (I, J), J among the given arrows, whose product is not 0. False where the list would take more than
+ * `steps` partial choices, numbers outgrow doubles, the network is too large, or the visitor ended it.
+ */
+export function visitMinorProducts(
+  context: TheoremContext,
+  arrows: readonly number[],
+  steps: number,
+  visit: ProductVisitor,
+): boolean {
   const { rank } = context;
-  if (rank === null || context.species.length > MOST_SPECIES || !context.dense) return null;
-  const arrows = independentArrows(context);
-  const tally = { positive: 0, negative: 0, examples: new Map<number, MinorPair>() };
+  if (rank === null || context.species.length > MOST_SPECIES || !context.dense) return false;
   const chosen: number[] = [];
   let left = steps;
-  const visit = (from: number, echelonRows: Reduced[]): boolean => {
+  const choose = (from: number, echelonRows: Reduced[]): boolean => {
     if (--left < 0) return false;
     if (chosen.length === rank) {
-      left = addProducts(context, chosen, tally, left);
+      left = addProducts(context, [...chosen], visit, left);
       return left >= 0;
     }
     for (let k = from; k <= arrows.length - (rank - chosen.length); k++) {
@@ -42,14 +66,13 @@ export function minorProducts(context: TheoremContext, steps: number): MinorProd
       if (reduced === undefined) return false;
       if (reduced === null) continue;
       chosen.push(arrows[k]!);
-      const complete = visit(k + 1, [...echelonRows, reduced]);
+      const complete = choose(k + 1, [...echelonRows, reduced]);
       chosen.pop();
       if (!complete) return false;
     }
     return true;
   };
-  if (!visit(0, [])) return null;
-  return { positive: tally.positive, negative: tally.negative, examples: [...tally.examples.values()] };
+  return choose(0, []);
 }
 
 /** The pair as a witness, with both determinants worked out. */
@@ -77,7 +100,7 @@ export function reactantMinor(context: TheoremContext, { species, arrows }: Mino
 }
 
 /** Arrows that have a reactant, one for each reactant complex and direction of change. */
-function independentArrows(context: TheoremContext): number[] {
+export function independentArrows(context: TheoremContext): number[] {
   const seen = new Set<string>();
   return context.arrows
     .map((_, arrow) => arrow)
@@ -122,17 +145,14 @@ function reduceBy(rows: readonly Reduced[], column: readonly number[]): Reduced 
   return lead < 0 ? null : { lead, entries: work };
 }
 
-interface Tally {
-  positive: number;
-  negative: number;
-  readonly examples: Map<number, MinorPair>;
-}
-
-/** Adds the products of one J: det B[J,·] is expanded over the ways to give each reaction a reactant of its own. */
+/**
+ * Visits the products of one J: det B[J,·] is expanded over the ways to give each reaction a reactant of its own. Returns
+ * the steps that are left, negative where the list has to end.
+ */
 function addProducts(
   context: TheoremContext,
   arrows: readonly number[],
-  tally: Tally,
+  visit: ProductVisitor,
   steps: number,
 ): number {
   const minors = new Map<number, number>();
@@ -148,8 +168,13 @@ function addProducts(
       if (used & (1 << species)) continue;
       const inversions = taken.filter((other) => other > species).length;
       const coefficient = Number(context.coefficients.scaled(context.arrows[arrows[row]!]!.from, species));
+      const next = product * coefficient * (inversions % 2 === 0 ? 1 : -1);
+      if (Math.abs(next) > LARGEST_PRODUCT) {
+        left = -1;
+        return;
+      }
       taken.push(species);
-      match(row + 1, used | (1 << species), product * coefficient * (inversions % 2 === 0 ? 1 : -1));
+      match(row + 1, used | (1 << species), next);
       taken.pop();
     }
   };
@@ -160,14 +185,13 @@ function addProducts(
     const species = context.species.map((_, i) => i).filter((i) => used & (1 << i));
     const stoichiometric = stoichiometricMinor(context, { species, arrows });
     if (stoichiometric === 0n) continue;
-    const sign = stoichiometric > 0n === reactant > 0 ? 1 : -1;
-    if (sign > 0) tally.positive++;
-    else tally.negative++;
-    if (!tally.examples.has(sign))
-      tally.examples.set(sign, minorPair(context, { species, arrows: [...arrows] }));
+    if (!visit({ species, arrows }, stoichiometric * BigInt(reactant))) return -1;
   }
   return left - minors.size;
 }
+
+/** Products of coefficients above which their sums in doubles might not be exact. */
+const LARGEST_PRODUCT = 2 ** 40;
 
 function greatestCommonDivisor(a: number, b: number): number {
   let x = Math.abs(a);

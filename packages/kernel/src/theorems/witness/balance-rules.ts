@@ -14,23 +14,27 @@ import {
 import type { PlainNetwork } from './plain-network.ts';
 import { arrowRates, changeOf, components, leadsTo } from './plain-network.ts';
 import { exactOf } from './reading.ts';
-import type { Evidence } from './rules.ts';
+import type { Evidence, Finding } from './evidence.ts';
+import { Unconfirmed } from './evidence.ts';
 
 /** The two numbers agree as the hypothesis says, and all conditions together amount to complex balance. */
-export function complexCondition(evidence: Evidence): string | null {
+export function complexCondition(evidence: Evidence): Finding {
   return sidesAgree(evidence) ?? together(evidence, isComplexBalanced(evidence.plain));
 }
 
 /** The same for detailed balance. */
-export function detailedCondition(evidence: Evidence): string | null {
+export function detailedCondition(evidence: Evidence): Finding {
   return sidesAgree(evidence) ?? together(evidence, isDetailedBalanced(evidence.plain));
 }
 
 /** Complex balance worked out afresh; for all constants it needs deficiency zero, which is then implied. */
-export function complexBalanced({ plain, holds }: Evidence): string | null {
+export function complexBalanced({ plain, holds }: Evidence): Finding {
   const answer = isComplexBalanced(plain);
-  return answer === null || answer === holds ? null : 'the constants say the opposite.';
+  if (answer === null) return TOO_HIGH;
+  return answer === holds ? null : 'the constants say the opposite.';
 }
+
+const TOO_HIGH = new Unconfirmed('powers are too high, or constants unknown, to multiply out.');
 
 function sidesAgree({ witness, holds }: Evidence): string | null {
   if (witness === undefined) return null;
@@ -39,9 +43,9 @@ function sidesAgree({ witness, holds }: Evidence): string | null {
   return equal === holds ? null : 'the two sides say the opposite.';
 }
 
-function together({ verdict, hypothesis }: Evidence, balanced: boolean | null): string | null {
+function together({ verdict, hypothesis }: Evidence, balanced: boolean | null): Finding {
   const own = verdict.hypotheses.filter(({ claim }) => claim === hypothesis.claim);
-  if (balanced === null) return null;
+  if (balanced === null) return TOO_HIGH;
   return balanced === own.every(({ holds }) => holds === true)
     ? null
     : 'all conditions together say the opposite.';
@@ -82,7 +86,7 @@ export function isDetailedBalanced(plain: PlainNetwork): boolean | null {
   const pairs = keys.filter((key, i) => keys.indexOf(reversed(key)) > i);
   const changes = pairs.map((key) => {
     const [from, to] = key.split(' ').map(Number);
-    return changeOf(plain, { from: from!, to: to!, massAction: true, written: false, constant: null });
+    return changeOf(plain, { from: from!, to: to! });
   });
   const relations = nullspace(
     plain.species.map((name) => changes.map((change) => change.get(name) ?? ZERO)),

@@ -1,12 +1,17 @@
 import type { Applies, Hypothesis, Verdict } from '@stillroom/shared/cells';
 import type { Network } from '@stillroom/shared/network';
+import type { Finding } from './evidence.ts';
 import type { PlainNetwork } from './plain-network.ts';
 import { plainNetwork } from './plain-network.ts';
 import { rules } from './rules.ts';
 
-/** Whether the evidence of a verdict holds up; `why` names the first thing that does not. */
+/**
+ * Whether the evidence of a verdict holds up: `ok` when nothing speaks against it, `confirmed` when besides every
+ * hypothesis that holds or fails was confirmed afresh. `why` names the first thing that is missing.
+ */
 export interface WitnessCheck {
   readonly ok: boolean;
+  readonly confirmed: boolean;
   readonly why: string;
 }
 
@@ -20,25 +25,30 @@ const LARGEST = 20_000;
 export function checkWitness(network: Network, verdict: Verdict): WitnessCheck {
   const plain = plainNetwork(network);
   if (plain.species.length * plain.reactions.length > LARGEST) {
-    return { ok: false, why: 'The network is too large for this checker.' };
+    return refused('The network is too large for this checker.');
   }
+  let open: string | null = null;
   for (const hypothesis of verdict.hypotheses) {
-    const complaint = complaintAbout(network, plain, verdict, hypothesis);
-    if (complaint !== null) return { ok: false, why: `"${hypothesis.text}": ${complaint}` };
+    const finding = findingOn(network, plain, verdict, hypothesis);
+    if (typeof finding === 'string') return refused(`"${hypothesis.text}": ${finding}`);
+    if (finding !== null) open ??= `"${hypothesis.text}": ${finding.why}`;
   }
   const expected = followsFrom(verdict.hypotheses);
   if (verdict.applies !== expected) {
-    return { ok: false, why: `The hypotheses give "${expected}", the verdict says "${verdict.applies}".` };
+    return refused(`The hypotheses give "${expected}", the verdict says "${verdict.applies}".`);
   }
-  return { ok: true, why: 'Every hypothesis was confirmed from its witness.' };
+  return {
+    ok: true,
+    confirmed: open === null,
+    why: open ?? 'Every hypothesis was confirmed from its witness.',
+  };
 }
 
-function complaintAbout(
-  network: Network,
-  plain: PlainNetwork,
-  verdict: Verdict,
-  hypothesis: Hypothesis,
-): string | null {
+function refused(why: string): WitnessCheck {
+  return { ok: false, confirmed: false, why };
+}
+
+function findingOn(network: Network, plain: PlainNetwork, verdict: Verdict, hypothesis: Hypothesis): Finding {
   if (hypothesis.holds === null) return null;
   try {
     return rules[hypothesis.claim]({

@@ -4,11 +4,12 @@ import type { Amounts, PlainNetwork } from './plain-network.ts';
 import { arrowRates, changeOf, paired } from './plain-network.ts';
 import { massAction, namesPower } from './rate-rules.ts';
 import { speciesVector } from './reading.ts';
-import type { Evidence } from './rules.ts';
+import type { Evidence, Finding } from './evidence.ts';
+import { Unconfirmed } from './evidence.ts';
 
 /** Claims that carry no witness: nothing here can confirm or refute them. */
-export function unchecked(): string | null {
-  return null;
+export function unchecked(): Finding {
+  return new Unconfirmed('nothing here works this out again.');
 }
 
 /** Mass action (weights aside) with whole numbers of molecules. */
@@ -107,21 +108,15 @@ function drifts({ plain, verdict }: Evidence, weights: Amounts): Map<number, Rat
 type Form = Map<string, Rational>;
 
 /** A "no" names a complex and the first derivative that is not 0, which is worked out again symbolically. */
-export function largeComplexesBalance({
-  network,
-  plain,
-  holds,
-  witness,
-  hypothesis,
-}: Evidence): string | null {
-  if (holds) return null;
+export function largeComplexesBalance({ network, plain, holds, witness, hypothesis }: Evidence): Finding {
+  if (holds) return new Unconfirmed('nothing here works this out again.');
   const rates = arrowRates(plain);
   const complex = witness?.kind === 'set' && 'complexes' in witness ? witness.complexes[0] : undefined;
   if (rates === null || complex === undefined || plain.complexes[complex] === undefined)
     return 'no complex is named.';
   if (sizeOf(plain.complexes[complex]) < 2) return 'the complex named has one molecule.';
   const order = Number(/t\^(\d+)/.exec(hypothesis.text)?.[1] ?? NaN);
-  if (order > 2) return null;
+  if (order > 2) return new Unconfirmed('derivatives of order three and more are not worked out again.');
   const start = new Map(
     plain.species.map((name) => [name, network.start.get(network.species.indexOf(name))?.exact ?? ZERO]),
   );
@@ -152,13 +147,7 @@ function alongSolution(plain: PlainNetwork, rates: ReadonlyMap<string, Rational>
     for (const [arrow, rate] of rates) {
       const [from, to] = arrow.split(' ').map(Number);
       const reactants = exponentsOf(plain, from!);
-      for (const [name, amount] of changeOf(plain, {
-        from: from!,
-        to: to!,
-        massAction: true,
-        written: false,
-        constant: null,
-      })) {
+      for (const [name, amount] of changeOf(plain, { from: from!, to: to! })) {
         const i = plain.species.indexOf(name);
         if (exponents[i] === 0) continue;
         const moved = exponents.map((exponent, l) => exponent + reactants[l]! - (l === i ? 1 : 0));

@@ -1,7 +1,7 @@
 import { compare, isZero, sign, ZERO, add } from '../../exact/index.ts';
 import { components, deficiencyOf, leadsTo, nonterminal, sameAmount } from './plain-network.ts';
 import { exactOf, fluxVector } from './reading.ts';
-import type { Evidence } from './rules.ts';
+import type { Evidence } from './evidence.ts';
 
 /** Whether the two numbers of the witness are these. */
 function numbersAre({ witness }: Evidence, left: number, right: number | null): string | null {

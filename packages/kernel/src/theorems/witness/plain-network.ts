@@ -20,6 +20,8 @@ export type Amounts = ReadonlyMap<string, Rational>;
 export interface PlainReaction {
   readonly from: number;
   readonly to: number;
+  /** Its index among the reactions as written. */
+  readonly source: number;
   readonly massAction: boolean;
   /** Whether its rate stands as a law in the text. */
   readonly written: boolean;
@@ -61,6 +63,7 @@ export function plainNetwork(network: Network): PlainNetwork {
   const written = Array.from({ length: network.reactions.count }, (_, j) => ({
     from: keys[network.reactions.from[j]!]!,
     to: keys[network.reactions.to[j]!]!,
+    source: j,
     massAction: (network.laws[network.reactions.law[j]!] ?? { massAction: 0 }).massAction !== null,
     written: network.reactions.law[j]! >= 0,
     constant: constantOf(network, j),
@@ -106,7 +109,7 @@ export function arrowRates(plain: PlainNetwork): Map<string, Rational> | null {
 }
 
 /** Product minus reactant amounts of a reaction; amounts that cancel are absent. */
-export function changeOf(plain: PlainNetwork, reaction: PlainReaction): Amounts {
+export function changeOf(plain: PlainNetwork, reaction: Pick<PlainReaction, 'from' | 'to'>): Amounts {
   const change = new Map(plain.complexes[reaction.to]!);
   for (const [name, amount] of plain.complexes[reaction.from]!) {
     change.set(name, subtract(change.get(name) ?? ZERO, amount));

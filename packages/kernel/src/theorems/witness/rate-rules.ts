@@ -1,4 +1,5 @@
-import type { Evidence } from './rules.ts';
+import type { Evidence, Finding } from './evidence.ts';
+import { Unconfirmed } from './evidence.ts';
 
 /** Mass action everywhere and nothing else that changes a species; or a reaction for which it is not so. */
 export function massAction({ network, plain, holds, witness }: Evidence): string | null {
@@ -33,7 +34,10 @@ export function namesPower({ plain, holds, witness }: Evidence): boolean {
 }
 
 /** Mass action has all of these properties; for other laws only the prover's reading of the formula speaks. */
-export function otherLaws({ network, holds }: Evidence): string | null {
+export function otherLaws({ network, plain, holds }: Evidence): Finding {
   const untouched = network.events.length === 0 && network.rateRules.size === 0;
-  return holds === untouched ? null : 'an event or an equation of its own changes a species.';
+  if (holds !== untouched) return 'an event or an equation of its own changes a species.';
+  return !holds || plain.reactions.every(({ massAction }) => massAction)
+    ? null
+    : new Unconfirmed('the formula of a law is not read again.');
 }

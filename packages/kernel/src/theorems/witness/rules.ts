@@ -1,26 +1,15 @@
-import type { HypothesisClaim, Hypothesis, Verdict, Witness } from '@stillroom/shared/cells';
-import type { Network } from '@stillroom/shared/network';
-import type { PlainNetwork } from './plain-network.ts';
+import type { HypothesisClaim } from '@stillroom/shared/cells';
 import * as balance from './balance-rules.ts';
 import * as counts from './count-rules.ts';
+import { noSeveralByAlgorithm } from './deficiency-one-rule.ts';
+import { stronglyEndotactic } from './endotactic-rule.ts';
 import * as graph from './graph-rules.ts';
 import * as rates from './rate-rules.ts';
 import * as signs from './sign-rules.ts';
+import type { Rule } from './evidence.ts';
 import * as states from './state-rules.ts';
+import { ratesFactorise, transportBalances } from './transport-rule.ts';
 import * as vectors from './vector-rules.ts';
-
-/** What a rule looks at: the network read twice, the verdict and the hypothesis in question. */
-export interface Evidence {
-  readonly network: Network;
-  readonly plain: PlainNetwork;
-  readonly verdict: Verdict;
-  readonly hypothesis: Hypothesis;
-  readonly holds: boolean;
-  readonly witness: Witness | undefined;
-}
-
-/** Null when the claim is confirmed as it stands (holding or failing), else the complaint. */
-export type Rule = (evidence: Evidence) => string | null;
 
 /** How each claim is confirmed. */
 export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
@@ -50,6 +39,9 @@ export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'detailed balance condition': balance.detailedCondition,
   'complex balanced': balance.complexBalanced,
   'attraction is proven': graph.attractionProven,
+  'strongly endotactic': stronglyEndotactic,
+  'critical polynomial of one sign': signs.criticalSign,
+  'regular of deficiency one': noSeveralByAlgorithm,
   'several states verified': states.severalStates,
   'several are excluded': states.severalExcluded,
   'at most one by theorem': states.atMostOne,
@@ -58,8 +50,8 @@ export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'no large complex': counts.noLargeComplex,
   'large complexes balance': counts.largeComplexesBalance,
   'mass moves between sites': counts.sitesOnly,
-  'rates factorise': counts.unchecked,
-  'transport balances': counts.unchecked,
+  'rates factorise': ratesFactorise,
+  'transport balances': transportBalances,
   'rank one': graph.rankOne,
   'linear growth': counts.linearGrowth,
   'inward drift': counts.inwardDrift,

@@ -1,4 +1,4 @@
-import type { VerdictId, Witness } from '@stillroom/shared/cells';
+import type { HypothesisClaim, Witness } from '@stillroom/shared/cells';
 import type { Rational } from '../../exact/index.ts';
 import { compare, equals, fromDouble, isZero, multiply, sign, toDouble, ZERO } from '../../exact/index.ts';
 import type { Equation, ExactInterval } from './exact-box.ts';
@@ -6,7 +6,7 @@ import { holdsOneZero } from './exact-box.ts';
 import type { Amounts, PlainNetwork } from './plain-network.ts';
 import { arrowRates, changeOf, dimension, paired } from './plain-network.ts';
 import { exactOf } from './reading.ts';
-import type { Evidence } from './rules.ts';
+import type { Evidence, Finding } from './evidence.ts';
 
 type States = Extract<Witness, { kind: 'states' }>;
 
@@ -115,25 +115,41 @@ function overlap(a: ExactInterval, b: ExactInterval): boolean {
   return compare(a.low, b.high) <= 0 && compare(b.low, a.high) <= 0;
 }
 
-/** Theorems whose own verdicts prove that no class has two positive steady states. */
-const UNIQUENESS: readonly VerdictId[] = [
-  'no-positive-steady-state',
-  'deficiency-zero',
-  'deficiency-one',
-  'injective',
-  'concordant',
-];
+/** For each theorem that excludes two states of one class: sets of claims one of which has to stand complete. */
+const UNIQUENESS: Readonly<Record<string, readonly (readonly HypothesisClaim[])[]>> = {
+  'no-positive-steady-state': [['not consistent', 'rates follow reactants']],
+  'deficiency-zero': [
+    ['deficiency', 'weakly reversible', 'mass action'],
+    ['deficiency', 'not weakly reversible', 'rates follow reactants'],
+  ],
+  'deficiency-one': [
+    ['mass action', 'class deficiency at most one', 'class deficiencies add up', 'one terminal class each'],
+  ],
+  injective: [['mass action', 'determinants of one sign']],
+  concordant: [['rates are weakly monotonic', 'concordant']],
+  'deficiency one algorithm': [['mass action', 'regular of deficiency one']],
+  'degree criterion': [
+    ['mass action', 'critical polynomial of one sign', 'strongly endotactic'],
+    ['mass action', 'critical polynomial of one sign', 'no critical siphon', 'conservative'],
+    ['mass action', 'critical polynomial of one sign', 'no critical siphon', 'inward drift'],
+  ],
+};
 
-/** Refers to another theorem; its own verdict carries the evidence. */
-export function atMostOne({ verdict, holds }: Evidence): string | null {
-  if (!holds) return null;
-  const by = verdict.case ?? '';
-  return by === 'deficiency one algorithm' || UNIQUENESS.some((id) => id === by)
-    ? null
-    : 'no theorem is named.';
+/** A "yes" names a theorem whose hypotheses all stand in the verdict; a "no" carries two verified states. */
+export function atMostOne(evidence: Evidence): Finding {
+  return evidence.holds ? uniquenessComplaint(evidence) : severalStates({ ...evidence, holds: true });
 }
 
-/** Excluded by another theorem. */
-export function severalExcluded({ holds }: Evidence): string | null {
-  return holds ? 'an exclusion is stated as failing.' : null;
+/** Excluded by a theorem whose hypotheses all stand in the verdict. */
+export function severalExcluded(evidence: Evidence): Finding {
+  return evidence.holds ? 'an exclusion is stated as failing.' : uniquenessComplaint(evidence);
+}
+
+function uniquenessComplaint({ verdict }: Evidence): string | null {
+  const routes = UNIQUENESS[verdict.case ?? ''];
+  if (routes === undefined) return 'no theorem is named.';
+  const stated = new Set(verdict.hypotheses.filter(({ holds }) => holds === true).map(({ claim }) => claim));
+  return routes.some((claims) => claims.every((claim) => stated.has(claim)))
+    ? null
+    : 'a hypothesis of the theorem named is missing.';
 }

@@ -3,7 +3,8 @@ import type { Rational } from '../../exact/index.ts';
 import type { Amounts, PlainNetwork } from './plain-network.ts';
 import { changeOf, dimension, paired } from './plain-network.ts';
 import { fluxVector, speciesVector } from './reading.ts';
-import type { Evidence } from './rules.ts';
+import type { Evidence, Finding } from './evidence.ts';
+import { Unconfirmed } from './evidence.ts';
 
 /** N v, by species. */
 function production(plain: PlainNetwork, flux: ReadonlyMap<number, Rational>): Map<string, Rational> {
@@ -61,24 +62,54 @@ export function conservative({ plain, holds, witness }: Evidence): string | null
   return made.some((value) => value > 0) ? null : 'the flux produces nothing.';
 }
 
-/** Species up to which all sets are tried for siphons. */
-const ALL_SETS = 13;
+/** Siphons looked at before a "yes" is left unconfirmed. */
+const MOST_SIPHONS = 20_000;
 
-/** A "no" names a siphon without law; a "yes" is confirmed by trying all sets while that is possible. */
-export function noCriticalSiphon({ plain, holds, witness }: Evidence): string | null {
+/**
+ * A "no" names a siphon without law. A "yes" is confirmed by looking for a siphon that contains the support of no extreme
+ * law: the greatest siphon is cut down at one species of a law it contains after another, in every way.
+ */
+export function noCriticalSiphon({ plain, holds, witness }: Evidence): Finding {
   if (!holds) {
     if (witness?.kind !== 'set' || !('species' in witness)) return 'no siphon is named.';
     const set = new Set(witness.species);
     if (set.size === 0 || !isSiphon(plain, set)) return 'the set named is not a siphon.';
     return holdsLaw(plain, set) ? 'the siphon named holds a law.' : null;
   }
-  if (plain.species.length > ALL_SETS) return null;
-  for (let bits = 1; bits < 2 ** plain.species.length; bits++) {
-    const set = new Set(plain.species.filter((_, i) => bits & (2 ** i)));
-    if (isSiphon(plain, set) && !holdsLaw(plain, set))
-      return `the siphon {${[...set].join(', ')}} is critical.`;
+  const laws = nonnegativeLaws(plain, plain.species)?.map((law) => [...law.keys()]) ?? null;
+  if (laws === null) return new Unconfirmed('there are too many laws that are not negative.');
+  const seen = new Set<string>();
+  const open = [greatestSiphon(plain, plain.species)];
+  for (let siphon = open.pop(); siphon !== undefined; siphon = open.pop()) {
+    const key = siphon.join();
+    if (siphon.length === 0 || seen.has(key)) continue;
+    if (seen.size >= MOST_SIPHONS) return new Unconfirmed('there are too many siphons to look at.');
+    seen.add(key);
+    const members = new Set(siphon);
+    const law = laws.find((support) => support.every((name) => members.has(name)));
+    if (law === undefined) return `the siphon {${siphon.join(', ')}} is critical.`;
+    for (const name of law)
+      open.push(
+        greatestSiphon(
+          plain,
+          siphon.filter((other) => other !== name),
+        ),
+      );
   }
   return null;
+}
+
+/** The union of all siphons among some species: a product without reactant among them is dropped until none is left. */
+function greatestSiphon(plain: PlainNetwork, among: readonly string[]): string[] {
+  const set = new Set(among);
+  for (let changed = true; changed;) {
+    changed = false;
+    for (const { from, to } of plain.reactions) {
+      if ([...plain.complexes[from]!.keys()].some((name) => set.has(name))) continue;
+      for (const name of plain.complexes[to]!.keys()) if (set.delete(name)) changed = true;
+    }
+  }
+  return [...set];
 }
 
 /** The law is one, is not negative, and lies in the siphon that the text names first. */
@@ -100,22 +131,43 @@ function isSiphon(plain: PlainNetwork, set: ReadonlySet<string>): boolean {
   return plain.reactions.every(({ from, to }) => !meets(to) || meets(from));
 }
 
-/**
- * Whether some law is not negative, not zero and supported in the set: the alternative (Gordan) is a flux that drains
- * every species of the set. Decided by eliminating one species after another from the cone of laws.
- */
+/** Whether some law is not negative, not zero and supported in the set. */
 function holdsLaw(plain: PlainNetwork, set: ReadonlySet<string>): boolean {
-  return nonnegativeLaws(plain, [...set]).length > 0;
+  const laws = nonnegativeLaws(plain, [...set]);
+  if (laws === null) throw new Error('there are too many laws');
+  return laws.length > 0;
 }
 
-/** Extreme non-negative laws on some species: double description, one reaction at a time. */
-function nonnegativeLaws(plain: PlainNetwork, names: readonly string[]): Amounts[] {
+/** Extreme non-negative laws on some species; null where they are too many. */
+function nonnegativeLaws(plain: PlainNetwork, names: readonly string[]): Amounts[] | null {
+  const changes = [
+    ...new Map(plain.reactions.map((reaction) => [`${reaction.from} ${reaction.to}`, reaction])).values(),
+  ].map((reaction) => changeOf(plain, reaction));
+  return extremeSolutions(names, changes);
+}
+
+/** Extreme fluxes that change no species, by arrow "from to"; null where they are too many. */
+export function extremeFluxes(plain: PlainNetwork): Amounts[] | null {
+  const arrows = new Map(plain.reactions.map((reaction) => [`${reaction.from} ${reaction.to}`, reaction]));
+  const changes = [...arrows].map(([key, reaction]) => [key, changeOf(plain, reaction)] as const);
+  const balances = plain.species.map(
+    (name): Amounts =>
+      new Map(
+        changes.flatMap(([key, change]) => (change.has(name) ? [[key, change.get(name)!] as const] : [])),
+      ),
+  );
+  return extremeSolutions([...arrows.keys()], balances);
+}
+
+const MOST_RAYS = 600;
+
+/** Extreme non-negative solutions of linear equations, one for each minimal support: one equation after another. */
+function extremeSolutions(names: readonly string[], equations: readonly Amounts[]): Amounts[] | null {
   let rays: Map<string, Rational>[] = names.map(
     (name) => new Map([[name, { numerator: 1n, denominator: 1n }]]),
   );
-  for (const reaction of plain.reactions) {
-    const change = changeOf(plain, reaction);
-    const values = rays.map((ray) => paired(ray, change));
+  for (const equation of equations) {
+    const values = rays.map((ray) => paired(ray, equation));
     const next = rays.filter((_, k) => isZero(values[k]!));
     rays.forEach((up, a) => {
       if (sign(values[a]!) <= 0) return;
@@ -128,6 +180,7 @@ function nonnegativeLaws(plain: PlainNetwork, names: readonly string[]): Amounts
         next.push(sum);
       });
     });
+    if (next.length > MOST_RAYS) return null;
     // One ray for each minimal support is enough.
     rays = next.filter(
       (ray, k) =>
