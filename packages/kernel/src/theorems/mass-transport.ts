@@ -21,20 +21,20 @@ export const massTransport: Theorem = {
   kinetics: 'general',
   judge(context): Judgement {
     const sites = sitesOnly(context);
-    if (sites.holds !== true) return judged([sites], null);
+    if (sites.holds !== true) return judged([sites], null, false);
     const rates = factorisedRates(context);
-    return judged([sites, ...rates.hypotheses], rates.weight);
+    return judged([sites, ...rates.hypotheses], rates.weight, rates.fromStart);
   },
 };
 
-function judged(hypotheses: readonly Hypothesis[], weight: string | null): Judgement {
+function judged(hypotheses: readonly Hypothesis[], weight: string | null, fromStart: boolean): Judgement {
   const applies = appliesWhenAllHold(hypotheses);
   return {
     applies,
-    scope: 'these constants',
+    scope: fromStart ? 'these constants and start' : 'these constants',
     hypotheses,
     conclusion: {
-      yes: `The weight ∏ w_i(n_i) z_i^{n_i} is stationary in continuous time${weight === null ? '' : `, with ${weight}`}. Where the sum of the weights over the counts that can be reached is finite, it gives the stationary law there.`,
+      yes: `${fromStart ? 'With as many units as the start has, the' : 'The'} weight ∏ w_i(n_i) z_i^{n_i} is stationary in continuous time${weight === null ? '' : `, with ${weight}`}. Where the sum of the weights over the counts that can be reached is finite, it gives the stationary law there.`,
       no: 'The theorem does not apply. It does not follow that no product is stationary: on a general graph the condition is sufficient, not necessary. For the homogeneous one-way ring Evans, Majumdar, Zia 2004 show that it is necessary as well.',
       undecided: 'Undecided; the hypotheses that are open are marked.',
     }[applies],
