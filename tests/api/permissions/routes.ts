@@ -138,6 +138,14 @@ export const guardedRoutes: readonly GuardedRoute[] = [
     door: 'notebook',
     parts: () => ({ cell: 'c1' }),
   },
+  {
+    method: 'POST',
+    address: '/api/notebooks/:notebook/cells/:cell/trial',
+    ability: 'notebook.run',
+    door: 'notebook',
+    parts: () => ({ cell: 'c1' }),
+    body: () => ({ constants: { k: 2 } }),
+  },
   { method: 'GET', address: '/api/notebooks/:notebook/remarks', ability: 'notebook.read', door: 'notebook' },
   {
     method: 'POST',

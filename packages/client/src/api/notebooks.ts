@@ -1,4 +1,12 @@
-import type { FairCopy, NotebookView, RemarkView, ResultView, ShelfView } from '@stillroom/shared/contracts';
+import type {
+  FairCopy,
+  NotebookView,
+  RemarkView,
+  ResultView,
+  ShelfView,
+  TrialRequest,
+  TrialView,
+} from '@stillroom/shared/contracts';
 import { request } from './client.ts';
 
 const at = (notebook: string) => `/api/notebooks/${notebook}`;
@@ -22,6 +30,8 @@ export const runCell = (notebook: string, cell: string) =>
 export const runStale = (notebook: string) => request<void>('POST', `${at(notebook)}/run`);
 export const stopCell = (notebook: string, cell: string) =>
   request<void>('POST', `${at(notebook)}/cells/${cell}/stop`);
+export const tryValues = (notebook: string, cell: string, values: TrialRequest, signal: AbortSignal) =>
+  request<TrialView>('POST', `${at(notebook)}/cells/${cell}/trial`, values, signal);
 export const fetchRemarks = (notebook: string) => request<RemarkView[]>('GET', `${at(notebook)}/remarks`);
 export const writeRemark = (notebook: string, remark: { cell: string; quote: string; text: string }) =>
   request<RemarkView>('POST', `${at(notebook)}/remarks`, remark);

@@ -9,6 +9,8 @@ export const rateLimits = {
   reading: { most: 1200, seconds: 60 },
   /** Changing things. */
   writing: { most: 240, seconds: 60 },
+  /** Trying values, as a slider is drawn along. */
+  trying: { most: 900, seconds: 60 },
   /** Starting runs. */
   running: { most: 120, seconds: 60 },
   /** Uploads, imports, freezes: what costs the machine. */

@@ -59,6 +59,20 @@ export interface ResultView {
   readonly took: number;
 }
 
+const triedValues = z.record(z.string().check(z.maxLength(200)), z.number());
+
+/** POST /api/notebooks/:notebook/cells/:cell/trial: values by name in place of the cell's own. */
+export const trialRequest = z.strictObject({
+  constants: z.optional(triedValues),
+  start: z.optional(triedValues),
+});
+export type TrialRequest = z.infer<typeof trialRequest>;
+
+/** What the cell comes to with these values. Nothing of the notebook changes, and nobody else sees it. */
+export type TrialView =
+  | { readonly status: 'ok'; readonly result: unknown; readonly warnings: readonly string[] }
+  | { readonly status: 'failed'; readonly error: CellError };
+
 /** GET /api/notebooks/:notebook/remarks */
 export interface RemarkView {
   readonly id: string;

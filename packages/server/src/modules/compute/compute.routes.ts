@@ -1,3 +1,4 @@
+import { trialRequest, type TrialView } from '@stillroom/shared/contracts';
 import { Router, type Response } from 'express';
 import type { EntityManager } from 'typeorm';
 import * as z from 'zod/mini';
@@ -10,6 +11,7 @@ import { loadNotebook, loadPublicNotebook, type NotebookEntity } from '../notebo
 import { fairCopyText, withResult } from './fair-copy.ts';
 import type { Planner } from './planner.ts';
 import type { ResultStore } from './results.ts';
+import type { Trials } from './trials.ts';
 
 const notebookParams = z.object({ notebook: uuid });
 const cellParams = z.object({ notebook: uuid, cell: z.string().check(z.maxLength(100)) });
@@ -17,16 +19,19 @@ const resultParams = z.object({
   notebook: uuid,
   digest: z.string().check(z.regex(/^sha256:[0-9a-f]{64}$/u, 'A digest looks like sha256:….')),
 });
+const waits = { message: 'It waits for a cell it draws on to be computed.' };
+const givenUp = { message: 'This trial was given up for another.' };
 const publicParams = z.object({ token });
 
 export interface ComputeRoutes {
   readonly results: ResultStore;
+  readonly trials: Trials;
   /** Works with the planner of a notebook, opening it where it is not open. */
   withPlanner<T>(notebook: string, work: (planner: Planner) => Promise<T>): Promise<T>;
 }
 
 /** Results, fair copies, and what may be asked of the engine. */
-export function computeRoutes(services: Services, { results, withPlanner }: ComputeRoutes): Router {
+export function computeRoutes(services: Services, { results, withPlanner, trials }: ComputeRoutes): Router {
   const router = Router();
 
   const sendFairCopy = async (response: Response, manager: EntityManager, notebook: NotebookEntity) => {
@@ -124,6 +129,31 @@ export function computeRoutes(services: Services, { results, withPlanner }: Comp
       async handle({ person, params: { notebook, cell }, manager }) {
         await loadNotebook(manager, person.id, notebook, 'notebook.run');
         await withPlanner(notebook, (planner) => planner.stop(cell));
+      },
+    }),
+  );
+
+  router.post(
+    '/api/notebooks/:notebook/cells/:cell/trial',
+    route(services, {
+      limit: 'trying',
+      who: 'person',
+      params: cellParams,
+      body: trialRequest,
+      transaction: false,
+      async handle({ person, params: { notebook, cell }, body, manager, response }): Promise<TrialView> {
+        await loadNotebook(manager, person.id, notebook, 'notebook.run');
+        const left = new AbortController();
+        response.on('close', () => left.abort());
+        const { preparation, owner } = await withPlanner(notebook, (planner) => planner.trial(cell, body));
+        if (preparation.state === 'blocked') return { status: 'failed', error: preparation.error };
+        if (preparation.state === 'waiting') return { status: 'failed', error: waits };
+        const known = await trials.run(preparation.job, owner, left.signal);
+        if (known === null) return { status: 'failed', error: givenUp };
+        if (known.status === 'failed') return { status: 'failed', error: known.error };
+        const text = known.json ?? (await results.text(known.digest));
+        if (text === null) throw notFound('result');
+        return { status: 'ok', result: JSON.parse(text) as unknown, warnings: known.warnings };
       },
     }),
   );

@@ -16,6 +16,7 @@ import { ResultStore } from './results.ts';
 import { takeOutOldResults } from './retention.ts';
 import { Runner } from './runner.ts';
 import type { NotebookFile } from './state-keeper.ts';
+import { Trials } from './trials.ts';
 
 export interface Compute extends ServerModule {
   readonly results: ResultStore;
@@ -67,6 +68,7 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
     if (runner?.take(job, owner) !== true) await queue.submit(job, owner);
   };
 
+  const trials = new Trials({ results, demand, submit });
   const planners = new Map<string, Planner>();
   const opened = (room: Room): void => {
     const planner = new Planner({ room, results, queue, demand, file, failed, submit });
@@ -81,6 +83,7 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
   };
   const resultChanged = (digest: string): void => {
     for (const planner of planners.values()) planner.resultChanged(digest);
+    trials.resultChanged(digest);
   };
   const withPlanner: Compute['withPlanner'] = (notebook, work) =>
     options.rooms().use(notebook, () => {
@@ -135,7 +138,7 @@ export function createCompute(services: Services, options: ComputeOptions): Comp
     pool,
     opened,
     withPlanner,
-    routes: computeRoutes(services, { results, withPlanner }),
+    routes: computeRoutes(services, { results, withPlanner, trials }),
     async start() {
       await runner?.start();
       // Runs that were under way when the last process ended are taken up again.

@@ -1,4 +1,4 @@
-import type { CellJob } from '@stillroom/shared/cells';
+import type { CellJob, CellSettings } from '@stillroom/shared/cells';
 import type { Person } from '@stillroom/shared/contracts';
 import { type NotebookContent, readNotebook } from '@stillroom/shared/document';
 import {
@@ -169,6 +169,22 @@ export class Planner implements RoomObserver {
     await this.settled();
     const cells = this.#each();
     return { content: this.#content, cells, plan: this.#plan };
+  }
+
+  /**
+   * The job of a cell with other settings, for somebody's trial: nothing of it is planned or shown. What the cell draws on
+   * stands as it is.
+   */
+  async trial(id: string, changes: CellSettings): Promise<{ preparation: Preparation; owner: RunOwner }> {
+    await this.settled();
+    const cells = this.#content.cells.map((cell) =>
+      cell.id === id ? { ...cell, settings: { ...cell.settings, ...changes } } : cell,
+    );
+    // A copy of the memory: the trial's cell must not take the place of the true one.
+    const plan = planNotebook(cells, { ...this.#memory });
+    const preparation = prepareJob(plan, id, (input) => this.#outcomeOf(input));
+    const name = `a trial of ${plan.byId.get(id)?.name ?? ''}`;
+    return { preparation, owner: { group: this.#group, notebook: this.#options.room.notebook, name } };
   }
 
   /** Whether a digest is that of a cell here, or of the result one shows. */
