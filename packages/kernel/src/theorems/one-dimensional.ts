@@ -6,13 +6,13 @@ import { sources } from './sources.ts';
 import type { Theorem } from './theorem.ts';
 import { appliesWhenAllHold } from './theorem.ts';
 
-/** One equation on each class; the number of its zeros by Sturm's theorem. Joshi, Shiu 2017 on which networks have several. */
+/** One equation on each class; the number of its zeros by Sturm's theorem (1829, 1835). Joshi, Shiu 2017 on which networks have several. */
 export const oneDimensional: Theorem = {
   id: 'one-dimensional',
   title: 'One-dimensional network',
   statement:
     'When the rank is 1, the rate equations on a class are one autonomous equation: no solution oscillates, and the positive steady states can be counted exactly.',
-  citation: [sources.joshiShiu2017],
+  citation: [sources.sturm1835, sources.joshiShiu2017],
   kinetics: 'general',
   judge(context) {
     const hypotheses = [rankOne(context), autonomous(context)];

@@ -1,19 +1,36 @@
 import type { Citation } from '@stillroom/shared/cells';
 
-/** The publications that theorems cite, once each. A doi stands where it was checked. */
+/**
+ * The publications that theorems cite, once each. A doi stands where it was looked up; the others have journal, volume
+ * and pages.
+ */
 export const sources = {
+  sturm1835: {
+    authors: 'C. Sturm',
+    year: 1835,
+    title: 'Mémoire sur la résolution des équations numériques',
+    where:
+      'Mémoires présentés par divers savants à l’Académie royale des sciences de l’Institut de France 6, 271–318',
+  },
   wegscheider1901: {
     authors: 'R. Wegscheider',
     year: 1901,
     title:
       'Über simultane Gleichgewichte und die Beziehungen zwischen Thermodynamik und Reactionskinetik homogener Systeme',
+    doi: '10.1007/BF01517498',
   },
   krawczyk1969: {
     authors: 'R. Krawczyk',
     year: 1969,
     title: 'Newton-Algorithmen zur Bestimmung von Nullstellen mit Fehlerschranken',
+    doi: '10.1007/BF02234767',
   },
-  spitzer1970: { authors: 'F. Spitzer', year: 1970, title: 'Interaction of Markov processes' },
+  spitzer1970: {
+    authors: 'F. Spitzer',
+    year: 1970,
+    title: 'Interaction of Markov processes',
+    doi: '10.1016/0001-8708(70)90034-4',
+  },
   horn1972: {
     authors: 'F. Horn',
     year: 1972,
@@ -51,19 +68,27 @@ export const sources = {
     year: 1989,
     title:
       'Necessary and sufficient conditions for detailed balancing in mass action systems of arbitrary complexity',
+    where: 'Chemical Engineering Science 44, 1819–1827',
   },
   schuster1989: {
     authors: 'S. Schuster, R. Schuster',
     year: 1989,
     title:
       'A generalization of Wegscheider’s condition. Implications for properties of steady states and for quasi-steady-state approximation',
+    doi: '10.1007/BF01171883',
   },
   meynTweedie1993: {
     authors: 'S. P. Meyn, R. L. Tweedie',
     year: 1993,
     title: 'Stability of Markovian processes III: Foster–Lyapunov criteria for continuous-time processes',
+    doi: '10.2307/1427522',
   },
-  hofbauer1990: { authors: 'J. Hofbauer', year: 1990, title: 'An index theorem for dissipative semiflows' },
+  hofbauer1990: {
+    authors: 'J. Hofbauer',
+    year: 1990,
+    title: 'An index theorem for dissipative semiflows',
+    where: 'Rocky Mountain Journal of Mathematics 20, 1017–1031',
+  },
   feinberg1995existence: {
     authors: 'M. Feinberg',
     year: 1995,
@@ -79,7 +104,8 @@ export const sources = {
   evansMajumdarZia2004: {
     authors: 'M. R. Evans, S. N. Majumdar, R. K. P. Zia',
     year: 2004,
-    title: 'Factorized steady states in mass transport models',
+    title: 'Factorised steady states in mass transport models',
+    where: 'Journal of Physics A 37, L275–L280',
   },
   craciunFeinberg2005: {
     authors: 'G. Craciun, M. Feinberg',
@@ -96,12 +122,14 @@ export const sources = {
   evansMajumdarZia2006: {
     authors: 'M. R. Evans, S. N. Majumdar, R. K. P. Zia',
     year: 2006,
-    title: 'Factorized steady states in mass transport models on an arbitrary graph',
+    title: 'Factorised steady states in mass transport models on an arbitrary graph',
+    doi: '10.1088/0305-4470/39/18/006',
   },
   greenblattLebowitz2006: {
     authors: 'R. L. Greenblatt, J. L. Lebowitz',
     year: 2006,
     title: 'Product measure steady states of generalized zero range processes',
+    doi: '10.1088/0305-4470/39/7/003',
   },
   angeliDeLeenheerSontag2007: {
     authors: 'D. Angeli, P. De Leenheer, E. D. Sontag',
@@ -119,6 +147,7 @@ export const sources = {
     authors: 'D. F. Anderson',
     year: 2008,
     title: 'Global asymptotic stability for a class of nonlinear chemical equations',
+    where: 'SIAM Journal on Applied Mathematics 68, 1464–1476',
   },
   craciunDickensteinShiuSturmfels2009: {
     authors: 'G. Craciun, A. Dickenstein, A. Shiu, B. Sturmfels',
@@ -148,11 +177,13 @@ export const sources = {
     authors: 'B. Boros',
     year: 2012,
     title: 'Notes on the deficiency-one theorem: multiple linkage classes',
+    where: 'Mathematical Biosciences 235, 110–122',
   },
   pantea2012: {
     authors: 'C. Pantea',
     year: 2012,
     title: 'On the persistence and global stability of mass-action systems',
+    where: 'SIAM Journal on Mathematical Analysis 44, 1636–1673',
   },
   shinarFeinberg2012: {
     authors: 'G. Shinar, M. Feinberg',
@@ -165,17 +196,20 @@ export const sources = {
     year: 2013,
     title:
       'On the dependence of the existence of the positive steady states on the rate coefficients for deficiency-one mass action systems: single linkage class',
+    doi: '10.1007/s10910-013-0222-z',
   },
   craciunNazarovPantea2013: {
     authors: 'G. Craciun, F. Nazarov, C. Pantea',
     year: 2013,
     title: 'Persistence and permanence of mass-action and power-law dynamical systems',
+    doi: '10.1137/100812355',
   },
   wiufFeliu2013: {
     authors: 'C. Wiuf, E. Feliu',
     year: 2013,
     title:
       'Power-law kinetics and determinant criteria for the preclusion of multistationarity in networks of interacting species',
+    where: 'SIAM Journal on Applied Dynamical Systems 12, 1685–1721',
   },
   andersonEncisoJohnston2014: {
     authors: 'D. F. Anderson, G. A. Enciso, M. D. Johnston',
@@ -187,6 +221,7 @@ export const sources = {
     authors: 'M. Gopalkrishnan, E. Miller, A. Shiu',
     year: 2014,
     title: 'A geometric approach to the global attractor conjecture',
+    where: 'SIAM Journal on Applied Dynamical Systems 13, 758–797',
   },
   guptaBriatKhammash2014: {
     authors: 'A. Gupta, C. Briat, M. Khammash',
@@ -212,21 +247,25 @@ export const sources = {
     authors: 'C. Conradi, E. Feliu, M. Mincheva, C. Wiuf',
     year: 2017,
     title: 'Identifying parameter regions for multistationarity',
+    doi: '10.1371/journal.pcbi.1005751',
   },
   joshiShiu2017: {
     authors: 'B. Joshi, A. Shiu',
     year: 2017,
     title: 'Which small reaction networks are multistationary?',
+    where: 'Mathematical Modelling of Natural Phenomena 12, 153–178',
   },
   andersonCappellettiKoyamaKurtz2018: {
     authors: 'D. F. Anderson, D. Cappelletti, M. Koyama, T. G. Kurtz',
     year: 2018,
     title: 'Non-explosivity of stochastically modeled reaction networks that are complex balanced',
+    doi: '10.1007/s11538-018-0473-8',
   },
   boros2019: {
     authors: 'B. Boros',
     year: 2019,
     title: 'Existence of positive steady states for weakly reversible mass-action systems',
+    where: 'SIAM Journal on Mathematical Analysis 51, 435–449',
   },
   andersonSchnoerrYuan2020: {
     authors: 'D. F. Anderson, D. Schnoerr, C. Yuan',
@@ -240,5 +279,6 @@ export const sources = {
     year: 2022,
     title:
       'Full classification of dynamics for one-dimensional continuous-time Markov chains with polynomial transition rates',
+    where: 'Advances in Applied Probability 55, 321–355',
   },
 } as const satisfies Record<string, Citation>;

@@ -145,6 +145,8 @@ export interface Citation {
   readonly authors: string;
   readonly year: number;
   readonly title: string;
+  /** Journal, volume and pages, where no doi is given. */
+  readonly where?: string;
   readonly doi?: string;
 }
 
