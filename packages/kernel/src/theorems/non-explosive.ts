@@ -1,5 +1,6 @@
-import type { Hypothesis } from '@stillroom/shared/cells';
+import type { Hypothesis, VerdictScope } from '@stillroom/shared/cells';
 import type { TheoremContext } from './context.ts';
+import { lineBehaviour, lineHypothesis } from './counts/leading-signs.ts';
 import { linearDrift } from './counts/linear-drift.ts';
 import { massActionInCounts, valuesGiven } from './hypotheses.ts';
 import { sources } from './sources.ts';
@@ -16,6 +17,7 @@ export const nonExplosive: Theorem = {
     sources.meynTweedie1993,
     sources.guptaBriatKhammash2014,
     sources.andersonCappellettiKoyamaKurtz2018,
+    sources.xuHansenWiuf2022,
   ],
   kinetics: 'mass action',
   judge(context): Judgement {
@@ -29,8 +31,11 @@ export const nonExplosive: Theorem = {
       scope: route?.scope ?? 'all constants',
       hypotheses,
       conclusion: {
-        yes: `In counts, from every start and ${route?.scope === 'these constants' ? 'for these constants' : 'for all constants'}, only finitely many reactions occur in finite time.`,
-        no: 'The theorem does not apply: nothing follows from it, and the counts need not explode.',
+        yes: `In counts, from every start and for ${route?.scope ?? 'all constants'}, only finitely many reactions occur in finite time.`,
+        no:
+          route?.name === LEADING
+            ? 'From large enough counts infinitely many reactions occur in finite time with positive probability.'
+            : 'The theorem does not apply: nothing follows from it, and the counts need not explode.',
         undecided:
           'Undecided: no linear function of this kind was found. It does not follow that the counts explode.',
       }[applies],
@@ -40,9 +45,12 @@ export const nonExplosive: Theorem = {
   },
 };
 
+/** The route by the classification of counts on a line. */
+const LEADING = 'leading terms';
+
 interface Route {
   readonly name: string;
-  readonly scope: 'all constants' | 'these constants';
+  readonly scope: VerdictScope;
   readonly hypotheses: readonly Hypothesis[];
 }
 
@@ -72,6 +80,14 @@ function routeOf(context: TheoremContext): Route {
       hypotheses: [
         { claim: 'complex balanced', text: 'The rate equations are complex balanced.', holds: true },
       ],
+    };
+  }
+  const line = lineBehaviour(context);
+  if (line !== null) {
+    return {
+      name: LEADING,
+      scope: line.scope,
+      hypotheses: [lineHypothesis(line, 'no explosion', !line.explodes)],
     };
   }
   return {

@@ -1,6 +1,7 @@
 import type { Hypothesis } from '@stillroom/shared/cells';
 import { zerosOnClass } from './class-polynomial.ts';
 import type { TheoremContext } from './context.ts';
+import { lineBehaviour } from './counts/leading-signs.ts';
 import { ratesFollowReactants } from './hypotheses.ts';
 import { sources } from './sources.ts';
 import type { Theorem } from './theorem.ts';
@@ -23,11 +24,11 @@ export const oneDimensional: Theorem = {
       scope: count === null ? 'all constants' : 'these constants and start',
       hypotheses,
       conclusion: {
-        yes: `No solution is periodic without being constant, and every bounded solution tends to a steady state, for all constants.${counted(count)}`,
+        yes: `No solution is periodic without being constant, and every bounded solution tends to a steady state, for all constants.${counted(count)}${inCounts(context)}`,
         no: 'The theorem does not apply. It does not follow that solutions oscillate.',
         undecided: 'Undecided.',
       }[applies],
-      silentOn: 'Which steady states are stable, and counts.',
+      silentOn: 'Which steady states are stable.',
     };
   },
 };
@@ -42,6 +43,21 @@ function counted(count: number | 'all' | null): string {
         ? 'exactly one positive steady state'
         : `exactly ${count} positive steady states`;
   return ` With the constants and the start given, the class has ${number}.`;
+}
+
+/** What the leading terms of the rates say about counts, where they move along the line without end. */
+function inCounts(context: TheoremContext): string {
+  const line = lineBehaviour(context);
+  if (line === null) return '';
+  const recurrence = {
+    positive: 'every closed irreducible set is positive recurrent',
+    null: 'infinite closed irreducible sets are null recurrent',
+    transient: 'infinite closed irreducible sets are transient',
+  }[line.recurrence];
+  const explosion = line.explodes
+    ? 'large counts explode with positive probability'
+    : 'there is no explosion';
+  return ` In counts, for ${line.scope}: ${recurrence}, and ${explosion}, since ${line.text}.`;
 }
 
 function rankOne({ rank }: TheoremContext): Hypothesis {

@@ -129,6 +129,8 @@ export const hypothesisClaims = [
   'transport balances',
   'rank one',
   'linear growth',
+  'leading terms do not explode',
+  'leading terms recur',
   'inward drift',
 ] as const;
 export type HypothesisClaim = (typeof hypothesisClaims)[number];

@@ -138,7 +138,8 @@ function callFraction(
       continue;
     }
     const difference = subtract(multiply(part.above, chosen.below), multiply(chosen.above, part.below));
-    const order: number = signAtInfinity(difference, 1) * sign(part.below.at(-1)!) * sign(chosen.below.at(-1)!);
+    const order: number =
+      signAtInfinity(difference, 1) * sign(part.below.at(-1)!) * sign(chosen.below.at(-1)!);
     const settled = Math.max(
       part.from,
       chosen.from,

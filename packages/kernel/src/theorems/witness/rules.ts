@@ -5,6 +5,7 @@ import { noSeveralByAlgorithm } from './deficiency-one-rule.ts';
 import { stronglyEndotactic } from './endotactic-rule.ts';
 import * as graph from './graph-rules.ts';
 import * as rates from './rate-rules.ts';
+import { doesNotExplode, recurs } from './line-rule.ts';
 import * as signs from './sign-rules.ts';
 import type { Rule } from './evidence.ts';
 import * as states from './state-rules.ts';
@@ -54,5 +55,7 @@ export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'transport balances': transportBalances,
   'rank one': graph.rankOne,
   'linear growth': counts.linearGrowth,
+  'leading terms do not explode': doesNotExplode,
+  'leading terms recur': recurs,
   'inward drift': counts.inwardDrift,
 };
