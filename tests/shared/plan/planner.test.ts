@@ -1,4 +1,4 @@
-import { newPlanMemory, planNotebook, type PlannableCell } from '@stillroom/shared/plan';
+import { newPlanMemory, planNotebook, type PlannableCell, readAhead } from '@stillroom/shared/plan';
 import { describe, expect, test } from 'vitest';
 
 const cell = (
@@ -192,5 +192,28 @@ describe('what cannot be computed says why', () => {
     expect(problemOf([cell('claim', '', { id: 'c', text: '1 == 1' })], 'c')?.message).toBe(
       'This claim has no name.',
     );
+  });
+});
+
+describe('reading ahead', () => {
+  const long = Array.from({ length: 3000 }, (_, i) => `A${i} + B <=> C${i} | p${i}, q${i} # row ${i}`).join(
+    '\n',
+  );
+
+  test('changes no plan, whether it is finished, given up or followed by an edit', () => {
+    for (const taken of [0, 1, Number.POSITIVE_INFINITY]) {
+      const memory = newPlanMemory();
+      let text = long;
+      for (const edit of ['', '\nB -> 0', '\nB => 0']) {
+        text += edit;
+        const cells = [
+          cell('network', 'large', { text }),
+          cell('structure', 's', { settings: { network: 'large' } }),
+        ];
+        let steps = 0;
+        for (const _step of readAhead(cells, memory)) if ((steps += 1) > taken) break;
+        expect(planNotebook(cells, memory)).toEqual(planNotebook(cells));
+      }
+    }
   });
 });

@@ -101,15 +101,15 @@ class ExpressionParser {
   }
 
   whole(): ExpressionSyntax {
-    return this.nested(() => {
-      const value = this.binary(0, true);
-      const { scanner } = this;
-      if (this.units && scanner.kind === 'name' && !isKeyword(scanner.word)) throw this.notAUnit(value);
-      return value;
-    });
+    this.enter();
+    const value = this.binary(0, true);
+    const { scanner } = this;
+    if (this.units && scanner.kind === 'name' && !isKeyword(scanner.word)) throw this.notAUnit(value);
+    this.leave();
+    return value;
   }
 
-  private nested<T>(read: () => T): T {
+  private enter(): void {
     const { scanner } = this;
     scanner.depth += 1;
     if (scanner.depth > DEPTH_LIMIT) {
@@ -117,9 +117,17 @@ class ExpressionParser {
         hint: 'Give a part of it a name with let.',
       });
     }
-    const result = read();
-    scanner.depth -= 1;
+  }
+
+  private leave(): void {
+    this.scanner.depth -= 1;
     this.height += 1;
+  }
+
+  private nested(read: () => ExpressionSyntax): ExpressionSyntax {
+    this.enter();
+    const result = read();
+    this.leave();
     return result;
   }
 

@@ -90,6 +90,29 @@ const EXPONENT_LIMIT = 2000;
 
 /** The exact value of a decimal such as "0.25" or "1.5e-3"; null where the text is none or its exponent is beyond ±2000. */
 export function ofDecimal(text: string): Rational | null {
+  return ofShortDecimal(text) ?? ofAnyDecimal(text);
+}
+
+/** Digits with at most one point, few enough that numerator and denominator are exact as doubles; null for any other text. */
+function ofShortDecimal(text: string): Rational | null {
+  if (text.length > 15) return null;
+  let numerator = 0;
+  let denominator = 0;
+  for (let i = 0; i < text.length; i += 1) {
+    const code = text.charCodeAt(i);
+    if (code >= 48 && code <= 57) {
+      numerator = numerator * 10 + code - 48;
+      denominator *= 10;
+    } else if (code === 46 && denominator === 0) denominator = 1;
+    else return null;
+  }
+  if (text.length === 0 || (denominator === 1 && text.length === 1)) return null;
+  if (denominator <= 1) return { numerator: BigInt(numerator), denominator: 1n };
+  const divisor = gcdOfNumbers(numerator, denominator);
+  return { numerator: BigInt(numerator / divisor), denominator: BigInt(denominator / divisor) };
+}
+
+function ofAnyDecimal(text: string): Rational | null {
   const parts = DECIMAL.exec(text);
   if (!parts) return null;
   const [, sign, whole = '', fraction = '', exponentText = '0'] = parts;

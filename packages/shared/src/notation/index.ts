@@ -10,6 +10,7 @@ export type {
   TargetSyntax,
   TermSyntax,
 } from './ast.ts';
+export { CanonicalLines, canonicalText } from './canonical.ts';
 export type { Complaint, NotationReading, Repair } from './complaint.ts';
 export { alignColumns } from './editing/align.ts';
 export { applyChanges } from './editing/change.ts';
@@ -22,5 +23,5 @@ export { textOfReactionList } from './editing/paste.ts';
 export { addRow, removeRow, setRowField, tableFields, tableOf, withRowField } from './editing/table.ts';
 export type { TableField, TableRow } from './editing/table.ts';
 export { parseNetwork } from './parse.ts';
-export { canonicalText, printNetwork } from './print.ts';
+export { printNetwork } from './print.ts';
 export { readNetwork } from './read.ts';

@@ -7,31 +7,41 @@ import { Failure, makeIt } from './failure.ts';
 import { plainText } from './lines.ts';
 import type { LogicalLine } from './lines.ts';
 import { nameOfTarget, parseFamily, parseTarget } from './parse-names.ts';
-import { Scanner } from './tokens.ts';
+import type { Scanner } from './tokens.ts';
 
 /** Reads a row column by column, so that an error in one hides none in the next; null where any has one. */
-export function parseRow(text: string, line: LogicalLine, complaints: Complaints): RowSyntax | null {
-  const [firstBar = line.to, secondBar = line.to] = line.bars;
+export function parseRow(scanner: Scanner, line: LogicalLine, complaints: Complaints): RowSyntax | null {
+  const { text } = scanner;
+  const firstBar = line.bars[0] ?? line.to;
+  const secondBar = line.bars[1] ?? line.to;
   const itemsFrom = Math.min(firstBar + 1, line.to);
   let reaction: ReactionColumn | null = null;
   try {
-    reaction = parseReaction(new Scanner(text, line.from, firstBar, 'row'));
+    reaction = parseReaction(scanner.turnTo(line.from, firstBar, 'row'));
   } catch (thrown) {
     complaints.failure(thrown);
   }
-  const items = parseItems(new Scanner(text, itemsFrom, secondBar, 'expression'), complaints);
+  const items =
+    itemsFrom < secondBar
+      ? parseItems(scanner.turnTo(itemsFrom, secondBar, 'expression'), complaints)
+      : noItems;
   if (!reaction || !items) return null;
   return {
     kind: 'row',
     line: line.line,
     comment: line.comment,
-    ...reaction,
+    family: reaction.family,
+    sides: reaction.sides,
+    arrows: reaction.arrows,
+    from: reaction.from,
     items,
     itemsSpan: { from: itemsFrom, to: secondBar },
-    note: plainText(text, Math.min(secondBar + 1, line.to), line.to).normalize('NFC'),
+    note: secondBar < line.to ? plainText(text, secondBar + 1, line.to).normalize('NFC') : '',
     to: line.to,
   };
 }
+
+const noItems: readonly ItemSyntax[] = [];
 
 type ReactionColumn = Pick<RowSyntax, 'family' | 'sides' | 'arrows' | 'from'>;
 
@@ -72,6 +82,21 @@ const arrowSigns: readonly (readonly [typed: string, sign: ArrowSyntax['sign']])
 const properSigns = new Set(['->', '<-', '<=>', '→', '←', '⇌']);
 
 function parseArrow(scanner: Scanner, first: boolean): ArrowSyntax {
+  return properArrow(scanner) ?? parseTypedArrow(scanner, first);
+}
+
+/** An arrow as it is mostly written: a word of the notation that no longer arrow begins with. */
+function properArrow(scanner: Scanner): ArrowSyntax | null {
+  const { word, from, to, text } = scanner;
+  if (scanner.kind !== 'symbol' || (word !== '->' && word !== '<=>' && word !== '<-')) return null;
+  const next = to < scanner.limit ? text.charCodeAt(to) : 0;
+  // `<->` and `<--` are longer.
+  if (word === '<-' && (next === 62 || next === 45)) return null;
+  scanner.advance();
+  return { sign: word, from, to };
+}
+
+function parseTypedArrow(scanner: Scanner, first: boolean): ArrowSyntax {
   const { from, text, limit } = scanner;
   const fitting = arrowSigns.find(([typed]) => text.startsWith(typed, from) && from + typed.length <= limit);
   if (!fitting) throw missingArrow(scanner, first);

@@ -31,20 +31,24 @@ export function parseNetwork(text: string): { tree: NetworkTree; complaints: rea
 
 /** As parseNetwork, into complaints that go on to be gathered. */
 export function parseTree(text: string, complaints: Complaints): NetworkTree {
-  return { lines: logicalLines(text).map((line) => parseLine(text, line, complaints)) };
+  const scanner = new Scanner(text, 0, 0, 'expression');
+  return { lines: logicalLines(text).map((line) => parseLine(scanner, line, complaints)) };
 }
 
-function parseLine(text: string, line: LogicalLine, complaints: Complaints): LineSyntax {
+/** One logical line of the scanner's text; what is wrong with it goes to the complaints. */
+export function parseLine(scanner: Scanner, line: LogicalLine, complaints: Complaints): LineSyntax {
   const { from: begin, to, line: number, comment } = line;
   if (begin === to) return { kind: 'blank', line: number, comment, from: begin, to };
-  const scanner = new Scanner(text, line.from, line.to, 'expression');
+  scanner.turnTo(begin, to, 'expression');
   if (scanner.kind === 'end') return { kind: 'blank', line: number, comment, from: begin, to };
   const from = scanner.from;
   const read =
     scanner.kind === 'name' && isStatementWord(scanner.word)
       ? parseStatement(scanner, line, complaints)
-      : parseRow(text, line, complaints);
-  return read ?? { kind: 'broken', source: plainText(text, begin, to), line: number, comment, from, to };
+      : parseRow(scanner, line, complaints);
+  return (
+    read ?? { kind: 'broken', source: plainText(scanner.text, begin, to), line: number, comment, from, to }
+  );
 }
 
 function parseStatement(scanner: Scanner, line: LogicalLine, complaints: Complaints): LineSyntax | null {

@@ -12,7 +12,6 @@ import type {
   TermSyntax,
 } from './ast.ts';
 import { columnWidths, pad } from './columns.ts';
-import { parseNetwork } from './parse.ts';
 
 /**
  * The canonical text of a tree: one space between words, ASCII arrows, columns aligned within each block of lines,
@@ -33,22 +32,6 @@ export function printNetwork(tree: NetworkTree): string {
     .join('');
 }
 
-/**
- * The canonical text without comments, notes, blank lines and alignment, from which digests are made; null where the
- * text has a syntax error.
- */
-export function canonicalText(text: string): string | null {
-  const { tree, complaints } = parseNetwork(text);
-  if (complaints.some((complaint) => complaint.severity === 'error')) return null;
-  return tree.lines
-    .filter((line) => line.kind !== 'blank')
-    .map((line) =>
-      line.kind === 'row' ? joinColumns(rowColumns({ ...line, note: '' }), []) : printStatement(line),
-    )
-    .map((line) => `${line}\n`)
-    .join('');
-}
-
 /** Reaction, constants and note of a row, without empty columns at the end. */
 export function rowColumns(row: RowSyntax): readonly string[] {
   const columns = [printReaction(row), printItems(row.items), row.note];
@@ -56,7 +39,8 @@ export function rowColumns(row: RowSyntax): readonly string[] {
   return columns;
 }
 
-function joinColumns(columns: readonly string[], widths: readonly number[]): string {
+/** Columns with bars between them, each but the last padded to its width. */
+export function joinColumns(columns: readonly string[], widths: readonly number[]): string {
   return columns
     .map((column, i) => (i < columns.length - 1 ? pad(column, widths[i] ?? 0) : column))
     .join(' | ')
@@ -120,7 +104,8 @@ function printAssignment(item: AssignmentSyntax, after: string): string {
   return `${printTarget(item.target)} = ${printExpression(item.value)}${after}${family}`;
 }
 
-function printStatement(line: LineSyntax): string {
+/** A line that is no row, without its comment; "" for a blank one. */
+export function printStatement(line: LineSyntax): string {
   switch (line.kind) {
     case 'blank':
     case 'row':

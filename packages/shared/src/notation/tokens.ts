@@ -1,57 +1,11 @@
+import { EMPTY_HASH, hashWith, knownWords, LONGEST_KNOWN } from './known-words.ts';
+
 /**
  * The words of the notation, drawn one at a time from a stretch of the text. In a row an arrow is one word and a number
  * has no exponent (`2E1` is two of E1); in an expression `<-` is "less than minus" and `2e1` is twenty.
  */
 export type TokenMode = 'row' | 'expression';
 export type TokenKind = 'name' | 'number' | 'symbol' | 'unknown' | 'end';
-
-/** Longest first, so that a prefix never hides a longer symbol. */
-const ROW_SYMBOLS = [
-  '<=>',
-  '->',
-  '<-',
-  '..',
-  '+',
-  '-',
-  '/',
-  '*',
-  '[',
-  ']',
-  '(',
-  ')',
-  ',',
-  '=',
-  '|',
-  ':',
-  '<',
-  '>',
-  '%',
-];
-const EXPRESSION_SYMBOLS = [
-  ...[
-    '..',
-    '==',
-    '!=',
-    '<=',
-    '>=',
-    '+',
-    '-',
-    '*',
-    '/',
-    '%',
-    '^',
-    '(',
-    ')',
-    '[',
-    ']',
-    ',',
-    '=',
-    '<',
-    '>',
-    ':',
-    '|',
-  ],
-];
 
 /** Characters that are read as an ASCII symbol. */
 const ALIASES: Readonly<Record<string, string>> = {
@@ -75,12 +29,24 @@ const Code = {
   LineFeed: 10,
   Return: 13,
   Space: 32,
+  Bang: 33,
   Quote: 39,
+  Minus: 45,
   Dot: 46,
+  Less: 60,
+  Equal: 61,
+  Greater: 62,
   Backslash: 92,
+  Caret: 94,
   Underscore: 95,
   NoBreakSpace: 0xa0,
 } as const;
+
+/** The symbols of one character, by its code; `^` is none in a row. */
+const singles: readonly (string | undefined)[] = Array.from({ length: 128 }, (_, code) => {
+  const character = String.fromCharCode(code);
+  return '+-*/%^()[],=|:<>'.includes(character) ? character : undefined;
+});
 
 const isDigit = (code: number) => code >= 48 && code <= 57;
 const isAsciiLetter = (code: number) => (code >= 97 && code <= 122) || (code >= 65 && code <= 90);
@@ -160,7 +126,7 @@ export class Scanner {
   /** How deep the reader is in brackets, signs and powers; kept here because readers call each other. */
   depth = 0;
   readonly text: string;
-  readonly limit: number;
+  limit: number;
 
   constructor(text: string, from: number, limit: number, mode: TokenMode) {
     this.text = text;
@@ -170,6 +136,17 @@ export class Scanner {
     this.to = from;
     this.previousEnd = from;
     this.advance();
+  }
+
+  /** Turns to another stretch of the same text, as if made anew. */
+  turnTo(from: number, limit: number, mode: TokenMode): this {
+    this.limit = limit;
+    this.mode = mode;
+    this.from = from;
+    this.to = from;
+    this.depth = 0;
+    this.advance();
+    return this;
   }
 
   /** Whether the current word is of this kind. */
@@ -206,25 +183,57 @@ export class Scanner {
   }
 
   advance(): void {
+    const { text, limit } = this;
     this.previousEnd = this.to;
-    const at = this.skipBlanks(this.to);
+    let at = this.to;
+    // A single space is by far the most that stands between words.
+    if (at < limit && text.charCodeAt(at) === Code.Space) at += 1;
+    let code = at < limit ? text.charCodeAt(at) : 0;
+    if (code <= Code.Space || code === Code.Backslash || code >= 128) {
+      at = this.skipBlanks(at);
+      code = at < limit ? text.charCodeAt(at) : 0;
+    }
     this.from = at;
-    if (at >= this.limit) {
-      this.set('end', this.limit, '');
-      return;
-    }
-    const code = this.text.charCodeAt(at);
-    if (isDigit(code) || (code === Code.Dot && isDigit(this.text.charCodeAt(at + 1)))) {
+    if (at >= limit) this.set('end', limit, '');
+    else if (isAsciiLetter(code)) this.readName(at);
+    else if (isDigit(code) || (code === Code.Dot && isDigit(text.charCodeAt(at + 1)))) {
       const end = this.endOfNumber(at);
-      this.set('number', end, this.text.slice(at, end));
+      this.set('number', end, text.slice(at, end));
+    } else if (code < 128) this.readSymbol(at, code);
+    else this.readBeyondAscii(at);
+  }
+
+  /** A name that begins with a letter of ASCII, as most do. */
+  private readName(from: number): void {
+    const { text, limit } = this;
+    let hash = EMPTY_HASH;
+    let at = from;
+    for (; at < limit; at += 1) {
+      const code = text.charCodeAt(at);
+      if (!isAsciiLetter(code) && !isDigit(code) && code !== Code.Underscore && code !== Code.Quote) {
+        if (code < 128) break;
+        const end = endOfName(text, from, limit);
+        this.set('name', end, normalName(text.slice(from, end)));
+        return;
+      }
+      hash = hashWith(hash, code);
+    }
+    const word = at - from > LONGEST_KNOWN ? text.slice(from, at) : knownWords.at(text, from, at, hash);
+    this.set('name', at, word);
+  }
+
+  private readBeyondAscii(at: number): void {
+    const { text, limit } = this;
+    const end = endOfName(text, at, limit);
+    if (end > at) {
+      this.set('name', end, normalName(text.slice(at, end)));
       return;
     }
-    const nameEnd = endOfName(this.text, at, this.limit);
-    if (nameEnd > at) {
-      this.set('name', nameEnd, normalName(this.text.slice(at, nameEnd)));
-      return;
-    }
-    this.readSymbol(at);
+    const character = String.fromCodePoint(text.codePointAt(at) ?? 0);
+    const alias = ALIASES[character];
+    if (alias === '0') this.set('number', at + 1, '0');
+    else if (alias !== undefined) this.set('symbol', at + 1, alias);
+    else this.set('unknown', at + character.length, character);
   }
 
   private set(kind: TokenKind, to: number, word: string): void {
@@ -270,19 +279,30 @@ export class Scanner {
     return end;
   }
 
-  private readSymbol(at: number): void {
+  /** The longest symbol that begins with a character of ASCII; what is none is unknown. */
+  private readSymbol(at: number, code: number): void {
+    const symbol =
+      this.longSymbol(at, code) ?? (code === Code.Caret && this.mode === 'row' ? undefined : singles[code]);
+    if (symbol !== undefined) this.set('symbol', at + symbol.length, symbol);
+    else this.set('unknown', at + 1, String.fromCharCode(code));
+  }
+
+  private longSymbol(at: number, code: number): string | null {
     const { text, limit } = this;
-    const symbols = this.mode === 'row' ? ROW_SYMBOLS : EXPRESSION_SYMBOLS;
-    for (const symbol of symbols) {
-      if (at + symbol.length <= limit && text.startsWith(symbol, at)) {
-        this.set('symbol', at + symbol.length, symbol);
-        return;
-      }
+    if (at + 1 >= limit) return null;
+    const next = text.charCodeAt(at + 1);
+    if (code === Code.Dot) return next === Code.Dot ? '..' : null;
+    if (this.mode === 'row') {
+      if (code === Code.Minus) return next === Code.Greater ? '->' : null;
+      if (code !== Code.Less) return null;
+      if (next === Code.Minus) return '<-';
+      const isPair = next === Code.Equal && at + 2 < limit && text.charCodeAt(at + 2) === Code.Greater;
+      return isPair ? '<=>' : null;
     }
-    const character = String.fromCodePoint(text.codePointAt(at) ?? 0);
-    const alias = ALIASES[character];
-    if (alias === '0') this.set('number', at + 1, '0');
-    else if (alias !== undefined) this.set('symbol', at + 1, alias);
-    else this.set('unknown', at + character.length, character);
+    if (next !== Code.Equal) return null;
+    if (code === Code.Equal) return '==';
+    if (code === Code.Bang) return '!=';
+    if (code === Code.Less) return '<=';
+    return code === Code.Greater ? '>=' : null;
   }
 }

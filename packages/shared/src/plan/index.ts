@@ -5,6 +5,6 @@ export { engineVersion } from './engine-version.ts';
 export { prepareJob } from './job.ts';
 export type { KnownOutcome, Preparation } from './job.ts';
 export type { NamedDraw, Plan, PlannableCell, PlannedCell } from './plan.ts';
-export { newPlanMemory, planNotebook } from './planner.ts';
+export { newPlanMemory, planNotebook, readAhead } from './planner.ts';
 export type { PlanMemory } from './planner.ts';
 export { plainText, sourceText } from './source-text.ts';

@@ -1,6 +1,7 @@
 import { settingsComplaint } from '../cells/complaint.ts';
 import { mapReferences } from '../cells/references.ts';
 import { cellRegistry } from '../cells/registry.ts';
+import { CanonicalLines } from '../notation/canonical.ts';
 import { nearest } from '../notation/nearest.ts';
 import { lineAndColumn } from '../paths/reading.ts';
 import { limits } from '../protocol/limits.ts';
@@ -11,7 +12,7 @@ import { engineVersion } from './engine-version.ts';
 import { type DrawGraph, drawGraph } from './graph.ts';
 import { type Bearers, bearersOf, nameProblem } from './names.ts';
 import type { NamedDraw, Plan, PlannableCell, PlannedCell } from './plan.ts';
-import { sourceText } from './source-text.ts';
+import { plainText, sourceText } from './source-text.ts';
 
 /** What a cell's own content says, whatever stands around it. */
 interface OwnPart {
@@ -36,12 +37,42 @@ interface KeptDigest {
 export interface PlanMemory {
   own: Map<string, OwnPart>;
   digests: Map<string, KeptDigest>;
+  /** Of networks, by cell: the lines that were read. */
+  lines: Map<string, CanonicalLines>;
 }
 
 /** An empty memory, one for each notebook that is planned again and again. */
-export const newPlanMemory = (): PlanMemory => ({ own: new Map(), digests: new Map() });
+export const newPlanMemory = (): PlanMemory => ({ own: new Map(), digests: new Map(), lines: new Map() });
 
-function readOwnPart(cell: PlannableCell, before: OwnPart | undefined): OwnPart {
+/** A text of fewer letters is read within milliseconds. */
+const longText = 20_000;
+
+/**
+ * Reads long networks that changed, with pauses: each step takes some milliseconds. What it reads, the next plan with this
+ * memory need not read; left out, or given up half way, it changes nothing but the time of that plan.
+ */
+export function* readAhead(cells: readonly PlannableCell[], memory: PlanMemory): Generator<void, void, void> {
+  for (const cell of cells.slice(0, limits.cells)) {
+    const { length } = cell.text;
+    if (cell.kind !== 'network' || length < longText || length > limits.cellText) continue;
+    if (memory.own.get(cell.id)?.content.text === cell.text) continue;
+    try {
+      yield* linesOf(cell, memory).read(plainText(cell.text));
+    } catch (error) {
+      // Nested too deep: the plan says so.
+      if (!(error instanceof RangeError)) throw error;
+    }
+  }
+}
+
+function linesOf({ id }: PlannableCell, memory: PlanMemory): CanonicalLines {
+  const lines = memory.lines.get(id) ?? new CanonicalLines();
+  memory.lines.set(id, lines);
+  return lines;
+}
+
+function readOwnPart(cell: PlannableCell, memory: PlanMemory): OwnPart {
+  const before = memory.own.get(cell.id);
   const settingsText = JSON.stringify(cell.settings);
   if (
     before !== undefined &&
@@ -55,7 +86,11 @@ function readOwnPart(cell: PlannableCell, before: OwnPart | undefined): OwnPart 
     return { content: cell, settingsText, text: '', draws: [], complaint: lengthComplaint(cell) };
   }
   try {
-    const text = sourceText(cell.kind, cell.text);
+    const text = sourceText(
+      cell.kind,
+      cell.text,
+      cell.kind === 'network' ? linesOf(cell, memory) : undefined,
+    );
     const draws = findDraws(cell.kind, text, cell.settings);
     return {
       content: cell,
@@ -133,11 +168,15 @@ function circleProblem(circle: readonly string[], nameOf: (id: string) => string
 }
 
 /** Digest of a cell from its own part and the digests of what it draws on. */
-function makeDigest(own: OwnPart, digestOfName: (name: string) => string | null): string {
+function makeDigest(
+  own: OwnPart,
+  engine: string,
+  digestOfName: (name: string) => string | null,
+): string {
   const { kind, settings } = own.content;
   const spelt = own.draws.filter(({ named }) => named);
   return digestOf({
-    engine: engineVersion,
+    engine,
     kind,
     text: own.text,
     settings: mapReferences(cellRegistry[kind], settings, (name) => digestOfName(name.normalize('NFC'))),
@@ -153,16 +192,15 @@ class Planning {
   private readonly planned = new Map<string, PlannedCell>();
   private readonly cells: readonly PlannableCell[];
   private readonly memory: PlanMemory;
+  private readonly engine: string;
 
-  constructor(cells: readonly PlannableCell[], memory: PlanMemory) {
+  constructor(cells: readonly PlannableCell[], memory: PlanMemory, engine: string) {
     this.cells = cells;
+    this.engine = engine;
     this.memory = memory;
     this.bearers = bearersOf(cells);
     for (const [place, cell] of cells.entries())
-      this.own.set(
-        cell.id,
-        place < limits.cells ? readOwnPart(cell, memory.own.get(cell.id)) : excessPart(cell),
-      );
+      this.own.set(cell.id, place < limits.cells ? readOwnPart(cell, memory) : excessPart(cell));
   }
 
   plan(): Plan {
@@ -175,6 +213,7 @@ class Planning {
       if (cell !== undefined) this.planned.set(id, this.planCell(cell, inputs.get(id) ?? [], graph));
     }
     this.memory.own = this.own;
+    for (const id of this.memory.lines.keys()) if (!this.own.has(id)) this.memory.lines.delete(id);
     this.memory.digests = this.digests;
     const cells = this.cells.flatMap(({ id }) => this.planned.get(id) ?? []);
     return { cells, byId: this.planned, order: graph.order };
@@ -188,7 +227,7 @@ class Planning {
   }
 
   private planCell(cell: PlannableCell, inputs: readonly NamedDraw[], graph: DrawGraph): PlannedCell {
-    const own = this.own.get(cell.id) ?? readOwnPart(cell, undefined);
+    const own = this.own.get(cell.id) ?? readOwnPart(cell, this.memory);
     const problem = this.problemOf(cell, own, inputs, graph);
     return {
       id: cell.id,
@@ -243,7 +282,7 @@ class Planning {
     const kept =
       before !== undefined && before.own === own && before.from === from
         ? before
-        : { own, from, digest: makeDigest(own, (name) => digests.get(name) ?? null) };
+        : { own, from, digest: makeDigest(own, this.engine, (name) => digests.get(name) ?? null) };
     this.digests.set(id, kept);
     return kept.digest;
   }
@@ -255,7 +294,13 @@ class Planning {
  *
  * @param cells in document order
  * @param memory what earlier plans of the same notebook have read, see `newPlanMemory`
+ * @param engine whose digests they are: of a record that is computed anew those of the engine that made it, which seed
+ *   scripts and stand in prose
  */
-export function planNotebook(cells: readonly PlannableCell[], memory: PlanMemory = newPlanMemory()): Plan {
-  return new Planning(cells, memory).plan();
+export function planNotebook(
+  cells: readonly PlannableCell[],
+  memory: PlanMemory = newPlanMemory(),
+  engine: string = engineVersion,
+): Plan {
+  return new Planning(cells, memory, engine).plan();
 }

@@ -1,5 +1,5 @@
 import type { CellKind } from '../cells/kind.ts';
-import { canonicalText } from '../notation/print.ts';
+import { type CanonicalLines, canonicalText } from '../notation/canonical.ts';
 
 /** What no database and no JSON reader takes everywhere. */
 const unreadable = /[\p{Surrogate}\0]/gu;
@@ -18,8 +18,9 @@ export function plainText(text: string): string {
 /**
  * The text of a cell as digested and as the engine gets it. For a network that can be read it is the canonical print
  * without comments and notes, so that changing those reruns nothing; where it cannot be read, the text itself.
+ * `lines`: what earlier versions of a network have left to be used again.
  */
-export function sourceText(kind: CellKind, text: string): string {
+export function sourceText(kind: CellKind, text: string, lines?: CanonicalLines): string {
   const plain = plainText(text);
-  return kind === 'network' ? (canonicalText(plain) ?? plain) : plain;
+  return kind === 'network' ? (canonicalText(plain, lines) ?? plain) : plain;
 }

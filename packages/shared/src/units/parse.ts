@@ -13,6 +13,8 @@ export const POWER_LIMIT = 20;
  * power; a leading `1` before `/` is passed over. Leaves the scanner where the unit ends; an empty unit where none begins.
  */
 export function readUnit(scanner: Scanner): Unit {
+  // Most words that might begin a unit begin none.
+  if (scanner.kind !== 'name' && !scanner.is('/') && scanner.word !== '1') return noUnit;
   const factors: UnitFactor[] = [];
   const start = scanner.mark();
   const before = scanner.previousEnd;
@@ -28,8 +30,31 @@ export function readUnit(scanner: Scanner): Unit {
     if (!factor) break;
     factors.push(factor);
   }
-  if (factors.length === 0) scanner.reset(start, before);
-  return unitOf(factors);
+  if (factors.length === 0) {
+    scanner.reset(start, before);
+    return noUnit;
+  }
+  return sameUnit(unitOf(factors));
+}
+
+const noUnit: Unit = [];
+
+/** The units read last: a text has few, and as one object each is converted once. */
+const recent: Unit[] = [];
+const RECENT_LIMIT = 16;
+
+function sameUnit(unit: Unit): Unit {
+  for (const known of recent) if (equalFactors(known, unit)) return known;
+  if (recent.length === RECENT_LIMIT) recent.shift();
+  recent.push(unit);
+  return unit;
+}
+
+function equalFactors(a: Unit, b: Unit): boolean {
+  if (a.length !== b.length) return false;
+  for (let i = 0; i < a.length; i += 1)
+    if (a[i]?.symbol !== b[i]?.symbol || a[i]?.power !== b[i]?.power) return false;
+  return true;
 }
 
 function readFactor(scanner: Scanner): UnitFactor | null {

@@ -1,3 +1,4 @@
+import { setImmediate as nextTurn, setTimeout as sleep } from 'node:timers/promises';
 import type { CellJob, CellSettings } from '@stillroom/shared/cells';
 import type { Person } from '@stillroom/shared/contracts';
 import { type NotebookContent, readNotebook } from '@stillroom/shared/document';
@@ -9,6 +10,7 @@ import {
   planNotebook,
   type Preparation,
   prepareJob,
+  readAhead,
 } from '@stillroom/shared/plan';
 import { limits } from '@stillroom/shared/protocol';
 import type { Connection, Room, RoomObserver } from '../collaboration/index.ts';
@@ -30,6 +32,10 @@ export interface PlannerOptions {
   readonly file: NotebookFile;
   readonly failed: (words: string, error: unknown) => void;
 }
+
+/** Milliseconds of planning that nobody notices: more is followed by a rest as long, but never by a longer one than this. */
+const noticeable = 20;
+const longestRest = 1000;
 
 const nothing: Plan = { cells: [], byId: new Map(), order: [] };
 
@@ -56,6 +62,8 @@ export class Planner implements RoomObserver {
   #group = '';
   #opened = false;
   #dirty = false;
+  /** Milliseconds for which the last pass held up everything else. */
+  #cost = 0;
   #passing: Promise<void> | null = null;
 
   constructor(options: PlannerOptions) {
@@ -198,6 +206,7 @@ export class Planner implements RoomObserver {
       while (this.#dirty) {
         this.#dirty = false;
         await this.#pass();
+        if (this.#dirty && this.#cost > noticeable) await sleep(Math.min(this.#cost, longestRest));
       }
     } catch (error) {
       this.#options.failed('A notebook could not be planned.', error);
@@ -211,8 +220,13 @@ export class Planner implements RoomObserver {
   }
 
   async #pass(): Promise<void> {
-    this.#content = readNotebook(this.#options.room.doc);
-    this.#plan = planNotebook(this.#content.cells, this.#memory);
+    const content = readNotebook(this.#options.room.doc);
+    // A text of megabytes is read in steps: other notebooks are served between them.
+    for (const _step of readAhead(content.cells, this.#memory)) await nextTurn();
+    const began = performance.now();
+    this.#content = content;
+    this.#plan = planNotebook(content.cells, this.#memory);
+    this.#cost = performance.now() - began;
     this.#letGo();
     await this.#learn();
     const submitted = this.#submitReady();

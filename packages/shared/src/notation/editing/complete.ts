@@ -3,9 +3,10 @@ import type { FunctionName } from '../../expression/expression.ts';
 import { printExpression } from '../../expression/print.ts';
 import { commonSymbols } from '../../units/table.ts';
 import type { LineSyntax } from '../ast.ts';
+import { Complaints } from '../complaints.ts';
 import { logicalLines } from '../lines.ts';
 import type { LogicalLine } from '../lines.ts';
-import { parseNetwork } from '../parse.ts';
+import { parseLine } from '../parse.ts';
 import { endOfName, Scanner } from '../tokens.ts';
 import { isStatementWord, statementWords } from '../words.ts';
 import type { StatementWord } from '../words.ts';
@@ -68,8 +69,9 @@ export function completionsAt(text: string, offset: number): Completions {
   const line = lines.findLast((each) => each.from <= offset);
   const from = startOfWord(text, offset, line?.from ?? 0);
   const isBehindNewline = offset === text.length && /[\r\n]$/.test(text);
-  if (!line || isBehindNewline) return { from, options: optionsAtBeginning(text, offset) };
-  return { from, options: offset > line.to ? [] : optionsAt(text, line, from, offset) };
+  const names = () => namesOf(text, offset, lines);
+  if (!line || isBehindNewline) return { from, options: optionsAtBeginning(names) };
+  return { from, options: offset > line.to ? [] : optionsAt(text, line, from, offset, names) };
 }
 
 function optionsAt(
@@ -77,6 +79,7 @@ function optionsAt(
   line: LogicalLine,
   from: number,
   offset: number,
+  names: () => KnownNames,
 ): readonly CompletionOption[] {
   const column = line.bars.filter((bar) => bar < offset).length;
   if (column > 1) return [];
@@ -88,10 +91,10 @@ function optionsAt(
     from,
   );
   if (column === 0 && !isStatement) {
-    return before.trim() === '' ? optionsAtBeginning(text, offset) : namesOf(text, offset).species;
+    return before.trim() === '' ? optionsAtBeginning(names) : names().species;
   }
   if (isUnitPlace(before)) return units;
-  const known = namesOf(text, offset);
+  const known = names();
   if (!isInValue(before)) {
     if (!isStatement) return [...known.constants, ...lawWords];
     return word === 'let' || word === 'volume'
@@ -103,8 +106,8 @@ function optionsAt(
   return [...known.species, ...known.constants, ...functions, time];
 }
 
-function optionsAtBeginning(text: string, offset: number): readonly CompletionOption[] {
-  return [...namesOf(text, offset).species, ...statements];
+function optionsAtBeginning(names: () => KnownNames): readonly CompletionOption[] {
+  return [...names().species, ...statements];
 }
 
 /** Whether a number and at most a blank stand before, or a number and the beginning of a unit. */
@@ -142,12 +145,28 @@ interface KnownNames {
   readonly constants: readonly CompletionOption[];
 }
 
+/** What a line gives names to: species, each once, and constants with their values as printed (null: named only). */
+interface LineNames {
+  readonly species: readonly string[];
+  readonly constants: readonly (readonly [name: string, value: string | null])[];
+}
+
+/** The lines read last: with a key, one of them is new. */
+const knownLines = new Map<string, LineNames>();
+const KNOWN_LIMIT = 5000;
+
 /** The names that a text gives, but for the word at the caret. */
-function namesOf(text: string, offset: number): KnownNames {
+function namesOf(text: string, offset: number, lines: readonly LogicalLine[]): KnownNames {
   const species = new Map<string, number>();
   const constants = new Map<string, string>();
-  const isAtCaret = (span: { from: number; to: number }) => span.from <= offset && offset <= span.to;
-  for (const line of parseNetwork(text).tree.lines) collectNames(line, species, constants, isAtCaret);
+  const scanner = new Scanner(text, 0, 0, 'expression');
+  for (const line of lines) {
+    if (line.from === line.to) continue;
+    const names = namesOfLine(scanner, line, offset);
+    for (const name of names.species) species.set(name, (species.get(name) ?? 0) + 1);
+    for (const [name, value] of names.constants)
+      if (value !== null || !constants.has(name)) constants.set(name, value ?? 'constant');
+  }
   return {
     species: [...species].map(([label, rows]) => ({
       label,
@@ -158,26 +177,38 @@ function namesOf(text: string, offset: number): KnownNames {
   };
 }
 
-function collectNames(
-  line: LineSyntax,
-  species: Map<string, number>,
-  constants: Map<string, string>,
-  skip: (span: { from: number; to: number }) => boolean,
-): void {
+function namesOfLine(scanner: Scanner, line: LogicalLine, offset: number): LineNames {
+  const isAtCaret = (span: { from: number; to: number }) => span.from <= offset && offset <= span.to;
+  if (isAtCaret(line)) return collectNames(parseLine(scanner, line, new Complaints('')), isAtCaret);
+  const source = scanner.text.slice(line.from, line.to);
+  const known = knownLines.get(source);
+  if (known !== undefined) return known;
+  if (knownLines.size >= KNOWN_LIMIT) knownLines.clear();
+  const names = collectNames(parseLine(scanner, line, new Complaints('')), () => false);
+  // A copy: a slice would hold on to the whole text for as long as it is remembered.
+  knownLines.set(`${source} `.slice(0, -1), names);
+  return names;
+}
+
+function collectNames(line: LineSyntax, skip: (span: { from: number; to: number }) => boolean): LineNames {
   if (line.kind === 'row') {
     const terms = line.sides
       .flatMap((side) => side.terms.map((term) => term.species))
       .filter((target) => !skip(target));
-    for (const name of new Set(terms.map((target) => target.name)))
-      species.set(name, (species.get(name) ?? 0) + 1);
-    for (const item of line.items) {
-      if (item.kind !== 'constant' || skip(item.name)) continue;
-      const { name } = item.name;
-      if (item.value || !constants.has(name))
-        constants.set(name, item.value ? printExpression(item.value) : 'constant');
-    }
-  } else if (line.kind === 'let' || line.kind === 'volume') {
-    for (const { target, value } of line.items)
-      if (!skip(target)) constants.set(target.name, printExpression(value));
+    return {
+      species: [...new Set(terms.map((target) => target.name))],
+      constants: line.items.flatMap((item) =>
+        item.kind === 'constant' && !skip(item.name)
+          ? [[item.name.name, item.value && printExpression(item.value)] as const]
+          : [],
+      ),
+    };
   }
+  const lets = line.kind === 'let' || line.kind === 'volume' ? line.items : [];
+  return {
+    species: [],
+    constants: lets.flatMap(({ target, value }) =>
+      skip(target) ? [] : [[target.name, printExpression(value)] as const],
+    ),
+  };
 }
