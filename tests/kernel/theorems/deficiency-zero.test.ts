@@ -1,3 +1,4 @@
+import { contextOf, theorems } from '@stillroom/kernel/theorems';
 import { describe, expect, test } from 'vitest';
 import { buildNetwork } from '../../support/network.ts';
 import { expectSilence, failing, judge, verdictOn } from '../../support/verdicts.ts';
@@ -40,6 +41,19 @@ describe('deficiency zero theorem', () => {
       witness: { kind: 'arrow', reaction: 0 },
     });
   });
+
+  test.each(['A <=> B', 'A -> B'])(
+    'without a proven rank %s is undecided and nothing is concluded',
+    (text) => {
+      const context = contextOf(buildNetwork(text));
+      const unranked = new Proxy(context, {
+        get: (of, key) => (key === 'deficiency' ? null : (Reflect.get(of, key, of) as unknown)),
+      });
+      const { applies, conclusion } = theorems.find((theorem) => theorem.id === id)!.judge(unranked);
+      expect(applies).toBe('undecided');
+      expect(conclusion).toMatch(/^Undecided/);
+    },
+  );
 
   test('undecided where a law does not show whether it vanishes with its reactant', () => {
     const plain = buildNetwork('A -> B');
