@@ -39,6 +39,38 @@ describe('from the form', () => {
     );
   });
 
+  test('small pictures side by side, one for each cell, share the names of their lines', () => {
+    const spec = specOf(
+      form({
+        draw: [
+          { cell: 'run1', x: 'times', y: ['species.P'], label: 'cold' },
+          { cell: 'run2', x: 'times', y: ['species.P'] },
+        ],
+        facets: { by: 'cell' },
+      }),
+    ) as unknown as { data: Spec['data']; facet: unknown; columns: number; spec: Spec; resolve?: unknown };
+    expect(spec).toMatchObject({ facet: { field: 'panel' }, columns: 2 });
+    expect(spec.resolve).toBeUndefined();
+    const rows = spec.data.values as unknown as { series: string; panel: string }[];
+    expect(new Set(rows.map(({ panel, series }) => `${panel}: ${series}`))).toEqual(
+      new Set(['cold: P', '2: P']),
+    );
+    expect(spec.spec.encoding['color']).toBeUndefined();
+  });
+
+  test('one for each line, each on axes of its own', () => {
+    const spec = specOf(
+      form({
+        draw: [{ cell: 'run1', x: 'times', y: ['species.P', 'species["X[3]"]'] }],
+        facets: { by: 'line', sameAxes: false },
+      }),
+    ) as unknown as { data: Spec['data']; resolve: unknown; width?: unknown };
+    const rows = spec.data.values as unknown as { panel: string }[];
+    expect(new Set(rows.map(({ panel }) => panel))).toEqual(new Set(['P', 'X[3]']));
+    expect(spec.resolve).toEqual({ scale: { x: 'independent', y: 'independent' } });
+    expect(spec.width).toBeUndefined();
+  });
+
   test('what a logarithmic axis cannot show is left out and told', () => {
     const job = form({ draw: [{ cell: 'run1', x: 'times', y: ['species.P'] }], y: { scale: 'log' } });
     expect(evaluateCell(job, { checkpoint: () => undefined }).warnings).toEqual([

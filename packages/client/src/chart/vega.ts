@@ -47,6 +47,14 @@ function pageLook(): Record<string, unknown> {
 /** A record must show the same for ever: nothing outside the specification is fetched. */
 const refuse = () => Promise.reject(new Error('A plot may not load anything from elsewhere.'));
 
+/** Where small pictures side by side would be smaller than they can be read, they stand one below the other. */
+function fitted(spec: Readonly<Record<string, unknown>>, width: number): Readonly<Record<string, unknown>> {
+  const { columns, spec: inner } = spec;
+  const isNarrow = 'facet' in spec && typeof columns === 'number' && columns > 1 && width > 0 && width < 480;
+  if (!isNarrow || typeof inner !== 'object' || inner === null) return spec;
+  return { ...spec, columns: 1, spec: { ...inner, width: Math.max(180, width - 70) } };
+}
+
 /**
  * Draws a Vega-Lite specification into an element. Expressions are interpreted, never compiled, so that the content
  * policy holds; data are part of the specification, so nothing is loaded.
@@ -66,7 +74,7 @@ export async function drawPlot(
     ...spec,
     ...(description === null ? {} : { description }),
   };
-  const drawn = await embed(place, sized as unknown as VisualizationSpec, {
+  const drawn = await embed(place, fitted(sized, place.clientWidth) as unknown as VisualizationSpec, {
     ast: true,
     expr: expressionInterpreter,
     actions: false,

@@ -1,4 +1,10 @@
-import { type CellJob, type PlotMark, type PlotSettings, plotSettings } from '@stillroom/shared/cells';
+import {
+  type CellJob,
+  type PlotFacet,
+  type PlotMark,
+  type PlotSettings,
+  plotSettings,
+} from '@stillroom/shared/cells';
 import { unitText } from '@stillroom/shared/paths';
 import { type PlotLine, plotLines, plotPoints } from './lines.ts';
 
@@ -49,8 +55,8 @@ function upChannel(lines: readonly PlotLine[], axis: PlotSettings['y']): Spec {
   };
 }
 
-function seriesChannels(lines: readonly PlotLine[], mark: PlotMark): Spec {
-  if (lines.length < 2) return {};
+function seriesChannels(lines: readonly PlotLine[], mark: PlotMark, by: PlotFacet | undefined): Spec {
+  if (by === 'line' || new Set(lines.map(({ name }) => name)).size < 2) return {};
   const series = { field: 'series', type: 'nominal', sort: null, title: null };
   const second = secondChannel[mark];
   return { color: series, ...(second === undefined ? {} : { [second]: series }) };
@@ -61,6 +67,33 @@ function leftOut(count: number): string[] {
   return count === 1
     ? ['1 point has no place in the picture and is left out.']
     : [`${count} points have no place in the picture and are left out.`];
+}
+
+/** Width of all small pictures of a line together, and the height of each, in pixels. */
+const facetSizes = { together: 600, margin: 44, height: 190 };
+const mostBeside = 3;
+
+/** One picture, as wide as its place, or a small one for each panel: up to three side by side. */
+function arranged(
+  lines: readonly PlotLine[],
+  facets: PlotSettings['facets'],
+  picture: Spec,
+): { readonly [key: string]: unknown } {
+  if (facets === undefined) return { width: 'container', ...picture };
+  const { data, ...inner } = picture;
+  const panels = new Set(lines.map(({ panel }) => panel)).size;
+  const columns = Math.max(1, Math.min(mostBeside, panels));
+  return {
+    data,
+    facet: { field: 'panel', type: 'nominal', sort: null, title: null, header: { labelAnchor: 'start' } },
+    columns,
+    spec: {
+      width: Math.floor(facetSizes.together / columns) - facetSizes.margin,
+      height: facetSizes.height,
+      ...inner,
+    },
+    ...(facets.sameAxes === false ? { resolve: { scale: { x: 'independent', y: 'independent' } } } : {}),
+  };
 }
 
 /**
@@ -77,14 +110,15 @@ export function formSpecification(job: CellJob): { spec: Spec; warnings: string[
   const spec = {
     $schema: vegaLiteSchema,
     ...(description === '' ? {} : { description }),
-    width: 'container',
-    data: { values: points },
-    mark: marks[mark],
-    encoding: {
-      x: alongChannel(lines, settings.x),
-      y: upChannel(lines, settings.y),
-      ...seriesChannels(lines, mark),
-    },
+    ...arranged(lines, settings.facets, {
+      data: { values: points },
+      mark: marks[mark],
+      encoding: {
+        x: alongChannel(lines, settings.x),
+        y: upChannel(lines, settings.y),
+        ...seriesChannels(lines, mark, settings.facets?.by),
+      },
+    }),
   };
   return { spec, warnings: leftOut(left) };
 }

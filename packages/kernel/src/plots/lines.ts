@@ -7,6 +7,8 @@ export interface PlotLine {
   readonly name: string;
   readonly along: Column;
   readonly up: Column;
+  /** Heading of the small picture it stands in; null where all stand in one. */
+  readonly panel: string | null;
 }
 
 /** Names told apart by numbers where they are alike: the names of cells are no part of a result. */
@@ -20,13 +22,16 @@ function distinct(names: readonly string[]): string[] {
 }
 
 /** What a filled-in form draws. @throws CellFailure where that is nothing, or a path leads nowhere */
-export function plotLines(job: CellJob, { draw = [] }: PlotSettings): PlotLine[] {
-  const lines = draw.flatMap(({ cell, x, y, label }) => {
-    if (y.length === 0) return [];
+export function plotLines(job: CellJob, { draw = [], facets }: PlotSettings): PlotLine[] {
+  const drawn = draw.filter(({ y }) => y.length > 0);
+  const lines = drawn.flatMap(({ cell, x, y, label }, part) => {
     const along = columnAt(job, cell, x);
+    const apart = facets?.by === 'cell';
+    // Where the author gives no name it is a number: the names of cells are no part of a result.
+    const panel = apart ? (label ?? String(part + 1)) : null;
     return y.map((path) => {
       const up = columnAt(job, cell, path);
-      return { along, up, name: label === undefined ? up.label : `${label} ${up.label}` };
+      return { along, up, panel, name: label === undefined || apart ? up.label : `${label} ${up.label}` };
     });
   });
   if (lines.length === 0) {
@@ -34,8 +39,13 @@ export function plotLines(job: CellJob, { draw = [] }: PlotSettings): PlotLine[]
       hint: 'Choose a cell, what runs along, and what goes up.',
     });
   }
+  // The same species in two pictures is one line by name, colour and dash.
+  if (facets?.by === 'cell') return lines;
   const names = distinct(lines.map(({ name }) => name));
-  return lines.map((line, index) => ({ ...line, name: names[index] ?? line.name }));
+  return lines.map((line, index) => {
+    const name = names[index] ?? line.name;
+    return { ...line, name, panel: facets?.by === 'line' ? name : null };
+  });
 }
 
 /** A point as the specification holds it. */
@@ -43,6 +53,7 @@ export interface PlotPoint {
   readonly x: number | string;
   readonly y: number | string;
   readonly series: string;
+  readonly panel?: string;
 }
 
 /** A logarithmic axis has no place for what is not above 0. */
@@ -56,10 +67,11 @@ export function plotPoints(
   settings: PlotSettings,
 ): { readonly points: PlotPoint[]; readonly left: number } {
   let left = 0;
-  const points = lines.flatMap(({ along, up, name }) =>
+  const points = lines.flatMap(({ along, up, name, panel }) =>
     up.values.flatMap((y, place) => {
       const x = along.values[place] ?? null;
-      if (drawable(x, settings.x?.scale) && drawable(y, settings.y?.scale)) return [{ x, y, series: name }];
+      if (drawable(x, settings.x?.scale) && drawable(y, settings.y?.scale))
+        return [{ x, y, series: name, ...(panel === null ? {} : { panel }) }];
       left++;
       return [];
     }),

@@ -8,6 +8,10 @@ const axis = z.strictObject({
 });
 
 export const plotMarks = ['line', 'point', 'area', 'bar'] as const;
+/** What stands in a picture of its own beside the others: each part of the form, or each of its lines. */
+export const plotFacets = ['cell', 'line'] as const;
+export type PlotFacet = (typeof plotFacets)[number];
+
 export type PlotMark = (typeof plotMarks)[number];
 
 /** Settings of a plot cell's form; a text with a Vega-Lite specification takes its place. */
@@ -20,7 +24,7 @@ export const plotSettings = z.strictObject({
           /** Paths within the result of that cell, such as `times` and `species.P`. */
           x: path,
           y: z.array(path).check(z.maxLength(50)),
-          /** Put before the names of its lines, to tell several cells apart. */
+          /** Put before the names of its lines, to tell several cells apart; the heading of its picture among several. */
           label: z.optional(z.string().check(z.maxLength(100))),
         }),
       )
@@ -29,6 +33,8 @@ export const plotSettings = z.strictObject({
   mark: z.optional(z.enum(plotMarks)),
   x: z.optional(axis),
   y: z.optional(axis),
+  /** Small pictures side by side in place of one; on the same axes unless that is false. */
+  facets: z.optional(z.strictObject({ by: z.enum(plotFacets), sameAxes: z.optional(z.boolean()) })),
   caption: z.optional(z.string().check(z.maxLength(2000))),
   /** What the picture shows, for those who do not see it. */
   alternative: z.optional(z.string().check(z.maxLength(2000))),
