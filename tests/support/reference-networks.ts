@@ -60,12 +60,20 @@ export function referenceNetwork(entry: ReferenceNetwork): Network {
 export function networkOfSides(
   reactions: readonly { readonly from: Side; readonly to: Side; readonly reversible?: boolean }[],
 ): Network {
+  return buildNetwork(rowsOfSides(reactions).join('; '));
+}
+
+/** The rows of an entry of the table, as a text would have them. */
+export const referenceRows = (entry: ReferenceNetwork): readonly string[] => rowsOfSides(entry.reactions);
+
+function rowsOfSides(
+  reactions: readonly { readonly from: Side; readonly to: Side; readonly reversible?: boolean }[],
+): string[] {
   const side = (terms: Side) =>
     Object.entries(terms)
       .map(([name, coefficient]) => `${coefficient} ${name}`)
       .join(' + ') || '0';
-  const rows = reactions.map(
+  return reactions.map(
     ({ from, to, reversible }) => `${side(from)} ${reversible ? '<=>' : '->'} ${side(to)}`,
   );
-  return buildNetwork(rows.join('; '));
 }

@@ -92,6 +92,8 @@ export interface RerunView {
   readonly id: string;
   readonly at: string;
   readonly done: boolean;
+  /** Version of the engine that computes it, null while it waits; that of the record is `RecordView.engine`. */
+  readonly engine: string | null;
   readonly cells: Readonly<
     Record<
       string,

@@ -168,11 +168,7 @@ function circleProblem(circle: readonly string[], nameOf: (id: string) => string
 }
 
 /** Digest of a cell from its own part and the digests of what it draws on. */
-function makeDigest(
-  own: OwnPart,
-  engine: string,
-  digestOfName: (name: string) => string | null,
-): string {
+function makeDigest(own: OwnPart, engine: string, digestOfName: (name: string) => string | null): string {
   const { kind, settings } = own.content;
   const spelt = own.draws.filter(({ named }) => named);
   return digestOf({

@@ -1,5 +1,5 @@
 import type { CellJob, CellOutcome } from '@stillroom/shared/cells';
-import { digestOf } from '@stillroom/shared/plan';
+import { digestOf, engineVersion } from '@stillroom/shared/plan';
 import { describe, expect, test } from 'vitest';
 import type { Pool } from '../../../../packages/server/src/modules/compute/index.ts';
 import type { RecordCell } from '../../../../packages/server/src/modules/records/index.ts';
@@ -25,20 +25,26 @@ function build(outcome: (job: CellJob) => CellOutcome = outcomeOf) {
     },
   } as unknown as Pool;
   const told: [string, Comparison['outcome']][] = [];
+  const why = new Map<string, string>();
   const rerun = (
     cells: readonly RecordCell[],
     asked = cells.map(({ id }) => id),
     signal = new AbortController().signal,
+    engine = engineVersion,
   ) =>
     rerunRecord({
       pool,
       cells,
+      engine,
       asked: new Set(asked),
       owner: 'g',
       signal,
-      tell: async (id, comparison) => void told.push([id, comparison.outcome]),
+      tell: async (id, comparison) => {
+        told.push([id, comparison.outcome]);
+        if (comparison.why !== null) why.set(id, comparison.why);
+      },
     });
-  return { rerun, ran, told };
+  return { rerun, ran, told, why };
 }
 
 const frozen = (
@@ -109,6 +115,27 @@ describe('a rerun', () => {
     );
     await rerun(record());
     expect(last(told)).toEqual({ yeast: 'failed', run: 'matches', ends: 'matches' });
+  });
+
+  test('by another engine says so of what differs, and runs under the digests of the record’s engine', async () => {
+    const digests: string[] = [];
+    const { rerun, told, why } = build((job) => {
+      digests.push(job.digest);
+      return job.kind === 'trajectory'
+        ? { status: 'ok', result: 1, resultDigest: digestOf(1), warnings: [], keep: true }
+        : outcomeOf(job);
+    });
+    await rerun(record(), ['yeast', 'run'], undefined, '0.0.7');
+    expect(last(told)).toEqual({ yeast: 'matches', run: 'differs' });
+    expect(why.get('run')).toBe(
+      'The fresh result is not the one in the record. ' +
+        `The record was made by engine 0.0.7, this rerun by engine ${engineVersion}.`,
+    );
+    const yeast = { engine: '0.0.7', kind: 'network', text: 'A -> B\n', settings: {}, draws: {} };
+    expect(digests[0]).toBe(digestOf(yeast));
+    await rerun(record(), ['yeast', 'run']);
+    expect(why.get('run')).toBe('The fresh result is not the one in the record.');
+    expect(digests[2]).not.toBe(digests[0]);
   });
 
   test('that is ended between two cells tells nothing more', async () => {

@@ -6,6 +6,7 @@ import { Notebooks1796083202000 } from './2026-12-01-notebooks.ts';
 import { People1796083200000 } from './2026-12-01-people.ts';
 import { RemarksOfReviews1796083206000 } from './2026-12-01-remarks-of-reviews.ts';
 import { Records1796083204000 } from './2026-12-01-records.ts';
+import { RerunEngine1796083207000 } from './2026-12-01-rerun-engine.ts';
 
 /** All migrations in the order they run (by the number at the end of each name); what was released never changes. */
 export const migrations: readonly (new () => MigrationInterface)[] = [
@@ -16,4 +17,5 @@ export const migrations: readonly (new () => MigrationInterface)[] = [
   Records1796083204000,
   FailedResults1796083205000,
   RemarksOfReviews1796083206000,
+  RerunEngine1796083207000,
 ];

@@ -74,6 +74,7 @@ export async function presentRerun(manager: EntityManager, rerun: RerunEntity): 
     id: rerun.id,
     at: rerun.at.toISOString(),
     done: rerun.doneAt !== null,
+    engine: rerun.engine,
     cells: Object.fromEntries(
       cells.map(({ cell, outcome, why, result }) => [
         cell,

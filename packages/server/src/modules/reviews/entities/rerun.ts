@@ -22,6 +22,10 @@ export class RerunEntity {
   @Column({ type: 'text', nullable: true })
   host!: string | null;
 
+  /** Version of the engine that computes it; null while it waits. */
+  @Column({ type: 'text', nullable: true })
+  engine!: string | null;
+
   @Column({ name: 'done_at', ...optionalTime })
   doneAt!: Date | null;
 }

@@ -1,6 +1,8 @@
 import type { CellOutcome } from '@stillroom/shared/cells';
 import {
+  engineVersion,
   type KnownOutcome,
+  newPlanMemory,
   type Plan,
   type PlannableCell,
   planNotebook,
@@ -20,6 +22,8 @@ export type Comparison = Pick<RerunCellEntity, 'outcome' | 'why' | 'result'>;
 export interface Rerunning {
   readonly pool: Pool;
   readonly cells: readonly RecordCell[];
+  /** Version of the engine that made the record. */
+  readonly engine: string;
   /** Ids of the cells to be compared. */
   readonly asked: ReadonlySet<string>;
   /** The group whose turn it is. */
@@ -32,11 +36,12 @@ export interface Rerunning {
 
 /**
  * Computes the cells of a record anew, each from fresh results of the cells it draws on; nothing kept is read. Only
- * what is asked for is compared.
+ * what is asked for is compared. Digests are those of the engine that made the record, so that scripts get the same random
+ * numbers and prose names the same results, whichever engine computes.
  */
 export async function rerunRecord(rerunning: Rerunning): Promise<void> {
-  const { cells, asked, signal, tell } = rerunning;
-  const plan = planNotebook(cells.flatMap(asPlannable));
+  const { cells, engine, asked, signal, tell } = rerunning;
+  const plan = planNotebook(cells.flatMap(asPlannable), newPlanMemory(), engine);
   const needed = withInputs(plan, asked);
   const outcomes = new Map<string, KnownOutcome>();
   const ended = (): boolean => signal.aborted;
@@ -48,7 +53,7 @@ export async function rerunRecord(rerunning: Rerunning): Promise<void> {
     if (ended()) return;
     outcomes.set(id, outcome);
     const frozen = cells.find((cell) => cell.id === id);
-    if (asked.has(id) && frozen !== undefined) await tell(id, compare(outcome, frozen));
+    if (asked.has(id) && frozen !== undefined) await tell(id, compare(outcome, frozen, engine));
   }
 }
 
@@ -73,13 +78,18 @@ async function runFresh(
   return { status: 'failed', error, warnings: [], keep: false };
 }
 
-/** "matches" means equal result digests: bit for bit the same. */
-export function compare(outcome: CellOutcome, frozen: RecordCell): Comparison {
-  if (outcome.status === 'failed') return { outcome: 'failed', why: outcome.error.message, result: null };
+/** "matches" means equal result digests: bit for bit the same. Where not, it is said which engine made which. */
+export function compare(outcome: CellOutcome, frozen: RecordCell, engine: string): Comparison {
+  const engines =
+    engine === engineVersion
+      ? ''
+      : ` The record was made by engine ${engine}, this rerun by engine ${engineVersion}.`;
+  if (outcome.status === 'failed')
+    return { outcome: 'failed', why: outcome.error.message + engines, result: null };
   if (outcome.resultDigest === frozen.resultDigest) return { outcome: 'matches', why: null, result: null };
   return {
     outcome: 'differs',
-    why: 'The fresh result is not the one in the record.',
+    why: `The fresh result is not the one in the record.${engines}`,
     result: JSON.stringify(outcome.result),
   };
 }
@@ -111,15 +121,16 @@ export async function runRerun(
 ): Promise<void> {
   const rerun = await manager.findOneBy(RerunEntity, { id });
   if (rerun === null || rerun.doneAt !== null) return;
-  await manager.update(RerunEntity, { id }, { host });
+  await manager.update(RerunEntity, { id }, { host, engine: engineVersion });
   try {
     const review = await manager.findOneByOrFail(ReviewEntity, { id: rerun.review });
     const record = await manager.findOneByOrFail(RecordEntity, { id: review.record });
-    const { cells } = await readRecordContent(manager, record.id);
+    const { cells, engine = engineVersion } = await readRecordContent(manager, record.id);
     const asked = cells.filter((cell) => rerun.cell === null || rerun.cell === cell.id);
     await rerunRecord({
       pool,
       cells,
+      engine,
       asked: new Set(asked.map((cell) => cell.id)),
       owner: record.group,
       signal,
