@@ -12,8 +12,8 @@ export const oneDimensional: Theorem = {
   id: 'one-dimensional',
   title: 'One-dimensional network',
   statement:
-    'When the rank is 1, the rate equations on a class are one autonomous equation: no solution oscillates, and the positive steady states can be counted exactly.',
-  citation: [sources.sturm1835, sources.joshiShiu2017],
+    'When the rank is 1, the rate equations on a class are one autonomous equation: no solution oscillates, and the positive steady states can be counted exactly. Counts that move along the line without end are classified by the leading terms of their rates.',
+  citation: [sources.sturm1835, sources.joshiShiu2017, sources.xuHansenWiuf2022],
   kinetics: 'general',
   judge(context) {
     const hypotheses = [rankOne(context), autonomous(context)];
