@@ -31,16 +31,16 @@ export const productFormAllTimes: Theorem = {
     const start = context.exactStart;
     const constants = context.exactConstants;
     const needs = [...valuesGiven(context), ...(start === null ? [startMissing] : [])];
-    if (rates.holds !== true) return judged([rates], '');
+    if (rates.holds !== true) return judged([rates], 'Undecided.');
     if (constants === null || start === null)
-      return judged([rates, ...needs], needs.map(({ text }) => text).join(' '));
+      return judged([rates, ...needs], `Needs values: ${lacking(context)}.`);
     if (context.species.length * context.arrows.length > LARGEST || context.highestCoefficient > HIGHEST) {
       return judged(
         [rates, { claim: 'large complexes balance', text: BALANCE, holds: null }],
-        'The network is too large for the exact derivatives.',
+        'Undecided. The network is too large for the exact derivatives.',
       );
     }
-    return judged([rates, balance(context, constants, start, large)], '');
+    return judged([rates, balance(context, constants, start, large)], 'Undecided.');
   },
 };
 
@@ -52,6 +52,12 @@ const startMissing: Hypothesis = {
   text: 'The start is given by exact numbers.',
   holds: null,
 };
+
+/** What has no value yet, as the middle of a sentence. */
+function lacking({ constants, exactStart }: TheoremContext): string {
+  const start = exactStart === null ? ['no start is given by exact numbers'] : [];
+  return [...(constants.why === null ? [] : [constants.why]), ...start].join('; ');
+}
 
 function always(rates: Hypothesis): Judgement {
   const hypotheses: Hypothesis[] = [
@@ -70,7 +76,7 @@ function always(rates: Hypothesis): Judgement {
   };
 }
 
-function judged(hypotheses: readonly Hypothesis[], missing: string): Judgement {
+function judged(hypotheses: readonly Hypothesis[], open: string): Judgement {
   const applies = appliesWhenAllHold(hypotheses);
   const exact = hypotheses.some(({ claim }) => claim === 'large complexes balance');
   return {
@@ -82,7 +88,7 @@ function judged(hypotheses: readonly Hypothesis[], missing: string): Judgement {
       no: exact
         ? 'For these constants and this start the law does not stay a product of Poisson laws with means V x(t): the condition is necessary. It says nothing about the stationary law.'
         : 'The theorem does not apply: nothing follows from it.',
-      undecided: `Undecided. ${missing}`.trim(),
+      undecided: open,
     }[applies],
     silentOn: 'Starts that are not independent Poisson, such as fixed counts.',
   };
