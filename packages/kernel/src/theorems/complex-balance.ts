@@ -29,7 +29,7 @@ export const complexBalance: Theorem = {
         no: !context.weaklyReversible
           ? 'No constants are complex balanced, because the network is not weakly reversible. It says nothing about the number or the stability of positive steady states.'
           : rates.holds === false
-            ? 'The theorem does not apply, because not all rates are mass action: nothing follows from it.'
+            ? 'The theorem does not apply, because mass action is not all that changes the species: nothing follows from it.'
             : 'These constants are not complex balanced. It says nothing about the number or the stability of positive steady states.',
         undecided: needsValues
           ? `Needs values: ${context.constants.why}.`

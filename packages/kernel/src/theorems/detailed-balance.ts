@@ -30,7 +30,7 @@ export const detailedBalance: Theorem = {
         no: irreversible
           ? 'No constants are detailed balanced, because some arrow has no reverse. It says nothing about the number or the stability of positive steady states.'
           : rates.holds === false
-            ? 'The theorem does not apply, because not all rates are mass action: nothing follows from it.'
+            ? 'The theorem does not apply, because mass action is not all that changes the species: nothing follows from it.'
             : 'These constants are not detailed balanced. It says nothing about the number or the stability of positive steady states; they may still be complex balanced.',
         undecided:
           context.exactConstants === null
