@@ -8,7 +8,11 @@ import { buildNetwork } from './network.ts';
 /** The verdict of one theorem, after the independent checker has confirmed its evidence. */
 export function verdictOn(network: Network, id: VerdictId): Verdict {
   const verdict = contextOf(network).verdict(id);
-  expect(checkWitness(network, verdict)).toMatchObject({ ok: true });
+  expect(checkWitness(network, verdict)).toEqual({
+    ok: true,
+    confirmed: true,
+    why: 'Every hypothesis was confirmed from its witness.',
+  });
   return verdict;
 }
 

@@ -4,7 +4,7 @@ import { elementary, evaluate } from '@stillroom/shared/expression';
 import { balancedLogarithms } from '../../balance/balanced-state.ts';
 import { exactBalancedState } from '../../balance/exact-state.ts';
 import type { Rational } from '../../exact/index.ts';
-import { multiply, toDouble } from '../../exact/index.ts';
+import { multiply, rationalForResult, toDouble } from '../../exact/index.ts';
 import type { TheoremContext } from '../context.ts';
 import { massAction, NOT_FALLING } from '../hypotheses.ts';
 import { moleculesPerUnit } from './count-scale.ts';
@@ -93,7 +93,14 @@ function summability(context: TheoremContext, species: number, weight: Expressio
   }
   const c = parameterOf(context, species);
   if (c === null) return { claim, text: `${text} This depends on C, and values are missing.`, holds: null };
-  return { claim, text, holds: isSummable(growth, c) };
+  const limit = growth.kind === 'level' ? rationalForResult(growth.limit) : 0;
+  const left = c.exact === null ? c.near : rationalForResult(c.exact);
+  return {
+    claim,
+    text,
+    holds: isSummable(growth, c),
+    witness: { kind: 'number', left, right: limit },
+  };
 }
 
 /** C = V c of a species that no conservation law touches: the same in every complex-balanced state. */

@@ -61,8 +61,13 @@ export function isComplexBalanced(plain: PlainNetwork): boolean | null {
   if (relations.length === 0) return true;
   const rates = arrowRates(plain);
   if (rates === null) return null;
+  return allProductsOne(relations, treeConstants(plain, rates));
+}
+
+/** A positive kernel vector of the Laplacian of every component, by complex. */
+export function treeConstants(plain: PlainNetwork, rates: ReadonlyMap<string, Rational>): Rational[] {
   const trees = plain.complexes.map(() => ONE);
-  for (const group of groups) {
+  for (const group of components(plain)) {
     const matrix = group.map((row) =>
       group.map((column) =>
         row === column
@@ -74,7 +79,7 @@ export function isComplexBalanced(plain: PlainNetwork): boolean | null {
       (value, i) => (trees[group[i]!] = { numerator: value, denominator: 1n }),
     );
   }
-  return allProductsOne(relations, trees);
+  return trees;
 }
 
 /** Whether the constants are detailed balanced; null as above. */
@@ -102,7 +107,8 @@ export function isDetailedBalanced(plain: PlainNetwork): boolean | null {
   );
 }
 
-function nullspace(rows: readonly (readonly Rational[])[], columns: number): bigint[][] {
+/** An integer basis of the vectors that rational rows send to zero. */
+export function nullspace(rows: readonly (readonly Rational[])[], columns: number): bigint[][] {
   return rightNullspace(
     matrixOfRows(
       rows.map((row) => clearDenominators(row).integers),

@@ -1,16 +1,10 @@
 import type { Rational } from '../../exact/index.ts';
-import { add, isZero, multiply, ONE, rational, sign, toDouble, ZERO } from '../../exact/index.ts';
-import type { Amounts, PlainNetwork } from './plain-network.ts';
+import { add, multiply, sign, toDouble, ZERO } from '../../exact/index.ts';
+import type { Amounts } from './plain-network.ts';
 import { arrowRates, changeOf, paired } from './plain-network.ts';
 import { massAction, namesPower } from './rate-rules.ts';
 import { speciesVector } from './reading.ts';
-import type { Evidence, Finding } from './evidence.ts';
-import { Unconfirmed } from './evidence.ts';
-
-/** Claims that carry no witness: nothing here can confirm or refute them. */
-export function unchecked(): Finding {
-  return new Unconfirmed('nothing here works this out again.');
-}
+import type { Evidence } from './evidence.ts';
 
 /** Mass action (weights aside) with whole numbers of molecules. */
 export function countRates(evidence: Evidence): string | null {
@@ -102,79 +96,4 @@ function drifts({ plain, verdict }: Evidence, weights: Amounts): Map<number, Rat
     else byComplex.set(reaction.from, [add(known[0] ?? ZERO, multiply(rates.get(key)!, drift))]);
   }
   return byComplex;
-}
-
-/** A polynomial in the species: coefficient by exponents, written in order of species. */
-type Form = Map<string, Rational>;
-
-/** A "no" names a complex and the first derivative that is not 0, which is worked out again symbolically. */
-export function largeComplexesBalance({ network, plain, holds, witness, hypothesis }: Evidence): Finding {
-  if (holds) return new Unconfirmed('nothing here works this out again.');
-  const rates = arrowRates(plain);
-  const complex = witness?.kind === 'set' && 'complexes' in witness ? witness.complexes[0] : undefined;
-  if (rates === null || complex === undefined || plain.complexes[complex] === undefined)
-    return 'no complex is named.';
-  if (sizeOf(plain.complexes[complex]) < 2) return 'the complex named has one molecule.';
-  const order = Number(/t\^(\d+)/.exec(hypothesis.text)?.[1] ?? NaN);
-  if (order > 2) return new Unconfirmed('derivatives of order three and more are not worked out again.');
-  const start = new Map(
-    plain.species.map((name) => [name, network.start.get(network.species.indexOf(name))?.exact ?? ZERO]),
-  );
-  let form: Form = new Map();
-  for (const [key, rate] of rates) {
-    const [from, to] = key.split(' ').map(Number);
-    if (to === complex) addTo(form, exponentsOf(plain, from!), rate);
-    if (from === complex) addTo(form, exponentsOf(plain, from), minus(rate));
-  }
-  for (let k = 0; k < order; k++) form = alongSolution(plain, rates, form);
-  return isZero(valueAt(plain, form, start)) ? 'the derivative named is 0.' : null;
-}
-
-function exponentsOf(plain: PlainNetwork, complex: number): number[] {
-  return plain.species.map((name) => toDouble(plain.complexes[complex]!.get(name) ?? ZERO));
-}
-
-function addTo(form: Form, exponents: readonly number[], value: Rational): void {
-  const key = exponents.join();
-  form.set(key, add(form.get(key) ?? ZERO, value));
-}
-
-/** ∇form · f, f the rate equations. */
-function alongSolution(plain: PlainNetwork, rates: ReadonlyMap<string, Rational>, form: Form): Form {
-  const derivative: Form = new Map();
-  for (const [key, coefficient] of form) {
-    const exponents = key.split(',').map(Number);
-    for (const [arrow, rate] of rates) {
-      const [from, to] = arrow.split(' ').map(Number);
-      const reactants = exponentsOf(plain, from!);
-      for (const [name, amount] of changeOf(plain, { from: from!, to: to! })) {
-        const i = plain.species.indexOf(name);
-        if (exponents[i] === 0) continue;
-        const moved = exponents.map((exponent, l) => exponent + reactants[l]! - (l === i ? 1 : 0));
-        addTo(
-          derivative,
-          moved,
-          multiply(multiply(coefficient, rational(BigInt(exponents[i]!))), multiply(rate, amount)),
-        );
-      }
-    }
-  }
-  return derivative;
-}
-
-function valueAt(plain: PlainNetwork, form: Form, state: ReadonlyMap<string, Rational>): Rational {
-  let sum = ZERO;
-  for (const [key, coefficient] of form) {
-    const exponents = key.split(',').map(Number);
-    let term = coefficient;
-    plain.species.forEach((name, i) => {
-      for (let k = 0; k < exponents[i]!; k++) term = multiply(term, state.get(name) ?? ONE);
-    });
-    sum = add(sum, term);
-  }
-  return sum;
-}
-
-function minus(value: Rational): Rational {
-  return { numerator: -value.numerator, denominator: value.denominator };
 }

@@ -1,5 +1,4 @@
-import type { Evidence, Finding } from './evidence.ts';
-import { Unconfirmed } from './evidence.ts';
+import type { Evidence } from './evidence.ts';
 
 /** Mass action everywhere and nothing else that changes a species; or a reaction for which it is not so. */
 export function massAction({ network, plain, holds, witness }: Evidence): string | null {
@@ -31,13 +30,4 @@ export function namesPower({ plain, holds, witness }: Evidence): boolean {
   const reaction = !holds && witness?.kind === 'arrow' ? plain.reactions[witness.reaction] : undefined;
   if (reaction === undefined || !reaction.written || !reaction.massAction) return false;
   return [...plain.complexes[reaction.from]!.values()].some(({ numerator }) => numerator > 1n);
-}
-
-/** Mass action has all of these properties; for other laws only the prover's reading of the formula speaks. */
-export function otherLaws({ network, plain, holds }: Evidence): Finding {
-  const untouched = network.events.length === 0 && network.rateRules.size === 0;
-  if (holds !== untouched) return 'an event or an equation of its own changes a species.';
-  return !holds || plain.reactions.every(({ massAction }) => massAction)
-    ? null
-    : new Unconfirmed('the formula of a law is not read again.');
 }

@@ -5,20 +5,23 @@ import { noSeveralByAlgorithm } from './deficiency-one-rule.ts';
 import { stronglyEndotactic } from './endotactic-rule.ts';
 import * as graph from './graph-rules.ts';
 import * as rates from './rate-rules.ts';
+import * as laws from './law-rule.ts';
 import { doesNotExplode, recurs } from './line-rule.ts';
 import * as signs from './sign-rules.ts';
 import type { Rule } from './evidence.ts';
 import * as states from './state-rules.ts';
+import { weightSummable } from './weight-rule.ts';
 import { ratesFactorise, transportBalances } from './transport-rule.ts';
+import { largeComplexesBalance } from './time-rule.ts';
 import * as vectors from './vector-rules.ts';
 
 /** How each claim is confirmed. */
 export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'mass action': rates.massAction,
   'mass action in counts': rates.massActionInCounts,
-  'rates follow reactants': rates.otherLaws,
-  'rates are monotone': rates.otherLaws,
-  'rates are weakly monotonic': rates.otherLaws,
+  'rates follow reactants': laws.positiveWithReactants,
+  'rates are monotone': laws.growsWithReactants,
+  'rates are weakly monotonic': laws.risesWithReactants,
   deficiency: graph.deficiency,
   'class deficiency at most one': graph.classDeficiency,
   'class deficiencies add up': graph.deficienciesAddUp,
@@ -47,9 +50,9 @@ export const rules: Readonly<Record<HypothesisClaim, Rule>> = {
   'several are excluded': states.severalExcluded,
   'at most one by theorem': states.atMostOne,
   'mass action or weights in counts': counts.countRates,
-  'weight summable': counts.unchecked,
+  'weight summable': weightSummable,
   'no large complex': counts.noLargeComplex,
-  'large complexes balance': counts.largeComplexesBalance,
+  'large complexes balance': largeComplexesBalance,
   'mass moves between sites': counts.sitesOnly,
   'rates factorise': ratesFactorise,
   'transport balances': transportBalances,

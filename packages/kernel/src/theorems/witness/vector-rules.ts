@@ -138,8 +138,8 @@ function holdsLaw(plain: PlainNetwork, set: ReadonlySet<string>): boolean {
   return laws.length > 0;
 }
 
-/** Extreme non-negative laws on some species; null where they are too many. */
-function nonnegativeLaws(plain: PlainNetwork, names: readonly string[]): Amounts[] | null {
+/** Extreme non-negative laws on some species, which bound what they contain; null where they are too many. */
+export function nonnegativeLaws(plain: PlainNetwork, names: readonly string[]): Amounts[] | null {
   const changes = [
     ...new Map(plain.reactions.map((reaction) => [`${reaction.from} ${reaction.to}`, reaction])).values(),
   ].map((reaction) => changeOf(plain, reaction));
