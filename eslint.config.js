@@ -24,6 +24,9 @@ export default [
       'no-undef': 'off',
     },
   },
-  { files: ['scripts/**', 'packages/kernel/src/cli/**', 'tests/bench/**'], rules: { 'no-console': 'off' } },
+  {
+    files: ['scripts/**', 'packages/kernel/src/cli/**', 'tests/bench/**', 'tests/pictures/**'],
+    rules: { 'no-console': 'off' },
+  },
   prettier,
 ];

@@ -6,6 +6,8 @@ import * as api from '../api/session.ts';
 /** Who is signed in on this page. */
 export const useSession = defineStore('session', () => {
   const me = ref<Me | null>(null);
+  /** Whether the server has said who is signed in. */
+  const known = ref(false);
   const signUp = ref<SessionView['signUp']>('invitation');
   const demo = ref<SessionView['demo']>([]);
   let asked: Promise<void> | null = null;
@@ -13,6 +15,7 @@ export const useSession = defineStore('session', () => {
   async function ask(): Promise<void> {
     const session = await api.fetchSession();
     me.value = session.me;
+    known.value = true;
     signUp.value = session.signUp;
     demo.value = session.demo;
   }
@@ -37,5 +40,5 @@ export const useSession = defineStore('session', () => {
     asked = null;
   }
 
-  return { me, signUp, demo, ready, signIn, signOut };
+  return { me, known, signUp, demo, ready, signIn, signOut };
 });
