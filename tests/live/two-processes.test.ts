@@ -1,4 +1,4 @@
-import type { Me } from '@stillroom/shared/contracts';
+import type { Me, ShelfView } from '@stillroom/shared/contracts';
 import { cellText, origins } from '@stillroom/shared/document';
 import { closeCodes } from '@stillroom/shared/protocol';
 import { afterAll, afterEach, beforeAll, describe, expect, test } from 'vitest';
@@ -54,6 +54,41 @@ describe('one notebook in two server processes', () => {
         (result as { species?: string[] } | undefined)?.species?.length;
       await client.cell('n', (notice) => notice.state === 'current' && species(notice) === 6, 'the result');
     }
+  });
+
+  test('names and cursors of either side are seen by the other, until they leave', async () => {
+    const notebook = await buildNotebook(server, group, ada, [cell('n', 'network', 'A -> B | 1\n')]);
+    const a = await openLive(server, ada, notebook);
+    const show = (client: LiveClient, person: Me, cursor: string) => {
+      const { id, name, initials, hue } = person;
+      client.provider.awareness.setLocalState({ user: { id, name, initials, hue }, cell: 'n', cursor });
+    };
+    const seenBy = (client: LiveClient, of: LiveClient) =>
+      client.provider.awareness.getStates().get(of.doc.clientID) as
+        { readonly user: { readonly name: string }; readonly cursor: string } | undefined;
+    show(a, ada, 'at the start');
+    // Who comes later by the other process is told of those who are there already.
+    const b = await openElsewhere(ben, notebook);
+    await b.until(() => seenBy(b, a)?.cursor === 'at the start', 'the first was not shown to the second');
+    expect(seenBy(b, a)?.user.name).toBe(ada.name);
+    show(b, ben, 'first');
+    await a.until(() => seenBy(a, b)?.cursor === 'first', 'the second was not shown to the first');
+    for (const cursor of ['second', 'third', 'last']) show(b, ben, cursor);
+    await a.until(() => seenBy(a, b)?.cursor === 'last', 'the cursor did not follow');
+    // More than one piece of news holds: the name is shown all the same.
+    show(b, ben, 'x'.repeat(7500));
+    await a.until(() => seenBy(a, b)?.cursor === undefined, 'the long state did not come');
+    expect(seenBy(a, b)?.user.name).toBe(ben.name);
+    const visitor = await signIn(server, ada);
+    const here = async () => {
+      const { notebooks } = (await visitor.get('/api/shelf')).body as ShelfView;
+      const row = notebooks.find(({ id }) => id === notebook);
+      return row?.people.map(({ name }) => name).sort();
+    };
+    await expect.poll(here).toEqual([ada.name, ben.name].sort());
+    b.close();
+    await a.until(() => seenBy(a, b) === undefined, 'who left is still shown');
+    await expect.poll(here).toEqual([ada.name]);
   });
 
   test('a role taken away through one process closes the line to the other', async () => {

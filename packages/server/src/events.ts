@@ -45,6 +45,14 @@ export interface DomainEvents {
     readonly last: string;
     readonly rows: number;
   };
+  /** Who is at a notebook by lines to the process `from`, as ids; told anew from time to time while somebody is. */
+  'people.here': { readonly from: string; readonly notebook: string; readonly people: readonly string[] };
+  /** What people at a notebook show of themselves by lines to the process `from`: client, clock, state as JSON. */
+  'presence.moved': {
+    readonly from: string;
+    readonly notebook: string;
+    readonly states: readonly (readonly [client: number, clock: number, state: string])[];
+  };
 }
 export type EventName = keyof DomainEvents;
 
@@ -59,6 +67,9 @@ export async function announce<Name extends EventName>(
 ): Promise<void> {
   await manager.query('select pg_notify($1, $2)', [eventChannel, JSON.stringify({ name, payload })]);
 }
+
+/** Bytes of one event at most, as sent: what PostgreSQL takes. */
+export const eventBytes = 7999;
 
 type Handler<Name extends EventName> = (payload: DomainEvents[Name]) => void;
 

@@ -30,15 +30,52 @@ interface Change {
 export class Presences<Owner extends { readonly person: Person }> {
   readonly #awareness: Awareness;
   readonly #owners = new Map<number, Owner>();
+  /** Whose the client numbers are that other processes told of, by id. */
+  readonly #elsewhere = new Map<number, string>();
 
-  /** `tell` gets each change as a frame for everybody (clients skip what they know), with whom it came from. */
-  constructor(doc: Y.Doc, tell: (frame: Uint8Array, from: Owner | null) => void) {
+  /**
+   * `tell` gets each change as a frame for everybody (clients skip what they know), with whom it came from. `moved` gets
+   * the client numbers of what changed by connections of this process.
+   */
+  constructor(
+    doc: Y.Doc,
+    tell: (frame: Uint8Array, from: Owner | null) => void,
+    moved: (clients: readonly number[]) => void = () => undefined,
+  ) {
     this.#awareness = new Awareness(doc);
     this.#awareness.setLocalState(null);
     this.#awareness.on('update', ({ added, updated, removed }: Change, origin: unknown) => {
       const changed = [...added, ...updated, ...removed];
-      tell(awarenessFrame(encodeAwarenessUpdate(this.#awareness, changed)), this.#ownerOf(origin));
+      const from = this.#ownerOf(origin);
+      tell(awarenessFrame(encodeAwarenessUpdate(this.#awareness, changed)), from);
+      for (const client of removed) this.#elsewhere.delete(client);
+      // Every process notices by itself what has not been renewed for long.
+      if (origin !== elsewhere && origin !== 'timeout') moved(changed);
     });
+  }
+
+  /** These clients (all of this process by default) as other processes are told of them; those that have left too. */
+  states(clients: Iterable<number> = this.#owners.keys()): PresenceState[] {
+    const { meta, states } = this.#awareness;
+    return [...clients].flatMap((client) => {
+      const known = meta.get(client);
+      return known === undefined ? [] : [[client, known.clock, JSON.stringify(states.get(client) ?? null)]];
+    });
+  }
+
+  /** Takes what another process tells of its clients; false where it is no presence. */
+  takeElsewhere(told: readonly PresenceState[]): boolean {
+    const update = writeEntries(told.map(([client, clock, text]) => ({ client, clock, text })));
+    const entries = readEntries(update);
+    if (entries === null) return false;
+    for (const { client, clock, state } of entries) {
+      if (clock <= (this.#awareness.meta.get(client)?.clock ?? 0) && this.#owners.has(client)) continue;
+      // It has come back by a line to the other process: the old line here no longer speaks for it.
+      this.#owners.delete(client);
+      if (typeof state?.user?.id === 'string') this.#elsewhere.set(client, state.user.id);
+    }
+    applyAwarenessUpdate(this.#awareness, update, elsewhere);
+    return true;
   }
 
   /** Everybody's state as a frame for somebody who joins; null where nobody is here. */
@@ -57,7 +94,10 @@ export class Presences<Owner extends { readonly person: Person }> {
     const taken = own.filter(
       ({ client }) => known.has(client) || (known.size < statesOfOne && known.add(client)),
     );
-    for (const { client } of taken) this.#owners.set(client, from);
+    for (const { client } of taken) {
+      this.#owners.set(client, from);
+      this.#elsewhere.delete(client);
+    }
     applyAwarenessUpdate(this.#awareness, writeEntries(taken), from);
     return true;
   }
@@ -81,6 +121,8 @@ export class Presences<Owner extends { readonly person: Person }> {
   #isOwn({ client, clock, state }: Entry, from: Owner): boolean {
     const owner = this.#owners.get(client);
     if (owner === undefined && state === null) return false;
+    const known = this.#elsewhere.get(client);
+    if (known !== undefined && known !== from.person.id) return false;
     if (owner !== undefined && owner !== from) {
       // After a lost line the same client comes back while its old connection still stands; what its person's other
       // windows send on of it is not newer.
@@ -92,11 +134,20 @@ export class Presences<Owner extends { readonly person: Person }> {
   }
 }
 
-interface Entry {
+/** A client's number, the clock of its state, and the state as JSON. */
+export type PresenceState = readonly [client: number, clock: number, state: string];
+
+/** Where a change comes from that another process told of. */
+const elsewhere = 'elsewhere';
+
+interface RawEntry {
   readonly client: number;
   readonly clock: number;
   /** The state as JSON. */
   readonly text: string;
+}
+
+interface Entry extends RawEntry {
   readonly state: { readonly user?: { readonly id?: unknown } } | null;
 }
 
@@ -121,7 +172,7 @@ function readEntries(update: Uint8Array): Entry[] | null {
   }
 }
 
-function writeEntries(entries: readonly Entry[]): Uint8Array {
+function writeEntries(entries: readonly RawEntry[]): Uint8Array {
   const encoder = encoding.createEncoder();
   encoding.writeVarUint(encoder, entries.length);
   for (const { client, clock, text } of entries) {

@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import type { IncomingMessage } from 'node:http';
 import type { NoticeTopic } from '@stillroom/shared/protocol';
 import { openConnections } from '../../database/connections.ts';
+import { announce } from '../../events.ts';
 import { isSameOrigin } from '../../http/origin.ts';
 import { describeError } from '../../logger.ts';
 import type { ServerModule, Services } from '../../services.ts';
@@ -10,7 +11,9 @@ import { Access } from './access.ts';
 import { takeInAll, takeInKept } from './elsewhere.ts';
 import { noticeFrame } from './frames.ts';
 import { Gateway, type Visitor } from './gateway.ts';
+import { PeopleElsewhere } from './people-elsewhere.ts';
 import { UpdateLog } from './persistence.ts';
+import { PresenceCourier, type Tell } from './presence-courier.ts';
 import { RoomStore } from './room-store.ts';
 import type { Room } from './room.ts';
 
@@ -46,11 +49,33 @@ export function createCollaboration(services: Services, options: CollaborationOp
     durable: true,
   });
   const access = new Access((places) => readRoles(connections, places));
+  const elsewhere = new PeopleElsewhere();
+  const couriers = new Map<string, PresenceCourier>();
+  const telling = new Set<Promise<void>>();
+  const tellProcesses: Tell = (name, payload) => {
+    const told = announce(database.manager, name, payload)
+      .catch((error: unknown) =>
+        log.warn('Other processes could not be told who is here.', describeError(error)),
+      )
+      .finally(() => telling.delete(told));
+    telling.add(told);
+  };
   const rooms = new RoomStore({
     database,
     log: new UpdateLog(connections, origin),
     failed,
-    ...(options.opened === undefined ? {} : { opened: options.opened }),
+    elsewhere: (notebook) => elsewhere.at(notebook),
+    opened(room) {
+      const courier = new PresenceCourier({ room, origin, elsewhere, tell: tellProcesses });
+      couriers.set(room.notebook, courier);
+      room.observe(courier);
+      room.observe({
+        closed() {
+          if (couriers.get(room.notebook) === courier) couriers.delete(room.notebook);
+        },
+      });
+      options.opened?.(room);
+    },
   });
   const gateway = new Gateway({
     rooms,
@@ -88,6 +113,12 @@ export function createCollaboration(services: Services, options: CollaborationOp
         .then((room) => room && takeInKept(database, room, news))
         .catch((error: unknown) => failed('Updates of another process could not be read.', error));
     }),
+    events.on('people.here', ({ from, notebook, people }) => {
+      if (from !== origin && elsewhere.hear(from, notebook, people)) couriers.get(notebook)?.introduce();
+    }),
+    events.on('presence.moved', ({ from, notebook, states }) => {
+      if (from !== origin) void rooms.peek(notebook).then((room) => room?.presentElsewhere(states));
+    }),
     events.onGap(() => {
       judge(gateway.connections());
       void rooms
@@ -104,6 +135,7 @@ export function createCollaboration(services: Services, options: CollaborationOp
       for (const unlisten of listeners) unlisten();
       gateway.stop();
       await rooms.stop();
+      await Promise.all(telling);
       await connections.end();
     },
   };

@@ -1,4 +1,3 @@
-import { type Person } from '@stillroom/shared/contracts';
 import { loadDocument } from '../notebooks/index.ts';
 import { type UpdateLog, compact, type Transactions } from './persistence.ts';
 import { Room } from './room.ts';
@@ -15,6 +14,8 @@ export interface RoomStoreOptions {
   readonly opened?: (room: Room) => void;
   /** Gets what went wrong behind the scenes. */
   readonly failed: (words: string, error: unknown) => void;
+  /** Ids of those who are at a notebook by lines to other processes. */
+  readonly elsewhere?: (notebook: string) => readonly string[];
   readonly lingering?: number;
   readonly compactAt?: number;
 }
@@ -63,10 +64,14 @@ export class RoomStore {
     return all.filter((room) => room !== null);
   }
 
-  /** Who is at these notebooks now. */
-  async peopleAt(notebooks: readonly string[]): Promise<Map<string, Person[]>> {
+  /** Ids of those who are at these notebooks now, by lines to whichever process. */
+  async peopleAt(notebooks: readonly string[]): Promise<Map<string, readonly string[]>> {
     const pairs = await Promise.all(
-      notebooks.map(async (notebook) => [notebook, (await this.peek(notebook))?.people ?? []] as const),
+      notebooks.map(async (notebook) => {
+        const here = (await this.peek(notebook))?.people ?? [];
+        const all = [...here.map(({ id }) => id), ...(this.#options.elsewhere?.(notebook) ?? [])];
+        return [notebook, [...new Set(all)]] as const;
+      }),
     );
     return new Map(pairs);
   }

@@ -1,7 +1,7 @@
 import type { Person } from '@stillroom/shared/contracts';
 import { type CloseCode, closeCodes } from '@stillroom/shared/protocol';
 import * as Y from 'yjs';
-import { Presences } from './awareness.ts';
+import { type PresenceState, Presences } from './awareness.ts';
 import type { Connection } from './connection.ts';
 import { step1Frame, step2Frame, updateFrame } from './frames.ts';
 import type { UpdateLog } from './persistence.ts';
@@ -12,6 +12,10 @@ export interface RoomObserver {
   changed?(by: Person | null): void;
   /** Somebody came in and has been sent what the room itself has to send. */
   joined?(connection: Connection): void;
+  /** Somebody has left. */
+  left?(): void;
+  /** What these clients show of themselves changed, by connections of this process. */
+  moved?(clients: readonly number[]): void;
   /** Whether it still has something to do here: the room stays open meanwhile. */
   readonly busy?: boolean;
   /** The room is about to go; the last moment to write down. It may yet stay. */
@@ -39,7 +43,13 @@ export class Room {
     this.notebook = notebook;
     this.#log = log;
     this.#broken = broken;
-    this.#presences = new Presences(this.doc, (frame, from) => this.send(frame, from));
+    this.#presences = new Presences(
+      this.doc,
+      (frame, from) => this.send(frame, from),
+      (clients) => {
+        for (const observer of this.#observers) observer.moved?.(clients);
+      },
+    );
     this.doc.on('update', (update: Uint8Array) => {
       this.#announced = update;
     });
@@ -81,7 +91,9 @@ export class Room {
   }
 
   leave(connection: Connection): void {
-    if (this.#connections.delete(connection)) this.#presences.leave(connection);
+    if (!this.#connections.delete(connection)) return;
+    this.#presences.leave(connection);
+    for (const observer of this.#observers) observer.left?.();
   }
 
   /** Asks a connection for everything this document lacks. */
@@ -137,6 +149,16 @@ export class Room {
   /** Takes a connection's awareness; false where it is none. */
   present(update: Uint8Array, by: Connection): boolean {
     return this.#presences.take(update, by);
+  }
+
+  /** What these clients (all of this process by default) show of themselves. */
+  presences(clients?: Iterable<number>): PresenceState[] {
+    return this.#presences.states(clients);
+  }
+
+  /** Takes what another process tells of its clients. */
+  presentElsewhere(states: readonly PresenceState[]): void {
+    this.#presences.takeElsewhere(states);
   }
 
   /** Sends one frame to everybody but its sender: encoded once, the same buffer for all. */

@@ -56,10 +56,10 @@ export async function presentRows(
     [ids],
   );
   const here = await rooms.peopleAt(ids);
-  const people = await findPeople(
-    manager,
-    notebooks.flatMap(({ workedBy }) => workedBy ?? []),
-  );
+  const people = await findPeople(manager, [
+    ...notebooks.flatMap(({ workedBy }) => workedBy ?? []),
+    ...[...here.values()].flat(),
+  ]);
   const cells = new Map<string, CellLine[]>(ids.map((id) => [id, []]));
   for (const line of lines) cells.get(line.notebook)?.push(line);
   return notebooks.map((notebook) => {
@@ -73,7 +73,10 @@ export async function presentRows(
       role: notebook.role,
       seam: own.map(({ kind, state }) => (kind === 'prose' && state !== 'failed' ? 'prose' : state)),
       claims: countClaims(own),
-      people: here.get(notebook.id) ?? [],
+      people: (here.get(notebook.id) ?? []).flatMap((id) => {
+        const person = people.get(id);
+        return person === undefined ? [] : [presentPerson(person)];
+      }),
       lastWork: {
         at: notebook.workedAt.toISOString(),
         by: worker === undefined ? null : presentPerson(worker),
