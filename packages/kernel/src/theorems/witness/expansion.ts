@@ -2,7 +2,7 @@ import { toDouble } from '../../exact/index.ts';
 import type { PlainNetwork } from './plain-network.ts';
 import { changeOf, dimension } from './plain-network.ts';
 
-/** A product of unknowns (their numbers, ascending and joined), with its coefficient. */
+/** Coefficients by product of unknowns. */
 type Polynomial = Map<string, number>;
 
 /** One way in which a species enters a rate: N[row] · unknown · weight. */
@@ -25,64 +25,68 @@ export interface Signs {
 /**
  * The signs of all coefficients of the sum of the principal s-minors of a matrix whose entries are linear forms in
  * unknowns, s the rank: the determinant on the stoichiometric subspace, times the unknown sizes of the species, which are
- * kept apart. Rows are expanded one by one, with memory over the columns used. Null beyond the limits.
+ * kept apart. Rows are expanded one by one or left out together with their column, with memory over the columns used and
+ * the rows left out. Null beyond the limits.
  */
 export function signsOfMinors(rows: readonly (readonly Entry[])[], size: number): Signs | null {
   const species = rows.length;
-  if (species > 26) return null;
+  if (species > MOST_SPECIES) return null;
   let steps = 0;
-  let positive = false;
-  let negative = false;
-  const expand = (chosen: readonly number[]): boolean => {
-    const allowed = chosen.reduce((bits, i) => bits | (1 << i), 0);
-    let layer = new Map<number, Polynomial>([[0, new Map([['', 1]])]]);
-    for (const row of chosen) {
-      const next = new Map<number, Polynomial>();
-      for (const [used, polynomial] of layer) {
-        for (const { column, unknown, coefficient } of rows[row]!) {
-          if (!(allowed & (1 << column)) || used & (1 << column)) continue;
-          const sense = inversions(used, column) % 2 === 0 ? 1 : -1;
-          const key = used | (1 << column);
-          const target = next.get(key) ?? new Map<string, number>();
-          next.set(key, target);
-          for (const [monomial, value] of polynomial) {
-            if (++steps > MOST_STEPS) return false;
-            const product = withUnknown(monomial, unknown);
-            const sum = (target.get(product) ?? 0) + sense * coefficient * value;
-            if (Math.abs(sum) > LARGEST) return false;
-            target.set(product, sum);
-          }
+  let layer = new Map<number, Polynomial>([[0, new Map([['', 1]])]]);
+  for (const [row, entries] of rows.entries()) {
+    const next = new Map<number, Polynomial>();
+    for (const [key, polynomial] of layer) {
+      const used = key % COLUMNS;
+      const left = (key - used) / COLUMNS;
+      if (bitsOf(left) < species - size && !(used & (1 << row))) {
+        next.set(key + COLUMNS * 2 ** row, polynomial);
+        steps += 1;
+      }
+      for (const { column, unknown, coefficient } of entries) {
+        if ((used | left) & (1 << column)) continue;
+        const signed = bitsOf(used >> (column + 1)) % 2 === 0 ? coefficient : -coefficient;
+        const target = next.get(key + 2 ** column) ?? new Map<string, number>();
+        next.set(key + 2 ** column, target);
+        for (const [monomial, value] of polynomial) {
+          if (++steps > MOST_STEPS) return null;
+          const product = withUnknown(monomial, unknown);
+          const sum = (target.get(product) ?? 0) + signed * value;
+          if (Math.abs(sum) > LARGEST) return null;
+          target.set(product, sum);
         }
       }
-      layer = next;
     }
-    for (const value of layer.get(allowed)?.values() ?? []) {
+    layer = next;
+  }
+  let positive = false;
+  let negative = false;
+  for (const [key, polynomial] of layer) {
+    const used = key % COLUMNS;
+    // Exactly the columns of the rows that were not left out.
+    if (used + (key - used) / COLUMNS !== 2 ** species - 1) continue;
+    for (const value of polynomial.values()) {
       if (value > 0) positive = true;
       if (value < 0) negative = true;
     }
-    return true;
-  };
-  const choose = (from: number, chosen: number[]): boolean => {
-    if (chosen.length === size) return expand(chosen);
-    for (let i = from; i <= species - (size - chosen.length); i++) {
-      if (++steps > MOST_STEPS || !choose(i + 1, [...chosen, i])) return false;
-    }
-    return true;
-  };
-  return choose(0, []) ? { positive, negative } : null;
+  }
+  return { positive, negative };
 }
 
-function inversions(used: number, column: number): number {
+const MOST_SPECIES = 26;
+const COLUMNS = 2 ** MOST_SPECIES;
+
+function bitsOf(bits: number): number {
   let count = 0;
-  for (let bits = used >> (column + 1); bits > 0; bits >>= 1) count += bits & 1;
+  for (let rest = bits; rest > 0; rest >>= 1) count += rest & 1;
   return count;
 }
 
+/** The monomial times one more unknown: unknowns are letters, kept in order. */
 function withUnknown(monomial: string, unknown: number): string {
-  const list = monomial === '' ? [] : monomial.split(' ').map(Number);
-  list.push(unknown);
-  list.sort((a, b) => a - b);
-  return list.join(' ');
+  const letter = String.fromCharCode(unknown + 1);
+  let at = monomial.length;
+  while (at > 0 && monomial[at - 1]! > letter) at--;
+  return monomial.slice(0, at) + letter + monomial.slice(at);
 }
 
 /** Which unknowns the rates of a network carry: one for each arrow, or one for each arrow and reactant. */

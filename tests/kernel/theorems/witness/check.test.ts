@@ -1,7 +1,12 @@
 import type { Verdict, Witness } from '@stillroom/shared/cells';
+import type { Network } from '@stillroom/shared/network';
 import { checkWitness, contextOf, judgeAll } from '@stillroom/kernel/theorems';
 import { describe, expect, test } from 'vitest';
-import { buildNetwork } from '../../support/network.ts';
+import { readFileSync } from 'node:fs';
+import fc from 'fast-check';
+import type { NetworkOptions } from '../../../support/network.ts';
+import { buildNetwork } from '../../../support/network.ts';
+import { referenceNetwork, referenceNetworks } from '../../../support/reference-networks.ts';
 
 const networks = [
   'E + S <=> ES; ES -> E + P',
@@ -11,6 +16,7 @@ const networks = [
   'S0+E<=>ES0;ES0->S1+E;S1+F<=>FS1;FS1->S0+F',
   'A + B -> 2 B; B -> A',
   'X -> 2 X; X -> 0',
+  'Y -> X; X + Y -> 0; X -> 2 X + 2 Z; 2 X -> 0; Z -> Y',
 ];
 
 /** The witness with one number, index or name changed, in every way that matters. */
@@ -104,3 +110,66 @@ describe('the checker of witnesses', () => {
     expect(checkWitness(network, { ...verdict, hypotheses }).ok).toBe(false);
   });
 });
+
+/** The first hypothesis of each verdict that was not confirmed afresh. */
+function unconfirmed(text: string, options: NetworkOptions = {}): string[] {
+  return unconfirmedOn(buildNetwork(text, options));
+}
+
+function unconfirmedOn(network: Network): string[] {
+  return judgeAll(network).flatMap((verdict) => {
+    const { confirmed, why } = checkWitness(network, verdict);
+    return confirmed ? [] : [`${verdict.id} (${verdict.applies}): ${why}`];
+  });
+}
+
+describe('every yes and no is confirmed from its own evidence', () => {
+  test.each(referenceNetworks.map((entry) => [entry.id, entry] as const))('%s', (_, entry) => {
+    expect(unconfirmedOn(referenceNetwork(entry))).toEqual([]);
+  });
+
+  const cases = (
+    JSON.parse(readFileSync(new URL('../../../reference/verdicts.json', import.meta.url), 'utf8')) as {
+      networks: { id: string; text: string }[];
+    }
+  ).networks;
+
+  test.each(cases)('$id, without values and with all constants and starts 1', ({ text }) => {
+    expect(unconfirmed(text)).toEqual([]);
+    const { species, reactions } = buildNetwork(text);
+    const constants = Array.from({ length: reactions.count }, () => 1);
+    const start = Object.fromEntries(species.map((name) => [name, 1]));
+    expect(unconfirmed(text, { constants, start })).toEqual([]);
+  });
+
+  test('random networks of up to six species, half of them with values (fixed seed)', () => {
+    const complex = fc
+      .array(fc.integer({ min: 0, max: 5 }), { maxLength: 3 })
+      .map((list) => [...list].sort().map((i) => 'ABCDEF'[i]!));
+    const row = fc
+      .tuple(complex, complex, fc.boolean())
+      .filter(([from, to]) => from.join() !== to.join())
+      .map(([from, to, both]) => `${side(from)} ${both ? '<=>' : '->'} ${side(to)}`);
+    const values = fc.record({
+      constants: fc.array(fc.constantFrom(1, 2, 3, '1/2'), { minLength: 14, maxLength: 14 }),
+      amounts: fc.array(fc.integer({ min: 0, max: 3 }), { minLength: 6, maxLength: 6 }),
+    });
+    fc.assert(
+      fc.property(fc.uniqueArray(row, { minLength: 1, maxLength: 7 }), fc.option(values), (rows, given) => {
+        const text = rows.join('; ');
+        const start = Object.fromEntries(
+          buildNetwork(text).species.map((name) => [name, given?.amounts['ABCDEF'.indexOf(name)] ?? 0]),
+        );
+        const options = given === null ? {} : { constants: given.constants, start };
+        expect(unconfirmed(text, options)).toEqual([]);
+      }),
+      { seed: 20261201, numRuns: 120 },
+    );
+  });
+});
+
+function side(names: readonly string[]): string {
+  const count = new Map<string, number>();
+  for (const name of names) count.set(name, (count.get(name) ?? 0) + 1);
+  return [...count].map(([name, times]) => `${times} ${name}`).join(' + ') || '0';
+}
