@@ -48,6 +48,53 @@ describe('imports between packages', () => {
   });
 });
 
+describe('files', () => {
+  /** Files that import each other in a circle; each circle once. */
+  function circles(
+    files: readonly SourceFile[],
+    counted: (file: SourceFile) => readonly string[],
+  ): string[][] {
+    const known = new Set(files.map(({ path }) => path));
+    const edges = new Map(
+      files.map((file) => [
+        file.path,
+        counted(file)
+          .filter((specifier) => specifier.startsWith('.'))
+          .map((specifier) => target(file, specifier))
+          .filter((path) => known.has(path)),
+      ]),
+    );
+    const reached = new Map([...known].map((path) => [path, reachedFrom(path, edges)]));
+    const inCircles = [...known].filter((path) => reached.get(path)?.has(path));
+    const circleOf = (path: string) =>
+      inCircles.filter((other) => reached.get(path)?.has(other) && reached.get(other)?.has(path)).sort();
+    return inCircles.map(circleOf).filter(([first], index) => first === inCircles[index]);
+  }
+
+  /** Everything that a file imports, directly or not. */
+  function reachedFrom(path: string, edges: ReadonlyMap<string, readonly string[]>): Set<string> {
+    const reached = new Set(edges.get(path));
+    for (const one of reached) for (const other of edges.get(one) ?? []) reached.add(other);
+    return reached;
+  }
+
+  /** What a file needs when it runs: types are gone by then. */
+  const atRunTime = ({ text, imports }: SourceFile): string[] => {
+    const types = [...text.matchAll(/^(?:import|export) type [^;]*? from '([^']+)';/gmu)].map(([, of]) => of);
+    const left = [...imports];
+    for (const specifier of types) left.splice(left.indexOf(specifier ?? ''), 1);
+    return left;
+  };
+
+  test.each(packages)('of %s never import each other in a circle', (name) => {
+    expect(circles(sources.get(name) ?? [], atRunTime)).toEqual([]);
+  });
+
+  test.each(['shared', 'server'])('of %s do not even for their types', (name) => {
+    expect(circles(sources.get(name) ?? [], ({ imports }) => imports)).toEqual([]);
+  });
+});
+
 describe('modules of the server', () => {
   const order = [
     ['files', 'mail'],

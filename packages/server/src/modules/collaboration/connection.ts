@@ -3,6 +3,7 @@ import { type CloseCode, closeCodes, limits } from '@stillroom/shared/protocol';
 import { type Ability, may } from '@stillroom/shared/roles';
 import type { Access, RoleNow } from './access.ts';
 import { type Incoming, isEmptyUpdate, keptFrame, noticeFrame, readFrame } from './frames.ts';
+import type { Occupant } from './occupant.ts';
 import type { Room } from './room.ts';
 
 /** What a connection asks of its line: the `ws` socket has it, and so has a pair in memory. */
@@ -34,7 +35,7 @@ const perSecond = 400;
  * One live line to one person. Frames are handled strictly in order; each is judged by the role that counts at that
  * moment. The first refusal ends the line: Yjs would hold back everything that builds on what was refused.
  */
-export class Connection {
+export class Connection implements Occupant {
   readonly person: Person;
   readonly room: Room;
   readonly #line: Line;

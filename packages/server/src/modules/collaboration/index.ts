@@ -19,6 +19,7 @@ import type { Room } from './room.ts';
 
 export { Connection, messageAbilities } from './connection.ts';
 export type { Visitor } from './gateway.ts';
+export type { Occupant } from './occupant.ts';
 export type { RoomStore } from './room-store.ts';
 export { Room } from './room.ts';
 export type { RoomObserver } from './room.ts';

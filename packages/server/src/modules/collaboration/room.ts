@@ -2,8 +2,8 @@ import type { Person } from '@stillroom/shared/contracts';
 import { type CloseCode, closeCodes } from '@stillroom/shared/protocol';
 import * as Y from 'yjs';
 import { type PresenceState, Presences } from './awareness.ts';
-import type { Connection } from './connection.ts';
 import { step1Frame, step2Frame, updateFrame } from './frames.ts';
+import type { Occupant } from './occupant.ts';
 import type { UpdateLog } from './persistence.ts';
 
 /** What others do with a room: the planner listens here. */
@@ -11,7 +11,7 @@ export interface RoomObserver {
   /** The document changed; by a person of this process, or (null) elsewhere. */
   changed?(by: Person | null): void;
   /** Somebody came in and has been sent what the room itself has to send. */
-  joined?(connection: Connection): void;
+  joined?(connection: Occupant): void;
   /** Somebody has left. */
   left?(): void;
   /** What these clients show of themselves changed, by connections of this process. */
@@ -28,8 +28,8 @@ export interface RoomObserver {
 export class Room {
   readonly notebook: string;
   readonly doc = new Y.Doc();
-  readonly #connections = new Set<Connection>();
-  readonly #presences: Presences<Connection>;
+  readonly #connections = new Set<Occupant>();
+  readonly #presences: Presences<Occupant>;
   readonly #log: UpdateLog;
   readonly #broken: (room: Room) => void;
   readonly #observers: RoomObserver[] = [];
@@ -65,7 +65,7 @@ export class Room {
     return !this.inhabited && !this.#observers.some(({ busy }) => busy === true);
   }
 
-  get connections(): Iterable<Connection> {
+  get connections(): Iterable<Occupant> {
     return this.#connections;
   }
 
@@ -82,7 +82,7 @@ export class Room {
    * Lets a connection in. Only somebody who may edit is asked for what the server lacks (step 1): a reader's answer
    * would hold old deletions and be refused.
    */
-  join(connection: Connection, edits: boolean): void {
+  join(connection: Occupant, edits: boolean): void {
     this.#connections.add(connection);
     if (edits) this.ask(connection);
     const presences = this.#presences.whole();
@@ -90,14 +90,14 @@ export class Room {
     for (const observer of this.#observers) observer.joined?.(connection);
   }
 
-  leave(connection: Connection): void {
+  leave(connection: Occupant): void {
     if (!this.#connections.delete(connection)) return;
     this.#presences.leave(connection);
     for (const observer of this.#observers) observer.left?.();
   }
 
   /** Asks a connection for everything this document lacks. */
-  ask(connection: Connection): void {
+  ask(connection: Occupant): void {
     connection.send(step1Frame(Y.encodeStateVector(this.doc)));
   }
 
@@ -111,7 +111,7 @@ export class Room {
    * has it sends it again after a crash. Resolves when it is committed.
    * @throws where the bytes are no update.
    */
-  write(update: Uint8Array, by: Connection): Promise<void> {
+  write(update: Uint8Array, by: Occupant): Promise<void> {
     const news = this.#applyOrAbandon(update, by);
     // What waits for an update that has not come is not announced, and must be kept all the same.
     const waits = this.doc.store.pendingStructs !== null || this.doc.store.pendingDs !== null;
@@ -147,7 +147,7 @@ export class Room {
   }
 
   /** Takes a connection's awareness; false where it is none. */
-  present(update: Uint8Array, by: Connection): boolean {
+  present(update: Uint8Array, by: Occupant): boolean {
     return this.#presences.take(update, by);
   }
 
@@ -162,7 +162,7 @@ export class Room {
   }
 
   /** Sends one frame to everybody but its sender: encoded once, the same buffer for all. */
-  send(frame: Uint8Array, except: Connection | null): void {
+  send(frame: Uint8Array, except: Occupant | null): void {
     for (const connection of this.#connections) if (connection !== except) connection.send(frame);
   }
 
@@ -183,7 +183,7 @@ export class Room {
   }
 
   /** Of an update whose end cannot be read, Yjs has taken in the beginning: the document is then not what is kept. */
-  #applyOrAbandon(update: Uint8Array, by: Connection): Uint8Array | null {
+  #applyOrAbandon(update: Uint8Array, by: Occupant): Uint8Array | null {
     try {
       return this.#apply(update, by);
     } catch (error) {

@@ -1,5 +1,5 @@
 import type { CellNotice } from '@stillroom/shared/protocol';
-import type { Connection, Room } from '../collaboration/index.ts';
+import type { Occupant, Room } from '../collaboration/index.ts';
 import { type CellNews, planFrame } from './notices.ts';
 
 /**
@@ -31,7 +31,7 @@ export class Announcer {
   }
 
   /** Tells somebody who has come in everything. */
-  greet(connection: Connection, cells: readonly CellNews[]): void {
+  greet(connection: Occupant, cells: readonly CellNews[]): void {
     connection.send(planFrame(true, cells, []));
   }
 

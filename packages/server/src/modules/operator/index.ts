@@ -1,2 +1,2 @@
 export { createOperator } from './module.ts';
-export type { QueueSource } from './module.ts';
+export type { QueueSource } from './queue-source.ts';

@@ -5,9 +5,9 @@ import type { Services } from '../../services.ts';
 import { writeSetting } from '../auth/index.ts';
 import { readOutbox } from '../mail/index.ts';
 import { readHealth } from './health.ts';
-import type { QueueSource } from './module.ts';
 import { authorizeOperator } from './operator.policy.ts';
 import { listPeople } from './people.ts';
+import type { QueueSource } from './queue-source.ts';
 
 /** The operator's room: a standing on the installation, not in a group. */
 export function operatorRoutes(services: Services, readQueue: QueueSource): Router {
