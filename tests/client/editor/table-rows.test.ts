@@ -1,6 +1,12 @@
 import { readNetwork, tableOf } from '@stillroom/shared/notation';
 import { describe, expect, test } from 'vitest';
-import { complaintsByRow, keyRows, type KeyedRow } from '../../../packages/client/src/editor/tableRows.ts';
+import {
+  complaintsByRow,
+  fieldAt,
+  fieldStart,
+  keyRows,
+  type KeyedRow,
+} from '../../../packages/client/src/editor/tableRows.ts';
 
 function keysAfter(before: string, after: string): number[] {
   let keys = 0;
@@ -52,5 +58,32 @@ describe('complaints at their rows', () => {
 
   test('those of statements are about no row', () => {
     expect(sorted('A -> B | k\nstart Z = 1').others).toEqual([2]);
+  });
+});
+
+describe('places in fields', () => {
+  const text = '# two\nA -> B | k = 1 | note\nstart A = 1\nB -> C | 2 \\\n  /s | on\n';
+  let keys = 0;
+  const rows = keyRows([], tableOf(text), () => (keys += 1));
+  const at = (words: string) => fieldAt(text, rows, text.indexOf(words));
+
+  test('an offset lies in the field of its row, also where that goes on in the next line', () => {
+    expect(at('-> B')).toEqual({ key: 1, field: 'reaction' });
+    expect(at('= 1 |')).toEqual({ key: 1, field: 'constants' });
+    expect(at('note')).toEqual({ key: 1, field: 'note' });
+    expect(at('/s')).toEqual({ key: 2, field: 'constants' });
+    expect(at('on\n')).toEqual({ key: 2, field: 'note' });
+  });
+
+  test('statements and comments lie in none', () => {
+    expect(at('two')).toBeNull();
+    expect(at('start')).toBeNull();
+  });
+
+  test('the words of a field begin where they stand in the text', () => {
+    expect(fieldStart(text, 0, 'constants')).toBe(text.indexOf('k = 1'));
+    expect(fieldStart(text, 0, 'note')).toBe(text.indexOf('note'));
+    expect(fieldStart(text, 1, 'reaction')).toBe(text.indexOf('B -> C'));
+    expect(fieldStart(text, 7, 'reaction')).toBeNull();
   });
 });

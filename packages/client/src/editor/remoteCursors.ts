@@ -9,19 +9,9 @@ import {
 } from '@codemirror/view';
 import type { Presence } from '@stillroom/shared/protocol';
 import type { Awareness } from 'y-protocols/awareness';
-import * as Y from 'yjs';
+import type * as Y from 'yjs';
 import { hueClass } from './hues.ts';
-
-/** Where a person's cursor is, as it travels: Yjs relative positions as JSON. */
-interface TravellingCursor {
-  readonly anchor: unknown;
-  readonly head: unknown;
-}
-
-interface Place {
-  readonly anchor: number;
-  readonly head: number;
-}
+import { cursorAt, placeIn } from './travellingCursors.ts';
 
 const moved = StateEffect.define<null>();
 
@@ -51,23 +41,6 @@ class CaretWidget extends WidgetType {
   override ignoreEvent(): boolean {
     return true;
   }
-}
-
-const isObject = (value: unknown): value is object => typeof value === 'object' && value !== null;
-
-function placeIn(text: Y.Text, cursor: unknown): Place | null {
-  const { anchor, head } = (cursor ?? {}) as Partial<TravellingCursor>;
-  if (text.doc === null || !isObject(anchor) || !isObject(head)) return null;
-  const at = (position: unknown): number | null => {
-    const found = Y.createAbsolutePositionFromRelativePosition(
-      Y.createRelativePositionFromJSON(position),
-      text.doc as Y.Doc,
-    );
-    return found !== null && found.type === text ? found.index : null;
-  };
-  const from = at(anchor);
-  const to = at(head);
-  return from === null || to === null ? null : { anchor: from, head: to };
 }
 
 function decorate(view: EditorView, text: Y.Text, awareness: Awareness): DecorationSet {
@@ -134,10 +107,7 @@ export function remoteCursors(text: Y.Text, awareness: Awareness): Extension {
         }
         const { anchor, head } = view.state.selection.main;
         this.mine = true;
-        awareness.setLocalStateField('cursor', {
-          anchor: Y.relativePositionToJSON(Y.createRelativePositionFromTypeIndex(text, anchor)),
-          head: Y.relativePositionToJSON(Y.createRelativePositionFromTypeIndex(text, head)),
-        } satisfies TravellingCursor);
+        awareness.setLocalStateField('cursor', cursorAt(text, { anchor, head }));
       }
 
       private mine = false;

@@ -1,4 +1,10 @@
-import { type Complaint, type TableField, tableFields, type TableRow } from '@stillroom/shared/notation';
+import {
+  type Complaint,
+  setRowField,
+  type TableField,
+  tableFields,
+  type TableRow,
+} from '@stillroom/shared/notation';
 
 /** A row of the table with a key that stays with it while rows come and go around it. */
 export interface KeyedRow extends TableRow {
@@ -43,6 +49,45 @@ export interface RowComplaint {
   readonly field: TableField;
 }
 
+/** The first line of the row at a place, and the field there; null where no row stands. Line and column count from 1. */
+function placeOf(
+  lines: readonly string[],
+  begins: ReadonlySet<number>,
+  at: number,
+  column: number,
+): { readonly line: number; readonly field: TableField } | null {
+  let line = at;
+  let before = (lines[line - 1] ?? '').slice(0, column - 1);
+  while (!begins.has(line) && line > 1 && /\\\s*$/.test(lines[line - 2] ?? '')) {
+    line -= 1;
+    before = (lines[line - 1] ?? '') + before;
+  }
+  if (!begins.has(line)) return null;
+  const bars = Math.min(before.split('|').length - 1, tableFields.length - 1);
+  return { line, field: tableFields[bars] ?? 'reaction' };
+}
+
+/** The row and field in which an offset of the text lies; null where no row stands. */
+export function fieldAt(
+  text: string,
+  rows: readonly KeyedRow[],
+  offset: number,
+): { readonly key: number; readonly field: TableField } | null {
+  const before = text.slice(0, offset).split('\n');
+  const begins = new Set(rows.map(({ line }) => line));
+  const place = placeOf(text.split('\n'), begins, before.length, (before.at(-1)?.length ?? 0) + 1);
+  const key = rows.find(({ line }) => line === place?.line)?.key;
+  return place === null || key === undefined ? null : { key, field: place.field };
+}
+
+/** Where the words of a field begin in the text; null for a row that is not there. */
+export function fieldStart(text: string, row: number, field: TableField): number | null {
+  const change = setRowField(text, row, field, '');
+  if (change === null) return null;
+  const blanks = /^[ \t]*/.exec(text.slice(change.from, change.to))?.[0].length ?? 0;
+  return change.from + blanks;
+}
+
 /** The complaints of a text by the first line of the row they are about, and those that are about no row. */
 export function complaintsByRow(
   text: string,
@@ -55,20 +100,14 @@ export function complaintsByRow(
   const begins = new Set(rows.map(({ line }) => line));
   const lines = text.split('\n');
   for (const complaint of complaints) {
-    let line = complaint.line;
-    let before = (lines[line - 1] ?? '').slice(0, complaint.column - 1);
-    while (!begins.has(line) && line > 1 && /\\\s*$/.test(lines[line - 2] ?? '')) {
-      line -= 1;
-      before = (lines[line - 1] ?? '') + before;
-    }
-    if (!begins.has(line)) {
+    const place = placeOf(lines, begins, complaint.line, complaint.column);
+    if (place === null) {
       others.push(complaint);
       continue;
     }
-    const bars = Math.min(before.split('|').length - 1, tableFields.length - 1);
-    const list = of.get(line) ?? [];
-    list.push({ complaint, field: tableFields[bars] ?? 'reaction' });
-    of.set(line, list);
+    const list = of.get(place.line) ?? [];
+    list.push({ complaint, field: place.field });
+    of.set(place.line, list);
   }
   return { of, others };
 }

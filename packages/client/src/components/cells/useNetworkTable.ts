@@ -11,10 +11,19 @@ import {
 } from '@stillroom/shared/notation';
 import { computed, onScopeDispose, shallowRef, watch } from 'vue';
 import { useNotebook } from '../../composables/useNotebook.ts';
+import { type PersonInText, usePeopleInText } from '../../composables/usePeopleInText.ts';
 import { shownAtOnce, soon, untilRest } from '../../editor/complaints.ts';
 import { checkNotation } from '../../editor/notationReading.ts';
-import { complaintsByRow, type KeyedRow, keyRows, type RowComplaint } from '../../editor/tableRows.ts';
+import {
+  complaintsByRow,
+  fieldAt,
+  fieldStart,
+  type KeyedRow,
+  keyRows,
+  type RowComplaint,
+} from '../../editor/tableRows.ts';
 import { editNetwork } from '../../editor/textEdits.ts';
+import { cursorAt } from '../../editor/travellingCursors.ts';
 
 export type RowFields = Partial<Record<TableField, string>>;
 
@@ -86,6 +95,29 @@ export function useNetworkTable(cell: () => string, typing: () => number | null)
     live.value?.unobserve(read);
   });
 
+  const people = usePeopleInText(cell);
+  /** Co-authors by the field their caret stands in: "KEY FIELD". */
+  const peopleAt = computed(() => {
+    const at = new Map<string, PersonInText[]>();
+    for (const person of people.value) {
+      const place = fieldAt(text.value, rows.value, person.head);
+      if (place === null) continue;
+      const key = `${place.key} ${place.field}`;
+      at.set(key, [...(at.get(key) ?? []), person]);
+    }
+    return at;
+  });
+
+  /** Tells co-authors where in a field one's caret stands; in a row that is not in the text yet, nowhere. */
+  function point(key: number, field: TableField, caret: number): void {
+    const room = notebook.live.room.value;
+    const start = fieldStart(text.value, indexOf(key), field);
+    if (room === null || live.value === undefined || start === null) return;
+    const at = Math.min(start + caret, text.value.length);
+    room.awareness.setLocalStateField('cursor', cursorAt(live.value, { anchor: at, head: at }));
+  }
+  const unpoint = (): void => notebook.live.room.value?.awareness.setLocalStateField('cursor', null);
+
   const indexOf = (key: number): number => rows.value.findIndex((row) => row.key === key);
 
   /** Writes a field; false where the row would be none any more, and nothing is written. */
@@ -119,5 +151,6 @@ export function useNetworkTable(cell: () => string, typing: () => number | null)
     if (live.value !== undefined && checked === text.value) editNetwork(live.value, change);
   }
 
-  return { rows, complaints, wrong, others, newKey: () => (keys += 1), write, add, remove, repair };
+  const newKey = () => (keys += 1);
+  return { rows, complaints, wrong, others, peopleAt, newKey, write, add, remove, repair, point, unpoint };
 }
