@@ -1,4 +1,4 @@
-import type { AccountView, OutboxMail, SessionView } from '@stillroom/shared/contracts';
+import type { AccountView, OutboxMail, SessionView, ShownLetter } from '@stillroom/shared/contracts';
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
 import { buildPerson, signIn, usualPassword } from '../support/build.ts';
 import { startTestServer, type TestServer } from '../support/server.ts';
@@ -12,10 +12,12 @@ beforeAll(async () => {
 });
 afterAll(() => server.stop());
 
-/** The newest letter to an address, out of the outbox. */
-async function letterTo(address: string): Promise<OutboxMail | undefined> {
+/** The newest letter to an address, out of the outbox; shown on request where its link opens something. */
+async function letterTo(address: string): Promise<Pick<OutboxMail, 'subject' | 'text'> | undefined> {
   const { body } = await operator.get('/api/operator/outbox');
-  return (body as OutboxMail[]).find(({ to }) => to === address);
+  const mail = (body as OutboxMail[]).find(({ to }) => to === address);
+  if (mail?.sealed !== 'on request') return mail;
+  return (await operator.post(`/api/operator/outbox/${mail.id}/showing`)).body as ShownLetter;
 }
 
 async function tokenIn(address: string, page: string): Promise<string> {

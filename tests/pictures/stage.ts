@@ -1,4 +1,4 @@
-import type { OutboxMail } from '@stillroom/shared/contracts';
+import type { OutboxMail, ShownLetter } from '@stillroom/shared/contracts';
 import type { NotebookFile } from '@stillroom/shared/notebook-file';
 import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { demoPassword } from '../../packages/server/src/demo/people.ts';
@@ -15,14 +15,12 @@ const addresses: Readonly<Record<Exclude<Who, 'nobody' | 'newcomer'>, string>> =
   tamsin: 'tamsin@maltings.example',
   orla: 'orla@stillroom.example',
 };
-const newcomerPassword = 'a newcomer’s password';
 
 /** A running demonstration with a browser in front of it; one person looks at a time. */
 export class Stage {
   readonly #browser: Browser;
   readonly #address: string;
   readonly #people = new Map<Who, WatchedPage>();
-  #newcomer: string | null = null;
 
   constructor(browser: Browser, address: string) {
     this.#browser = browser;
@@ -99,25 +97,33 @@ export class Stage {
   /** The path of the newest link of a kind in a letter to somebody. */
   async letterLink(kind: string, to: string): Promise<string> {
     const mails = await this.ask<readonly OutboxMail[]>('orla', '/api/operator/outbox');
-    for (const mail of mails.filter((one) => one.to === to)) {
-      const path = new RegExp(`/${kind}/[\\w-]+`, 'u').exec(mail.text ?? '')?.[0];
+    for (const mail of mails.filter((one) => one.to === to && one.sealed === 'on request')) {
+      const { text } = await this.send<ShownLetter>(
+        'orla',
+        'POST',
+        `/api/operator/outbox/${mail.id}/showing`,
+        {},
+      );
+      const path = new RegExp(`/${kind}/[\\w-]+`, 'u').exec(text)?.[0];
       if (path !== undefined) return path;
     }
     throw new Error(`No letter to ${to} has a link to /${kind}.`);
   }
 
-  /** Somebody who signed up and confirmed the address a moment ago, in no group. */
+  /** Somebody who signed up and confirmed the address; made once for an installation. */
   async #signUp(context: BrowserContext): Promise<void> {
-    await this.send('orla', 'PATCH', '/api/operator/settings', { signUp: 'open' });
-    this.#newcomer = `newcomer.${Date.now()}@example.org`;
+    const email = 'newcomer@example.org';
+    const password = 'the newcomer’s password';
     const headers = { origin: this.#address };
-    await context.request.post('/api/accounts', {
-      data: { email: this.#newcomer, name: 'Pell Arden', password: newcomerPassword },
-      headers,
-    });
-    const token = (await this.letterLink('confirm', this.#newcomer)).split('/').at(-1);
+    const there = await context.request.post('/api/session', { data: { email, password }, headers });
+    if (there.ok()) return;
+    await this.send('orla', 'PATCH', '/api/operator/settings', { signUp: 'open' });
+    const data = { email, name: 'Pell Arden', password };
+    const made = await context.request.post('/api/accounts', { data, headers });
+    if (!made.ok()) throw new Error(`The newcomer could not sign up: ${await made.text()}`);
+    const token = (await this.letterLink('confirm', email)).split('/').at(-1);
     await context.request.post('/api/accounts/confirm', { data: { token }, headers });
-    await enter(context, this.#address, this.#newcomer, newcomerPassword);
+    await enter(context, this.#address, email, password);
   }
 }
 

@@ -216,6 +216,7 @@ export const operatorRoutes: readonly Pick<GuardedRoute, 'method' | 'address' | 
   { method: 'GET', address: '/api/operator/people', ability: 'operator.people' },
   { method: 'GET', address: '/api/operator/queue', ability: 'operator.queue' },
   { method: 'GET', address: '/api/operator/outbox', ability: 'operator.outbox' },
+  { method: 'POST', address: '/api/operator/outbox/:mail/showing', ability: 'operator.letters' },
   {
     method: 'PATCH',
     address: '/api/operator/settings',

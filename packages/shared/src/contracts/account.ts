@@ -60,4 +60,6 @@ export interface AccountView extends Me {
     readonly lastSeen: string;
     readonly current: boolean;
   }[];
+  /** Letters with a link to this account that an operator was shown, to be handed on; newest first. */
+  readonly lettersShown: readonly { readonly at: string; readonly subject: string }[];
 }

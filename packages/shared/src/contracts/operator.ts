@@ -43,12 +43,25 @@ export interface QueueView {
   }[];
 }
 
-/** GET /api/operator/outbox: mails caught here, newest first. Review letters of masked reviewers have no body. */
+/** GET /api/operator/outbox: letters, newest first. Those whose link opens something have no words here. */
 export interface OutboxMail {
   readonly id: string;
   readonly at: string;
+  /** The address; of a masked reviewer what the group calls them. */
   readonly to: string;
   readonly subject: string;
   readonly text: string | null;
+  /** Why there are no words: they are shown on request; a mail server alone carries them; they were delivered. */
+  readonly sealed: 'on request' | 'by mail alone' | 'delivered' | null;
+  /** When it was last shown on request. */
+  readonly shownAt: string | null;
   readonly state: 'waiting' | 'sent' | 'failed';
+}
+
+/** POST /api/operator/outbox/:mail/showing: the letter itself; that it was shown is written down. */
+export interface ShownLetter {
+  readonly id: string;
+  readonly to: string;
+  readonly subject: string;
+  readonly text: string;
 }

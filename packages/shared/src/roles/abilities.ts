@@ -42,6 +42,7 @@ export const abilities = [
   'operator.people',
   'operator.queue',
   'operator.outbox',
+  'operator.letters',
   'operator.settings',
 ] as const;
 export type Ability = (typeof abilities)[number];
@@ -92,7 +93,14 @@ const table: Readonly<Record<Standing, readonly Ability[]>> = {
     'record.results',
     'record.export',
   ],
-  operator: ['operator.health', 'operator.people', 'operator.queue', 'operator.outbox', 'operator.settings'],
+  operator: [
+    'operator.health',
+    'operator.people',
+    'operator.queue',
+    'operator.outbox',
+    'operator.letters',
+    'operator.settings',
+  ],
   public: ['notebook.read', 'record.read', 'record.results', 'record.export'],
 };
 

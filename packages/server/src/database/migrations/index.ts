@@ -2,6 +2,7 @@ import type { MigrationInterface } from 'typeorm';
 import { Compute1796083203000 } from './2026-12-01-compute.ts';
 import { FailedResults1796083205000 } from './2026-12-01-failed-results.ts';
 import { Groups1796083201000 } from './2026-12-01-groups.ts';
+import { Letters1796083208000 } from './2026-12-01-letters.ts';
 import { Notebooks1796083202000 } from './2026-12-01-notebooks.ts';
 import { People1796083200000 } from './2026-12-01-people.ts';
 import { RemarksOfReviews1796083206000 } from './2026-12-01-remarks-of-reviews.ts';
@@ -18,4 +19,5 @@ export const migrations: readonly (new () => MigrationInterface)[] = [
   FailedResults1796083205000,
   RemarksOfReviews1796083206000,
   RerunEngine1796083207000,
+  Letters1796083208000,
 ];

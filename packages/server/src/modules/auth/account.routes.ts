@@ -5,6 +5,7 @@ import * as z from 'zod/mini';
 import { notFound, signedOut } from '../../errors.ts';
 import { route } from '../../http/route.ts';
 import type { Services } from '../../services.ts';
+import { lettersShownOf } from '../mail/index.ts';
 import { browserInWords } from './browser-words.ts';
 import { endSession, endSessions, sessionsOf } from './commands/end-sessions.ts';
 import { changePassword } from './commands/set-password.ts';
@@ -89,5 +90,6 @@ async function presentAccount(manager: EntityManager, id: string, sid: string): 
       lastSeen: seen ?? begun ?? account.createdAt.toISOString(),
       current: other === sid,
     })),
+    lettersShown: await lettersShownOf(manager, id),
   };
 }

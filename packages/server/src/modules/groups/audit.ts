@@ -14,6 +14,7 @@ export type AuditVerb =
   | 'member.removed'
   | 'member.left'
   | 'invitation.withdrawn'
+  | 'letter.shown'
   | 'notebook.created'
   | 'notebook.deleted'
   | 'notebook.restored'

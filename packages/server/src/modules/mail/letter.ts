@@ -1,15 +1,20 @@
+/** What the link in a letter opens to whoever has it. */
+export type LetterKey = 'nothing' | 'account' | 'group' | 'record';
+
 /** A letter ready to go: the same words as plain text and as HTML. */
 export interface Letter {
   readonly to: string;
   readonly subject: string;
   readonly text: string;
   readonly html: string;
+  readonly opens: LetterKey;
 }
 
 /** What a template says; the dress is the same for all. */
 export interface LetterContent {
   readonly to: string;
   readonly subject: string;
+  readonly opens: LetterKey;
   /** Name of the person written to, where it is known. */
   readonly name?: string;
   readonly paragraphs: readonly string[];
@@ -22,8 +27,8 @@ export interface LetterContent {
 
 /** Sets a letter in both forms. */
 export function setLetter(content: LetterContent): Letter {
-  const { to, subject } = content;
-  return { to, subject, text: asText(content), html: asHtml(content) };
+  const { to, subject, opens } = content;
+  return { to, subject, opens, text: asText(content), html: asHtml(content) };
 }
 
 function asText({ name, paragraphs, quote, action, closing }: LetterContent): string {

@@ -58,6 +58,8 @@ async function deliverDue({ config, database }: Services, transport: Transporter
           state: 'sent',
           attempts: mail.attempts + 1,
           complaint: null,
+          // Its link is its reader's alone from now on.
+          ...(mail.opens === 'nothing' ? {} : { text: '', html: '' }),
         });
       } catch (error) {
         await manager.update(MailEntity, mail.id, afterFailure(mail, error));

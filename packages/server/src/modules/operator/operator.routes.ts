@@ -1,6 +1,8 @@
 import { installationPatch } from '@stillroom/shared/contracts';
 import { Router } from 'express';
+import * as z from 'zod/mini';
 import { route } from '../../http/route.ts';
+import { uuid } from '../../http/validate.ts';
 import type { Services } from '../../services.ts';
 import { writeSetting } from '../auth/index.ts';
 import { readOutbox } from '../mail/index.ts';
@@ -8,6 +10,9 @@ import { readHealth } from './health.ts';
 import { authorizeOperator } from './operator.policy.ts';
 import { listPeople } from './people.ts';
 import type { QueueSource } from './queue-source.ts';
+import { showLetter } from './show-letter.ts';
+
+const letterParams = z.object({ mail: uuid });
 
 /** The operator's room: a standing on the installation, not in a group. */
 export function operatorRoutes(services: Services, readQueue: QueueSource): Router {
@@ -56,7 +61,20 @@ export function operatorRoutes(services: Services, readQueue: QueueSource): Rout
       who: 'person',
       async handle({ person, manager }) {
         authorizeOperator(person, 'operator.outbox');
-        return readOutbox(manager);
+        return readOutbox(manager, services.config.MAIL_URL !== undefined);
+      },
+    }),
+  );
+
+  router.post(
+    '/api/operator/outbox/:mail/showing',
+    route(services, {
+      limit: 'writing',
+      who: 'person',
+      params: letterParams,
+      async handle({ person, params, manager }) {
+        authorizeOperator(person, 'operator.letters');
+        return showLetter(manager, services.config, person.id, params.mail);
       },
     }),
   );

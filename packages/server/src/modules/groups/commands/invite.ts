@@ -67,6 +67,7 @@ export async function invite(
       until: inWords(until),
       link: `${publicAddress(config)}/invitation/${token}`,
     }),
+    { group: group.id },
   );
   const words = `invited ${email} as ${reach}`;
   await recordAudit(manager, { group: group.id, by: by.id, verb: 'member.invited', words });

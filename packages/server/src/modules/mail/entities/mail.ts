@@ -1,5 +1,6 @@
 import { Column, Entity, PrimaryColumn } from 'typeorm';
 import { now } from '../../../database/columns.ts';
+import type { LetterKey } from '../letter.ts';
 
 /** A letter in the outbox. */
 @Entity('mail')
@@ -22,9 +23,21 @@ export class MailEntity {
   @Column({ type: 'text' })
   html!: string;
 
-  /** Whether the words may be shown to nobody but the recipient: the link of a masked reviewer. */
+  /** Whether it goes to a masked reviewer, whose address is shown only with the letter itself. */
   @Column({ type: 'boolean', default: false })
   masked!: boolean;
+
+  /** What its link opens; only a letter that opens nothing is shown without being asked for. */
+  @Column({ type: 'text', default: 'nothing' })
+  opens!: LetterKey;
+
+  /** The group whose trail tells that it was shown. */
+  @Column({ type: 'uuid', nullable: true })
+  group!: string | null;
+
+  /** What a masked reviewer is called. */
+  @Column({ type: 'text', nullable: true })
+  reader!: string | null;
 
   @Column({ type: 'text', default: 'waiting' })
   state!: 'waiting' | 'sent' | 'failed';

@@ -4,6 +4,7 @@ import { type Letter, setLetter } from '../letter.ts';
 export function accountExists(to: string, name: string, link: string): Letter {
   return setLetter({
     to,
+    opens: 'nothing',
     subject: 'You already have a Stillroom account',
     name,
     paragraphs: [

@@ -4,6 +4,7 @@ import { type Letter, setLetter } from '../letter.ts';
 export function confirmAccount(to: string, name: string, link: string): Letter {
   return setLetter({
     to,
+    opens: 'account',
     subject: 'Confirm your address for Stillroom',
     name,
     paragraphs: [

@@ -15,6 +15,7 @@ interface Invitation {
 export function groupInvitation({ to, by, group, role, message, until, link }: Invitation): Letter {
   return setLetter({
     to,
+    opens: 'group',
     subject: `${by} invites you to ${group} on Stillroom`,
     paragraphs: [
       `${by} invites you to join the group ${group} as ${role}. Stillroom is where the group writes its notebooks on reaction networks.`,

@@ -4,6 +4,7 @@ import { type Letter, setLetter } from '../letter.ts';
 export function newPassword(to: string, name: string, link: string): Letter {
   return setLetter({
     to,
+    opens: 'account',
     subject: 'Set a new password for Stillroom',
     name,
     paragraphs: ['A new password was asked for your account. Setting it ends all your sessions.'],

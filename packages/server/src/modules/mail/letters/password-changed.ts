@@ -4,6 +4,7 @@ import { type Letter, setLetter } from '../letter.ts';
 export function passwordChanged(to: string, name: string, link: string): Letter {
   return setLetter({
     to,
+    opens: 'nothing',
     subject: 'Your Stillroom password was changed',
     name,
     paragraphs: ['The password of your account was changed just now, and your other sessions were ended.'],

@@ -17,6 +17,7 @@ export function reviewInvitation(asked: ReviewInvitation): Letter {
   const { to, name, by, group, record, message, until, link } = asked;
   return setLetter({
     to,
+    opens: 'record',
     subject: `To review: ${record}`,
     ...(name === '' ? {} : { name }),
     paragraphs: [

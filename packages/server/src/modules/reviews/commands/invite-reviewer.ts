@@ -59,8 +59,10 @@ export async function inviteReviewer(
     until: dayInWords(endOf(review)),
     link: `${address}/review/${token}`,
   });
-  // The letter holds the link: nobody but its reader may see it, masked or not.
-  await queueMail(manager, letter, { masked });
+  await queueMail(manager, letter, {
+    group: record.group,
+    ...(masked ? { maskedAs: shownName(review) } : {}),
+  });
   const words = `invited ${shownName(review)} to review record No. ${record.number}`;
   await recordAudit(manager, { group: record.group, by, verb: 'review.invited', words });
   await announce(manager, 'records.changed', { notebook: record.notebook });
