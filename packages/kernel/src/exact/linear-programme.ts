@@ -40,18 +40,24 @@ const PATIENCE = 40;
  */
 export function solveLinear(programme: LinearProgramme, pivots = DEFAULT_PIVOTS): LinearOutcome {
   const layout = layOut(programme);
-  const small = smallTableau(layout.rows);
-  const outcome = small ? run(small, layout, programme, pivots) : null;
-  return outcome ?? run(longTableau(layout.rows), layout, programme, pivots) ?? { kind: 'unfinished' };
+  const small = smallRows(programme, layout);
+  const outcome = small ? run(smallTableau(small), layout, programme, pivots) : null;
+  return (
+    outcome ??
+    run(longTableau(longRows(programme, layout)), layout, programme, pivots) ?? { kind: 'unfinished' }
+  );
 }
 
 /** Where everything stands: row 0 the objective, rows 1… the conditions with a right-hand side that is not negative. */
 interface Layout {
-  readonly rows: bigint[][];
-  readonly basis: number[];
+  /** Columns with the right-hand side, which is the last. */
+  readonly width: number;
+  readonly basis: readonly number[];
   /** Columns that may enter: those before the artificial ones. */
   readonly real: number;
   readonly negativePart: ReadonlyMap<number, number>;
+  /** Per condition: the column of its surplus, −1 for equations. */
+  readonly surplus: readonly number[];
   /** Per condition: whether it was multiplied by −1, and its unit column with the cost of that column. */
   readonly units: readonly { readonly column: number; readonly cost: bigint; readonly flipped: boolean }[];
 }
@@ -64,32 +70,66 @@ function layOut({ variables, free, conditions }: LinearProgramme): Layout {
   }
   const surplus = conditions.map((condition) => (condition.relation === '>=' ? columns++ : -1));
   const real = columns;
-  // A ≥ condition with right ≤ 0 turns into ≤, and its own surplus column starts the basis.
-  const flipped = conditions.map(
-    (condition) => condition.right < 0n || (condition.right === 0n && condition.relation === '>='),
-  );
   const units = conditions.map((condition, i) => {
-    const own = condition.relation === '>=' && flipped[i]!;
-    return { column: own ? surplus[i]! : columns++, cost: own ? 0n : 1n, flipped: flipped[i]! };
+    // A ≥ condition with right ≤ 0 turns into ≤, and its own surplus column starts the basis.
+    const flipped = condition.right < 0n || (condition.right === 0n && condition.relation === '>=');
+    const own = condition.relation === '>=' && flipped;
+    return { column: own ? surplus[i]! : columns++, cost: own ? 0n : 1n, flipped };
   });
-  const width = columns + 1;
+  return { width: columns + 1, basis: units.map(({ column }) => column), real, negativePart, surplus, units };
+}
+
+/** The rows in doubles; null where an entry of the start is too large for that. */
+function smallRows({ conditions }: LinearProgramme, layout: Layout): Float64Array[] | null {
+  const { width, negativePart, surplus, units } = layout;
+  const objective = new Float64Array(width);
+  for (const { column, cost } of units) objective[column] = Number(cost);
+  const rows = [objective];
+  let largest = 0;
+  for (const [i, { terms, right }] of conditions.entries()) {
+    const { column, cost, flipped } = units[i]!;
+    const row = new Float64Array(width);
+    for (const [variable, coefficient] of terms) {
+      const value = flipped ? -Number(coefficient) : Number(coefficient);
+      row[variable]! += value;
+      const negative = negativePart.get(variable);
+      if (negative !== undefined) row[negative]! -= value;
+      largest += Math.abs(value);
+    }
+    if (surplus[i]! >= 0) row[surplus[i]!] = flipped ? 1 : -1;
+    row[column] = 1;
+    row[width - 1] = flipped ? -Number(right) : Number(right);
+    largest += Math.abs(row[width - 1]!);
+    if (cost === 1n) for (let k = 0; k < width; k++) if (row[k] !== 0) objective[k]! -= row[k]!;
+    rows.push(row);
+  }
+  // Every sum above is exact when all sizes together are.
+  return largest + conditions.length < SAFE ? rows : null;
+}
+
+const SAFE = 2 ** 52;
+
+/** The rows on integers of any length. */
+function longRows({ conditions }: LinearProgramme, layout: Layout): bigint[][] {
+  const { width, negativePart, surplus, units } = layout;
   const objective = Array.from({ length: width }, () => 0n);
-  for (const unit of units) objective[unit.column] = unit.cost;
-  const rows = conditions.map((condition, i) => {
+  for (const { column, cost } of units) objective[column] = cost;
+  const rows = conditions.map(({ terms, right }, i) => {
+    const { column, cost, flipped } = units[i]!;
+    const sense = flipped ? -1n : 1n;
     const row = Array.from({ length: width }, () => 0n);
-    const sense = flipped[i]! ? -1n : 1n;
-    for (const [variable, coefficient] of condition.terms) {
+    for (const [variable, coefficient] of terms) {
       row[variable]! += sense * coefficient;
       const negative = negativePart.get(variable);
       if (negative !== undefined) row[negative]! -= sense * coefficient;
     }
     if (surplus[i]! >= 0) row[surplus[i]!] = -sense;
-    row[units[i]!.column] = 1n;
-    row[width - 1] = sense * condition.right;
-    if (units[i]!.cost === 1n) row.forEach((entry, k) => (objective[k]! -= entry));
+    row[column] = 1n;
+    row[width - 1] = sense * right;
+    if (cost === 1n) row.forEach((entry, k) => (objective[k]! -= entry));
     return row;
   });
-  return { rows: [objective, ...rows], basis: units.map((unit) => unit.column), real, negativePart, units };
+  return [objective, ...rows];
 }
 
 function run(
@@ -140,10 +180,15 @@ function solution(
   layout: Layout,
   variables: number,
 ): LinearOutcome {
-  const all = Array.from({ length: tableau.columns }, () => 0n);
-  basis.forEach((column, i) => (all[column] = tableau.entry(i + 1, tableau.columns - 1)));
-  const values = all.slice(0, variables);
-  for (const [variable, negative] of layout.negativePart) values[variable]! -= all[negative]!;
+  const values = Array.from({ length: variables }, () => 0n);
+  const last = tableau.columns - 1;
+  const ownerOf = new Map([...layout.negativePart].map(([variable, negative]) => [negative, variable]));
+  basis.forEach((column, i) => {
+    const variable = column < variables ? column : ownerOf.get(column);
+    if (variable === undefined || tableau.sign(i + 1, last) === 0) return;
+    const value = tableau.entry(i + 1, last);
+    values[variable]! += column < variables ? value : -value;
+  });
   return { kind: 'feasible', values, denominator: tableau.denominator() };
 }
 

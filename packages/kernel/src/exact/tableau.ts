@@ -20,11 +20,13 @@ export interface Tableau {
 
 const LIMIT = Number.MAX_SAFE_INTEGER;
 
-/** Entries below 2^53 held in doubles: all that the matrices of reaction networks usually need, and much faster. */
-export function smallTableau(start: readonly (readonly bigint[])[]): Tableau | null {
-  if (start.some((row) => row.some((entry) => entry > BigInt(LIMIT) || entry < -BigInt(LIMIT)))) return null;
-  const rows = start.map((row) => Float64Array.from(row, Number));
+/**
+ * Entries below 2^53 held in doubles: all that the matrices of reaction networks usually need, and much faster. Pivots
+ * change the rows handed in.
+ */
+export function smallTableau(rows: readonly Float64Array[]): Tableau {
   const columns = rows[0]?.length ?? 0;
+  const support = new Int32Array(columns);
   let scale = 1;
   return {
     rows: rows.length,
@@ -43,10 +45,17 @@ export function smallTableau(start: readonly (readonly bigint[])[]): Tableau | n
     pivot(row, column) {
       const chosen = rows[row]!;
       const pivot = chosen[column]!;
+      let entries = 0;
+      for (let k = 0; k < columns; k++) if (chosen[k] !== 0) support[entries++] = k;
       for (let i = 0; i < rows.length; i++) {
-        const factor = rows[i]![column]!;
+        const target = rows[i]!;
+        const factor = target[column]!;
         if (i === row || (factor === 0 && pivot === scale)) continue;
-        if (!combine(rows[i]!, chosen, pivot, factor, scale)) return false;
+        const fits =
+          pivot === scale
+            ? subtract(target, chosen, factor, scale, support, entries)
+            : combine(target, chosen, pivot, factor, scale);
+        if (!fits) return false;
       }
       scale = pivot;
       return true;
@@ -56,9 +65,8 @@ export function smallTableau(start: readonly (readonly bigint[])[]): Tableau | n
   };
 }
 
-/** The same tableau on integers of any length. */
-export function longTableau(start: readonly (readonly bigint[])[]): Tableau {
-  const rows = start.map((row) => [...row]);
+/** The same tableau on integers of any length. Pivots change the rows handed in. */
+export function longTableau(rows: bigint[][]): Tableau {
   const columns = rows[0]?.length ?? 0;
   let scale = 1n;
   const signOf = (value: bigint): number => (value > 0n ? 1 : value < 0n ? -1 : 0);
@@ -85,6 +93,7 @@ export function longTableau(start: readonly (readonly bigint[])[]): Tableau {
   };
 }
 
+/** row·pivot − factor·chosen, divided by the scale. False when a product is not exact; the row is then spoilt. */
 function combine(
   row: Float64Array,
   chosen: Float64Array,
@@ -92,12 +101,34 @@ function combine(
   factor: number,
   scale: number,
 ): boolean {
+  let largest = 0;
   for (let k = 0; k < row.length; k++) {
     const kept = row[k]! * pivot;
     const taken = factor * chosen[k]!;
+    if (kept === 0 && taken === 0) continue;
+    largest = Math.max(largest, Math.abs(kept) + Math.abs(taken));
     const difference = kept - taken;
-    if (!(Math.abs(kept) <= LIMIT && Math.abs(taken) <= LIMIT && Math.abs(difference) <= LIMIT)) return false;
     row[k] = difference === 0 ? 0 : difference / scale;
   }
-  return true;
+  return largest <= LIMIT;
+}
+
+/** The same where the pivot is the scale: only the entries of the chosen row matter. */
+function subtract(
+  row: Float64Array,
+  chosen: Float64Array,
+  factor: number,
+  scale: number,
+  support: Int32Array,
+  entries: number,
+): boolean {
+  let largest = 0;
+  for (let j = 0; j < entries; j++) {
+    const k = support[j]!;
+    const taken = factor * chosen[k]!;
+    const difference = row[k]! - taken / scale;
+    largest = Math.max(largest, Math.abs(taken), Math.abs(difference));
+    row[k] = difference;
+  }
+  return largest <= LIMIT;
 }

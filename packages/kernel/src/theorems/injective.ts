@@ -47,6 +47,8 @@ const text =
 /** Steps of the list of products that are tried at once, and when nothing else decided. */
 const SHORT_LIST = 4_000;
 const LONG_LIST = 20_000;
+/** Species times arrows above which the long list has no prospect of ending. */
+const LONGEST_LISTED = 800;
 
 const compartmental: Hypothesis = {
   claim,
@@ -115,7 +117,8 @@ function fromPatterns(context: TheoremContext): Hypothesis[] {
     ];
   }
   if (search.kind === 'open') {
-    const listed = minorProducts(context, LONG_LIST);
+    const size = context.species.length * context.arrows.length;
+    const listed = size <= LONGEST_LISTED ? minorProducts(context, LONG_LIST) : null;
     if (listed !== null) return [fromList(listed)];
     return [
       {

@@ -38,6 +38,9 @@ export function minorProducts(context: TheoremContext, steps: number): MinorProd
   return complete ? { positive, negative, examples: [...examples.values()] } : null;
 }
 
+/** Entries of a column that are reduced in the time of one step of the list. */
+const ENTRIES_PER_STEP = 100;
+
 /** Called with a pair (I, J) and its product, which is not 0; false ends the list. */
 export type ProductVisitor = (indices: MinorIndices, product: bigint) => boolean;
 
@@ -56,7 +59,8 @@ export function visitMinorProducts(
   const chosen: number[] = [];
   let left = steps;
   const choose = (from: number, echelonRows: Reduced[]): boolean => {
-    if (--left < 0) return false;
+    left -= 1 + (echelonRows.length * context.species.length) / ENTRIES_PER_STEP;
+    if (left < 0) return false;
     if (chosen.length === rank) {
       left = addProducts(context, [...chosen], visit, left);
       return left >= 0;
@@ -126,20 +130,31 @@ function columnOf(context: TheoremContext, arrow: number): readonly number[] {
 /** A column reduced by earlier ones, with the place of its first entry. */
 interface Reduced {
   readonly lead: number;
-  readonly entries: readonly number[];
+  readonly entries: Float64Array;
 }
+
+/** Entries above which a reduced column is divided by its greatest common divisor, and above which it is given up. */
+const LONG_ENTRY = 2 ** 20;
+const LONGEST_ENTRY = 2 ** 26;
 
 /** Null where the column depends on the others, undefined where numbers outgrow doubles. */
 function reduceBy(rows: readonly Reduced[], column: readonly number[]): Reduced | null | undefined {
-  let work = [...column];
+  const work = Float64Array.from(column);
   for (const { lead, entries } of rows) {
     const factor = work[lead]!;
     if (factor === 0) continue;
     const pivot = entries[lead]!;
-    work = work.map((entry, i) => entry * pivot - factor * entries[i]!);
+    let largest = 0;
+    for (let i = 0; i < work.length; i++) {
+      const value = work[i]! * pivot - factor * entries[i]!;
+      work[i] = value;
+      if (value > largest) largest = value;
+      else if (-value > largest) largest = -value;
+    }
+    if (largest <= LONG_ENTRY) continue;
     const common = work.reduce(greatestCommonDivisor, 0);
-    if (common > 1) work = work.map((entry) => entry / common);
-    if (work.some((entry) => Math.abs(entry) > 2 ** 26)) return undefined;
+    for (let i = 0; i < work.length; i++) work[i]! /= common;
+    if (largest / common > LONGEST_ENTRY) return undefined;
   }
   const lead = work.findIndex((entry) => entry !== 0);
   return lead < 0 ? null : { lead, entries: work };

@@ -18,7 +18,7 @@ export type PatternSearch =
   | { readonly kind: 'open'; readonly nodes: number };
 
 /** Nodes of the search tree times species times arrows that one search may spend; each node solves linear programmes. */
-const WORK = 80_000;
+const WORK = 50_000;
 const MOST_NODES = 400;
 const FEWEST_NODES = 10;
 

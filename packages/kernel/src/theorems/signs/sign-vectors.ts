@@ -9,12 +9,18 @@ export type SignedVector = bigint[] | null | 'unfinished';
 
 /** A vector of the stoichiometric subspace (scaled units) with the given signs. */
 export function subspaceVector(context: TheoremContext, signs: ArrayLike<Domain>): SignedVector {
-  return signedVector(context.lawBasis.map(equationOf), signs);
+  return signedVector(
+    context.memo('law equations', () => context.lawBasis.map(equationOf)),
+    signs,
+  );
 }
 
 /** A vector of the kernel of N with the given signs. */
 export function kernelVector(context: TheoremContext, signs: ArrayLike<Domain>): SignedVector {
-  return signedVector(context.stoichiometricMatrix.entries.map(equationOf), signs);
+  return signedVector(
+    context.memo('kernel equations', () => context.stoichiometricMatrix.entries.map(equationOf)),
+    signs,
+  );
 }
 
 /**

@@ -14,7 +14,7 @@ import { exactTotals, shortened, verifyStates } from './verified-states.ts';
 
 /** Points of the search times species squared times arrows; counted, so that a search always ends at the same place. */
 const WORK = 3_000_000;
-const MOST_POINTS = 1500;
+const MOST_POINTS = 1000;
 const FEWEST_POINTS = 40;
 /** Points of the wrong sign that are followed up. */
 const FOLLOWED = 8;
@@ -79,7 +79,7 @@ interface Sampler {
 }
 
 /** Extreme rays kept, and steps of their enumeration. */
-const RAY_LIMITS = { rays: 400, steps: 300_000 } as const;
+const RAY_LIMITS = { rays: 200, steps: 60_000 } as const;
 
 /**
  * Random fluxes: weights of extreme fluxes by their logarithms, which reaches every corner of the cone; where those are
