@@ -42,13 +42,15 @@ mkdirSync(values.out, { recursive: true });
 const browser = await launchChromium();
 const stage = new Stage(browser, values.at);
 let wrong = 0;
-const complain = (words: string) => {
+function complain(words: string): undefined {
   wrong += 1;
   console.log(words);
-};
+}
 try {
   for (const { name, who, show, print, widths = allWidths } of picked) {
-    const { page, context, troubles } = await stage.pageOf(who);
+    const opened = await stage.pageOf(who).catch((cause: unknown) => complain(`${name}: ${String(cause)}`));
+    if (opened === undefined) continue;
+    const { page, context, troubles } = opened;
     context.setDefaultTimeout(15_000);
     try {
       await page.setViewportSize({ width: 1440, height: 900 });

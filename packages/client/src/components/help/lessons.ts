@@ -19,7 +19,7 @@ export const notationLessons: readonly NotationLesson[] = [
     title: 'Arrows and sides',
     example: '0 <=> S    | feed = 0.3 uM/s, wash = 0.05 /s\n2 X -> 3 X | b = 0.1 /uM/s\nP -> 0     | wash',
     say:
-      '-> goes one way, <- the other, <=> both. 0 is nothing: supply or loss. A number before a species counts it. ' +
+      '`->` goes one way, `<-` the other, `<=>` both. `0` is nothing: supply or loss. A number before a species counts it. ' +
       'A constant gets its value once and may be used again by name.',
   },
   {
@@ -27,7 +27,7 @@ export const notationLessons: readonly NotationLesson[] = [
     title: 'Constants and units',
     example: 'D + E <=> DE | kf = 0.1 /uM/s, kr = 120 /min | binding\nstart D = 60 uM, E = 1200 nM',
     say:
-      'A unit stands after its number: products of s, min, h, d, mol, M, L, molecules, cells and others, with prefixes ' +
+      'A unit stands after its number: products of `s`, `min`, `h`, `d`, `mol`, `M`, `L`, `molecules`, `cells` and others, with prefixes ' +
       'and powers. The first time and amount of the text are those of its results. Rates are checked against the ' +
       'order of their reaction.',
   },
@@ -36,8 +36,8 @@ export const notationLessons: readonly NotationLesson[] = [
     title: 'Rates of your own',
     example: 'S -> P | law = Vmax*S/(Km + S), Vmax = 3 uM/s, Km = 12 uM | saturates',
     say:
-      'Without law a row follows mass action. Theorems that need mass action say that they do not apply to a law. ' +
-      'net = … gives one law for both ways of a double arrow.',
+      'Without `law` a row follows mass action. Theorems that need mass action say that they do not apply to a law. ' +
+      '`net = …` gives one law for both ways of a double arrow.',
   },
   {
     id: 'statements',
@@ -45,8 +45,8 @@ export const notationLessons: readonly NotationLesson[] = [
     example:
       'A + X -> 2 X | k = 0.2 /uM/s\nX -> 0      | d = 0.1 /s\nfix A = 1 uM\nstart X = 0.01 uM\nlet total = A + X',
     say:
-      'start gives what is there at first, 0 where silent. fix holds a species constant and strikes it from every ' +
-      'complex. let names a constant, or an output made of species and t.',
+      '`start` gives what is there at first, 0 where silent. `fix` holds a species constant and strikes it from every ' +
+      'complex. `let` names a constant, or an output made of species and `t`.',
   },
   {
     id: 'families',
@@ -54,15 +54,15 @@ export const notationLessons: readonly NotationLesson[] = [
     example:
       'let L = 6, b = 4\n[i = 1..L] X[i] <=> X[i % L + 1] | p = 1, p\nweight X[i] = 1 + b/n for i = 1..L\nstart X[i] = 4 for i = 1..L',
     say:
-      'One row for every index. weight says how fast a site that holds n loses one, in place of n; it touches counts ' +
-      'only. where keeps some of the indices.',
+      'One row stands for every index. `weight` says how fast a site that holds `n` loses one, in place of `n`; it touches counts ' +
+      'only. `where` keeps some of the indices.',
   },
   {
     id: 'events',
     title: 'Volumes, events, rates',
     example: 'A -> B | k = 0.3 /s\nvolume V = 1 fL\nstart A = 2 uM\nevent when t >= 5: A = 2',
     say:
-      'volume turns concentrations into counts. event sets values when its condition turns true. rate X = … lets X ' +
+      '`volume` turns concentrations into counts. `event` sets values when its condition turns true. `rate X = …` lets X ' +
       'follow an equation of its own.',
   },
   {

@@ -1,4 +1,4 @@
-import { type CellKind, cellKinds } from '@stillroom/shared/cells';
+import { type CellKind, cellKinds, isCellKind } from '@stillroom/shared/cells';
 
 /** What each kind is called on screen; prose stays in small letters, since it has no slip. */
 export const kindNames: Readonly<Record<CellKind, string>> = {
@@ -11,6 +11,9 @@ export const kindNames: Readonly<Record<CellKind, string>> = {
   plot: 'Plot',
   claim: 'Claim',
 };
+
+/** The same for a kind that a record or a file names. */
+export const kindName = (kind: string): string => (isCellKind(kind) ? kindNames[kind] : kind);
 
 /** Kinds by what one wants to do, as the first-run page offers them. */
 export const kindGroups: readonly { readonly verb: string; readonly kinds: readonly CellKind[] }[] = [
