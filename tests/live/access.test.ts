@@ -126,6 +126,15 @@ describe('who may open a line', () => {
     expect((await openLimited(limited, other)).closed).toBeNull();
   });
 
+  test('the operator of the installation, and whoever holds a link without an account', async () => {
+    const operator = await signIn(server, await buildPerson(server, { operator: true }));
+    expect(await closing(liveAddress(server, operator, notebook))).toBe(closeCodes.refused);
+    const asLead = await signIn(server, lead);
+    await asLead.send('PUT', `/api/notebooks/${notebook}/public`, { public: true });
+    const address = liveAddress(server, new Visitor(server.url), notebook);
+    expect(await closing(address)).toBe(closeCodes.signedOut);
+  });
+
   test('more lines than one person may have: the one too many is told so, the others stay', async () => {
     const visitor = await signIn(server, await member('reader'));
     const address = liveAddress(server, visitor, notebook);

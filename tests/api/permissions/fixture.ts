@@ -1,5 +1,6 @@
 import type { Me } from '@stillroom/shared/contracts';
 import { type GroupRole, groupRoles } from '@stillroom/shared/roles';
+import { digestOf } from '../../../packages/server/src/modules/auth/index.ts';
 import { createNotebook, writeRemark } from '../../../packages/server/src/modules/notebooks/index.ts';
 import { sealContent } from '../../../packages/server/src/modules/records/content.ts';
 import { buildGroup, buildMember, buildPerson, signIn } from '../../support/build.ts';
@@ -46,6 +47,8 @@ export interface Fixture {
   readonly remark: string;
   readonly record: string;
   readonly review: string;
+  /** Secrets of the links to the fair copy, the record and the review. */
+  readonly links: Readonly<Record<'copy' | 'record' | 'review', string>>;
   readonly invitation: string;
   readonly target: string;
   readonly self: (caller: Caller) => string;
@@ -90,13 +93,19 @@ export async function buildFixture(
   };
 }
 
+/** Tells the links of one fixture from those of another. */
+let built = 0;
+const reviewToken = (number: number): string => `review-token-${number}`;
+
 /** A record with nothing in it, under review; freezing a computed notebook is for other tests. */
 async function buildRecord(
   server: TestServer,
   group: string,
   notebook: string,
   by: string,
-): Promise<Pick<Fixture, 'record' | 'review'>> {
+): Promise<Pick<Fixture, 'record' | 'review' | 'links'>> {
+  built += 1;
+  const number = built;
   const frozenAt = new Date().toISOString();
   const { text, digest } = sealContent({
     format: 'stillroom-record/1',
@@ -119,9 +128,12 @@ async function buildRecord(
   );
   const [review] = await server.sql<{ id: string }>(
     `insert into review (record, number, email, name, masked, until, digest, invited_by)
-     values ($1, 1, 'referee@example.org', '', true, now() + interval '9 days', gen_random_uuid()::text, $2)
+     values ($1, 1, 'referee@example.org', '', true, now() + interval '9 days', $3, $2)
      returning id`,
-    [record?.id, by],
+    [record?.id, by, digestOf(reviewToken(number))],
   );
-  return { record: record?.id ?? nobody, review: review?.id ?? nobody };
+  const links = { copy: `copy-${number}`, record: `record-${number}`, review: reviewToken(number) };
+  await server.sql('update notebook set public_token = $2 where id = $1', [notebook, links.copy]);
+  await server.sql('insert into record_link (record, token) values ($1, $2)', [record?.id, links.record]);
+  return { record: record?.id ?? nobody, review: review?.id ?? nobody, links };
 }

@@ -237,7 +237,7 @@ export const ownRoutes = [
   'POST /api/invitations/:token',
 ];
 
-/** Routes for anybody: what they need is a password, or the secret in the address itself (of a picture, its digest). */
+/** Routes for anybody: what they need is a password, or a token that was sent to somebody. */
 export const openRoutes = [
   'GET /api/session',
   'POST /api/session',
@@ -247,16 +247,76 @@ export const openRoutes = [
   'POST /api/password-resets',
   'PUT /api/password-resets',
   'GET /api/invitations/:token',
-  'GET /api/public/:token',
   'GET /api/notebooks/:notebook/pictures/:digest',
-  'GET /api/public-records/:token',
-  'GET /api/public-records/:token/file',
-  'GET /api/public-records/:token/file',
-  'GET /api/review/:token',
-  'GET /api/review/:token/file',
-  'GET /api/review/:token/file',
-  'POST /api/review/:token/reruns',
-  'GET /api/review/:token/reruns/:rerun',
-  'POST /api/review/:token/remarks',
-  'PUT /api/review/:token/verdict',
+];
+
+const asReviewer = { standing: 'reviewer', link: 'review' } as const;
+const publicly = <Link extends 'copy' | 'record'>(link: Link) => ({ standing: 'public', link }) as const;
+
+/** What somebody with a link may do: whoever has the secret in the address stands where it says. */
+export interface LinkRoute {
+  readonly method: GuardedRoute['method'];
+  readonly address: string;
+  readonly standing: 'public' | 'reviewer';
+  /** Which link it is. */
+  readonly link: 'copy' | 'record' | 'review';
+  readonly ability: Ability;
+  readonly body?: unknown;
+  /** Status for whoever has the link. */
+  readonly good: number;
+}
+
+const verdict = { recommendation: 'take', toAuthors: 'Good.', toEditor: '', claims: {} };
+
+/** The last one ends the review. */
+export const linkRoutes: readonly LinkRoute[] = [
+  { method: 'GET', address: '/api/public/:token', ...publicly('copy'), ability: 'notebook.read', good: 200 },
+  {
+    method: 'GET',
+    address: '/api/public-records/:token',
+    ...publicly('record'),
+    ability: 'record.read',
+    good: 200,
+  },
+  {
+    method: 'GET',
+    address: '/api/public-records/:token/file',
+    ...publicly('record'),
+    ability: 'record.export',
+    good: 200,
+  },
+  { method: 'GET', address: '/api/review/:token', ...asReviewer, ability: 'review.read', good: 200 },
+  { method: 'GET', address: '/api/review/:token/file', ...asReviewer, ability: 'record.export', good: 200 },
+  {
+    method: 'POST',
+    address: '/api/review/:token/reruns',
+    ...asReviewer,
+    ability: 'review.rerun',
+    body: { cell: 'nowhere' },
+    // The record of these tests has no cell.
+    good: 404,
+  },
+  {
+    method: 'GET',
+    address: '/api/review/:token/reruns/:rerun',
+    ...asReviewer,
+    ability: 'review.read',
+    good: 404,
+  },
+  {
+    method: 'POST',
+    address: '/api/review/:token/remarks',
+    ...asReviewer,
+    ability: 'review.remark',
+    body: { cell: 'c1', quote: '', text: 'Why?' },
+    good: 201,
+  },
+  {
+    method: 'PUT',
+    address: '/api/review/:token/verdict',
+    ...asReviewer,
+    ability: 'review.verdict',
+    body: verdict,
+    good: 204,
+  },
 ];
