@@ -49,7 +49,7 @@ describe('from the form', () => {
         facets: { by: 'cell' },
       }),
     ) as unknown as { data: Spec['data']; facet: unknown; columns: number; spec: Spec; resolve?: unknown };
-    expect(spec).toMatchObject({ facet: { field: 'panel' }, columns: 2 });
+    expect(spec).toMatchObject({ facet: { field: 'panel', sort: ['cold', '2'] }, columns: 2 });
     expect(spec.resolve).toBeUndefined();
     const rows = spec.data.values as unknown as { series: string; panel: string }[];
     expect(new Set(rows.map(({ panel, series }) => `${panel}: ${series}`))).toEqual(

@@ -34,6 +34,7 @@ function pageLook(): Record<string, unknown> {
     axisX: { grid: false },
     numberFormat: '.6~g',
     legend: { labelFont: sans, titleFont: sans, labelFontSize: 13.5, labelColor: ink2, titleColor: ink2 },
+    header: { labelFont: sans, labelFontSize: 14.5, labelFontWeight: 500, labelColor: ink },
     title: { font: sans, fontSize: 15, color: ink, anchor: 'start' },
     text: { font: sans, fontSize: 13.5, color: ink },
     line: { strokeWidth: 2.2 },

@@ -81,11 +81,11 @@ function arranged(
 ): { readonly [key: string]: unknown } {
   if (facets === undefined) return { width: 'container', ...picture };
   const { data, ...inner } = picture;
-  const panels = new Set(lines.map(({ panel }) => panel)).size;
-  const columns = Math.max(1, Math.min(mostBeside, panels));
+  const panels = [...new Set(lines.flatMap(({ panel }) => panel ?? []))];
+  const columns = Math.max(1, Math.min(mostBeside, panels.length));
   return {
     data,
-    facet: { field: 'panel', type: 'nominal', sort: null, title: null, header: { labelAnchor: 'start' } },
+    facet: { field: 'panel', type: 'nominal', sort: panels, title: null, header: { labelAnchor: 'start' } },
     columns,
     spec: {
       width: Math.floor(facetSizes.together / columns) - facetSizes.margin,

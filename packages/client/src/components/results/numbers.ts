@@ -4,6 +4,15 @@ export interface SetNumber {
   readonly exponent: number | null;
 }
 
+/**
+ * A whole number with its digits in threes, by narrow blanks that do not break: "100 000". Four digits stand together, as
+ * they do in the books of the field.
+ */
+export const grouped = (count: number): string =>
+  Math.abs(count) < 10_000
+    ? minus(String(count))
+    : minus(String(count)).replaceAll(/\B(?=(?:\d{3})+$)/gu, '\u202F');
+
 const minus = (text: string) => text.replace('-', '−');
 
 /** Trims the zeros that rounding left behind a decimal point. */
@@ -13,7 +22,7 @@ const trimmed = (text: string) => (text.includes('.') ? text.replace(/\.?0+$/u, 
 export function setNumber(value: number, digits = 4): SetNumber {
   if (value === 0) return { digits: '0', exponent: null };
   const size = Math.abs(value);
-  if (Number.isInteger(value) && size < 1e6) return { digits: minus(String(value)), exponent: null };
+  if (Number.isInteger(value) && size < 1e6) return { digits: grouped(value), exponent: null };
   if (size >= 0.99999e-4 && size < 1e5) {
     const plain = value.toPrecision(digits);
     return { digits: minus(trimmed(plain.includes('e') ? String(Number(plain)) : plain)), exponent: null };
