@@ -8,22 +8,9 @@ import { ModularLift } from './modular/modular-lift.ts';
 import { modularColumns } from './modular/modular-columns.ts';
 import { modularLeftKernel } from './modular/modular-kernel.ts';
 import { pairLeftKernel } from './pair-kernel.ts';
-import type { SparseColumns, SparseVector } from './sparse.ts';
+import type { LeftKernel, SparseColumns, SparseVector } from './sparse.ts';
 
-/**
- * Rank and left kernel over the rationals, proven.
- *
- * The rank is at least `rank` because a minor of that size is not zero (modulo a prime, or a product along a forest),
- * and at most `rank` because the vectors of `basis` were checked over the integers and are independent, or because the
- * matrix has no more rows or columns. `basis` holds primitive integer vectors, their first entry positive, each with an
- * index of its own where the others are 0. `complete` is false where some vector is too long to be written
- * (the rank is proven all the same).
- */
-export interface LeftKernel {
-  readonly rank: number;
-  readonly basis: readonly SparseVector[];
-  readonly complete: boolean;
-}
+export type { LeftKernel } from './sparse.ts';
 
 /** Primes tried for one block before exact elimination, or giving up, takes over. */
 const PRIMES = 64;

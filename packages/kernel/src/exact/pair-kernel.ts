@@ -1,7 +1,6 @@
 import { absolute, gcd, lcm } from './integers.ts';
-import type { LeftKernel } from './left-kernel.ts';
 import { rowIndex } from './sparse.ts';
-import type { RowIndex, SparseColumns, SparseVector } from './sparse.ts';
+import type { LeftKernel, RowIndex, SparseColumns, SparseVector } from './sparse.ts';
 
 /**
  * Rank and left kernel of a matrix whose columns have at most two entries, exactly and in linear time. A column a·e_i +

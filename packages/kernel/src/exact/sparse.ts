@@ -47,3 +47,18 @@ export function rowIndex(matrix: {
   }
   return { offsets, columns, positions };
 }
+
+/**
+ * Rank and left kernel over the rationals, proven.
+ *
+ * The rank is at least `rank` because a minor of that size is not zero (modulo a prime, or a product along a forest),
+ * and at most `rank` because the vectors of `basis` were checked over the integers and are independent, or because the
+ * matrix has no more rows or columns. `basis` holds primitive integer vectors, their first entry positive, each with an
+ * index of its own where the others are 0. `complete` is false where some vector is too long to be written
+ * (the rank is proven all the same).
+ */
+export interface LeftKernel {
+  readonly rank: number;
+  readonly basis: readonly SparseVector[];
+  readonly complete: boolean;
+}

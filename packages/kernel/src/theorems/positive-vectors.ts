@@ -1,6 +1,8 @@
 import { solveLinear } from '../exact/index.ts';
 import type { LinearCondition, SparseVector } from '../exact/index.ts';
-import type { TheoremContext } from './context.ts';
+import type { StructuralNetwork } from '../network/index.ts';
+import type { Structure } from '../structure/index.ts';
+import type { Coefficients } from './coefficients.ts';
 
 /** A positive flux in the kernel of N, or a linear function of the species that no arrow lowers and some arrow raises. */
 export type Consistency =
@@ -10,6 +12,17 @@ export type Consistency =
 export type Conservation =
   { readonly holds: true; readonly law: bigint[] } | { readonly holds: false; readonly flux: bigint[] };
 
+/** What is looked at; a `TheoremContext` is one. */
+interface Stoichiometry {
+  readonly structure: StructuralNetwork;
+  readonly analysis: Structure;
+  readonly species: readonly string[];
+  readonly arrows: readonly { readonly from: number; readonly to: number }[];
+  readonly coefficients: Coefficients;
+  readonly circulation: readonly bigint[] | null;
+  memo<T>(name: string, compute: () => T): T;
+}
+
 /** Tableau entries above which the exact programmes are not started. */
 const LARGEST_PROGRAMME = 400_000;
 
@@ -17,7 +30,7 @@ const LARGEST_PROGRAMME = 400_000;
  * Consistent or not, with proof: v = 1 + u, u ≥ 0 with N u = −N 1 by exact linear programming; the alternative is
  * Stiemke's. Weakly reversible networks need no programme.
  */
-export function decideConsistency(context: TheoremContext): Consistency | null {
+export function decideConsistency(context: Stoichiometry): Consistency | null {
   const circulation = context.circulation;
   if (circulation !== null) return { holds: true, flux: [...circulation] };
   if (tableauSize(context.species.length, context.arrows.length) > LARGEST_PROGRAMME) return null;
@@ -41,7 +54,7 @@ export function decideConsistency(context: TheoremContext): Consistency | null {
 }
 
 /** Conservative or not, with proof: w = 1 + u, u ≥ 0 with u N = −1 N. */
-export function decideConservation(context: TheoremContext): Conservation | null {
+export function decideConservation(context: Stoichiometry): Conservation | null {
   const known = context.analysis.conservative;
   if (known.holds === true) return { holds: true, law: denseLaw(context, known.law) };
   if (tableauSize(context.arrows.length, context.species.length) > LARGEST_PROGRAMME) return null;
@@ -69,7 +82,7 @@ export function decideConservation(context: TheoremContext): Conservation | null
   return { holds: false, flux };
 }
 
-function changes(context: TheoremContext): ReadonlyMap<number, bigint>[] {
+function changes(context: Stoichiometry): ReadonlyMap<number, bigint>[] {
   return context.memo('changes', () =>
     context.arrows.map(({ from, to }) => context.coefficients.change(from, to)),
   );
@@ -79,7 +92,7 @@ function tableauSize(conditions: number, variables: number): number {
   return (conditions + 1) * (variables + conditions + 1);
 }
 
-function denseLaw(context: TheoremContext, { indices, values }: SparseVector): bigint[] {
+function denseLaw(context: Stoichiometry, { indices, values }: SparseVector): bigint[] {
   const law = context.species.map(() => 0n);
   indices.forEach((species, k) => (law[species] = values[k]!));
   return law;
