@@ -2,7 +2,7 @@ import { randomUUID } from 'node:crypto';
 import type { ErrorBody } from '@stillroom/shared/contracts';
 import type { ErrorRequestHandler } from 'express';
 import { statusOf } from '../error-map.ts';
-import { DomainError, invalid, tooLarge } from '../errors.ts';
+import { conflict, DomainError, invalid, tooLarge } from '../errors.ts';
 import { describeError, type Logger } from '../logger.ts';
 
 /** The one way out for every refusal; what is unknown is logged under a number and hidden behind it. */
@@ -47,5 +47,8 @@ function asDomainError(error: unknown): DomainError | null {
   // PostgreSQL: a character that no text column, or no JSON column, holds.
   if (code === '22021' || code === '22P05')
     return invalid('There is a character in it that cannot be kept.', { hint: 'Type the words anew.' });
+  // PostgreSQL: two people took the same name, address or number at once, and this is the later one.
+  if (code === '23505')
+    return conflict('Somebody else has just taken that.', { hint: 'Look again, then try once more.' });
   return code?.startsWith('LIMIT_') ? invalid('The upload is not as expected: one file, no more.') : null;
 }

@@ -1,5 +1,6 @@
 import { emailRequest, newPasswordRequest, signUpRequest, tokenRequest } from '@stillroom/shared/contracts';
 import { Router } from 'express';
+import { conflict } from '../../errors.ts';
 import { route } from '../../http/route.ts';
 import type { Services } from '../../services.ts';
 import { askForNewPassword, setPasswordByLink } from './commands/set-password.ts';
@@ -36,8 +37,14 @@ export function accountsRoutes(services: Services, invitedAddress: InvitedAddres
       limit: 'guesses',
       who: 'anyone',
       body: tokenRequest,
-      async handle({ body, manager, request }) {
+      async handle({ person: here, body, manager, request }) {
         const person = await redeemToken(manager, body.token, 'confirm');
+        // The link stays good: what is refused is not committed.
+        if (here !== null && here.id !== person.id) {
+          throw conflict(`This link is for ${person.email}; you are signed in as ${here.email}.`, {
+            hint: 'Sign out first, then open the link again.',
+          });
+        }
         await manager.update(PersonEntity, person.id, { confirmedAt: new Date() });
         await beginSession(request, presentMe(person));
         return presentMe(person);
