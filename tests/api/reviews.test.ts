@@ -232,12 +232,28 @@ describe('a rerun', () => {
     expect(view.cells['broken']?.why).toMatch(/\S/u);
   });
 
+  test('does not wait for that of another reviewer, whose record holds a runaway', async () => {
+    const endless = await forgeRecord(1001, [
+      { id: 'wild', kind: 'script', name: 'wild', text: 'while (true);' },
+    ]);
+    const { token: slow } = await inviteTo(endless);
+    const begun = (await anyone().post(`/api/review/${slow}/reruns`, {})).body as RerunView;
+    const look = async () => (await anyone().get(`/api/review/${slow}/reruns/${begun.id}`)).body as RerunView;
+    await expect.poll(async () => (await look()).cells['wild']?.outcome, { timeout: 20_000 }).toBe('working');
+    const { token } = await invite();
+    expect(outcomes(await rerun(token))).toMatchObject({ run: 'matches', ends: 'matches' });
+    expect((await look()).done).toBe(false);
+  });
+
   /** A record that was tampered with before it was sealed, as another machine or engine might have made it. */
-  async function forgeRecord(): Promise<string> {
-    const cells = [
+  async function forgeRecord(
+    number = 1000,
+    written = [
       { id: 'yeast', kind: 'network', name: 'yeast', text: 'A <=> B | 2 /s, 1 /s' },
       { id: 'broken', kind: 'network', name: 'broken', text: 'A --> B' },
-    ].map((frozen) => ({
+    ],
+  ): Promise<string> {
+    const cells = written.map((frozen) => ({
       ...frozen,
       settings: {},
       draws: [],
@@ -251,8 +267,8 @@ describe('a rerun', () => {
     const content = { group: { id: group.id, name: 'Brewhouse' }, title: 'Forged', cells, reasons: {} };
     const [made] = await server.sql<{ id: string }>(
       `insert into record ("group", number, notebook, title, frozen_at, frozen_by, digest, content)
-       values ($1, 1000, $2, 'Forged', now(), $3, 'sha256:3', $4) returning id`,
-      [group.id, notebook, lead.id, JSON.stringify(content)],
+       values ($1, $5, $2, 'Forged', now(), $3, 'sha256:3', $4) returning id`,
+      [group.id, notebook, lead.id, JSON.stringify(content), number],
     );
     return made?.id ?? '';
   }

@@ -26,7 +26,7 @@ export interface RunnerOptions {
   readonly log: Logger;
   /** Called in this process when something is known under a digest, before it is kept. */
   readonly told: (digest: string) => void;
-  /** Further tasks, run one at a time beside the lanes. */
+  /** Further tasks, which only wait for runs of the pool: some at a time beside the lanes. */
   readonly tasks: (pool: Pool, host: string) => TaskList;
 }
 
@@ -57,7 +57,7 @@ export class Runner {
       await this.#serve({ [lanes.long]: compute }, long),
       await this.#serve({ [lanes.quick]: compute }, size + 1),
     ];
-    if (Object.keys(tasks).length > 0) this.#runners.push(await this.#serve(tasks, 1));
+    if (Object.keys(tasks).length > 0) this.#runners.push(await this.#serve(tasks, inHand));
     await queue.sweep();
     this.#sweeper = setInterval(
       () =>
