@@ -1,7 +1,8 @@
 /*
  * The application as its people meet it: from a key pressed in a network cell to the new structure on a co-author's screen
- * with ten authors present; opening a notebook of sixty cells; compressed JavaScript of a first load. One server process
- * as `npm start` runs it, real sockets, real Chromium.
+ * with ten authors present; frames while one types in two hundred rows and scrolls a hundred cells; opening a notebook of
+ * sixty cells; compressed JavaScript of a first load. One server process as `npm start` runs it, real sockets, real
+ * Chromium.
  */
 import { fork } from 'node:child_process';
 import { fileURLToPath } from 'node:url';
@@ -10,7 +11,8 @@ import { launchChromium, openPage, signIn } from '../support/chromium.ts';
 import { createTestDatabase } from '../support/database.ts';
 import { LiveClient } from '../support/live-client.ts';
 import { Visitor } from '../support/visitor.ts';
-import { sixtyCells, typingNotebook } from './notebooks.ts';
+import { type Frames, framesDuring, scrollThrough, typeText } from './frames.ts';
+import { hundredCells, longNetwork, sixtyCells, typingNotebook } from './notebooks.ts';
 
 const root = fileURLToPath(new URL('../..', import.meta.url));
 const password = 'demo-stillroom';
@@ -154,6 +156,62 @@ async function measureTyping(browser: Browser, url: string): Promise<void> {
   await Promise.all([writing.context().close(), watching.context().close()]);
 }
 
+/** A frame at sixty a second, in milliseconds: what a task may take of the processor. */
+const frame = 1000 / 60;
+
+/** Prints whether a page kept its frames: its longest task in processor time, and the frames that the machine gave it. */
+function framesLine(what: string, { tasks, gaps }: Frames): void {
+  const longest = Math.max(...tasks.map(({ cpu }) => cpu));
+  const over = tasks.filter(({ cpu }) => cpu > frame).length;
+  line(
+    `${what}: longest task`,
+    `${longest.toFixed(1)} ms of CPU, ${over} over a frame`,
+    '16.7 ms',
+    over === 0,
+  );
+  const late = gaps.filter((gap) => gap > 1.5 * frame).length;
+  const share = (100 * late) / gaps.length;
+  line(
+    `${what}: frames that came late`,
+    `${late} of ${gaps.length} (${share.toFixed(1)} %), p95 ${quantile(gaps, 0.95).toFixed(1)} ms`,
+    'p95 a frame',
+    quantile(gaps, 0.95) < 1.1 * frame,
+  );
+}
+
+/** A row typed into the middle of two hundred, with completion, checks, results and the copy on this machine. */
+async function measureTypingFrames(browser: Browser, url: string): Promise<void> {
+  const notebook = await importNotebook(await visitorOf(url, lead), longNetwork());
+  const { page, context } = await openPage(browser, url);
+  await signIn(page, lead, password);
+  await page.goto(`/notebooks/${notebook}`);
+  await page.getByText('4 cells, all current').waitFor({ timeout: 60_000 });
+  const row = (n: number) =>
+    `Xa${n} + Y <=> XaY${n} -> Z + Y | p${n} = 0.3 /uM/s, q${n} = 2 /s, r${n} = 1.5 /s | added`;
+  await page.locator('.cm-line').nth(12).click();
+  await page.keyboard.press('End');
+  // Once before it counts: fonts and code are there, as they are for whoever writes.
+  for (const measured of [false, true]) {
+    await page.keyboard.press('Enter');
+    await page.waitForTimeout(1000);
+    const frames = await framesDuring(page, () => typeText(page, row(measured ? 2 : 1)));
+    if (measured) framesLine('typing in 200 rows', frames);
+  }
+  await context.close();
+}
+
+async function measureScrolling(browser: Browser, url: string): Promise<void> {
+  const notebook = await importNotebook(await visitorOf(url, lead), hundredCells());
+  const { page, context } = await openPage(browser, url);
+  await signIn(page, lead, password);
+  await page.goto(`/notebooks/${notebook}`);
+  await page.getByText('100 cells, all current').waitFor({ timeout: 120_000 });
+  await page.mouse.move(900, 500);
+  await page.waitForTimeout(3000);
+  framesLine('scrolling 100 cells', await framesDuring(page, () => scrollThrough(page, 15_000)));
+  await context.close();
+}
+
 async function measureOpening(browser: Browser, url: string): Promise<void> {
   const visitor = await visitorOf(url, lead);
   const notebook = await importNotebook(visitor, sixtyCells());
@@ -254,6 +312,8 @@ try {
   await measureFirstLoads(browser, server.url);
   await measureOpening(browser, server.url);
   await measureTyping(browser, server.url);
+  await measureTypingFrames(browser, server.url);
+  await measureScrolling(browser, server.url);
 } finally {
   await browser.close();
   await server.stop();

@@ -58,3 +58,29 @@ export function sixtyCells() {
   ];
   return file('Sixty cells', Array.from({ length: 10 }, (_, k) => section(k + 1)).flat());
 }
+
+/** Two hundred rows with values, units and notes, and what draws on them: the network one types in. */
+export function longNetwork() {
+  const rows = Array.from(
+    { length: 200 },
+    (_, i) =>
+      `S${i} + E${i % 7} <=> C${i} -> S${i + 1} + E${i % 7} | a${i} = 0.${i + 1} /uM/s, b${i} = 2 /s, c${i} = 1.5 /s | step ${i}`,
+  );
+  return file('Two hundred rows', [
+    cell('c1', 'network', 'chain', [...rows, 'start S0 = 10 uM, E0 = 1 uM'].join('\n')),
+    cell('c2', 'structure', 'shape', '', { network: 'chain' }),
+    cell('c3', 'trajectory', 'run', '', { network: 'chain', until: 20 }),
+    cell('c4', 'claim', 'few', 'shape.counts.deficiency < 100'),
+  ]);
+}
+
+/** Twenty sections of five cells: prose, network, structure, trajectory, claim. */
+export function hundredCells() {
+  const sections = sixtyCells().cells.filter(({ id }) => !id.startsWith('q'));
+  const again = sections.map((each) => {
+    const renamed = (text: string) => text.replaceAll(/\b(net|shape|run|claim)(\d+)/g, '$1$2b');
+    const settings = JSON.parse(renamed(JSON.stringify(each.settings))) as FileCell['settings'];
+    return { ...each, id: `${each.id}b`, name: renamed(each.name), text: renamed(each.text), settings };
+  });
+  return file('A hundred cells', [...sections, ...again]);
+}
