@@ -1,9 +1,6 @@
 import { type EditorView, WidgetType } from '@codemirror/view';
 import type { Complaint, Repair } from '@stillroom/shared/notation';
 
-/** Id that ties a line's complaint to the text for a screen reader. */
-let numbered = 0;
-
 function repairButton(view: EditorView, repair: Repair, replaces: string, first: boolean): HTMLButtonElement {
   const button = document.createElement('button');
   button.type = 'button';
@@ -26,6 +23,8 @@ function repairButton(view: EditorView, repair: Repair, replaces: string, first:
 /** A complaint in place: what is wrong, why, and the likeliest repair as a button that names its result. */
 export class ComplaintWidget extends WidgetType {
   constructor(
+    /** By which the line it is about names it to a screen reader. */
+    private readonly id: string,
     private readonly complaint: Complaint,
     /** Where in the document what it is about begins. */
     private readonly at: number,
@@ -37,6 +36,7 @@ export class ComplaintWidget extends WidgetType {
 
   override eq(other: ComplaintWidget): boolean {
     return (
+      other.id === this.id &&
       other.at === this.at &&
       other.complaint.message === this.complaint.message &&
       JSON.stringify(other.complaint.repairs) === JSON.stringify(this.complaint.repairs) &&
@@ -48,7 +48,7 @@ export class ComplaintWidget extends WidgetType {
     const { severity, message, hint, repairs, line } = this.complaint;
     const box = document.createElement('div');
     box.className = severity === 'error' ? 'say' : 'say doubt';
-    box.id = `complaint-${(numbered += 1)}`;
+    box.id = this.id;
     box.setAttribute('role', 'note');
     box.setAttribute('aria-label', `${severity === 'error' ? 'Error' : 'Doubt'} in line ${line}`);
     const words = document.createElement('span');

@@ -18,25 +18,33 @@ const setComplaints = StateEffect.define<readonly Complaint[]>();
 /** At most so many are shown in place; the rest are counted by the page. */
 const shownAtMost = 20;
 
+/** Tells the complaints of several editors on a page apart. */
+let editors = 0;
+
 interface Marked {
+  readonly editor: number;
   readonly complaints: readonly Complaint[];
   readonly decorations: DecorationSet;
 }
 
-function mark(state: EditorState, complaints: readonly Complaint[]): DecorationSet {
+const idOf = (editor: number, place: number): string => `complaint-${editor}-${place}`;
+
+function mark(state: EditorState, complaints: readonly Complaint[], editor: number): DecorationSet {
   const ranges: Range<Decoration>[] = [];
   const end = state.doc.length;
   const replaces = (repair: Repair): string => state.sliceDoc(repair.from, repair.to);
-  for (const complaint of complaints.slice(0, shownAtMost)) {
+  for (const [place, complaint] of complaints.slice(0, shownAtMost).entries()) {
+    const id = idOf(editor, place);
     const from = Math.min(complaint.from, end);
     const to = Math.min(Math.max(complaint.to, from), end);
     const line = state.doc.lineAt(from);
     const wrong = complaint.severity === 'error';
-    if (wrong) ranges.push(Decoration.line({ class: 'er' }).range(line.from));
+    const attributes = { 'aria-describedby': id };
+    ranges.push(Decoration.line(wrong ? { class: 'er', attributes } : { attributes }).range(line.from));
     if (from < to) ranges.push(Decoration.mark({ class: wrong ? 'wavy' : 'wavy doubt' }).range(from, to));
     ranges.push(
       Decoration.widget({
-        widget: new ComplaintWidget(complaint, from, complaint.repairs.map(replaces)),
+        widget: new ComplaintWidget(id, complaint, from, complaint.repairs.map(replaces)),
         block: true,
         side: 1,
       }).range(line.to),
@@ -47,16 +55,31 @@ function mark(state: EditorState, complaints: readonly Complaint[]): DecorationS
 
 /** The complaints of a text, mapped through changes until the next check. */
 export const complaintField = StateField.define<Marked>({
-  create: () => ({ complaints: [], decorations: Decoration.none }),
+  create: () => ({ editor: (editors += 1), complaints: [], decorations: Decoration.none }),
   update(held, transaction) {
     for (const effect of transaction.effects)
       if (effect.is(setComplaints))
-        return { complaints: effect.value, decorations: mark(transaction.state, effect.value) };
+        return {
+          editor: held.editor,
+          complaints: effect.value,
+          decorations: mark(transaction.state, effect.value, held.editor),
+        };
     return transaction.docChanged
       ? { ...held, decorations: held.decorations.map(transaction.changes) }
       : held;
   },
   provide: (field) => EditorView.decorations.from(field, ({ decorations }) => decorations),
+});
+
+/** While the caret is in a line with complaints the text as a whole is described by them: what a screen reader tells of it. */
+const describeCaret = EditorView.contentAttributes.of((view): Record<string, string> => {
+  const { state } = view;
+  const { editor, complaints } = state.field(complaintField);
+  const line = state.doc.lineAt(state.selection.main.head).number;
+  const ids = complaints
+    .slice(0, shownAtMost)
+    .flatMap((complaint, place) => (complaint.line === line ? [idOf(editor, place)] : []));
+  return ids.length === 0 ? {} : { 'aria-describedby': ids.join(' '), 'aria-invalid': 'true' };
 });
 
 /** Milliseconds after a change before the text is checked: some frames, so that typing is never held up. */
@@ -141,5 +164,5 @@ export function complaints(check: Check, told: (complaints: readonly Complaint[]
       }
     },
   );
-  return [complaintField, checker];
+  return [complaintField, describeCaret, checker];
 }

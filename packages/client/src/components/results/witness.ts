@@ -1,3 +1,4 @@
+import { counted } from '../../composables/dates.ts';
 import type { Hypothesis, Verdict } from '@stillroom/shared/cells';
 import { numberText } from './numbers.ts';
 import type { StructureResult } from './shapes.ts';
@@ -55,7 +56,7 @@ export function witnessText(hypothesis: Hypothesis, structure: StructureResult |
         : terms.join(', ');
     }
     case 'minors':
-      return `${witness.pairs.length} products of minors`;
+      return counted(witness.pairs.length, 'product of minors', 'products of minors');
     case 'states':
       return `${witness.boxes.length} steady states in proven boxes`;
   }
