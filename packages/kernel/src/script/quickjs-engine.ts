@@ -46,6 +46,9 @@ class QuickJsEngine implements ScriptEngine {
   private readonly wasm: Uint8Array<ArrayBuffer>;
   private readonly snapshot: Uint8Array;
   private instance: QuickJsInstance | null;
+  /** Whether the memory is that of the snapshot, with nothing run in it since. */
+  private fresh = false;
+  private mending: Promise<void> | null = null;
 
   constructor(wasm: Uint8Array<ArrayBuffer>, snapshot: Uint8Array, instance: QuickJsInstance) {
     this.wasm = wasm;
@@ -64,15 +67,24 @@ class QuickJsEngine implements ScriptEngine {
     // Until the run has ended in good order the instance counts as spoilt: an exception of the host's stack or of
     // WebAssembly leaves QuickJS in the middle of something.
     this.instance = null;
-    instance.restore(this.snapshot);
+    if (!this.fresh) instance.restore(this.snapshot);
+    this.fresh = false;
     const run = this.runIn(instance, text, globals, seed, interrupt);
     if (instance.size <= largestKept) this.instance = instance;
     return run;
   }
 
-  /** Makes the sandbox ready again after a run that spoilt it or blew it up. */
-  async mend(): Promise<void> {
+  mend(): Promise<void> {
+    this.mending ??= this.makeFresh().finally(() => {
+      this.mending = null;
+    });
+    return this.mending;
+  }
+
+  private async makeFresh(): Promise<void> {
     this.instance ??= await QuickJsInstance.make(this.wasm);
+    if (!this.fresh) this.instance.restore(this.snapshot);
+    this.fresh = true;
   }
 
   private runIn(
@@ -122,7 +134,13 @@ class QuickJsEngine implements ScriptEngine {
 }
 
 /** An engine for scripts that has to be mended after a run that spoilt it. */
-export type MendableScriptEngine = ScriptEngine & { mend(): Promise<void> };
+export type MendableScriptEngine = ScriptEngine & {
+  /**
+   * Makes the sandbox ready again after a run, so that nothing of it is left; where that is done between runs, the next
+   * one need not wait for it.
+   */
+  mend(): Promise<void>;
+};
 
 /**
  * Loads the sandbox.

@@ -56,6 +56,8 @@ async function run(number: number, job: CellJob): Promise<void> {
   const last = process.memoryUsage.rss() > largestKept;
   report({ type: 'done', run: number, outcome, last });
   if (last) process.disconnect();
+  // Once the answer is on its way: the next script finds the sandbox as it is to begin.
+  else if (engine !== null) setImmediate(() => void engine.mend());
 }
 
 process.on('message', (message: EngineRequest) => {
