@@ -76,6 +76,29 @@ describe('mathematics', () => {
   });
 });
 
+describe('works cited', () => {
+  const list =
+    '\n\n```bibtex\n@article{a1, author = {Horn, F. and Jackson, R.}, title = "General <kinetics>", year = 1972}\n```\n';
+
+  test('a key that the text lists reads as authors and year; the list stands where its fence does', () => {
+    const { html } = set(`As @[a1] shows.${list}`);
+    expect(html).toContain('<span data-cite="a1">Horn, Jackson 1972</span>');
+    expect(html).toContain('<li data-entry="a1">Horn F., Jackson R. 1972. General &lt;kinetics&gt;.</li>');
+  });
+
+  test('a DOI is a link; a key that another prose may list is left to the page', () => {
+    expect(set('See @[10.1000/182; b2].').html).toBe(
+      '<p>See <a href="https://doi.org/10.1000/182" rel="noopener noreferrer">doi:10.1000/182</a>; ' +
+        '<span data-cite="b2">b2</span>.</p>\n',
+    );
+  });
+
+  test('BibTeX that cannot be read is an error in its line', () => {
+    const error = errorOf(jobOf('prose', 'One.\n\n```bibtex\n@article{a,\n  year = soon\n}\n```\n'));
+    expect(error).toMatchObject({ line: 5, message: expect.stringContaining('soon') as unknown });
+  });
+});
+
 describe('safe HTML', () => {
   test.each([
     '<script>alert(1)</script>',

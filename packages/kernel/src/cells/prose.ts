@@ -1,3 +1,4 @@
+import { bibliographyOf } from '@stillroom/shared/bibliography';
 import type { CellJob, ProseResult, WovenValue } from '@stillroom/shared/cells';
 import {
   findWoven,
@@ -13,6 +14,7 @@ import {
 import MarkdownIt, { type Token } from 'markdown-it';
 import { CellFailure } from '../engine/failure.ts';
 import { resultOf } from '../engine/inputs.ts';
+import { citationRule } from '../prose/citation-rule.ts';
 import { mathRule } from '../prose/math-rule.ts';
 import { safeRules } from '../prose/safe-rules.ts';
 import { type Weave, weaveOf, wovenRule } from '../prose/woven-rule.ts';
@@ -81,17 +83,27 @@ function headingsOf(tokens: readonly Token[]): ProseResult['headings'] {
   });
 }
 
+/** The first line of a fence's content stands one line below the line it begins in; lines of cells count from 1. */
+function unreadable(message: string, line: number, inside: string, at: number): never {
+  const place = lineAndColumn(inside, at);
+  throw new CellFailure(`The BibTeX cannot be read: ${message}`, {
+    line: line + 1 + place.line,
+    column: place.column,
+  });
+}
+
 /**
  * Sets Markdown as HTML: without raw HTML, styles or foreign pictures; mathematics left to the page; values of other
- * cells woven in.
+ * cells woven in; works cited and listed.
  *
- * @throws CellFailure where a woven value cannot be read or found, with its place
+ * @throws CellFailure where a woven value or BibTeX cannot be read or found, with its place
  */
 export function evaluateProse(job: CellJob): ProseResult {
   const weaving = new Weaving(job);
   for (const span of findWoven(job.text)) weaving.weave(span, true);
   const markdown = new MarkdownIt({ html: false, linkify: false, typographer: false });
   mathRule(markdown);
+  citationRule(markdown, bibliographyOf(job.text), unreadable);
   wovenRule(markdown, (span) => weaving.weave(span, false));
   safeRules(markdown);
   const environment = {};

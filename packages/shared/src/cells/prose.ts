@@ -13,7 +13,8 @@ export interface WovenValue {
 /**
  * Markdown set as HTML without raw HTML and without style attributes. Mathematics stands as
  * `<span data-tex="…">` (displayed: with `data-display`), woven values as `<span data-path="…" data-cell="…">`,
- * references to numbered cells as `<a href="#name" data-reference="name">` with the number left to the page.
+ * references to numbered cells as `<a href="#name" data-reference="name">` with the number left to the page, works cited as
+ * `<span data-cite="key">` (links where cited by DOI), their list as `<ul class="references">` with `<li data-entry="key">`.
  */
 export interface ProseResult {
   readonly html: string;

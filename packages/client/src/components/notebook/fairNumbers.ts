@@ -1,5 +1,6 @@
 import { type CellKind, isCellKind } from '@stillroom/shared/cells';
 import type { FairCell } from '@stillroom/shared/contracts';
+import { citedWorks } from '../results/citedName.ts';
 import { numberCells } from './numbering.ts';
 
 /** A line of a fair copy's contents: a heading of prose, or a number with the cell's name. */
@@ -12,17 +13,19 @@ export interface ContentsLine {
 const known = (cells: readonly FairCell[]) =>
   cells.flatMap((cell) => (isCellKind(cell.kind) ? [{ ...cell, kind: cell.kind as CellKind }] : []));
 
-/** "Scheme 1" by id, and by name for references in prose. */
+/** "Scheme 1" by id, and by name for references in prose, with the works that prose cites. */
 export function fairNumbers(cells: readonly FairCell[]): {
   byId: ReadonlyMap<string, string>;
   byName: ReadonlyMap<string, string>;
 } {
   const byId = numberCells(known(cells));
   const byName = new Map(
-    cells.flatMap(({ id, name }) => {
-      const number = byId.get(id);
-      return name === '' || number === undefined ? [] : [[name, number] as const];
-    }),
+    cells
+      .flatMap(({ id, name }) => {
+        const number = byId.get(id);
+        return name === '' || number === undefined ? [] : [[name, number] as const];
+      })
+      .concat(citedWorks(cells)),
   );
   return { byId, byName };
 }

@@ -9,7 +9,16 @@ export const safeHtml = (html: string): DocumentFragment =>
     RETURN_DOM_FRAGMENT: true,
     FORBID_TAGS: ['style', 'form', 'input', 'button', 'iframe', 'svg', 'math'],
     FORBID_ATTR: ['style'],
-    ADD_ATTR: ['data-tex', 'data-display', 'data-path', 'data-cell', 'data-reference', 'target'],
+    ADD_ATTR: [
+      'data-tex',
+      'data-display',
+      'data-path',
+      'data-cell',
+      'data-reference',
+      'data-cite',
+      'data-entry',
+      'target',
+    ],
   });
 
 /** Typesets every `[data-tex]` below an element. KaTeX sets its styles through the object model. */
