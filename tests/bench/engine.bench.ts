@@ -113,10 +113,15 @@ async function engine(): Promise<void> {
   await timed(20, () => pool.run(job('script', 'return 1'), { deadline: 30 }));
   const claims = await timed(500, () => pool.run(job('claim', '1 == 1'), { deadline: 30 }));
   print({ what: 'a request to a warm worker and back', times: claims, target: 1 });
-  const scripts = await timed(200, () =>
-    pool.run(job('script', 'return math.mean([1, 2, 3])'), { deadline: 30 }),
-  );
+  const script = () => pool.run(job('script', 'return math.mean([1, 2, 3])'), { deadline: 30 });
+  // As fast as keys come: between two of them the sandbox is made whole again.
+  const scripts: number[] = [];
+  for (let run = 0; run < 100; run++) {
+    await new Promise((resolve) => setTimeout(resolve, 30));
+    scripts.push(...(await timed(1, script)));
+  }
   print({ what: 'a script with the maths library, warm', times: scripts, target: 5 });
+  print({ what: 'the same, one right after the other', times: await timed(100, script), target: 5 });
   const deadline = 0.25;
   const late: number[] = [];
   for (const text of Object.values(stalls)) {
