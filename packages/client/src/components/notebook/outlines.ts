@@ -59,7 +59,7 @@ export const outlines: readonly Outline[] = [
       ),
       network(
         'switch',
-        '# One species that feeds on itself\n0 <=> X     | af = 0.6 uM/s, ar = 1.1 /s           | turning over\n2 X <=> 3 X | bf = 0.6 /uM/s, br = 0.1 /uM^2/s     | feeding on itself\n',
+        '# One species that feeds on itself\n0 <=> X     | af = 0.6 uM/s, ar = 1.1 /s       | turnover\n2 X <=> 3 X | bf = 0.6 /uM/s, br = 0.1 /uM^2/s | growth\n',
       ),
       on(
         'structure',
