@@ -6,6 +6,7 @@ import type {
   OutboxMail,
   SessionView,
 } from '@stillroom/shared/contracts';
+import { engineVersion } from '@stillroom/shared/plan';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import {
   newPassword,
@@ -28,8 +29,9 @@ afterAll(() => server.stop());
 
 describe('the operator', () => {
   test('sees the health line by line, the sealed tables by name', async () => {
-    const { version, lines } = (await visitor.get('/api/operator/health')).body as HealthView;
+    const { version, engine, lines } = (await visitor.get('/api/operator/health')).body as HealthView;
     expect(version).toMatch(/^\d+\.\d+\.\d+$/u);
+    expect(engine).toBe(engineVersion);
     const line = (name: string) => lines.find((candidate) => candidate.name === name);
     expect(line('Database')).toMatchObject({
       state: 'well',

@@ -4,7 +4,10 @@ export const installationPatch = z.object({ signUp: z.optional(z.enum(['open', '
 
 /** GET /api/operator/health */
 export interface HealthView {
+  /** Version of the installation. */
   readonly version: string;
+  /** Version of its engine, as records name it. */
+  readonly engine: string;
   readonly lines: readonly {
     readonly name: string;
     readonly state: 'well' | 'warning' | 'ill';

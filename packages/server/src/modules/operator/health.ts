@@ -1,6 +1,7 @@
 import { statfs } from 'node:fs/promises';
 import { homedir } from 'node:os';
 import type { HealthView, QueueView } from '@stillroom/shared/contracts';
+import { engineVersion } from '@stillroom/shared/plan';
 import type { EntityManager } from 'typeorm';
 import type { Config } from '../../config/index.ts';
 import { version } from '../../version.ts';
@@ -26,7 +27,7 @@ export async function readHealth(
     memoryLine(),
   ];
   const { signUp } = await readSettings(manager);
-  return { version, lines, signUp };
+  return { version, engine: engineVersion, lines, signUp };
 }
 
 async function databaseLine(manager: EntityManager): Promise<Line> {
@@ -76,10 +77,14 @@ async function mailLine(manager: EntityManager, config: Config): Promise<Line> {
 
 function engineLine({ workers, waiting, running }: QueueView): Line {
   if (workers.length === 0) return { name: 'Engine', state: 'ill', words: 'no worker is there to compute' };
-  const kinds = [...new Set(workers.map(({ isolation }) => isolation))].join('; ');
+  const kinds = [...new Set(workers.map(({ isolation }) => asClause(isolation)))].join('; ');
   const words = `${workers.length} workers (${kinds}), ${running} cells running, ${waiting} waiting`;
   return { name: 'Engine', state: waiting < 100 ? 'well' : 'warning', words };
 }
+
+/** A sentence as it stands within another. */
+const asClause = (sentence: string): string =>
+  sentence.replace(/\.$/u, '').replace(/^./u, (first) => first.toLowerCase());
 
 async function diskLine(): Promise<Line> {
   const { bavail, blocks, bsize } = await statfs(process.cwd()).catch(() => statfs(homedir()));
