@@ -50,15 +50,12 @@ describe('imports between packages', () => {
 
 describe('files', () => {
   /** Files that import each other in a circle; each circle once. */
-  function circles(
-    files: readonly SourceFile[],
-    counted: (file: SourceFile) => readonly string[],
-  ): string[][] {
+  function circles(files: readonly SourceFile[]): string[][] {
     const known = new Set(files.map(({ path }) => path));
     const edges = new Map(
       files.map((file) => [
         file.path,
-        counted(file)
+        file.imports
           .filter((specifier) => specifier.startsWith('.'))
           .map((specifier) => target(file, specifier))
           .filter((path) => known.has(path)),
@@ -78,20 +75,8 @@ describe('files', () => {
     return reached;
   }
 
-  /** What a file needs when it runs: types are gone by then. */
-  const atRunTime = ({ text, imports }: SourceFile): string[] => {
-    const types = [...text.matchAll(/^(?:import|export) type [^;]*? from '([^']+)';/gmu)].map(([, of]) => of);
-    const left = [...imports];
-    for (const specifier of types) left.splice(left.indexOf(specifier ?? ''), 1);
-    return left;
-  };
-
-  test.each(packages)('of %s never import each other in a circle', (name) => {
-    expect(circles(sources.get(name) ?? [], atRunTime)).toEqual([]);
-  });
-
-  test.each(['shared', 'server'])('of %s do not even for their types', (name) => {
-    expect(circles(sources.get(name) ?? [], ({ imports }) => imports)).toEqual([]);
+  test.each(packages)('of %s never import each other in a circle, not even for their types', (name) => {
+    expect(circles(sources.get(name) ?? [])).toEqual([]);
   });
 });
 
