@@ -27,6 +27,10 @@ export class Dimensions {
     if (known !== undefined) return known;
     const definition = this.stage.values.definition(name);
     if (!definition || this.depth > DEPTH_LIMIT) return null;
+    if (definition.value.kind === 'number') {
+      this.known.set(name, 'pure');
+      return 'pure';
+    }
     // What is defined through itself has none.
     this.known.set(name, null);
     this.depth += 1;

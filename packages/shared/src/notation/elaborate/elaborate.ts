@@ -123,7 +123,9 @@ function readConstants(stage: Elaboration, dimensions: Dimensions): Constant[] {
     const expression = values.derivation(name);
     const line = values.definition(name)?.line ?? stage.constantLines[i] ?? 0;
     const unit = dimensions.printedUnit(name) ?? rateUnits.get(i) ?? null;
-    result.push({ name, quantity, unit, line, ...(expression === null ? {} : { expression }) });
+    result.push(
+      expression === null ? { name, quantity, unit, line } : { name, quantity, unit, line, expression },
+    );
   }
   return result;
 }

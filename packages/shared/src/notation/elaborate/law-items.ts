@@ -8,6 +8,8 @@ export type LawConstant = ItemSyntax & { readonly kind: 'constant' };
 /** How many directed arrows an item gives the rate of. */
 export const arrowsOfItem = (item: ItemSyntax): number => (item.kind === 'net' ? 2 : 1);
 
+const isLaw = ({ kind }: ItemSyntax): boolean => kind === 'law' || kind === 'net';
+
 /**
  * Parts the items of a row into those that give rates and those that tell the constants of its laws:
  * `law = Vmax*S/(Km + S), Vmax = 3 uM/s, Km`. Laws and values without name always give rates; of the named items the
@@ -17,8 +19,8 @@ export function partItems(
   row: RowSyntax,
   arrows: number,
 ): { readonly ofRates: readonly ItemSyntax[]; readonly ofLaws: readonly LawConstant[] } {
+  if (!row.items.some(isLaw)) return { ofRates: row.items, ofLaws: [] };
   const laws = row.items.flatMap((item) => (item.kind === 'law' || item.kind === 'net' ? [item.value] : []));
-  if (laws.length === 0) return { ofRates: row.items, ofLaws: [] };
   const used = namesIn(laws);
   const certain = row.items.filter((item) => item.kind !== 'constant');
   let left = arrows - certain.reduce((count, item) => count + arrowsOfItem(item), 0);

@@ -37,6 +37,10 @@ export class ResultUnits {
   private readonly conversions = new Map<string, Conversion>();
   private readonly rateUnits = new Map<string, ReadyUnit | null>();
   private readonly byDimension = new Map<string, ReadyUnit>();
+  /** What was asked last again and again, by the object itself: a text has few units, and each is one object. */
+  private readonly conversionOf = new WeakMap<Unit, Conversion>();
+  private readonly unitOfDimension = new WeakMap<Dimension, ReadyUnit>();
+  private readonly ofWholeOrder = new Map<number, ReadyUnit | null>();
 
   constructor(tree: NetworkTree) {
     let time: Unit | null = null;
@@ -74,8 +78,27 @@ export class ResultUnits {
     return ready;
   }
 
+  /** As rateUnit, for an order that is a whole number. */
+  rateUnitOfOrder(order: number): ReadyUnit | null {
+    let unit = this.ofWholeOrder.get(order);
+    if (unit === undefined) {
+      unit = this.rateUnit(rational.ofInteger(order));
+      this.ofWholeOrder.set(order, unit);
+    }
+    return unit;
+  }
+
   /** How a value in a unit is turned into the units of the results. */
   convert(unit: Unit): Conversion {
+    let conversion = this.conversionOf.get(unit);
+    if (conversion === undefined) {
+      conversion = this.findConversion(unit);
+      this.conversionOf.set(unit, conversion);
+    }
+    return conversion;
+  }
+
+  private findConversion(unit: Unit): Conversion {
     const key = printUnit(unit);
     const known = this.conversions.get(key);
     if (known) return known;
@@ -94,6 +117,15 @@ export class ResultUnits {
 
   /** The unit of a dimension made of the result units, and of L, m and the like for what they leave. */
   unitFor(dimension: Dimension): ReadyUnit {
+    let unit = this.unitOfDimension.get(dimension);
+    if (unit === undefined) {
+      unit = this.findUnit(dimension);
+      this.unitOfDimension.set(dimension, unit);
+    }
+    return unit;
+  }
+
+  private findUnit(dimension: Dimension): ReadyUnit {
     const key = dimension.join();
     const known = this.byDimension.get(key);
     if (known) return known;

@@ -14,7 +14,7 @@ import { RateReader } from './rates.ts';
 import type { ConstantUse, NumberedRow, Rate, RateParts } from './rates.ts';
 import { memberScope } from './scope.ts';
 import type { Scope } from './scope.ts';
-import { compileTarget } from './targets.ts';
+import { compileTarget, noIndices } from './targets.ts';
 
 /** A law that waits until all names are known. */
 export interface LawJob {
@@ -29,6 +29,8 @@ export interface LawJob {
 
 /** All families of one text together. */
 const REACTION_LIMIT = 10_000_000;
+
+const noSlots: Slots = new Map();
 
 interface CompiledTerm {
   readonly term: TermSyntax;
@@ -115,12 +117,15 @@ export class RowWriter {
   private writeMembers(numbered: NumberedRow): void {
     const { row, places, family } = numbered;
     const { rates, lawConstants } = this.rates.ratesOf(numbered);
-    const sides = row.sides.map((side) => this.compileSide(side, family.slots));
-    const complexes = sides.map(() => 0);
+    const sides = row.family ? row.sides.map((side) => this.compileSide(side, family.slots)) : null;
+    const complexes = row.sides.map(() => 0);
     let unchanged = 0;
     family.forEach((values) => {
-      for (let s = 0; s < sides.length; s += 1)
-        complexes[s] = this.complexOf(sides[s] as CompiledSide, values);
+      for (let s = 0; s < complexes.length; s += 1) {
+        complexes[s] = sides
+          ? this.complexOf(sides[s] as CompiledSide, values)
+          : this.plainComplex(row.sides[s] as SideSyntax);
+      }
       for (let p = 0; p < places.length; p += 1) {
         const place = places[p] as ArrowPlace;
         const from = complexes[place.from] as number;
@@ -176,6 +181,19 @@ export class RowWriter {
     }
     const hint = 'Change a side or delete the row.';
     this.complaints.error(at, 'Both sides of this arrow are equal: nothing happens.', hint);
+  }
+
+  /** The complex of a side that stands in no family, as most do. */
+  private plainComplex(side: SideSyntax): number {
+    const { species, complexes } = this;
+    for (const term of side.terms) {
+      const { name, indices } = term.species;
+      const number = indices
+        ? compileTarget(species, term.species, noSlots, this.parts.integers)(noIndices)
+        : species.intern(species.base(name), noIndices);
+      complexes.add(number, term);
+    }
+    return complexes.finish();
   }
 
   private compileSide(side: SideSyntax, slots: Slots): CompiledSide {

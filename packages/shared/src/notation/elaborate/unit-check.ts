@@ -43,7 +43,7 @@ export function unitsOfRates(stage: Elaboration): Map<number, string> {
   const units = new Map<number, string>();
   if (!stage.units.time && !stage.units.amount) return units;
   for (const { constant, reactant } of stage.rows.uses) {
-    const unit = units.has(constant) ? null : stage.units.rateUnit(orderOf(reactant));
+    const unit = units.has(constant) ? null : rateUnitFor(stage, reactant);
     if (unit) units.set(constant, unit.printed);
   }
   return units;
@@ -56,7 +56,7 @@ function rateDemands(stage: Elaboration, dimensions: Dimensions): Demand[] {
     const name = stage.constants.nameOf(constant);
     const definition = stage.values.definition(name);
     if (!definition) continue;
-    const wanted = stage.units.rateUnit(orderOf(use.reactant));
+    const wanted = rateUnitFor(stage, use.reactant);
     demands.push({ of: use, value: definition.value, dimension: dimensions.ofConstant(name), wanted });
   }
   return demands;
@@ -65,6 +65,15 @@ function rateDemands(stage: Elaboration, dimensions: Dimensions): Demand[] {
 function amountDemands(stage: Elaboration, dimensions: Dimensions, amounts: readonly AmountUse[]): Demand[] {
   const wanted = stage.units.amount && stage.units.convert(stage.units.amount).to;
   return amounts.map((of) => ({ of, value: of.value, dimension: dimensions.of(of.value, of.scope), wanted }));
+}
+
+function rateUnitFor({ units }: Elaboration, reactant: SideSyntax): ReadyUnit | null {
+  let order = 0;
+  for (const { numerator, denominator } of reactant.terms) {
+    if (denominator !== 1) return units.rateUnit(orderOf(reactant));
+    order += numerator;
+  }
+  return units.rateUnitOfOrder(order);
 }
 
 /** The order of a reaction: the sum of the coefficients of its reactants. */

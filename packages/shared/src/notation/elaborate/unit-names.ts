@@ -22,6 +22,8 @@ export interface SplitUnit {
 export class UnitNames {
   private readonly inUnits: boolean;
   private readonly isName: (word: string) => boolean;
+  /** Units without a name among their words, each split once. */
+  private readonly whole = new WeakMap<Unit, SplitUnit>();
 
   constructor(tree: NetworkTree, isName: (word: string) => boolean) {
     this.isName = isName;
@@ -30,6 +32,14 @@ export class UnitNames {
 
   split(syntax: MeasuredSyntax, slots: Slots, unitsFirst: boolean): SplitUnit {
     const isUnit = syntax.of.kind === 'number' && (unitsFirst || this.inUnits);
+    if (isUnit && slots.size === 0) {
+      let split = this.whole.get(syntax.unit);
+      if (split === undefined) {
+        split = { unit: syntax.unit, divisors: [] };
+        this.whole.set(syntax.unit, split);
+      }
+      return split;
+    }
     const divisors = syntax.unit.filter(
       ({ symbol, power }) => power < 0 && (slots.has(symbol) || (!isUnit && this.isName(symbol))),
     );
@@ -40,6 +50,7 @@ export class UnitNames {
   /** Warns where a name of the text was taken for a unit in a value that could have used it. */
   warn(line: LineSyntax, complaints: Complaints): void {
     if (!this.inUnits || line.kind === 'start' || line.kind === 'fix' || line.kind === 'volume') return;
+    if (line.kind === 'row' && !line.items.some(({ kind }) => kind === 'law')) return;
     const values =
       line.kind === 'row'
         ? line.items.flatMap((item) => (item.kind === 'law' ? [item.value] : []))
