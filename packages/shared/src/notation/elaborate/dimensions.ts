@@ -103,6 +103,7 @@ export class Dimensions {
 function product(left: ValueDimension, right: ValueDimension, sign: number): ValueDimension {
   if (left === null || right === null) return null;
   if (right === 'pure') return left;
+  if (left === 'pure' && sign === 1) return right;
   const own = left === 'pure' ? dimensionNames.map(() => 0) : left;
   return own.map((power, i) => power + sign * (right[i] ?? 0));
 }
