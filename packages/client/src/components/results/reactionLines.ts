@@ -1,3 +1,4 @@
+import type { WrittenArrow } from './familyLines.ts';
 import type { NetworkReaction, NetworkResult, Sides } from './shapes.ts';
 
 /** A rate as it is shown: a named constant with its value, or a law as written. */
@@ -20,6 +21,8 @@ export interface ReactionLine {
   readonly forward: ShownRate;
   readonly backward: ShownRate | null;
   readonly note: string;
+  /** Of a family written as one line: over which indices it runs, and how many reactions it stands for. */
+  readonly family?: { readonly over: string; readonly reactions: number | null };
 }
 
 function same(a: Sides, b: Sides): boolean {
@@ -38,6 +41,59 @@ function leadingConstant(rate: string, from: Sides): string {
     return Object.hasOwn(from, (power < 0 ? factor : factor.slice(0, power)).trim());
   };
   return factors.every(isReactant) ? name.trim() : '';
+}
+
+/** A constant as a row writes it, with the value that its name has; anything else as written. */
+function writtenRate(rate: string | null, result: NetworkResult): ShownRate {
+  const constant = result.constants.find(({ name }) => name === rate);
+  if (constant !== undefined) return { ...constant, law: null };
+  const isName = rate !== null && /^[\p{L}][\p{L}\p{N}_']*(?:\[[^\]]*\])?$/u.test(rate);
+  return isName
+    ? { name: rate, value: null, unit: null, law: null }
+    : { name: null, value: null, unit: null, law: rate ?? '' };
+}
+
+/** Lines as they are written: of families, and of a network too long for a list of its reactions. */
+export function writtenLines(
+  arrows: readonly WrittenArrow[],
+  result: NetworkResult,
+  notes: readonly string[],
+): readonly ReactionLine[] {
+  const counts = new Map<number, number>();
+  for (const { row } of result.reactions) counts.set(row, (counts.get(row) ?? 0) + 1);
+  return arrows.map((arrow, i): ReactionLine => {
+    const isFirst = arrows[i - 1]?.row !== arrow.row;
+    const { over } = arrow;
+    return {
+      key: JSON.stringify([arrow.row, i, arrow.from, arrow.to]),
+      row: isFirst ? arrow.row : null,
+      ofRow: arrow.row,
+      from: arrow.from,
+      to: arrow.to,
+      forward: writtenRate(arrow.rates[0], result),
+      backward: arrow.both ? writtenRate(arrow.rates[1], result) : null,
+      note: isFirst ? (notes[arrow.row] ?? '') : '',
+      ...(over === null ? {} : { family: { over, reactions: counts.get(arrow.row) ?? null } }),
+    };
+  });
+}
+
+/** Lines in which every family stands as the one line that writes it. */
+export function withFamilies(
+  lines: readonly ReactionLine[],
+  written: readonly ReactionLine[],
+): readonly ReactionLine[] {
+  const families = new Map<number, ReactionLine[]>();
+  for (const line of written)
+    if (line.family !== undefined) families.set(line.ofRow, [...(families.get(line.ofRow) ?? []), line]);
+  const done = new Set<number>();
+  return lines.flatMap((line) => {
+    const family = families.get(line.ofRow);
+    if (family === undefined) return [line];
+    if (done.has(line.ofRow)) return [];
+    done.add(line.ofRow);
+    return family;
+  });
 }
 
 /**
