@@ -38,6 +38,7 @@ function build(outcome: (job: CellJob) => CellOutcome = outcomeOf) {
       engine,
       asked: new Set(asked),
       owner: 'g',
+      part: 'r',
       signal,
       tell: async (id, comparison) => {
         told.push([id, comparison.outcome]);

@@ -16,6 +16,7 @@ export interface RunOwner {
 export interface QueuedJob {
   readonly job: CellJob;
   readonly group: string;
+  readonly notebook: string;
   /** Names of the inputs whose results belong in. */
   readonly results: readonly string[];
 }
@@ -63,7 +64,7 @@ export class RunQueue {
         job.kind,
         owner.name,
         laneOf(job.kind),
-        storableJson(queuedJob(job, owner.group)),
+        storableJson(queuedJob(job, owner)),
       ],
     );
   }
@@ -220,7 +221,7 @@ function columns(job: Ran, outcome: CellOutcome, json: string | null, took: numb
 }
 
 /** Splits a job from the results of its inputs, as it is queued. */
-export function queuedJob(job: CellJob, group: string): QueuedJob {
+export function queuedJob(job: CellJob, { group, notebook }: RunOwner): QueuedJob {
   const results: string[] = [];
   const inputs = Object.fromEntries(
     Object.entries(job.inputs).map(([name, { result, ...input }]) => {
@@ -228,5 +229,5 @@ export function queuedJob(job: CellJob, group: string): QueuedJob {
       return [name, input];
     }),
   );
-  return { job: { ...job, inputs }, group, results };
+  return { job: { ...job, inputs }, group, notebook, results };
 }

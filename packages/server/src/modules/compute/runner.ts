@@ -10,7 +10,7 @@ import type { ResultStore } from './results.ts';
 /** Runs that end sooner than this, in milliseconds, are not announced as begun. */
 const worthSaying = 120;
 /** Runs of the long kinds that a process has in hand, for each of its workers. */
-const inHand = 8;
+const inHand = 12;
 /** How often runs of processes that are no more are looked for, in milliseconds. */
 const sweeping = 15_000;
 
@@ -100,7 +100,7 @@ export class Runner {
     this.#taken += 1;
     const recorded = this.#options.queue.record(job, owner, this.#options.host);
     void this.#compute(
-      queuedJob(job, owner.group),
+      queuedJob(job, owner),
       recorded.then(() => true),
     )
       .catch((error: unknown) => this.#complain('A run could not be written down.', error))
@@ -158,6 +158,7 @@ export class Runner {
       return await pool.run(job, {
         deadline: limits.deadlineUsual,
         owner: queued.group,
+        part: queued.notebook,
         signal,
         onBegin,
         onProgress: ({ share, words }) => say(share ?? null, words ?? null),

@@ -24,6 +24,27 @@ describe('turns', () => {
       null,
     ]);
   });
+  test('an owner’s parts alternate too, each in the order of arrival; one that may not go on is passed over', () => {
+    interface Item {
+      readonly owner: string;
+      readonly part: string;
+      readonly n: number;
+    }
+    const turns = new Turns<Item>();
+    const add = (owner: string, part: string, n: number) => turns.add({ owner, part, n });
+    for (const n of [1, 2, 3, 4]) add('a', 'x', n);
+    add('a', 'y', 1);
+    add('b', 'x', 1);
+    const next = (may?: (item: Item) => boolean) => {
+      const item = turns.next(may);
+      if (item !== undefined) turns.done(item);
+      return item === undefined ? null : `${item.owner}${item.part}${item.n}`;
+    };
+    expect([next(), next(), next()]).toEqual(['ax1', 'bx1', 'ay1']);
+    expect(next(({ n }) => n !== 2)).toBe('ax3');
+    expect([next(), next(), next()]).toEqual(['ax2', 'ax4', null]);
+    expect(turns.size).toBe(0);
+  });
   test('who has less under way comes first; what is taken out is not served', () => {
     const turns = new Turns<{ owner: string; n: number }>();
     const items = [1, 2].map((n) => ({ owner: 'a', n }));

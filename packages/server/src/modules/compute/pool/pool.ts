@@ -53,7 +53,8 @@ class WarmPool implements Pool {
       return Promise.resolve(endedOutcome('stop', options.deadline));
     }
     return new Promise((resolve) => {
-      const task: Task = { job, options, resolve, owner: options.owner ?? '', kind: job.kind };
+      const { owner = '', part = '' } = options;
+      const task: Task = { job, options, resolve, owner, part, kind: job.kind };
       options.signal?.addEventListener(
         'abort',
         () => {

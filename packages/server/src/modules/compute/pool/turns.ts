@@ -1,17 +1,19 @@
 /** Something that waits, and whose it is. */
 export interface Waiting {
   readonly owner: string;
+  /** What of the owner's it is for, where that matters: parts take turns too. */
+  readonly part?: string;
 }
 
 /**
- * A queue in which owners take turns: next is the first in the line of the owner with the fewest things under way, among
- * equals of the one who was served longest ago. Within a line the order of arrival holds among those who may go on.
+ * A queue in which owners take turns, and the parts of each: next is somebody of the owner with the fewest things under
+ * way, among equals of the one who was served longest ago, and of that owner's parts the same. Within a part the order of
+ * arrival holds among those who may go on.
  */
 export class Turns<T extends Waiting> {
   private readonly lines = new Map<string, T[]>();
-  private readonly under = new Map<string, number>();
-  private readonly served = new Map<string, number>();
-  private turn = 0;
+  private readonly owners = new Shares();
+  private readonly parts = new Shares();
 
   add(item: T): void {
     const line = this.lines.get(item.owner);
@@ -31,25 +33,23 @@ export class Turns<T extends Waiting> {
 
   /** The next item that may go on, which counts as under way until `done`. */
   next(may: (item: T) => boolean = () => true): T | undefined {
-    const owners = [...this.lines.keys()].sort(
-      (a, b) => this.running(a) - this.running(b) || (this.served.get(a) ?? 0) - (this.served.get(b) ?? 0),
-    );
-    for (const owner of owners) {
-      const item = this.lines.get(owner)?.find(may);
+    for (const owner of this.owners.inTurn(this.lines.keys())) {
+      const line = this.lines.get(owner)?.filter(may) ?? [];
+      const [part] = this.parts.inTurn(new Set(line.map(partOf)));
+      const item = line.find((one) => partOf(one) === part);
       if (item === undefined) continue;
       this.remove(item);
-      this.served.set(owner, ++this.turn);
-      this.under.set(owner, this.running(owner) + 1);
+      this.owners.begin(owner);
+      this.parts.begin(partOf(item));
       return item;
     }
     return undefined;
   }
 
   done(item: T): void {
-    const left = this.running(item.owner) - 1;
-    if (left > 0) this.under.set(item.owner, left);
-    else this.under.delete(item.owner);
-    if (left <= 0 && !this.lines.has(item.owner)) this.served.delete(item.owner);
+    const waits = this.lines.get(item.owner);
+    this.owners.end(item.owner, waits !== undefined);
+    this.parts.end(partOf(item), waits?.some((one) => partOf(one) === partOf(item)) ?? false);
   }
 
   /** How many wait. */
@@ -68,8 +68,32 @@ export class Turns<T extends Waiting> {
     this.lines.clear();
     return all;
   }
+}
 
-  private running(owner: string): number {
-    return this.under.get(owner) ?? 0;
+const partOf = ({ owner, part = '' }: Waiting): string => `${owner}\n${part}`;
+
+/** How much each has had: what is under way, and when it was served last. Those who want nothing are forgotten. */
+class Shares {
+  private readonly under = new Map<string, number>();
+  private readonly served = new Map<string, number>();
+  private turn = 0;
+
+  /** These in the order in which they are served next. */
+  inTurn(keys: Iterable<string>): string[] {
+    const running = (key: string) => this.under.get(key) ?? 0;
+    const last = (key: string) => this.served.get(key) ?? 0;
+    return [...keys].sort((a, b) => running(a) - running(b) || last(a) - last(b));
+  }
+
+  begin(key: string): void {
+    this.served.set(key, ++this.turn);
+    this.under.set(key, (this.under.get(key) ?? 0) + 1);
+  }
+
+  end(key: string, wantsMore: boolean): void {
+    const left = (this.under.get(key) ?? 0) - 1;
+    if (left > 0) this.under.set(key, left);
+    else this.under.delete(key);
+    if (left <= 0 && !wantsMore) this.served.delete(key);
   }
 }

@@ -3,8 +3,10 @@ import type { CellJob, CellKind, CellOutcome } from '@stillroom/shared/cells';
 export interface RunOptions {
   /** Seconds after the run begins at which it is ended from outside. */
   readonly deadline: number;
-  /** Whose run it is (a group): owners take turns, each one's runs keep their order. */
+  /** Whose run it is (a group): owners take turns. */
   readonly owner?: string;
+  /** What of the owner's it is for (a notebook): parts take turns too, the runs of each keep their order. */
+  readonly part?: string;
   /** Share done 0..1 where known, and words; at most a few times a second. */
   readonly onProgress?: (progress: { readonly share?: number; readonly words?: string }) => void;
   /** Called when a worker takes the run up. */

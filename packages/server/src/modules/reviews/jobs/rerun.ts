@@ -28,6 +28,8 @@ export interface Rerunning {
   readonly asked: ReadonlySet<string>;
   /** The group whose turn it is. */
   readonly owner: string;
+  /** What of the group's it is for: the rerun. */
+  readonly part: string;
   /** Ends it between two cells, and the cell under way. */
   readonly signal: AbortSignal;
   /** Told of each cell asked for when it begins and when it is done. */
@@ -58,7 +60,7 @@ export async function rerunRecord(rerunning: Rerunning): Promise<void> {
 }
 
 async function runFresh(
-  { pool, owner, signal }: Rerunning,
+  { pool, owner, part, signal }: Rerunning,
   plan: Plan,
   id: string,
   outcomes: ReadonlyMap<string, KnownOutcome>,
@@ -69,6 +71,7 @@ async function runFresh(
     return pool.run(preparation.job, {
       deadline: limits.deadlineUsual,
       owner,
+      part,
       signal: AbortSignal.any([signal]),
     });
   const error =
@@ -133,6 +136,7 @@ export async function runRerun(
       engine,
       asked: new Set(asked.map((cell) => cell.id)),
       owner: record.group,
+      part: id,
       signal,
       async tell(cell, comparison) {
         await manager.update(RerunCellEntity, { rerun: id, cell }, comparison);
