@@ -25,6 +25,7 @@ const MOST_SPECIES = 30;
  * would take more than `steps` partial choices of reactions or of species for them.
  */
 export function minorProducts(context: TheoremContext, steps: number): MinorProducts | null {
+  if (!listable(context)) return null;
   let positive = 0;
   let negative = 0;
   const examples = new Map<number, MinorPair>();
@@ -36,6 +37,10 @@ export function minorProducts(context: TheoremContext, steps: number): MinorProd
     return true;
   });
   return complete ? { positive, negative, examples: [...examples.values()] } : null;
+}
+
+function listable(context: TheoremContext): boolean {
+  return context.rank !== null && context.species.length <= MOST_SPECIES && context.dense;
 }
 
 /** Entries of a column that are reduced in the time of one step of the list. */
@@ -55,7 +60,7 @@ export function visitMinorProducts(
   visit: ProductVisitor,
 ): boolean {
   const { rank } = context;
-  if (rank === null || context.species.length > MOST_SPECIES || !context.dense) return false;
+  if (rank === null || !listable(context)) return false;
   const chosen: number[] = [];
   let left = steps;
   const choose = (from: number, echelonRows: Reduced[]): boolean => {
