@@ -8,6 +8,15 @@ export function withIsomerisations(base: Network, count: number): Network {
   const joined = (a: Int32Array, b: Int32Array): Int32Array => Int32Array.from([...a, ...b]);
   return {
     ...base,
+    rows: [
+      ...base.rows,
+      ...Array.from({ length: count }, (_, i) => ({
+        line: base.rows.length + i + 1,
+        note: '',
+        reactions: 2,
+        family: false,
+      })),
+    ],
     species: [...species, ...Array.from(more, (i) => `${i % 2 === 0 ? 'P' : 'Q'}${i >> 1}`)],
     complexes: {
       count: complexes.count + 2 * count,
@@ -34,7 +43,7 @@ export function withIsomerisations(base: Network, count: number): Network {
       ),
       row: joined(
         reactions.row,
-        more.map((i) => i >> 1),
+        more.map((i) => base.rows.length + (i >> 1)),
       ),
       constant: joined(reactions.constant, none),
       law: joined(reactions.law, none),

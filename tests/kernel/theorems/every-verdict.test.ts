@@ -150,7 +150,11 @@ const cases: Readonly<Record<VerdictId, readonly Case[]>> = {
     ['undecided', 'A + B -> 2 A + B\nA + B -> A + 2 B', 'derived: two species raise each other'],
   ],
   'positive-recurrent': [
-    ['yes', '0 -> A\n2 A -> 0', 'derived: A itself drifts inwards (criterion of Gupta, Briat, Khammash 2014)'],
+    [
+      'yes',
+      '0 -> A\n2 A -> 0',
+      'derived: A itself drifts inwards (criterion of Gupta, Briat, Khammash 2014)',
+    ],
     ['no', '0 -> X | 1\nX -> 2 X | 2\nX -> 0 | 1', 'Xu, Hansen, Wiuf 2022: R = 1, α > 0'],
     ['undecided', lotkaVolterra, 'derived: no linear function'],
   ],

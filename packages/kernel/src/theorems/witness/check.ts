@@ -23,10 +23,10 @@ const LARGEST = 20_000;
  * confirmed from its witness (or, where it needs none, by looking), and `applies` must follow from the hypotheses.
  */
 export function checkWitness(network: Network, verdict: Verdict): WitnessCheck {
-  const plain = plainNetwork(network);
-  if (plain.species.length * plain.reactions.length > LARGEST) {
+  if (network.species.length * network.reactions.count > LARGEST) {
     return refused('The network is too large for this checker.');
   }
+  const plain = plainNetwork(network);
   let open: string | null = null;
   for (const hypothesis of verdict.hypotheses) {
     const finding = findingOn(network, plain, verdict, hypothesis);
