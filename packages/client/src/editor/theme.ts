@@ -43,6 +43,9 @@ export const ledgerTheme = EditorView.theme({
     lineHeight: '24px',
     fontVariantLigatures: 'none',
   },
+  // What is too long for the page goes on further in, so that it does not read as the next line.
+  '.cm-line': { paddingLeft: '4ch', textIndent: '-4ch' },
+  '.cm-line .caret, .cm-line .room': { textIndent: '0' },
 });
 
 /** Sizes of prose being written: as it will be set. */

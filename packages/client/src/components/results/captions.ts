@@ -18,7 +18,11 @@ function headComment(text: string): string {
     // Words set apart by room in the ledger are a list.
     if (comment.trim() !== '') lines.push(comment.trim().replaceAll(/\s{2,}/gu, ', '));
   }
-  const words = lines.join('; ');
+  // A line that ends in the middle of a sentence goes on in the next.
+  const words = lines.reduce(
+    (all, line) => (all === '' ? line : `${all}${/[,;:.]$/u.test(all) ? '' : ';'} ${line}`),
+    '',
+  );
   return words === '' || /[.?:;]$/u.test(words) ? words : `${words}.`;
 }
 

@@ -19,7 +19,10 @@ SpeciesName.props = ['name'];
 export const ConstantName: FunctionalComponent<{ name: string }> = ({ name }) => {
   const match =
     /^([kK])_?([\p{L}\p{N}']+)$/u.exec(name) ??
-    /^(\p{L})_?([\p{L}\p{N}']{1,2})$/u.exec(name) ??
+    // What begins with a vowel is more likely a word, such as on or off.
+    /^([^aeiou\P{L}])([\p{L}\p{N}']{1,2})$/iu.exec(name) ??
+    /^(\p{L})_([\p{L}\p{N}']{1,2})$/u.exec(name) ??
+    /^(\p{L})(\p{N}{1,2})$/u.exec(name) ??
     /^(\p{L}+)_([\p{L}\p{N}']+)$/u.exec(name);
   return match === null ? h('i', lowered(name)) : h('i', [match[1], h('sub', match[2])]);
 };
