@@ -11,7 +11,8 @@ function comparison({ claim, holds }: Hypothesis, left: string, right: string): 
   if (claim === 'class deficiency at most one') return `${left} ${holds === false ? '>' : '≤'} ${right}`;
   if (claim === 'deficiency') return `δ = ${left}`;
   if (claim === 'attraction is proven' && left !== right) return `${left} ≤ ${right}`;
-  if (claim === 'weight summable' && left !== right) return `C = ${left} ${holds === false ? '>' : '<'} ${right}`;
+  if (claim === 'weight summable' && left !== right)
+    return `C = ${left} ${holds === false ? '>' : '<'} ${right}`;
   // The sentence says the number, and what it means.
   if (claim === 'leading terms recur' || claim === 'leading terms do not explode') return '';
   return `${left} ${left === right ? '=' : '≠'} ${right}`;
