@@ -11,6 +11,8 @@ import type { ResultStore } from './results.ts';
 const worthSaying = 120;
 /** Runs of the long kinds that a process has in hand, for each of its workers. */
 const inHand = 12;
+/** Further tasks at the same time. */
+const tasksAtOnce = 4;
 /** How often runs of processes that are no more are looked for, in milliseconds. */
 const sweeping = 15_000;
 
@@ -57,7 +59,7 @@ export class Runner {
       await this.#serve({ [lanes.long]: compute }, long),
       await this.#serve({ [lanes.quick]: compute }, size + 1),
     ];
-    if (Object.keys(tasks).length > 0) this.#runners.push(await this.#serve(tasks, inHand));
+    if (Object.keys(tasks).length > 0) this.#runners.push(await this.#serve(tasks, tasksAtOnce));
     await queue.sweep();
     this.#sweeper = setInterval(
       () =>
@@ -86,7 +88,8 @@ export class Runner {
       taskList,
       concurrency,
       noHandleSignals: true,
-      pollInterval: 2000,
+      // News of jobs comes at once; this is for those whose news was lost.
+      pollInterval: 5000,
       logger: this.#queueLogger(),
     });
   }
