@@ -168,11 +168,11 @@ function circleProblem(circle: readonly string[], nameOf: (id: string) => string
 }
 
 /** Digest of a cell from its own part and the digests of what it draws on. */
-function makeDigest(own: OwnPart, engine: string, digestOfName: (name: string) => string | null): string {
+function makeDigest(own: OwnPart, digestOfName: (name: string) => string | null): string {
   const { kind, settings } = own.content;
   const spelt = own.draws.filter(({ named }) => named);
   return digestOf({
-    engine,
+    engine: engineVersion,
     kind,
     text: own.text,
     settings: mapReferences(cellRegistry[kind], settings, (name) => digestOfName(name.normalize('NFC'))),
@@ -188,11 +188,9 @@ class Planning {
   private readonly planned = new Map<string, PlannedCell>();
   private readonly cells: readonly PlannableCell[];
   private readonly memory: PlanMemory;
-  private readonly engine: string;
 
-  constructor(cells: readonly PlannableCell[], memory: PlanMemory, engine: string) {
+  constructor(cells: readonly PlannableCell[], memory: PlanMemory) {
     this.cells = cells;
-    this.engine = engine;
     this.memory = memory;
     this.bearers = bearersOf(cells);
     for (const [place, cell] of cells.entries())
@@ -278,7 +276,7 @@ class Planning {
     const kept =
       before !== undefined && before.own === own && before.from === from
         ? before
-        : { own, from, digest: makeDigest(own, this.engine, (name) => digests.get(name) ?? null) };
+        : { own, from, digest: makeDigest(own, (name) => digests.get(name) ?? null) };
     this.digests.set(id, kept);
     return kept.digest;
   }
@@ -290,13 +288,7 @@ class Planning {
  *
  * @param cells in document order
  * @param memory what earlier plans of the same notebook have read, see `newPlanMemory`
- * @param engine whose digests they are: of a record that is computed anew those of the engine that made it, which seed
- *   scripts and stand in prose
  */
-export function planNotebook(
-  cells: readonly PlannableCell[],
-  memory: PlanMemory = newPlanMemory(),
-  engine: string = engineVersion,
-): Plan {
-  return new Planning(cells, memory, engine).plan();
+export function planNotebook(cells: readonly PlannableCell[], memory: PlanMemory = newPlanMemory()): Plan {
+  return new Planning(cells, memory).plan();
 }

@@ -2,7 +2,6 @@ import type { CellOutcome } from '@stillroom/shared/cells';
 import {
   engineVersion,
   type KnownOutcome,
-  newPlanMemory,
   type Plan,
   type PlannableCell,
   planNotebook,
@@ -38,12 +37,12 @@ export interface Rerunning {
 
 /**
  * Computes the cells of a record anew, each from fresh results of the cells it draws on; nothing kept is read. Only
- * what is asked for is compared. Digests are those of the engine that made the record, so that scripts get the same random
+ * what is asked for is compared. Cells keep the digests that they have in the record, so that scripts get the same random
  * numbers and prose names the same results, whichever engine computes.
  */
 export async function rerunRecord(rerunning: Rerunning): Promise<void> {
   const { cells, engine, asked, signal, tell } = rerunning;
-  const plan = planNotebook(cells.flatMap(asPlannable), newPlanMemory(), engine);
+  const plan = asRecorded(planNotebook(cells.flatMap(asPlannable)), cells);
   const needed = withInputs(plan, asked);
   const outcomes = new Map<string, KnownOutcome>();
   const ended = (): boolean => signal.aborted;
@@ -95,6 +94,16 @@ export function compare(outcome: CellOutcome, frozen: RecordCell, engine: string
     why: `The fresh result is not the one in the record.${engines}`,
     result: JSON.stringify(outcome.result),
   };
+}
+
+/** The plan with the digests of the record in place of those that this engine would give. */
+function asRecorded(plan: Plan, cells: readonly RecordCell[]): Plan {
+  const recorded = new Map(cells.map(({ id, digest }) => [id, digest]));
+  const named = plan.cells.map((cell) => ({
+    ...cell,
+    digest: cell.digest === null ? null : (recorded.get(cell.id) ?? cell.digest),
+  }));
+  return { ...plan, cells: named, byId: new Map(named.map((cell) => [cell.id, cell])) };
 }
 
 /** The cells asked for and all whose results they stand on. */
