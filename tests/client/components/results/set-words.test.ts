@@ -19,6 +19,9 @@ test.each([
   ['∏ C_i^{x_i}/x_i!', '∏ C⟨i⟩⟪x⟨i⟩⟫/x⟨i⟩!'],
   ['∏_{j≤x_i} θ_i(j)', '∏⟨j≤x⟨i⟩⟩ θ⟨i⟩(j)'],
   ['Σ_j v_ij(m) z_i^m', 'Σ⟨j⟩ v⟨ij⟩(m) z⟨i⟩⟪m⟫'],
+  ['Circuit: p*p*p = q*q*q*q', 'Circuit: p⟪3⟫ = q⟪4⟫'],
+  ['p*p[1]*p and pp*p', 'p*p⟨1⟩*p and pp*p'],
+  ['−T[0,1], X[12]', '−T⟨0,1⟩, X⟨12⟩'],
   ['of few_cells and k_on', 'of few_cells and k_on'],
 ])('%s is set %s', (words, expected) => expect(set(words)).toBe(expected));
 
