@@ -98,10 +98,12 @@ export const records: readonly Station[] = [
     show: async (page, stage) => {
       await openRecord(page, await desk(stage));
       await page.getByRole('button', { name: 'Rerun every cell' }).click();
-      await page
-        .locator('.contents .summary')
-        .getByText(/^\d+ match$/u)
-        .waitFor({ timeout: 120_000 });
+      await page.waitForFunction(
+        () =>
+          !/working|not rerun/u.test(document.querySelector('.contents .summary')?.textContent ?? 'working'),
+        undefined,
+        { timeout: 120_000 },
+      );
       await walkDown(page);
     },
   },
