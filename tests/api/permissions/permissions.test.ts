@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { readFileSync } from 'node:fs';
 import type { GroupView } from '@stillroom/shared/contracts';
-import { abilities, may, type Membership, roleAt } from '@stillroom/shared/roles';
+import { abilities, groupRoles, may, type Membership, roleAt } from '@stillroom/shared/roles';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { messageAbilities } from '../../../packages/server/src/modules/collaboration/index.ts';
 import { buildPerson, signIn } from '../../support/build.ts';
@@ -117,7 +117,7 @@ describe('a role limited to other notebooks does not count at this one or its re
 describe('a role limited to chosen notebooks counts at one of them and its records', () => {
   const routes = guardedRoutes.filter(({ door }) => door !== 'group');
   test.each(routes.map((route) => [words(route), route] as const))('%s', async (_words, route) => {
-    for (const caller of callers) {
+    for (const caller of groupRoles) {
       const fixture = await buildFixture(server, crowd, (notebook) => [notebook]);
       const answer = await ask(route, fixture, caller);
       expect(doorOf(answer, route.door), `${caller}: ${JSON.stringify(answer.body)}`).toBe(
