@@ -47,6 +47,20 @@ describe('counts in the long run', () => {
     expect(judge('positive-recurrent', '0 -> A; 2 A -> 0').applies).toBe('yes');
   });
 
+  test('a complex that raises the function may be outgrown: X -> 2 X + 2 Z by 2 X -> 0 in the Oregonator (derived)', () => {
+    const text = 'Y -> X; X + Y -> 0; X -> 2 X + 2 Z; 2 X -> 0; Z -> Y';
+    expect(judge('positive-recurrent', text)).toMatchObject({ applies: 'yes', scope: 'all constants' });
+    // Without 2 X -> 0 nothing holds X back.
+    expect(judge('positive-recurrent', text.replace('2 X -> 0; ', '')).applies).toBe('undecided');
+  });
+
+  test('a gene that laws bound needs no drift of its own: G0 <=> G1, G1 -> G1 + P, P -> 0 (Gupta, Briat, Khammash 2014)', () => {
+    const text = 'G0 <=> G1; G1 -> G1 + P; P -> 0';
+    const verdict = judge('positive-recurrent', text);
+    expect(verdict).toMatchObject({ applies: 'yes', case: 'linear function', scope: 'all constants' });
+    expect(judge('positive-recurrent', text.replace('; P -> 0', '')).applies).toBe('undecided');
+  });
+
   test('birth and death: recurrent exactly for the constants with k2 > k1', () => {
     expect(judge('positive-recurrent', '0 -> X; X -> 2 X; X -> 0', { constants: [1, 1, 2] })).toMatchObject({
       applies: 'yes',

@@ -102,6 +102,13 @@ describe('several positive steady states', () => {
     expect(verdict).toMatchObject({ applies: 'yes', scope: 'some constants' });
   });
 
+  test('on a line zeros that are all crossed downwards cannot be two: A -> 3 A, A <=> 2 A, 3 A -> A, A -> 0 (derived)', () => {
+    expect(judge(id, 'A -> 3 A; A <=> 2 A; 3 A -> A; A -> 0')).toMatchObject({
+      applies: 'no',
+      case: 'degree criterion',
+    });
+  });
+
   test('a continuum of degenerate states is undecided, with the reason: X -> 2 X, X -> 0 at equal constants', () => {
     const verdict = judge(id, 'X -> 2 X; X -> 0');
     expect(verdict.applies).toBe('undecided');

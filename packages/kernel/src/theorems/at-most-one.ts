@@ -109,7 +109,7 @@ function byDegree(context: TheoremContext): UniquenessProof | null {
   return (
     hypotheses && {
       by: 'degree criterion',
-      reason: 'by the degree criterion, every positive class has exactly one',
+      reason: 'the Jacobian has the same sign at all of them, and the degree criterion applies',
       hypotheses,
     }
   );

@@ -16,7 +16,8 @@ const MOST_TERMS = 60_000;
  * steady state of a positive class lies on the boundary, the signs of the Jacobian determinants of the positive steady
  * states of a class add up to (−1)^s; so if all of them have this sign there is exactly one. All states and constants are
  * v = Σ λ_r E_r over the extreme fluxes and h = 1/x (Clarke 1988); the determinant is a polynomial in λ and h, and it has
- * one sign when its coefficients have. A permanent network needs no condition on the boundary (Hofbauer 1990).
+ * one sign when its coefficients have. A permanent network needs no condition on the boundary (Hofbauer 1990), and rank 1 neither, where "at most one" is
+ * a matter of one continuous function.
  * The hypotheses as they hold, or null where one of them does not or is too large.
  */
 export function degreeCriterion(context: TheoremContext): readonly Hypothesis[] | null {
@@ -42,6 +43,16 @@ export function degreeCriterion(context: TheoremContext): readonly Hypothesis[] 
 
 /** Why solutions cannot come close to infinity, nor steady states lie on the boundary; null where it is not known. */
 function confinement(context: TheoremContext): Hypothesis[] | null {
+  if (context.rank === 1) {
+    return [
+      {
+        claim: 'rank one',
+        text: 'The rank is 1, so a class is an interval, where one function cannot cross zero downwards twice in a row.',
+        holds: true,
+        witness: { kind: 'number', left: 1, right: 1 },
+      },
+    ];
+  }
   const siphons = noCriticalSiphon(context);
   if (siphons.every(({ holds }) => holds === true)) {
     const law = conservative(context);
@@ -50,7 +61,7 @@ function confinement(context: TheoremContext): Hypothesis[] | null {
     if (drift?.scope === 'all constants') {
       const inward: Hypothesis = {
         claim: 'inward drift',
-        text: 'A linear function with positive coefficients falls along solutions outside a compact set.',
+        text: `A linear function ${drift.words} falls along solutions outside a compact part of each class.`,
         holds: true,
         witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(drift.weights) },
       };

@@ -65,7 +65,7 @@ function routeOf(context: TheoremContext): Route {
       hypotheses: [
         {
           claim,
-          text: `A linear function with positive coefficients exists that ${each} two or more reactant molecules raises.`,
+          text: `A linear function ${drift.words} exists that ${each} two or more such molecules raises.`,
           holds: true,
           witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(drift.weights) },
         },

@@ -63,7 +63,7 @@ function routeOf(context: TheoremContext): Route {
       hypotheses: [
         {
           claim,
-          text: 'A linear function with positive coefficients falls on average, by at least 1, outside a finite set of counts.',
+          text: `A linear function ${drift.words} falls on average, by at least 1, outside a finite set of counts of each class.`,
           holds: true,
           witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(drift.weights) },
         },

@@ -1,9 +1,10 @@
 import type { Rational } from '../../exact/index.ts';
-import { add, multiply, sign, toDouble, ZERO } from '../../exact/index.ts';
+import { add, compare, divide, isZero, multiply, ONE, sign, toDouble, ZERO } from '../../exact/index.ts';
 import type { Amounts } from './plain-network.ts';
 import { arrowRates, changeOf, paired } from './plain-network.ts';
 import { massAction, namesPower } from './rate-rules.ts';
 import { speciesVector } from './reading.ts';
+import { nonnegativeLaws } from './vector-rules.ts';
 import type { Evidence } from './evidence.ts';
 
 /** Mass action (weights aside) with whole numbers of molecules. */
@@ -48,37 +49,69 @@ export function sitesOnly({ network, plain, holds, witness }: Evidence): string 
     : 'the reaction named moves mass.';
 }
 
-/** No reactant complex of two or more molecules raises the weighted sum (arrow by arrow, or on average). */
+/** No reactant complex of two or more weighted molecules raises the weighted sum (arrow by arrow, or on average). */
 export function linearGrowth(evidence: Evidence): string | null {
-  return evidence.holds ? driftComplaint(evidence, 2) : 'it is never said to fail.';
+  if (!evidence.holds) return 'it is never said to fail.';
+  const weighted = weightedComplexes(evidence);
+  if (typeof weighted === 'string') return weighted;
+  const raised = weighted.some(
+    ({ amounts, values }) => sizeOf(amounts) >= 2 && values.some((value) => sign(value) > 0),
+  );
+  return raised ? 'a reactant complex raises the weighted sum.' : null;
 }
 
-/** No reactant complex raises it, and for each species the complexes made of it alone lower it. */
+/**
+ * For each weighted species the complexes made of it alone lower the sum, n of it the highest, and a complex y that raises
+ * it has Σ y_i/n_i < 1 over the weighted species.
+ */
 export function inwardDrift(evidence: Evidence): string | null {
   if (!evidence.holds) return 'it is never said to fail.';
-  const complaint = driftComplaint(evidence, 1);
-  if (complaint !== null) return complaint;
-  const { plain } = evidence;
-  const weights = speciesVector(evidence.witness, plain);
-  const alone = plain.species.every((name) =>
-    [...drifts(evidence, weights)].some(([complex, values]) => {
-      const { size } = plain.complexes[complex]!;
-      return size === 1 && plain.complexes[complex]!.has(name) && values.some((value) => sign(value) < 0);
-    }),
-  );
-  return alone ? null : 'some species is not drawn in.';
+  const weighted = weightedComplexes(evidence);
+  if (typeof weighted === 'string') return weighted;
+  const highest = new Map<string, Rational>();
+  for (const { amounts, alone, values } of weighted) {
+    if (!alone || values.some((value) => sign(value) > 0) || values.every(isZero)) continue;
+    for (const [name, amount] of amounts)
+      if (compare(amount, highest.get(name) ?? ZERO) > 0) highest.set(name, amount);
+  }
+  const weights = speciesVector(evidence.witness, evidence.plain);
+  if ([...weights.keys()].some((name) => !highest.has(name))) return 'some species is not drawn in.';
+  const outgrown = weighted.every(({ amounts, values }) => {
+    if (amounts.size === 0 || values.every((value) => sign(value) <= 0)) return true;
+    const share = [...amounts].reduce(
+      (sum, [name, amount]) => add(sum, divide(amount, highest.get(name)!)),
+      ZERO,
+    );
+    return compare(share, ONE) < 0;
+  });
+  return outgrown ? null : 'a reactant complex raises the weighted sum.';
 }
 
-function driftComplaint(evidence: Evidence, smallest: number): string | null {
+interface WeightedComplex {
+  /** Its amounts of weighted species. */
+  readonly amounts: Amounts;
+  /** Whether it is made of one species, which is weighted. */
+  readonly alone: boolean;
+  readonly values: readonly Rational[];
+}
+
+/** Reactant complexes with their drifts; a complaint where a species has no weight and no law bounds it. */
+function weightedComplexes(evidence: Evidence): WeightedComplex[] | string {
   const { plain, witness } = evidence;
   const weights = speciesVector(witness, plain);
-  if (plain.species.some((name) => sign(weights.get(name) ?? ZERO) <= 0)) return 'a weight is not positive.';
-  for (const [complex, values] of drifts(evidence, weights)) {
-    if (sizeOf(plain.complexes[complex]!) >= smallest && values.some((value) => sign(value) > 0)) {
-      return 'a reactant complex raises the weighted sum.';
-    }
+  if (weights.size === 0 && plain.species.length > 0) return 'no species has a weight.';
+  if ([...weights.values()].some((value) => sign(value) <= 0)) return 'a weight is not positive.';
+  const missing = plain.species.filter((name) => !weights.has(name));
+  if (missing.length > 0) {
+    const laws = nonnegativeLaws(plain, plain.species) ?? [];
+    if (missing.some((name) => !laws.some((law) => law.has(name))))
+      return 'a species without weight is not bounded by a law.';
   }
-  return null;
+  return [...drifts(evidence, weights)].map(([complex, values]) => {
+    const all = plain.complexes[complex]!;
+    const amounts = new Map([...all].filter(([name]) => weights.has(name)));
+    return { amounts, alone: all.size === 1 && amounts.size === 1, values };
+  });
 }
 
 /** By reactant complex: w·ν of each arrow, or their mean for the constants of the text. */

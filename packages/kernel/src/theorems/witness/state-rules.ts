@@ -129,6 +129,7 @@ const UNIQUENESS: Readonly<Record<string, readonly (readonly HypothesisClaim[])[
   concordant: [['rates are weakly monotonic', 'concordant']],
   'deficiency one algorithm': [['mass action', 'regular of deficiency one']],
   'degree criterion': [
+    ['mass action', 'critical polynomial of one sign', 'rank one'],
     ['mass action', 'critical polynomial of one sign', 'strongly endotactic'],
     ['mass action', 'critical polynomial of one sign', 'no critical siphon', 'conservative'],
     ['mass action', 'critical polynomial of one sign', 'no critical siphon', 'inward drift'],
