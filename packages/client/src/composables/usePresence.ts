@@ -46,8 +46,14 @@ export function usePresence(
       release = () => undefined;
       if (next === null) return;
       const { awareness } = next;
+      let said = '';
       const read = () => {
-        states.value = [...awareness.getStates().values()].flatMap((state) => readPresence(state) ?? []);
+        const now = [...awareness.getStates().values()].flatMap((state) => readPresence(state) ?? []);
+        // With every key a cursor moves; who is here, and where, mostly stays.
+        const says = JSON.stringify(now);
+        if (says === said) return;
+        said = says;
+        states.value = now;
       };
       const user = me();
       if (user !== null) awareness.setLocalState({ user, cell: here });
