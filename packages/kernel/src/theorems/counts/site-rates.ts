@@ -1,6 +1,7 @@
 import { exactValue } from '@stillroom/shared/expression';
+import type { Expression } from '@stillroom/shared/expression';
 import type { Rational } from '../../exact/index.ts';
-import { add, divide, multiply, ONE, rational, ZERO } from '../../exact/index.ts';
+import { add, compare, divide, multiply, negate, ONE, rational, ZERO } from '../../exact/index.ts';
 import type { TheoremContext } from '../context.ts';
 import type { Polynomial } from '../polynomials/polynomial.ts';
 import {
@@ -43,7 +44,7 @@ export function rateAt(
     const value =
       law === null
         ? constant && multiply(constant, falling(n, size, volume))
-        : exactValue(law, (name) => {
+        : exactWithChoices(law, (name) => {
             const count = name === site ? n : others.get(name);
             return count === undefined ? namedValue(context, name) : divide(rational(count), volume);
           });
@@ -51,6 +52,34 @@ export function rateAt(
     total = add(total, law === null ? value : multiply(value, volume));
   }
   return total;
+}
+
+/** The exact value of a law with `min` and `max` in it; null where anything else is not exact. */
+function exactWithChoices(law: Expression, names: (name: string) => Rational | null): Rational | null {
+  const inner = (part: Expression): Rational | null => exactWithChoices(part, names);
+  switch (law.kind) {
+    case 'binary': {
+      const left = inner(law.left);
+      const right = left && inner(law.right);
+      if (right === null) return null;
+      const [l, r] = [{ kind: 'name', name: 'l' } as const, { kind: 'name', name: 'r' } as const];
+      return exactValue({ ...law, left: l, right: r }, (name) => (name === 'l' ? left : right));
+    }
+    case 'negate': {
+      const of = inner(law.of);
+      return of && negate(of);
+    }
+    case 'call': {
+      if (law.name !== 'min' && law.name !== 'max') return null;
+      const values = law.arguments.map(inner);
+      const sense = law.name === 'min' ? -1 : 1;
+      return values.reduce((best, value) =>
+        best === null || value === null ? null : compare(value, best) * sense > 0 ? value : best,
+      );
+    }
+    default:
+      return exactValue(law, names);
+  }
 }
 
 /** The same as a rational function of n; null where a law is none. */
@@ -77,7 +106,7 @@ export function shifted({ above, below, from }: Fraction, by: number): Fraction 
 }
 
 interface Row {
-  readonly law: Parameters<typeof exactValue>[0] | null;
+  readonly law: Expression | null;
   readonly constant: Rational | null;
 }
 

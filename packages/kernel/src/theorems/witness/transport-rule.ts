@@ -1,7 +1,18 @@
 import type { Expression } from '@stillroom/shared/expression';
 import { exactValue } from '@stillroom/shared/expression';
 import type { Rational } from '../../exact/index.ts';
-import { add, divide, equals, multiply, ONE, rational, sign, toDouble, ZERO } from '../../exact/index.ts';
+import {
+  add,
+  compare,
+  divide,
+  equals,
+  multiply,
+  ONE,
+  rational,
+  sign,
+  toDouble,
+  ZERO,
+} from '../../exact/index.ts';
 import { isComplexBalanced } from './balance-rules.ts';
 import type { Evidence, Finding } from './evidence.ts';
 import { Unconfirmed } from './evidence.ts';
@@ -120,7 +131,7 @@ function rateOf(
       continue;
     }
     const values = [0n, 1n, 2n].map((other) =>
-      exactValue(law.expression, (name) => {
+      exactLaw(law.expression, (name) => {
         if (name === site) return divide(counts, volume);
         if (plain.species.includes(name)) return divide(rational(other), volume);
         return network.constants.find((constant) => constant.name === name)?.quantity?.exact ?? null;
@@ -132,6 +143,35 @@ function rateOf(
     total = add(total, multiply(known[0], volume));
   }
   return total;
+}
+
+/** A law with the choices of `min` and `max` made first: the innermost call is replaced by the value it has. */
+function exactLaw(law: Expression, names: (name: string) => Rational | null): Rational | null {
+  const resolved = (part: Expression): Expression | null => {
+    switch (part.kind) {
+      case 'binary': {
+        const left = resolved(part.left);
+        const right = resolved(part.right);
+        return left && right && { ...part, left, right };
+      }
+      case 'negate': {
+        const of = resolved(part.of);
+        return of && { ...part, of };
+      }
+      case 'call': {
+        if (part.name !== 'min' && part.name !== 'max') return null;
+        const choices = part.arguments.map(resolved);
+        const known = choices.map((choice) => (choice === null ? null : exactValue(choice, names)));
+        if (known.includes(null)) return null;
+        const order = known.map((_, k) => k).sort((a, b) => compare(known[a]!, known[b]!));
+        return choices[part.name === 'min' ? order[0]! : order.at(-1)!]!;
+      }
+      default:
+        return part;
+    }
+  };
+  const plain = resolved(law);
+  return plain && exactValue(plain, names);
 }
 
 function callsFunctions({ network }: Evidence): boolean {
