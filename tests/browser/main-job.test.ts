@@ -143,6 +143,8 @@ describe('the main job', { timeout: 120_000 }, () => {
     await cell(lead, 'claim1').waitFor();
     await typeAtEnd(lead, 'claim1', 'structure1.counts.deficiency == 1');
     for (const page of [lead, author]) {
+      // What is out of sight is not laid out, and has no words to be read.
+      await cell(page, 'claim1').scrollIntoViewIfNeeded();
       await expect
         .poll(() => cell(page, 'claim1').locator('.vband').first().innerText(), { timeout: 30_000 })
         .toMatch(/holds/);
