@@ -13,7 +13,7 @@ import type { VerifiedStates } from './verified-states.ts';
 import { exactTotals, shortened, verifyStates } from './verified-states.ts';
 
 /** Points of the search times species squared times arrows; counted, so that a search always ends at the same place. */
-const WORK = 3_000_000;
+const WORK = 12_000_000;
 const MOST_POINTS = 1000;
 const FEWEST_POINTS = 40;
 /** Points of the wrong sign that are followed up. */
