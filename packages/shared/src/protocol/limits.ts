@@ -4,6 +4,8 @@ export const limits = {
   frame: 4 * 1024 * 1024,
   /** Live lines that one person may have open to one server process. */
   linesOfOne: 60,
+  /** Lines that wait to be let in by one server process: of those nobody knows yet who is there. */
+  linesBefore: 400,
   /** A JSON body of somebody who is not signed in. */
   strangersBody: 64 * 1024,
   /** One cell's text, in UTF-16 units. */

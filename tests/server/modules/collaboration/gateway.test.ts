@@ -1,6 +1,6 @@
 import { createServer, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
-import { closeCodes } from '@stillroom/shared/protocol';
+import { closeCodes, limits } from '@stillroom/shared/protocol';
 import { afterEach, expect, test } from 'vitest';
 import { WebSocket } from 'ws';
 import { Access, type RoleNow } from '../../../../packages/server/src/modules/collaboration/access.ts';
@@ -76,4 +76,42 @@ test('a role that is taken away while the notebook is being opened lets nobody i
   const { code, room } = await build(({ setRole }) => setRole(null));
   expect(code).toBe(closeCodes.refused);
   expect(room.inhabited).toBe(false);
+});
+
+test('more lines at once than can be judged are sent away for a moment, and come in later', async () => {
+  let answer: () => void = () => undefined;
+  const known = new Promise<void>((resolve) => (answer = resolve));
+  const room = new Room(notebook, new UpdateLog({ query: async () => [] }, 'here'), () => undefined);
+  const rooms = {
+    use: async (_notebook: string, work: (room: Room) => unknown) => work(room),
+    left: () => undefined,
+  } as unknown as RoomStore;
+  const gateway = new Gateway({
+    rooms,
+    access: new Access(async (places) => places.map(() => 'author' as const)),
+    identify: async () => {
+      await known;
+      return null;
+    },
+    stands: async () => true,
+    isSameOrigin: () => true,
+    failed: () => undefined,
+  });
+  const server = createServer();
+  server.on('upgrade', (request, socket, head) => gateway.upgrade(request, socket, head));
+  await new Promise<void>((ready) => server.listen(0, '127.0.0.1', ready));
+  open.push({ gateway, server });
+  const knock = () => {
+    const line = new WebSocket(`ws://127.0.0.1:${(server.address() as AddressInfo).port}/live/${notebook}`);
+    return {
+      opened: new Promise((resolve) => line.once('open', resolve)),
+      closed: new Promise<number>((resolve) => line.once('close', resolve)),
+    };
+  };
+  const waiting = Array.from({ length: limits.linesBefore }, knock);
+  await Promise.all(waiting.map(({ opened }) => opened));
+  expect(await knock().closed).toBe(closeCodes.later);
+  answer();
+  for (const { closed } of waiting) expect(await closed).toBe(closeCodes.signedOut);
+  expect(await knock().closed).toBe(closeCodes.signedOut);
 });

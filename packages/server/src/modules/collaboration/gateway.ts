@@ -62,6 +62,8 @@ export class Gateway {
   });
   readonly #sessions = new Map<Connection, string>();
   readonly #alive = new WeakSet<WebSocket>();
+  /** Lines of which it is not known yet whose they are, or whose notebook is being opened. */
+  #before = 0;
   readonly #heart: NodeJS.Timeout;
 
   constructor(options: GatewayOptions) {
@@ -121,6 +123,9 @@ export class Gateway {
       line.close(closeCodes.tooMuch, 'Too much was sent before the answer.');
     });
     const refuse = (code: CloseCode, why: string) => line.close(code, why);
+    if (this.#before >= limits.linesBefore)
+      return refuse(closeCodes.later, 'More come at once than can be let in; come back in a moment.');
+    this.#before += 1;
     this.#judge(request, notebook, refuse)
       .then((admitted) => {
         if (admitted === null || line.readyState !== line.OPEN) return;
@@ -132,6 +137,9 @@ export class Gateway {
       .catch((error: unknown) => {
         this.#options.failed('A live line could not be opened.', error);
         refuse(closeCodes.later, 'The notebook cannot be opened just now; come back.');
+      })
+      .finally(() => {
+        this.#before -= 1;
       });
   }
 
