@@ -3,6 +3,7 @@
  * up, and the first run, which is what a fresh worker sees. `--peers` sets the rank beside LinBox's sparse elimination on
  * the same matrices (C++, built here; needs g++, and Debian's liblinbox-dev and libntl-dev).
  */
+import { readFileSync } from 'node:fs';
 import { analyseStructure } from '@stillroom/kernel/cells';
 import { leftKernel, modularRanks } from '@stillroom/kernel/exact';
 import { oneArrowOfEachPair, stoichiometry, structuralNetwork } from '@stillroom/kernel/network';
@@ -110,7 +111,7 @@ function measureCase({ what, text, runs, limit, withReading }: Case): Row {
   return {
     what: `${what}${withReading ? ', from the text' : ', after reading'}`,
     ...times,
-    target: `≤ ${limit}`,
+    target: `target ${limit} ms: ${times.first <= limit ? 'met' : 'NOT MET'}`,
     remark: `${remark}; peak so far ${peak} MB`,
   };
 }
@@ -123,7 +124,7 @@ function measureWhole(): Row {
     const { counts, siphons, verdicts } = analyseStructure(network);
     remark = `rank ${counts.rank}, ${siphons.length} siphons, ${verdicts.length} verdicts`;
   });
-  return { what: 'whole structure cell, 100,000 reactions', ...times, target: '-', remark };
+  return { what: 'whole structure cell, 100,000 reactions', ...times, target: 'no target', remark };
 }
 
 async function measurePeer(what: string, network: Network): Promise<Row[]> {
@@ -143,14 +144,14 @@ async function measurePeer(what: string, network: Network): Promise<Row[]> {
     if (rank !== peer.rank) throw new Error(`rank ${rank}, LinBox says ${peer.rank}`);
   }
   const ratio = (own: number[]) => (median(theirs) / median(own)).toFixed(1);
-  const line = (name: string, own: number[], target: string): Row => ({
+  const line = (name: string, own: number[], least: number): Row => ({
     what: `${what}: ${name}`,
     first: own[0]!,
     median: median(own),
-    target,
+    target: `target ${least} times as fast: ${median(theirs) >= least * median(own) ? 'met' : 'NOT MET'}`,
     remark: `LinBox ${median(theirs).toFixed(0)} ms (side by side, ${rounds} rounds): ${ratio(own)} times`,
   });
-  return [line('rank modulo p', modular, '≥ 20 times'), line('rank proven, laws', certified, '≥ 3 times')];
+  return [line('rank modulo p', modular, 20), line('rank proven, laws', certified, 3)];
 }
 
 function read(text: string): Network {
@@ -164,13 +165,18 @@ function measure(runs: number, work: () => void): { first: number; median: numbe
   return { first, median: median(Array.from({ length: runs }, () => timed(work))) };
 }
 
-/** Time of the processor, in milliseconds: what other programs do on the machine does not count. */
+/**
+ * Time that the processor gave to this thread, in milliseconds: what the work takes on a machine that does nothing else.
+ * Other programs do not count, nor do compiling and clearing up beside it.
+ */
 function timed(work: () => void): number {
-  const start = process.cpuUsage();
+  const start = threadTime();
   work();
-  const { user, system } = process.cpuUsage(start);
-  return (user + system) / 1000;
+  return threadTime() - start;
 }
+
+const threadTime = (): number =>
+  Number(readFileSync('/proc/thread-self/schedstat', 'utf8').split(' ')[0]) / 1e6;
 
 function median(times: readonly number[]): number {
   return [...times].sort((a, b) => a - b)[times.length >> 1]!;
