@@ -1,3 +1,4 @@
+import { afterPress } from './afterPress.ts';
 import { nextTick, shallowRef, type ShallowRef } from 'vue';
 
 export interface Selection {
@@ -43,10 +44,15 @@ function enter(id: string): boolean {
 export function useSelection(on: (id: string | null) => void): Selection {
   const selected = shallowRef<string | null>(null);
 
+  let wanted: string | null = null;
   function select(id: string | null): void {
-    if (selected.value === id) return;
-    selected.value = id;
-    on(id);
+    wanted = id;
+    // What stands beneath the selected cell's form comes and goes with it, and moves all below.
+    afterPress(() => {
+      if (selected.value === wanted) return;
+      selected.value = wanted;
+      on(wanted);
+    });
   }
 
   return {

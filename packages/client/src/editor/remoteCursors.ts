@@ -11,7 +11,7 @@ import type { Presence } from '@stillroom/shared/protocol';
 import type { Awareness } from 'y-protocols/awareness';
 import type * as Y from 'yjs';
 import { hueClass } from './hues.ts';
-import { cursorAt, placeIn } from './travellingCursors.ts';
+import { OwnCursor, placeIn } from './travellingCursors.ts';
 
 const moved = StateEffect.define<null>();
 
@@ -97,24 +97,17 @@ export function remoteCursors(text: Y.Text, awareness: Awareness): Extension {
         if (update.focusChanged || update.selectionSet || update.docChanged) this.tell(update.view);
       }
 
-      private tell(view: EditorView): void {
-        if (!view.hasFocus) {
-          if (this.mine) {
-            this.mine = false;
-            awareness.setLocalStateField('cursor', null);
-          }
-          return;
-        }
-        const { anchor, head } = view.state.selection.main;
-        this.mine = true;
-        awareness.setLocalStateField('cursor', cursorAt(text, { anchor, head }));
-      }
+      private readonly own = new OwnCursor(awareness);
 
-      private mine = false;
+      private tell(view: EditorView): void {
+        const { anchor, head } = view.state.selection.main;
+        if (view.hasFocus) this.own.tell(text, { anchor, head });
+        else this.own.forget();
+      }
 
       destroy(): void {
         awareness.off('change', this.onAwareness);
-        if (this.mine) awareness.setLocalStateField('cursor', null);
+        this.own.forget();
       }
     },
     { decorations: (plugin) => plugin.decorations },

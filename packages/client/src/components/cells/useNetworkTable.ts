@@ -23,7 +23,7 @@ import {
   type RowComplaint,
 } from '../../editor/tableRows.ts';
 import { editNetwork } from '../../editor/textEdits.ts';
-import { cursorAt } from '../../editor/travellingCursors.ts';
+import { OwnCursor } from '../../editor/travellingCursors.ts';
 
 export type RowFields = Partial<Record<TableField, string>>;
 
@@ -108,15 +108,20 @@ export function useNetworkTable(cell: () => string, typing: () => number | null)
     return at;
   });
 
+  let own: OwnCursor | null = null;
   /** Tells co-authors where in a field one's caret stands; in a row that is not in the text yet, nowhere. */
   function point(key: number, field: TableField, caret: number): void {
     const room = notebook.live.room.value;
     const start = fieldStart(text.value, indexOf(key), field);
     if (room === null || live.value === undefined || start === null) return;
     const at = Math.min(start + caret, text.value.length);
-    room.awareness.setLocalStateField('cursor', cursorAt(live.value, { anchor: at, head: at }));
+    own ??= new OwnCursor(room.awareness);
+    own.tell(live.value, { anchor: at, head: at });
   }
-  const unpoint = (): void => notebook.live.room.value?.awareness.setLocalStateField('cursor', null);
+  const unpoint = (): void => own?.forget();
+  // Another line to the server brings another awareness.
+  watch(notebook.live.room, () => (own = null));
+  onScopeDispose(unpoint);
 
   const indexOf = (key: number): number => rows.value.findIndex((row) => row.key === key);
 
