@@ -61,6 +61,15 @@ describe('counts in the long run', () => {
     expect(judge('positive-recurrent', text.replace('; P -> 0', '')).applies).toBe('undecided');
   });
 
+  test('M -> M + P is repaid by M -> 0 at a weight that depends on the constants: gene, messenger, protein (Gupta, Briat, Khammash 2014)', () => {
+    const text = 'G0 <=> G1; G1 -> G1 + M; M -> 0; M -> M + P; P -> 0';
+    const verdict = judge('positive-recurrent', text);
+    expect(verdict).toMatchObject({ applies: 'yes', scope: 'all constants' });
+    expect(verdict.hypotheses.filter(({ claim }) => claim === 'inward drift')).toHaveLength(2);
+    // A protein that makes messengers in turn closes a loop, and constants decide.
+    expect(judge('positive-recurrent', `${text}; P -> P + M`).applies).toBe('undecided');
+  });
+
   test('birth and death: recurrent exactly for the constants with k2 > k1', () => {
     expect(judge('positive-recurrent', '0 -> X; X -> 2 X; X -> 0', { constants: [1, 1, 2] })).toMatchObject({
       applies: 'yes',

@@ -63,7 +63,11 @@ function confinement(context: TheoremContext): Hypothesis[] | null {
         claim: 'inward drift',
         text: `A linear function ${drift.words} falls along solutions outside a compact part of each class.`,
         holds: true,
-        witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(drift.weights) },
+        witness: {
+          kind: 'vector',
+          of: 'laws',
+          entries: context.lawEntries(context.coefficients.unscale(drift.weights)),
+        },
       };
       return [inward, ...siphons];
     }

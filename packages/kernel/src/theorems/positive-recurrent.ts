@@ -1,6 +1,7 @@
 import type { Hypothesis, VerdictScope } from '@stillroom/shared/cells';
 import type { TheoremContext } from './context.ts';
 import { lineBehaviour, lineHypothesis } from './counts/leading-signs.ts';
+import { levelledDrift } from './counts/levelled-drift.ts';
 import { linearDrift } from './counts/linear-drift.ts';
 import { conservative, massActionInCounts, valuesGiven } from './hypotheses.ts';
 import { sources } from './sources.ts';
@@ -56,6 +57,22 @@ function routeOf(context: TheoremContext): Route {
   if (finite.holds === true) return { name: 'conservative', scope: 'all constants', hypotheses: [finite] };
   const claim = 'inward drift';
   const drift = linearDrift(context, 'inward');
+  const levelled = drift?.scope === 'all constants' ? null : levelledDrift(context);
+  if (levelled !== null) {
+    return {
+      name: 'linear function',
+      scope: 'all constants',
+      hypotheses: levelled.levels.map((level, l) => ({
+        claim,
+        text:
+          l === 0
+            ? `For every choice of constants a linear function w0 + ε w1 + … ${levelled.words}, ε small enough, falls on average, by at least 1, outside a finite set of counts of each class; w0 is this.`
+            : `… and w${l} is this.`,
+        holds: true,
+        witness: { kind: 'vector', of: 'laws', entries: context.lawEntries(level) },
+      })),
+    };
+  }
   if (drift !== null) {
     return {
       name: 'linear function',

@@ -18,7 +18,7 @@ export interface LinearDrift {
 }
 
 /** Species times arrows above which no function is looked for. */
-const LARGEST = 60_000;
+export const LARGEST = 60_000;
 
 /**
  * Looks for w ≥ 1 with, in counts, (Qg)(x) = Σ λ_j(x) w·ν_j for g = w·x bounded by c + d g ("bounded growth": reactant
@@ -33,9 +33,7 @@ export function linearDrift(context: TheoremContext, kind: DriftKind): LinearDri
   return context.memo(`linear drift ${kind}`, () => {
     if (!context.dense || context.species.length * context.arrows.length > LARGEST) return null;
     const free = freeSpecies(context);
-    const words = free.every(Boolean)
-      ? 'with positive coefficients'
-      : 'with positive coefficients on the species that no conservation law bounds';
+    const words = weightWords(free);
     const structural = solved(context, free, kind, null);
     if (structural !== null) return { weights: structural, words, scope: 'all constants' };
     const constants = context.exactConstants;
@@ -44,8 +42,15 @@ export function linearDrift(context: TheoremContext, kind: DriftKind): LinearDri
   });
 }
 
+/** Which species a function is positive on, in words. */
+export function weightWords(free: readonly boolean[]): string {
+  return free.every(Boolean)
+    ? 'with positive coefficients'
+    : 'with positive coefficients on the species that no conservation law bounds';
+}
+
 /** Species outside the support of every non-negative law; all of them where laws bound everything. */
-function freeSpecies(context: TheoremContext): boolean[] {
+export function freeSpecies(context: TheoremContext): boolean[] {
   const free = context.species.map(() => true);
   for (const { indices } of context.analysis.laws?.nonnegative ?? [])
     for (const species of indices) free[species] = false;
@@ -65,10 +70,15 @@ function solved(
   if (kind === 'bounded growth') return found(({ size }) => size > 1, []);
   const powers = highestPowers(context, free);
   if (powers === null) return null;
-  const outgrown = ({ terms }: Reactants): boolean =>
-    terms.reduce((sum, { species, coefficient }) => sum + coefficient / powers[species]!, 0) < 1 - ROUNDING;
   // The highest powers of each species outgrow what lies below them; or some power does, and nothing is raised.
-  return found((reactants) => !outgrown(reactants), powers) ?? found(({ size }) => size > 0, null);
+  return found(({ terms }) => !isOutgrown(terms, powers), powers) ?? found(({ size }) => size > 0, null);
+}
+
+/** Whether Σ y_i/n_i < 1 for the free species of a complex. */
+export function isOutgrown(terms: readonly Term[], powers: readonly number[]): boolean {
+  return (
+    terms.reduce((sum, { species, coefficient }) => sum + coefficient / powers[species]!, 0) < 1 - ROUNDING
+  );
 }
 
 /** Sums of quotients of whole numbers are exact to far less than this. */
@@ -81,7 +91,7 @@ interface Reactants {
 }
 
 /** For each free species the highest n for which n of it alone is a reactant complex; null where some species has none. */
-function highestPowers(context: TheoremContext, free: readonly boolean[]): number[] | null {
+export function highestPowers(context: TheoremContext, free: readonly boolean[]): number[] | null {
   const powers = context.species.map(() => 0);
   for (const complex of arrowsByReactant(context).keys()) {
     const [first, ...others] = context.terms(complex);
@@ -145,7 +155,8 @@ function feasible(free: readonly boolean[], conditions: readonly LinearCondition
   return outcome.values.map((value, i) => (free[i] ? value + outcome.denominator : 0n));
 }
 
-function arrowsByReactant(context: TheoremContext): Map<number, number[]> {
+/** The arrows that leave each reactant complex. */
+export function arrowsByReactant(context: TheoremContext): Map<number, number[]> {
   const groups = new Map<number, number[]>();
   context.arrows.forEach(({ from }, arrow) => {
     const list = groups.get(from);
@@ -178,6 +189,7 @@ function add(sum: Map<number, bigint>, species: number, value: bigint): void {
   sum.set(species, (sum.get(species) ?? 0n) + value);
 }
 
-function notRaised(drift: ReadonlyMap<number, bigint>): LinearCondition {
+/** The function does not rise along a change. */
+export function notRaised(drift: ReadonlyMap<number, bigint>): LinearCondition {
   return { terms: [...drift].map(([i, value]) => [i, -value] as const), relation: '>=', right: 0n };
 }

@@ -1,6 +1,6 @@
 import type { Rational } from '../../exact/index.ts';
 import { add, compare, divide, isZero, multiply, ONE, sign, toDouble, ZERO } from '../../exact/index.ts';
-import type { Amounts } from './plain-network.ts';
+import type { Amounts, PlainNetwork } from './plain-network.ts';
 import { arrowRates, changeOf, paired } from './plain-network.ts';
 import { massAction, namesPower } from './rate-rules.ts';
 import { speciesVector } from './reading.ts';
@@ -52,32 +52,45 @@ export function sitesOnly({ network, plain, holds, witness }: Evidence): string 
 /** No reactant complex of two or more weighted molecules raises the weighted sum (arrow by arrow, or on average). */
 export function linearGrowth(evidence: Evidence): string | null {
   if (!evidence.holds) return 'it is never said to fail.';
-  const weighted = weightedComplexes(evidence);
-  if (typeof weighted === 'string') return weighted;
-  const raised = weighted.some(
-    ({ amounts, values }) => sizeOf(amounts) >= 2 && values.some((value) => sign(value) > 0),
-  );
+  const { plain } = evidence;
+  const weights = speciesVector(evidence.witness, plain);
+  const complaint = weightsComplaint(plain, [weights], new Set(weights.keys()));
+  if (complaint !== null) return complaint;
+  const raised = [...drifts(evidence, weights)].some(([complex, values]) => {
+    const amounts = [...plain.complexes[complex]!].filter(([name]) => weights.has(name));
+    return sizeOf(new Map(amounts)) >= 2 && values.some((value) => sign(value) > 0);
+  });
   return raised ? 'a reactant complex raises the weighted sum.' : null;
 }
 
 /**
  * For each weighted species the complexes made of it alone lower the sum, n of it the highest, and a complex y that raises
- * it has Σ y_i/n_i < 1 over the weighted species.
+ * it has Σ y_i/n_i < 1 over the weighted species. Several hypotheses of this claim are w⁰, w¹, … of w⁰ + ε w¹ + …: what
+ * counts for a complex is the first of them that one of its arrows changes.
  */
 export function inwardDrift(evidence: Evidence): string | null {
-  if (!evidence.holds) return 'it is never said to fail.';
-  const weighted = weightedComplexes(evidence);
-  if (typeof weighted === 'string') return weighted;
+  const { plain, verdict, holds } = evidence;
+  if (!holds) return 'it is never said to fail.';
+  const levels = verdict.hypotheses
+    .filter(({ claim }) => claim === 'inward drift')
+    .map(({ witness }) => speciesVector(witness, plain));
+  const weighted = new Set(levels.flatMap((level) => [...level.keys()]));
+  const complaint = weightsComplaint(plain, levels, weighted);
+  if (complaint !== null) return complaint;
   const highest = new Map<string, Rational>();
-  for (const { amounts, alone, values } of weighted) {
-    if (!alone || values.some((value) => sign(value) > 0) || values.every(isZero)) continue;
-    for (const [name, amount] of amounts)
-      if (compare(amount, highest.get(name) ?? ZERO) > 0) highest.set(name, amount);
+  const raised: Amounts[] = [];
+  const drifted = levels.map((level) => drifts(evidence, level));
+  for (const complex of drifted[0]!.keys()) {
+    const all = plain.complexes[complex]!;
+    const amounts = new Map([...all].filter(([name]) => weighted.has(name)));
+    const first = drifted.map((level) => level.get(complex)!).find((values) => !values.every(isZero)) ?? [];
+    if (first.some((value) => sign(value) > 0)) raised.push(amounts);
+    else if (first.length > 0 && all.size === 1 && amounts.size === 1)
+      for (const [name, amount] of amounts)
+        if (compare(amount, highest.get(name) ?? ZERO) > 0) highest.set(name, amount);
   }
-  const weights = speciesVector(evidence.witness, evidence.plain);
-  if ([...weights.keys()].some((name) => !highest.has(name))) return 'some species is not drawn in.';
-  const outgrown = weighted.every(({ amounts, values }) => {
-    if (amounts.size === 0 || values.every((value) => sign(value) <= 0)) return true;
+  if ([...weighted].some((name) => !highest.has(name))) return 'some species is not drawn in.';
+  const outgrown = raised.every((amounts) => {
     const share = [...amounts].reduce(
       (sum, [name, amount]) => add(sum, divide(amount, highest.get(name)!)),
       ZERO,
@@ -87,31 +100,21 @@ export function inwardDrift(evidence: Evidence): string | null {
   return outgrown ? null : 'a reactant complex raises the weighted sum.';
 }
 
-interface WeightedComplex {
-  /** Its amounts of weighted species. */
-  readonly amounts: Amounts;
-  /** Whether it is made of one species, which is weighted. */
-  readonly alone: boolean;
-  readonly values: readonly Rational[];
-}
-
-/** Reactant complexes with their drifts; a complaint where a species has no weight and no law bounds it. */
-function weightedComplexes(evidence: Evidence): WeightedComplex[] | string {
-  const { plain, witness } = evidence;
-  const weights = speciesVector(witness, plain);
-  if (weights.size === 0 && plain.species.length > 0) return 'no species has a weight.';
-  if ([...weights.values()].some((value) => sign(value) <= 0)) return 'a weight is not positive.';
-  const missing = plain.species.filter((name) => !weights.has(name));
-  if (missing.length > 0) {
-    const laws = nonnegativeLaws(plain, plain.species) ?? [];
-    if (missing.some((name) => !laws.some((law) => law.has(name))))
-      return 'a species without weight is not bounded by a law.';
-  }
-  return [...drifts(evidence, weights)].map(([complex, values]) => {
-    const all = plain.complexes[complex]!;
-    const amounts = new Map([...all].filter(([name]) => weights.has(name)));
-    return { amounts, alone: all.size === 1 && amounts.size === 1, values };
-  });
+/** Weights are not negative, and a species without any is bounded by a law. */
+function weightsComplaint(
+  plain: PlainNetwork,
+  levels: readonly Amounts[],
+  weighted: ReadonlySet<string>,
+): string | null {
+  if (weighted.size === 0 && plain.species.length > 0) return 'no species has a weight.';
+  if (levels.some((level) => [...level.values()].some((value) => sign(value) <= 0)))
+    return 'a weight is not positive.';
+  const missing = plain.species.filter((name) => !weighted.has(name));
+  if (missing.length === 0) return null;
+  const laws = nonnegativeLaws(plain, plain.species) ?? [];
+  return missing.every((name) => laws.some((law) => law.has(name)))
+    ? null
+    : 'a species without weight is not bounded by a law.';
 }
 
 /** By reactant complex: w·ν of each arrow, or their mean for the constants of the text. */
