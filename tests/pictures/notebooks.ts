@@ -1,3 +1,5 @@
+import type { GroupView } from '@stillroom/shared/contracts';
+import type { GroupRole } from '@stillroom/shared/roles';
 import type { Page } from 'playwright-core';
 import type { Stage, Who } from './stage.ts';
 import type { Station } from './stations.ts';
@@ -152,6 +154,32 @@ export const notebooks: readonly Station[] = [
       await page.context().setOffline(true);
       await page.getByText('The line to the server is down').waitFor();
       return () => page.context().setOffline(false);
+    },
+  },
+  {
+    name: 'spread-set-aside',
+    who: 'dov',
+    show: async (page, stage) => {
+      const group = await stage.groupNamed('ilse', 'Brewhouse Kinetics');
+      const { members } = await stage.ask<GroupView>('ilse', `/api/groups/${group}`);
+      const dov = members.find(({ name }) => name.startsWith('Dov'))?.id ?? '';
+      const make = (role: GroupRole) =>
+        stage.send('ilse', 'PATCH', `/api/groups/${group}/members/${dov}`, { role, notebooks: null });
+      await open(page, stage, 'dov');
+      await page.context().setOffline(true);
+      await page.getByText('The line to the server is down').waitFor();
+      await page.locator('.cell.kind-network .cm-content').first().click();
+      await page.keyboard.press('Control+End');
+      await page.keyboard.type('\nD -> A | back = 0.001 /s | a thought on the train');
+      await make('reader');
+      try {
+        await page.context().setOffline(false);
+        await page.getByText('The line to the server is down').waitFor({ state: 'detached' });
+        await page.keyboard.type('s');
+        await page.getByText('Your last changes were not taken in').waitFor();
+      } finally {
+        await make('author');
+      }
     },
   },
   {
