@@ -15,8 +15,10 @@ import {
   ranksOfClasses,
   spanningForest,
 } from '@stillroom/kernel/structure';
+import { judgeAll } from '@stillroom/kernel/theorems';
 import type { Network } from '@stillroom/shared/network';
 import { readNetwork } from '@stillroom/shared/notation';
+import { referenceNetwork, referenceNetworks } from '../support/reference-networks.ts';
 import { latticeText, randomNetworkText } from './networks.ts';
 import { linboxRank } from './peers/linbox.ts';
 
@@ -80,7 +82,8 @@ const sideBySide: readonly Pick<Case, 'what' | 'text'>[] = [
 
 /** Measures every case and, where asked, the peer. */
 export async function run(peers: boolean): Promise<Row[]> {
-  const rows: Row[] = [];
+  // First, so that nothing is warm.
+  const rows: Row[] = measureVerdicts();
   for (const each of cases) rows.push(measureCase(each));
   rows.push(measureWhole());
   if (peers) {
@@ -125,6 +128,28 @@ function measureWhole(): Row {
     remark = `rank ${counts.rank}, ${siphons.length} siphons, ${verdicts.length} verdicts`;
   });
   return { what: 'whole structure cell, 100,000 reactions', ...times, target: 'no target', remark };
+}
+
+/** All verdicts, structure included, each network once in this process. */
+function measureVerdicts(): Row[] {
+  const shares = [0.5, 0.6, 0.7, 0.8, 0.9, 1];
+  const random = shares.map((bimolecular, k) => read(randomNetworkText(30, 60, bimolecular, k + 1)));
+  const line = (what: string, networks: readonly Network[], limit: number, by: 'longest' | 'median'): Row => {
+    const times = networks.map((network) => timed(() => judgeAll(network)));
+    const longest = Math.max(...times);
+    const reached = by === 'longest' ? longest : median(times);
+    return {
+      what,
+      first: times[0]!,
+      median: median(times),
+      target: `target ${limit} ms for the ${by}: ${reached <= limit ? 'met' : 'NOT MET'}`,
+      remark: `${networks.length} networks, longest ${longest.toFixed(0)} ms`,
+    };
+  };
+  return [
+    line('all verdicts, random, 30 species × 60 reactions', random, 500, 'longest'),
+    line('all verdicts, reference table', referenceNetworks.map(referenceNetwork), 100, 'median'),
+  ];
 }
 
 async function measurePeer(what: string, network: Network): Promise<Row[]> {
