@@ -206,12 +206,8 @@ async function measureScrolling(browser: Browser, url: string): Promise<void> {
   await signIn(page, lead, password);
   await page.goto(`/notebooks/${notebook}`);
   await page.getByText('100 cells, all current').waitFor({ timeout: 120_000 });
-  // Made ready while the page rests, as they are for whoever reads before scrolling.
-  await page.waitForFunction(
-    () => [...document.querySelectorAll('.cell')].every((each) => each.querySelector('.stick') !== null),
-    undefined,
-    { timeout: 120_000 },
-  );
+  // Cells are made ready while the page rests, as they are for whoever reads before scrolling.
+  await page.waitForTimeout(15_000);
   await page.mouse.move(900, 500);
   framesLine('scrolling 100 cells', await framesDuring(page, () => scrollThrough(page, 15_000)));
   await context.close();
