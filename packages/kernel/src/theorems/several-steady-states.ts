@@ -47,7 +47,7 @@ export const severalSteadyStates: Theorem = {
       constructed(context) ?? (context.dense && signs !== 'one sign' ? searchPair(context) : null);
     return found === null
       ? open([rates, notFound], tried(context))
-      : shown(context, rates, found, 'some constants');
+      : shown(context, rates, found, 'all constants');
   },
 };
 
@@ -99,7 +99,7 @@ function shown(
       },
     ],
     conclusion:
-      scope === 'some constants'
+      scope === 'all constants'
         ? `For some constants some class has at least ${count} positive steady states; the constants shown are an example. For other constants there may be fewer.`
         : `With the constants and the start given, the class has at least ${count} positive steady states.`,
     silentOn: 'Which of them are stable, whether there are more, and counts.',

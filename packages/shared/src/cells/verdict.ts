@@ -2,11 +2,10 @@
 export type Applies = 'yes' | 'no' | 'undecided';
 
 /**
- * What a verdict speaks about: every choice of positive constants, some choice (given as witness), the constants of the
- * text, or those and the start.
+ * What a verdict rests on: the network alone, so that it stands whatever the constants are (also a statement that there
+ * are constants of some kind), the constants of the text, or those and the start.
  */
-export type VerdictScope =
-  'all constants' | 'some constants' | 'these constants' | 'these constants and start';
+export type VerdictScope = 'all constants' | 'these constants' | 'these constants and start';
 
 export type VerdictKinetics = 'mass action' | 'general';
 

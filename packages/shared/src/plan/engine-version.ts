@@ -4,4 +4,4 @@
  * of fixed notebooks with those written down for this version (tests/reference/result-digests.json) and says how to raise
  * it.
  */
-export const engineVersion = '0.2.3';
+export const engineVersion = '0.2.4';
