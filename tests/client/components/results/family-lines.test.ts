@@ -1,7 +1,8 @@
 import type { NetworkResult } from '@stillroom/shared/cells';
 import { describe, expect, test } from 'vitest';
-import { hasFamily, writtenArrows } from '../../../../packages/client/src/components/results/familyLines.ts';
+import { writtenArrows } from '../../../../packages/client/src/components/results/familyLines.ts';
 import {
+  hasFamily,
   reactionLines,
   withFamilies,
   writtenLines,

@@ -14,9 +14,6 @@ export interface WrittenArrow {
   readonly over: string | null;
 }
 
-/** Whether a text writes a family at all; most do not, and are not read here. */
-export const hasFamily = (text: string): boolean => /^\s*\[/mu.test(text);
-
 function sidesOf(text: string, side: SideSyntax | undefined): Sides {
   return Object.fromEntries(
     (side?.terms ?? []).map(({ species, numerator, denominator }) => [

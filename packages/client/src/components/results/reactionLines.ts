@@ -1,6 +1,9 @@
 import type { WrittenArrow } from './familyLines.ts';
 import type { NetworkReaction, NetworkResult, Sides } from './shapes.ts';
 
+/** Whether a text writes a family at all; most do not, and load no reader of the notation. */
+export const hasFamily = (text: string): boolean => /^\s*\[/mu.test(text);
+
 /** A rate as it is shown: a named constant with its value, or a law as written. */
 export interface ShownRate {
   readonly name: string | null;
