@@ -9,17 +9,21 @@ import type { Visitor } from '../support/visitor.ts';
 
 /** The line to the server, lost in mid-edit: the page tells the truth about it, and nothing typed is lost. */
 let asLead: Visitor;
+/** One whose role is taken in time. */
+let ben: string;
+let group: string;
 /** A notebook to write in. */
 let draft: string;
 const address = (key: string) => `${key}@lost-line.example`;
 
 const browsing = useBrowsing(async (server) => {
   const ada = await buildPerson(server, { email: address('ada'), name: 'Ada Lead' });
-  const ben = await buildPerson(server, { email: address('ben'), name: 'Ben Author' });
-  const group = await buildGroup(server, ada, 'Lost Line');
-  await buildMember(server, group, ben, 'author');
+  const author = await buildPerson(server, { email: address('ben'), name: 'Ben Author' });
+  const built = await buildGroup(server, ada, 'Lost Line');
+  await buildMember(server, built, author, 'author');
+  [ben, group] = [author.id, built.id];
   asLead = await signIn(server, ada);
-  draft = await buildNotebook(server, group, ada, [cell('ledger', 'network', 'A <=> B | 2 /s, 1 /s')]);
+  draft = await buildNotebook(server, built, ada, [cell('ledger', 'network', 'A <=> B | 2 /s, 1 /s')]);
 });
 
 /** The text of a cell as the server keeps it. */
@@ -116,5 +120,25 @@ describe('the line', { timeout: 180_000 }, () => {
     } finally {
       await other.kill();
     }
+  });
+
+  test('what was written while a role was taken away is set aside when the line is back', async () => {
+    const { page, context } = await browsing.enter(address('ben'));
+    await page.goto(`/notebooks/${draft}`);
+    await cellNamed(page, 'ledger').waitFor(patience);
+    await words(page, /^Kept /u);
+    await context.setOffline(true);
+    await words(page, /The line to the server is down since/u);
+    await typeInto(page, 'ledger', '\nE -> F | 6 /s');
+    await words(page, /changes? kept here only/u);
+    const change = { role: 'reader', notebooks: null };
+    expect((await asLead.patch(`/api/groups/${group}/members/${ben}`, change)).status).toBe(200);
+    await context.setOffline(false);
+    const aside = page.getByRole('alert', { name: 'Text set aside' });
+    await aside.waitFor(patience);
+    expect(await aside.textContent()).toMatch(/E -> F +\| 6 \/s/u);
+    await expect.poll(() => cellNamed(page, 'ledger').textContent(), patience).not.toMatch(/E -> F/u);
+    expect(await keptText(draft, 'ledger')).not.toContain('E -> F');
+    await context.close();
   });
 });

@@ -34,6 +34,8 @@ export interface LiveDocument {
   readonly setAside: Readonly<ShallowRef<readonly SetAside[]>>;
   /** Tries the line at once. */
   retry(): void;
+  /** Sets aside what the server has not taken and will not: this person may no longer write. */
+  withdraw(): void;
   /** Drops the set-aside text once the person has dealt with it. */
   clearSetAside(): void;
 }
@@ -58,7 +60,13 @@ const fresh = (): Line => ({
 export function useLiveDocument(
   notebook: string,
   person: string,
-  on: { plan(notice: PlanNotice): void; notice(notice: Notice): void; refused(): void },
+  on: {
+    plan(notice: PlanNotice): void;
+    notice(notice: Notice): void;
+    refused(): void;
+    /** The line is back after it was down: what one may do here may have changed meanwhile. */
+    returned(): void;
+  },
 ): LiveDocument {
   const room = shallowRef<LiveRoom | null>(null);
   const line = reactive<Line>(fresh());
@@ -92,6 +100,7 @@ export function useLiveDocument(
     const opened: LiveRoom = new LiveRoom(notebook, `stillroom.${person}.${notebook}`, {
       line(state) {
         if (state === 'synced') {
+          if (line.downSince !== null) on.returned();
           Object.assign(line, { phase: 'open', ready: true, downSince: null });
           if (opened.count.settled) line.keptAt = new Date();
         } else if (state === 'down' || (state === 'connecting' && line.phase !== 'opening')) {
@@ -156,6 +165,9 @@ export function useLiveDocument(
     line: readonly(line),
     setAside,
     retry: back,
+    withdraw() {
+      if (room.value !== null && room.value.count.pending > 0) void refused(room.value);
+    },
     clearSetAside: () => (setAside.value = []),
   };
 }

@@ -110,6 +110,11 @@ export function openNotebook(id: string): Notebook {
       else void askAbout();
     },
     refused: () => void askAbout(),
+    // The server asks nobody for changes who may not make any: they would wait here for ever.
+    returned: () =>
+      void askAbout().then(() => {
+        if (about.value?.abilities.includes('notebook.edit') === false) live.withdraw();
+      }),
   });
   const cells = useCells(live.room);
   const resultOf = (cell: string): unknown => {
