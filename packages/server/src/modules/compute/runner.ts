@@ -205,7 +205,10 @@ export class Runner {
   #queueLogger(): QueueLogger {
     return new QueueLogger(() => (level, message) => {
       if (level === 'error') this.#options.log.error(`Queue: ${message}`);
-      else if (level === 'warning') this.#options.log.warn(`Queue: ${message}`);
+      // Jobs share few connections on purpose: a run holds none while the engine computes.
+      else if (level === 'warning' && !message.includes('maxPoolSize')) {
+        this.#options.log.warn(`Queue: ${message}`);
+      }
     });
   }
 }
