@@ -1,62 +1,26 @@
-import type { GroupView, NotebookView } from '@stillroom/shared/contracts';
-import type { Browser, BrowserContext, Page } from 'playwright-core';
-import { afterAll, beforeAll, beforeEach, describe, expect, test } from 'vitest';
-import { demoPassword } from '../../packages/server/src/demo/people.ts';
+import type { NotebookView } from '@stillroom/shared/contracts';
+import type { BrowserContext, Page } from 'playwright-core';
+import { beforeAll, describe, expect, test } from 'vitest';
 import { violationsInBothThemes } from '../support/axe.ts';
-import { buildGroup, buildPerson, usualPassword } from '../support/build.ts';
-import { enter, launchChromium, openPage, pictureOnFailure, type WatchedPage } from '../support/chromium.ts';
+import { patience } from '../support/browsing.ts';
+import { buildGroup, buildPerson } from '../support/build.ts';
+import { useDemo } from '../support/demo-browsing.ts';
 import { buildNotebook, cell } from '../support/live.ts';
-import { startTestServer, type TestServer } from '../support/server.ts';
 
 /**
  * The states that a page passes through, refused, empty, loading, asked, in both themes, under the rules of WCAG 2.2 A and
  * AA as axe knows them. The pages at rest are in accessibility.test.ts.
  */
-let server: TestServer;
-let browser: Browser;
+const nowhere = 'A'.repeat(43);
+const demo = useDemo();
+const { as, ask, send, groupNamed, letterLink } = demo;
 let page: Page;
 let context: BrowserContext;
-const people = new Map<string, WatchedPage>();
-const nowhere = 'A'.repeat(43);
-
-beforeAll(async () => {
-  server = await startTestServer({ DEMO: '1' });
-  browser = await launchChromium();
-  const watched = await openPage(browser, server.url);
-  people.set('visitor', watched);
-  ({ page, context } = watched);
-}, 180_000);
-beforeEach((running) => pictureOnFailure(running, people));
-afterAll(async () => {
-  await browser.close();
-  await server.stop();
+beforeAll(() => {
+  ({ page, context } = demo);
 });
 
-const patience = { timeout: 30_000 };
-const as = (key: string) =>
-  enter(
-    context,
-    server.url,
-    key === 'orla' ? 'orla@stillroom.example' : `${key}@brewhouse-kinetics.example`,
-    demoPassword,
-  );
-const ask = async <Answer>(path: string): Promise<Answer> =>
-  (await (await context.request.get(path)).json()) as Answer;
-const send = (path: string, method: 'post' | 'put' | 'patch', data: unknown) =>
-  context.request[method](path, { data, headers: { origin: server.url } });
-
-async function brewhouse(): Promise<GroupView> {
-  const groups = await ask<readonly { id: string; name: string }[]>('/api/groups');
-  return ask(`/api/groups/${groups.find(({ name }) => name === 'Brewhouse Kinetics')?.id}`);
-}
-
-async function letterLink(path: string, email: string): Promise<string> {
-  const [letter] = await server.sql<{ text: string }>(
-    'select text from mail where recipient = $1 order by at desc limit 1',
-    [email],
-  );
-  return new RegExp(`/${path}/[\\w-]+`, 'u').exec(letter?.text ?? '')?.[0] ?? `no letter to ${email}`;
-}
+const brewhouse = () => groupNamed('Brewhouse Kinetics');
 
 /** Waits for words that only this state shows, and lets axe look. */
 async function look(words: string | RegExp): Promise<void> {
@@ -124,8 +88,8 @@ describe('rooms', { timeout: 90_000 }, () => {
     await page.unroute('**/api/shelf');
   });
   test('a first notebook, where there is no group yet', async () => {
-    await buildPerson(server, { email: 'first@example.org', name: 'First Comer' });
-    await enter(context, server.url, 'first@example.org', usualPassword);
+    await buildPerson(demo.server, { email: 'first@example.org', name: 'First Comer' });
+    await demo.enter('first@example.org');
     await page.goto('/');
     await page.getByRole('button', { name: 'Begin one' }).click();
     await look('A notebook belongs to a group');
@@ -135,10 +99,10 @@ describe('rooms', { timeout: 90_000 }, () => {
     await look('Nothing has been frozen yet');
   });
   test('the bin, opened', async () => {
-    const person = await buildPerson(server, { email: 'bin@example.org', name: 'Bin Owner' });
-    await enter(context, server.url, 'bin@example.org', usualPassword);
-    const id = await buildNotebook(server, await buildGroup(server, person), person);
-    await context.request.delete(`/api/notebooks/${id}`, { headers: { origin: server.url } });
+    const person = await buildPerson(demo.server, { email: 'bin@example.org', name: 'Bin Owner' });
+    await demo.enter('bin@example.org');
+    const id = await buildNotebook(demo.server, await buildGroup(demo.server, person), person);
+    await context.request.delete(`/api/notebooks/${id}`, { headers: { origin: demo.server.url } });
     await page.goto('/');
     await page.getByText(/In the bin/u).click();
     await look('Put it back');
@@ -146,7 +110,7 @@ describe('rooms', { timeout: 90_000 }, () => {
   test('a group that is not open, and the operator’s room to others', async () => {
     await as('ilse');
     const { id } = await brewhouse();
-    await enter(context, server.url, 'first@example.org', usualPassword);
+    await demo.enter('first@example.org');
     await page.goto(`/groups/${id}`);
     await look('This group is not open to you');
     await page.goto('/operator');
@@ -219,9 +183,9 @@ describe('notebooks and records', { timeout: 120_000 }, () => {
     await page.setViewportSize({ width: 1440, height: 900 });
   });
   test('freezing, stopped by cells that failed', async () => {
-    const person = await buildPerson(server, { email: 'stop@example.org', name: 'Stopped Short' });
-    await enter(context, server.url, 'stop@example.org', usualPassword);
-    const id = await buildNotebook(server, await buildGroup(server, person, 'Stopped'), person, [
+    const person = await buildPerson(demo.server, { email: 'stop@example.org', name: 'Stopped Short' });
+    await demo.enter('stop@example.org');
+    const id = await buildNotebook(demo.server, await buildGroup(demo.server, person, 'Stopped'), person, [
       cell('broken', 'network', 'A --> B'),
       cell('wrong', 'claim', '1 > 2'),
     ]);
@@ -241,8 +205,8 @@ describe('notebooks and records', { timeout: 120_000 }, () => {
     await look('What this record holds');
   });
   test('a record that is not open to this person', async () => {
-    await buildPerson(server, { email: 'stranger@example.org', name: 'Stranger Here' });
-    await enter(context, server.url, 'stranger@example.org', usualPassword);
+    await buildPerson(demo.server, { email: 'stranger@example.org', name: 'Stranger Here' });
+    await demo.enter('stranger@example.org');
     await page.goto(`/records/${record}`);
     await look('This record is not open to you');
   });

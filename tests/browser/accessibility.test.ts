@@ -1,67 +1,30 @@
 import type { FairCopy, GroupView, NotebookView, RecordView } from '@stillroom/shared/contracts';
-import type { Browser, BrowserContext, Page } from 'playwright-core';
-import { afterAll, beforeAll, beforeEach, describe, expect, test, vi } from 'vitest';
+import type { BrowserContext, Page } from 'playwright-core';
+import { beforeAll, describe, expect, test, vi } from 'vitest';
 import { demoPassword } from '../../packages/server/src/demo/people.ts';
 import { violationsInBothThemes } from '../support/axe.ts';
-import { buildGroup, buildPerson, usualPassword } from '../support/build.ts';
-import { enter, launchChromium, openPage, pictureOnFailure, type WatchedPage } from '../support/chromium.ts';
+import { patience } from '../support/browsing.ts';
+import { buildGroup, buildPerson } from '../support/build.ts';
+import { useDemo } from '../support/demo-browsing.ts';
 import { buildNotebook, cell } from '../support/live.ts';
-import { startTestServer, type TestServer } from '../support/server.ts';
 
 /**
  * Every page and every state that matters, in both themes, under the rules of WCAG 2.2 A and AA as axe knows them. The
  * pages are those of the demo, which uses all kinds of cells; what the demo does not show is built.
  */
-let server: TestServer;
-let browser: Browser;
+const demo = useDemo();
+const { as, ask, send, groupNamed, letterLink } = demo;
 let page: Page;
 let context: BrowserContext;
-const people = new Map<string, WatchedPage>();
-
-beforeAll(async () => {
-  server = await startTestServer({ DEMO: '1' });
-  browser = await launchChromium();
-  const watched = await openPage(browser, server.url);
-  people.set('visitor', watched);
-  ({ page, context } = watched);
-}, 180_000);
-beforeEach((running) => pictureOnFailure(running, people));
-afterAll(async () => {
-  await browser.close();
-  await server.stop();
+beforeAll(() => {
+  ({ page, context } = demo);
 });
-
-const patience = { timeout: 60_000 };
-const as = (key: string) =>
-  enter(
-    context,
-    server.url,
-    key === 'orla' ? 'orla@stillroom.example' : `${key}@brewhouse-kinetics.example`,
-    demoPassword,
-  );
-const ask = async <Answer>(path: string): Promise<Answer> =>
-  (await (await context.request.get(path)).json()) as Answer;
-const send = (path: string, method: 'post' | 'put', data: unknown) =>
-  context.request[method](path, { data, headers: { origin: server.url } });
 
 /** Opens an address, waits for words that only the finished page shows, and lets axe look. */
 async function look(path: string, words: string | RegExp): Promise<void> {
   await page.goto(path);
   await page.getByText(words).first().waitFor(patience);
   expect(await violationsInBothThemes(page)).toEqual([]);
-}
-
-async function groupNamed(name: string): Promise<GroupView> {
-  const groups = await ask<readonly { id: string; name: string }[]>('/api/groups');
-  return ask(`/api/groups/${groups.find((group) => group.name === name)?.id}`);
-}
-
-async function letterLink(path: string, email: string): Promise<string> {
-  const [letter] = await server.sql<{ text: string }>(
-    'select text from mail where recipient = $1 order by at desc limit 1',
-    [email],
-  );
-  return new RegExp(`/${path}/[\\w-]+`, 'u').exec(letter?.text ?? '')?.[0] ?? `no letter to ${email}`;
 }
 
 /** Waits until every cell of a notebook has come to rest. */
@@ -216,7 +179,7 @@ describe('an open notebook', { timeout: 180_000 }, () => {
   test('its public copy', async () => {
     const id = notebooks['Tidewater Epidemics'];
     const group = await groupNamed('Tidewater Epidemics');
-    await enter(context, server.url, 'rurik@tidewater.example', demoPassword);
+    await demo.enter('rurik@tidewater.example', demoPassword);
     expect(group.notebooks[0]?.id).toBe(id);
     await send(`/api/notebooks/${id}/public`, 'put', { public: true });
     const { publicLink } = await ask<NotebookView>(`/api/notebooks/${id}`);
@@ -244,11 +207,11 @@ describe('a person with a notebook of their own', { timeout: 120_000 }, () => {
   let notebook: string;
   let fresh: string;
   beforeAll(async () => {
-    const person = await buildPerson(server, { email: 'pell@example.org', name: 'Pell Arden' });
-    await enter(context, server.url, 'pell@example.org', usualPassword);
-    const group = await buildGroup(server, person, 'Pell and others');
-    fresh = await buildNotebook(server, group, person);
-    notebook = await buildNotebook(server, group, person, [
+    const person = await buildPerson(demo.server, { email: 'pell@example.org', name: 'Pell Arden' });
+    await demo.enter('pell@example.org');
+    const group = await buildGroup(demo.server, person, 'Pell and others');
+    fresh = await buildNotebook(demo.server, group, person);
+    notebook = await buildNotebook(demo.server, group, person, [
       cell('yeast', 'network', 'A <=> B | 2 /s, 1 /s\nstart A = 3 M'),
       cell('broken', 'network', 'A --> B\nC -> D | 1 /z'),
       cell('shape', 'structure', '', { settings: { network: 'broken' } }),
@@ -260,10 +223,10 @@ describe('a person with a notebook of their own', { timeout: 120_000 }, () => {
   }, 120_000);
 
   test('the Shelf, empty, and with cells that fail', async () => {
-    await buildPerson(server, { email: 'new@example.org', name: 'New Comer' });
-    await enter(context, server.url, 'new@example.org', usualPassword);
+    await buildPerson(demo.server, { email: 'new@example.org', name: 'New Comer' });
+    await demo.enter('new@example.org');
     await look('/', 'No notebook stands here yet.');
-    await enter(context, server.url, 'pell@example.org', usualPassword);
+    await demo.enter('pell@example.org');
     await look('/', 'Diacetyl rest');
   });
   test('first run', () => look(`/notebooks/${fresh}`, /outline/iu));
@@ -284,7 +247,7 @@ describe('a person with a notebook of their own', { timeout: 120_000 }, () => {
     await context.setOffline(false);
   });
   test('a notebook that is not open to this person', async () => {
-    await enter(context, server.url, 'nadia@brewhouse-kinetics.example', demoPassword);
+    await as('nadia');
     await look(`/notebooks/${notebook}`, 'No such notebook is open to you');
   });
 });
@@ -315,7 +278,7 @@ describe('links from letters, and the operator', { timeout: 180_000 }, () => {
     const answer = await send(`/api/records/${group.records[0]?.id}/public`, 'put', { public: true });
     const { publicLink } = (await answer.json()) as Pick<RecordView, 'publicLink'>;
     await context.clearCookies();
-    await look(new URL(publicLink ?? '', server.url).pathname, 'Diacetyl rest');
+    await look(new URL(publicLink ?? '', demo.server.url).pathname, 'Diacetyl rest');
   });
   test('the operator’s room', async () => {
     await as('orla');

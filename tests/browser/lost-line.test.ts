@@ -3,6 +3,7 @@ import type { Page } from 'playwright-core';
 import { describe, expect, test } from 'vitest';
 import { cellNamed, patience, useBrowsing, words } from '../support/browsing.ts';
 import { buildGroup, buildMember, buildPerson, signIn } from '../support/build.ts';
+import type { WatchedPage } from '../support/chromium.ts';
 import { buildNotebook, cell } from '../support/live.ts';
 import { startServerProcess } from '../support/server-process.ts';
 import type { Visitor } from '../support/visitor.ts';
@@ -38,6 +39,18 @@ async function typeInto(page: Page, name: string, text: string): Promise<void> {
   await page.keyboard.type(text);
 }
 
+/** Somebody with the notebook open whose line has just gone. */
+async function loseTheLine(): Promise<WatchedPage> {
+  const watched = await browsing.enter(address('ben'));
+  const { page, context } = watched;
+  await page.goto(`/notebooks/${draft}`);
+  await cellNamed(page, 'ledger').waitFor(patience);
+  await words(page, /^Kept /u);
+  await context.setOffline(true);
+  await words(page, /The line to the server is down since/u);
+  return watched;
+}
+
 /** Waits until what the page handed to its store is on the disk: a transaction waits for those before it. */
 const storedHere = (page: Page) =>
   page.evaluate(async () => {
@@ -56,12 +69,7 @@ const storedHere = (page: Page) =>
 
 describe('the line', { timeout: 180_000 }, () => {
   test('when it is lost, the page says so, and what was typed arrives when it is back', async () => {
-    const { page, context } = await browsing.enter(address('ben'));
-    await page.goto(`/notebooks/${draft}`);
-    await cellNamed(page, 'ledger').waitFor(patience);
-    await words(page, /^Kept /u);
-    await context.setOffline(true);
-    await words(page, /The line to the server is down since/u);
+    const { page, context } = await loseTheLine();
     await typeInto(page, 'ledger', '\nB -> C | 3 /s');
     await words(page, /changes? kept here only/u);
     expect(await keptText(draft, 'ledger')).not.toContain('B -> C');
@@ -73,12 +81,7 @@ describe('the line', { timeout: 180_000 }, () => {
   });
 
   test('what was written offline survives closing the tab', async () => {
-    const { page, context } = await browsing.enter(address('ben'));
-    await page.goto(`/notebooks/${draft}`);
-    await cellNamed(page, 'ledger').waitFor(patience);
-    await words(page, /^Kept /u);
-    await context.setOffline(true);
-    await words(page, /The line to the server is down since/u);
+    const { page, context } = await loseTheLine();
     await typeInto(page, 'ledger', '\nC -> D | 4 /s');
     await words(page, /changes? kept here only/u);
     await expect
@@ -123,12 +126,7 @@ describe('the line', { timeout: 180_000 }, () => {
   });
 
   test('what was written while a role was taken away is set aside when the line is back', async () => {
-    const { page, context } = await browsing.enter(address('ben'));
-    await page.goto(`/notebooks/${draft}`);
-    await cellNamed(page, 'ledger').waitFor(patience);
-    await words(page, /^Kept /u);
-    await context.setOffline(true);
-    await words(page, /The line to the server is down since/u);
+    const { page, context } = await loseTheLine();
     await typeInto(page, 'ledger', '\nE -> F | 6 /s');
     await words(page, /changes? kept here only/u);
     const change = { role: 'reader', notebooks: null };

@@ -22,15 +22,18 @@ export interface Browsing {
  * Starts a server and a browser before the tests of a file and stops them after; `prepare` builds what the tests need.
  * When a test fails, a picture is left of every open page.
  */
-export function useBrowsing(prepare: (server: TestServer) => Promise<unknown>): Browsing {
+export function useBrowsing(
+  prepare: (server: TestServer) => Promise<unknown>,
+  settings: Readonly<Record<string, string>> = {},
+): Browsing {
   const people = new Map<string, WatchedPage>();
   let server: TestServer;
   let browser: Browser;
   beforeAll(async () => {
-    server = await startTestServer();
+    server = await startTestServer(settings);
     await prepare(server);
     browser = await launchChromium();
-  });
+  }, 180_000);
   beforeEach((running) => pictureOnFailure(running, people));
   afterAll(async () => {
     await browser.close();
