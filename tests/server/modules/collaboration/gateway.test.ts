@@ -19,6 +19,15 @@ afterEach(() => {
   }
 });
 
+/** Puts a door before a port of this machine until the test has ended. */
+async function listen(gateway: Gateway): Promise<number> {
+  const server = createServer();
+  server.on('upgrade', (request, socket, head) => gateway.upgrade(request, socket, head));
+  await new Promise<void>((ready) => server.listen(0, '127.0.0.1', ready));
+  open.push({ gateway, server });
+  return (server.address() as AddressInfo).port;
+}
+
 /** A door before one room in memory; `meanwhile` happens while the room is being loaded. */
 async function build(
   meanwhile: (door: { gateway: Gateway; end(): void; setRole(role: RoleNow): void }) => void,
@@ -45,11 +54,8 @@ async function build(
     isSameOrigin: () => true,
     failed: () => undefined,
   });
-  const server = createServer();
-  server.on('upgrade', (request, socket, head) => gateway.upgrade(request, socket, head));
-  await new Promise<void>((ready) => server.listen(0, '127.0.0.1', ready));
-  open.push({ gateway, server });
-  const line = new WebSocket(`ws://127.0.0.1:${(server.address() as AddressInfo).port}/live/${notebook}`);
+  const port = await listen(gateway);
+  const line = new WebSocket(`ws://127.0.0.1:${port}/live/${notebook}`);
   const code = await new Promise<number | 'let in'>((resolve) => {
     line.once('close', resolve);
     line.once('message', () => resolve('let in'));
@@ -97,12 +103,9 @@ test('more lines at once than can be judged are sent away for a moment, and come
     isSameOrigin: () => true,
     failed: () => undefined,
   });
-  const server = createServer();
-  server.on('upgrade', (request, socket, head) => gateway.upgrade(request, socket, head));
-  await new Promise<void>((ready) => server.listen(0, '127.0.0.1', ready));
-  open.push({ gateway, server });
+  const port = await listen(gateway);
   const knock = () => {
-    const line = new WebSocket(`ws://127.0.0.1:${(server.address() as AddressInfo).port}/live/${notebook}`);
+    const line = new WebSocket(`ws://127.0.0.1:${port}/live/${notebook}`);
     return {
       opened: new Promise((resolve) => line.once('open', resolve)),
       closed: new Promise<number>((resolve) => line.once('close', resolve)),
